@@ -1,0 +1,44 @@
+/** What the flaws stage hands on: labelled regions with measurements, a class and its reason. */
+import type { LabelMap } from '../grid/maps.ts';
+import type { Notice } from '../problems/problem.ts';
+
+export type FlawCause = 'bubble' | 'residue' | 'wrinkle' | 'short' | 'open';
+
+/** One flaw, measured. Lengths in metres, areas in m², volume in m³; NaN where a quantity does not apply. */
+export interface Flaw {
+  /** Number in the label map, counted from 1. */
+  readonly flaw: number;
+  readonly cause: FlawCause;
+  /** 0.5 (could as well be another class) to 1 (certain). */
+  readonly confidence: number;
+  /** One phrase in words: what was seen and why that class. */
+  readonly reason: string;
+  /** Area-weighted centre (x right, y up, origin lower-left). */
+  readonly xM: number;
+  readonly yM: number;
+  readonly pixels: number;
+  readonly areaM2: number;
+  /** Length of the outline. */
+  readonly boundaryM: number;
+  /** Diameter of the circle of the same area. */
+  readonly diameterM: number;
+  /** Full axes of the ellipse with the same second moments; angle of the long one against +x, degrees in (−90, 90]. */
+  readonly longM: number;
+  readonly shortM: number;
+  readonly angleDeg: number;
+  /** Above the surrounding ground. */
+  readonly peakM: number;
+  readonly meanM: number;
+  readonly volumeM3: number;
+  readonly heightToRadius: number;
+  /** Median log10 of the current inside (A, or the file's unit), NaN where no current. */
+  readonly log10Current: number;
+  readonly touchesEdge: boolean;
+}
+
+export interface Flaws {
+  /** Shape [rows, columns]; the number of the flaw a pixel belongs to, 0 for none. */
+  readonly labels: LabelMap;
+  readonly list: readonly Flaw[];
+  readonly warnings: readonly Notice[];
+}
