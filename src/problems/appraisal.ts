@@ -1,4 +1,38 @@
 /** Sentences about maps and what can be concluded from them. */
 export const appraisalSentences = {
-  'map-all-missing': (d: { file: string; quantity: string }) => `${d.file}: every ${d.quantity} value is missing; export the channel again.`,
+  'current-saturated': (d: { file: string; share: number }) =>
+    `${d.file}: ${(100 * d.share).toFixed(1)} % of the current map sits at the amplifier's limit, so it says nothing about the barrier; scan again at lower gain or bias.`,
+  'current-offset-assumed': (_: Record<string, never>) =>
+    'The current map shows no spot without current, so its offset could not be measured and zero was assumed.',
+  'current-wear': (d: { decades: number }) =>
+    `The tip lost ${d.decades.toFixed(2)} decades of conductance from the first line to the last; this was undone as a factor per line.`,
+  'bumps-conduct': (d: { areaUm2: number }) =>
+    `Bumps over ${d.areaUm2.toFixed(2)} µm² stand above the ground but conduct like it; they are noted and not booked as flaws.`,
+  'barrier-no-ground': (_: Record<string, never>) => 'No flawless ground with a current is left in the footprint, so there is no reference and nothing is usable.',
+  'barrier-stack-surface': (_: Record<string, never>) =>
+    'A finished stack was scanned: its emitter spreads the current, so layers and thickness are not given.',
+  'reference-runner-up': (d: { layers: number; areaUm2: number; ownUm2: number }) =>
+    `Another terrace (${layersApart(d.layers)}, ${d.areaUm2.toFixed(2)} µm²) is almost as large as the reference (${d.ownUm2.toFixed(2)} µm²); the choice between them decides the verdict.`,
+  'reference-may-glow': (d: { naPerUm2: number; lowNaPerUm2: number; highNaPerUm2: number; biasV: number }) =>
+    `The reference would carry ${short(d.naPerUm2)} nA/µm² (95 %: ${short(d.lowNaPerUm2)}–${short(d.highNaPerUm2)}) at ${short(d.biasV)} V, outside the range known to glow, but its interval reaches into it.`,
+  'reference-not-known-to-glow': (d: { naPerUm2: number; lowNaPerUm2: number; highNaPerUm2: number; biasV: number }) =>
+    `Even, but not known to glow: the reference would carry ${short(d.naPerUm2)} nA/µm² (95 %: ${short(d.lowNaPerUm2)}–${short(d.highNaPerUm2)}) at ${short(d.biasV)} V, outside the recipe's range.`,
+  'reference-passed-over': (d: { layers: number; areaUm2: number }) =>
+    `A terrace ${layersApart(d.layers)} (${d.areaUm2.toFixed(2)} µm²) would carry a density in range, but it is too small or too near the floor to measure a map against.`,
+  'reference-censored': (_: Record<string, never>) =>
+    'The reference terrace lies at the amplifier’s limit, so its current is only a bound; scan again at another gain.',
+  'ladder-one-terrace': (_: Record<string, never>) => 'The map shows one terrace only, so the step per layer is taken from the model.',
+  'ladder-contradicts': (d: { measured: number; model: number }) =>
+    `The current falls by ${d.measured.toFixed(2)} decades per layer, the model expects ${d.model.toFixed(2)}; thickness and density from this model are in doubt.`,
+  'bias-missing': (_: Record<string, never>) =>
+    'No scan bias is stated (scan.biasV), so no thickness and no density at the device are given.',
 };
+
+function short(value: number): string {
+  return String(Number(value.toPrecision(2)));
+}
+
+function layersApart(layers: number): string {
+  const n = Math.abs(layers);
+  return `${n} ${n === 1 ? 'layer' : 'layers'} ${layers < 0 ? 'thinner' : 'thicker'}`;
+}

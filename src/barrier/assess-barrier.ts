@@ -1,0 +1,116 @@
+import ndarray from 'ndarray';
+import type { Grid, MaskMap } from '../grid/maps.ts';
+import { pixelAreaM2, scalarMap } from '../grid/maps.ts';
+import type { CurrentGround } from '../ground/ground.ts';
+import type { Flaws } from '../flaws/flaws.ts';
+import { notice } from '../problems/problem.ts';
+import type { Notice } from '../problems/problem.ts';
+import { anchorOf } from './anchor.ts';
+import type { Anchor, DeviceQuestion } from './anchor.ts';
+import type { Barrier, DeviceDensity, Reference, Rung } from './barrier.ts';
+import { ladderNotices, referenceNotices } from './barrier-notices.ts';
+import type { BarrierSection } from './recipe.ts';
+import { chooseReference } from './reference.ts';
+import type { Candidate } from './reference.ts';
+import { findTerraces, unknownStep } from './terraces.ts';
+import type { Terraces } from './terraces.ts';
+import { thicknessMap } from './thickness-map.ts';
+
+/** What the barrier stage needs to know of the device and the band, in SI. */
+export interface BandQuestion extends DeviceQuestion {
+  readonly minAPerM2: number;
+  readonly maxAPerM2: number;
+  readonly bandFactor: number;
+  readonly terraceMinM2: number;
+}
+
+/**
+ * Barrier stage: terraces and their ladder, the reference terrace, whole layers and thickness, and the density each terrace would carry in the
+ * device before any voltage drop.
+ *
+ * Scatter of the current inside a terrace is not thickness, because layers are whole: with `withinTerrace: contact` it stays out of layers, thickness
+ * and density. With `withinTerrace: barrier` thickness and density follow the current pixel by pixel.
+ *
+ * @param footprint 1 where the device could be; @param surface on a finished stack the emitter spreads the current, so no thickness is given there.
+ * @returns maps of the grid's shape; steps −128, layers 0 and thickness NaN where unknown (no current, flaw, outside the footprint).
+ * @throws nothing for a valid recipe; a map without any usable ground yields unknown everywhere and a remark.
+ */
+export function assessBarrier(
+  current: CurrentGround, flaws: Flaws, footprint: MaskMap, grid: Grid, surface: 'barrier' | 'stack', section: BarrierSection, band: BandQuestion,
+): Barrier {
+  const warnings: Notice[] = [];
+  const labels = flaws.labels.data;
+  const inside = footprint.data;
+  const amperes = current.unit === 'A' && current.biasV !== undefined && current.biasV !== 0;
+  const anchor = anchorOf(section, band, amperes && surface === 'barrier' ? current.biasV : undefined);
+  const fallbackStep = anchor?.modelStepDecades;
+  const terraces = findTerraces(current, (i) => inside[i] === 1 && labels[i] === 0, {
+    stepDecades: fallbackStep ?? 1, from: fallbackStep === undefined ? 'assumed' : 'model',
+  });
+
+  const area = pixelAreaM2(grid);
+  const candidates: Candidate[] = terraces.rungs.map((rung) => {
+    const density = anchor && band.biasV !== undefined && rung.bound === 'exact' ? anchor.density(10 ** rung.medianLog10, band.biasV) : undefined;
+    return { ...rung, areaM2: rung.pixels * area, ...(density ? { density } : {}) };
+  });
+  const choice = chooseReference(candidates, { ...band, floor: current.floorA });
+  if (!choice) warnings.push(notice('barrier-no-ground', {}));
+  const origin = choice?.chosen.step ?? 0;
+  const median = choice ? 10 ** choice.chosen.medianLog10 : Number.NaN;
+
+  const anchored = choice && anchor?.fix(median);
+  const device = deviceOf(anchor, anchored?.thicknessM, median, band);
+  const unflawedM2 = candidates.reduce((sum, candidate) => sum + candidate.areaM2, 0);
+  const reference: Reference = {
+    step: 0,
+    ...(anchored ? { layers: anchored.layers, thicknessM: anchored.thicknessM } : {}),
+    median,
+    areaM2: choice?.chosen.areaM2 ?? 0,
+    shareOfUnflawed: choice && unflawedM2 > 0 ? choice.chosen.areaM2 / unflawedM2 : 0,
+    ...(device ? { inRange: device.median >= band.minAPerM2 && device.median <= band.maxAPerM2 } : {}),
+  };
+  const rungs: Rung[] = candidates.map((candidate) => ({
+    step: candidate.step - origin,
+    ...(anchored ? { layers: Math.max(0, anchored.layers + candidate.step - origin) } : {}),
+    areaM2: candidate.areaM2,
+    pixels: candidate.pixels,
+    medianLog10: candidate.medianLog10,
+    scatterDecades: candidate.scatterDecades,
+    bound: candidate.bound,
+  }));
+  if (choice) warnings.push(...referenceNotices(choice, candidates, origin, device), ...ladderNotices(terraces, anchor?.modelStepDecades));
+  if (surface === 'stack') warnings.push(notice('barrier-stack-surface', {}));
+
+  const maps = thicknessMap(current, terraces, origin, grid, {
+    withinTerrace: section.withinTerrace, referenceLog10: choice?.chosen.medianLog10 ?? Number.NaN, rungs,
+    ...(anchored ? { anchored } : {}), ...(device ? { deviceBiasV: device.biasV } : {}), ...(anchor ? { anchor } : {}),
+  });
+  return {
+    step: ndarray(rebased(terraces, origin), [grid.rows, grid.columns]),
+    ...(maps.layers ? { layers: ndarray(maps.layers, [grid.rows, grid.columns]) } : {}),
+    ...(maps.thickness ? { thickness: scalarMap(grid, maps.thickness) } : {}),
+    log10Relative: scalarMap(grid, maps.log10Relative),
+    ladder: {
+      stepDecades: terraces.stepDecades,
+      stepSeDecades: terraces.stepSeDecades,
+      from: terraces.from,
+      ...(anchor ? { modelStepDecades: anchor.modelStepDecades } : {}),
+      rungs,
+    },
+    reference,
+    ...(device ? { device } : {}),
+    warnings,
+  };
+}
+
+/** Density on the reference at the device's bias, given or proposed. */
+function deviceOf(anchor: Anchor | undefined, thicknessM: number | undefined, median: number, band: BandQuestion): DeviceDensity | undefined {
+  if (!anchor || thicknessM === undefined) return undefined;
+  const biasV = band.biasV ?? anchor.proposeBias(thicknessM, band.targetAPerM2);
+  const density = Number.isNaN(biasV) ? undefined : anchor.density(median, biasV);
+  return density && { biasV, proposed: band.biasV === undefined, ...density };
+}
+
+function rebased(terraces: Terraces, origin: number): Int8Array {
+  return terraces.steps.map((step) => (step === unknownStep ? unknownStep : Math.max(-127, Math.min(127, step - origin))));
+}

@@ -1,0 +1,34 @@
+/** What is worth saying about the reference and the ladder. */
+import { notice } from '../problems/problem.ts';
+import type { Notice } from '../problems/problem.ts';
+import type { DeviceDensity } from './barrier.ts';
+import type { Candidate, ReferenceChoice } from './reference.ts';
+import type { Terraces } from './terraces.ts';
+
+const naPerUm2 = (aPerM2: number): number => aPerM2 * 1e-3;
+
+/** Remarks about the choice of the reference terrace. */
+export function referenceNotices(choice: ReferenceChoice, candidates: readonly Candidate[], origin: number, device: DeviceDensity | undefined): Notice[] {
+  const found: Notice[] = [];
+  if (choice.runnerUp) {
+    found.push(notice('reference-runner-up', { layers: choice.runnerUp.step - origin, areaUm2: choice.runnerUp.areaM2 * 1e12, ownUm2: choice.chosen.areaM2 * 1e12 }));
+  }
+  if (device && !choice.inRange && !device.proposed) {
+    found.push(notice(choice.reaches ? 'reference-may-glow' : 'reference-not-known-to-glow', {
+      naPerUm2: naPerUm2(device.median), lowNaPerUm2: naPerUm2(device.low95), highNaPerUm2: naPerUm2(device.high95), biasV: device.biasV,
+    }));
+  }
+  const passed = choice.passedOver[0];
+  if (passed) found.push(notice('reference-passed-over', { layers: passed.step - origin, areaUm2: passed.areaM2 * 1e12 }));
+  if (choice.chosen.bound !== 'exact') found.push(notice('reference-censored', {}));
+  if (candidates.every((candidate) => candidate.bound !== 'exact' || candidate === choice.chosen) && candidates.length === 1) found.push(notice('ladder-one-terrace', {}));
+  return found;
+}
+
+/** Remarks about the step of the ladder: a ladder that contradicts the model is said, not hidden. */
+export function ladderNotices(terraces: Terraces, modelStepDecades: number | undefined): Notice[] {
+  if (modelStepDecades === undefined || terraces.from !== 'map') return [];
+  const ratio = terraces.stepDecades / modelStepDecades;
+  if (ratio > 0.75 && ratio < 1.33) return [];
+  return [notice('ladder-contradicts', { measured: terraces.stepDecades, model: modelStepDecades })];
+}

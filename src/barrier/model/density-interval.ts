@@ -1,0 +1,178 @@
+/**
+ * The density a device will carry, with its 95 % interval, from what a probe measured at another
+ * bias on the same barrier. All spreads are propagated to first order in ln density and combined
+ * in quadrature; the interval is median·exp(±1.96 σ).
+ *
+ * Spreads taken as independent: ln contact area (its 95 % range ×/÷ √10, one decade in all),
+ * barrier height (σ 0.1 eV), ln mass (σ 10 %). The noise of the current is not among them.
+ *
+ * - Thickness unknown: it is solved from the current, so that height, mass and area change it too.
+ *   At the probe's own bias only the area is left.
+ * - Thickness known (layers counted): current and area then say something about height and mass.
+ *   Their values are moved to the most likely ones given the current (Gauss–Newton steps on prior
+ *   plus one observation of ln J with the area's spread), and the interval is that of the Gaussian
+ *   conditioned on the observation: var − cov²/(var_probe + σ_area²). A precise area pins the
+ *   probe's density; a vague one leaves the prior of height and mass.
+ * - Thickness known and no current: height and mass alone.
+ */
+import { defaultThicknessRange, thicknessFromLnDensity } from './inverse.ts';
+import type { ThicknessRange } from './inverse.ts';
+import type { BarrierMaterial, TunnelModel } from './tunnel-model.ts';
+
+/** What the probe read on the barrier. */
+export interface ProbeReading {
+  /** Magnitude of the current, A, above 0. */
+  readonly currentA: number;
+  readonly biasV: number;
+  /** Area the current flows through, m²; the median of its spread. */
+  readonly areaM2: number;
+}
+
+/** Spreads of what is not known exactly. */
+export interface BarrierSpread {
+  /** Factor f such that the area lies within ×/÷ f with 95 %. */
+  readonly areaFactor95: number;
+  /** Standard deviation of the height, eV. */
+  readonly heightSdEv: number;
+  /** Standard deviation of the mass over the mass. */
+  readonly massSdRatio: number;
+}
+
+export const defaultSpread: BarrierSpread = { areaFactor95: Math.sqrt(10), heightSdEv: 0.1, massSdRatio: 0.1 };
+
+export interface DensityQuestion {
+  readonly model: TunnelModel;
+  readonly material: BarrierMaterial;
+  readonly deviceBiasV: number;
+  /** Known thickness; absent: solved from the probe's reading. */
+  readonly thicknessM?: number;
+  /** Absent: only possible with a known thickness. */
+  readonly probe?: ProbeReading;
+  readonly spread?: BarrierSpread;
+  readonly range?: ThicknessRange;
+}
+
+export interface DensityInterval {
+  /** Density at the device's bias, A/m². */
+  readonly medianAPerM2: number;
+  readonly low95APerM2: number;
+  readonly high95APerM2: number;
+  /** Thickness used, and its standard deviation from area, height and mass (0 when it was given). */
+  readonly thicknessM: number;
+  readonly thicknessSdM: number;
+  /** Height and mass used: those given, or moved to agree with the current at a known thickness. */
+  readonly material: BarrierMaterial;
+  /** Standard deviation of ln density, and the part each source has in it before conditioning. */
+  readonly sdLn: number;
+  readonly parts: { readonly area: number; readonly height: number; readonly mass: number };
+  /**
+   * With thickness and current both given: how many standard deviations the current lies from what
+   * model, thickness and area expect. Beyond ±2 they contradict each other.
+   */
+  readonly surprise?: number;
+}
+
+const z95 = 1.959963984540054;
+
+/**
+ * Answers the question above. Every number is NaN where the model does not hold or the thickness
+ * lies outside `range`. Throws a RangeError when neither thickness nor probe is given.
+ */
+export function densityInterval(question: DensityQuestion): DensityInterval {
+  if (question.thicknessM === undefined) {
+    if (question.probe === undefined) throw new RangeError('a density interval needs a thickness or a probe reading');
+    return fromCurrent(question, question.probe);
+  }
+  return fromThickness(question, question.thicknessM);
+}
+
+/** Point in the space of the uncertain quantities, in their own standard deviations from the centre. */
+function materialAt(material: BarrierMaterial, spread: BarrierSpread, height: number, mass: number): BarrierMaterial {
+  return { heightEv: material.heightEv + height * spread.heightSdEv, massRatio: material.massRatio * Math.exp(mass * spread.massSdRatio) };
+}
+
+function fromCurrent(question: DensityQuestion, probe: ProbeReading): DensityInterval {
+  const { model, material, deviceBiasV } = question;
+  const spread = question.spread ?? defaultSpread;
+  const range = question.range ?? defaultThicknessRange;
+  const areaSd = Math.log(spread.areaFactor95) / z95;
+  const lnProbe = Math.log(probe.currentA / probe.areaM2);
+  const solve = (area: number, height: number, mass: number): { thicknessM: number; ln: number } => {
+    const moved = materialAt(material, spread, height, mass);
+    const lnDensity = lnProbe - area * areaSd;
+    const thicknessM = thicknessFromLnDensity(model, moved, probe.biasV, lnDensity, range);
+    // At the probe's own bias the density is the measured one, whatever the barrier.
+    const ln = Math.abs(deviceBiasV) === Math.abs(probe.biasV) ? lnDensity : model.lnDensity({ ...moved, thicknessM }, deviceBiasV);
+    return { thicknessM, ln };
+  };
+  const centre = solve(0, 0, 0);
+  const sides = [
+    [solve(1, 0, 0), solve(-1, 0, 0)],
+    [solve(0, 1, 0), solve(0, -1, 0)],
+    [solve(0, 0, 1), solve(0, 0, -1)],
+  ] as const;
+  const [area, height, mass] = sides.map(([up, down]) => (up.ln - down.ln) / 2) as [number, number, number];
+  const thicknessSdM = Math.hypot(...sides.map(([up, down]) => (up.thicknessM - down.thicknessM) / 2));
+  return {
+    ...interval(centre.ln, Math.hypot(area, height, mass)),
+    thicknessM: centre.thicknessM,
+    thicknessSdM,
+    material,
+    parts: { area: Math.abs(area), height: Math.abs(height), mass: Math.abs(mass) },
+  };
+}
+
+function fromThickness(question: DensityQuestion, thicknessM: number): DensityInterval {
+  const { model, material, deviceBiasV, probe } = question;
+  const spread = question.spread ?? defaultSpread;
+  const lnAt = (height: number, mass: number, biasV: number): number => model.lnDensity({ ...materialAt(material, spread, height, mass), thicknessM }, biasV);
+  /** Central differences over one standard deviation each way. */
+  const slopes = (height: number, mass: number, biasV: number): [number, number] => [
+    (lnAt(height + 1, mass, biasV) - lnAt(height - 1, mass, biasV)) / 2,
+    (lnAt(height, mass + 1, biasV) - lnAt(height, mass - 1, biasV)) / 2,
+  ];
+
+  let height = 0;
+  let mass = 0;
+  let areaSd = 0;
+  let surprise: number | undefined;
+  if (probe !== undefined) {
+    areaSd = Math.log(spread.areaFactor95) / z95;
+    const seen = Math.log(probe.currentA / probe.areaM2);
+    // Gauss–Newton: most likely height and mass given the current; four steps settle it to rounding.
+    for (let step = 0; step < 6; step++) {
+      const [byHeight, byMass] = slopes(height, mass, probe.biasV);
+      const variance = byHeight ** 2 + byMass ** 2 + areaSd ** 2;
+      const excess = seen - lnAt(height, mass, probe.biasV) + byHeight * height + byMass * mass;
+      if (step === 0) surprise = variance > 0 ? excess / Math.sqrt(variance) : Number.NaN;
+      if (variance > 0) {
+        height = (byHeight * excess) / variance;
+        mass = (byMass * excess) / variance;
+      }
+    }
+  }
+  const [deviceHeight, deviceMass] = slopes(height, mass, deviceBiasV);
+  let variance = deviceHeight ** 2 + deviceMass ** 2;
+  let areaPart = 0;
+  if (probe !== undefined) {
+    const [probeHeight, probeMass] = slopes(height, mass, probe.biasV);
+    const probeVariance = probeHeight ** 2 + probeMass ** 2 + areaSd ** 2;
+    const covariance = deviceHeight * probeHeight + deviceMass * probeMass;
+    if (probeVariance > 0) {
+      variance = Math.max(0, variance - covariance ** 2 / probeVariance);
+      areaPart = (Math.abs(covariance) / probeVariance) * areaSd;
+    }
+  }
+  return {
+    ...interval(lnAt(height, mass, deviceBiasV), Math.sqrt(variance)),
+    thicknessM,
+    thicknessSdM: 0,
+    material: materialAt(material, spread, height, mass),
+    parts: { area: areaPart, height: Math.abs(deviceHeight), mass: Math.abs(deviceMass) },
+    ...(surprise === undefined ? {} : { surprise }),
+  };
+}
+
+function interval(ln: number, sdLn: number): Pick<DensityInterval, 'medianAPerM2' | 'low95APerM2' | 'high95APerM2' | 'sdLn'> {
+  return { medianAPerM2: Math.exp(ln), low95APerM2: Math.exp(ln - z95 * sdLn), high95APerM2: Math.exp(ln + z95 * sdLn), sdLn };
+}

@@ -1,0 +1,136 @@
+/** Every pixel's place on the layer ladder. */
+import type { CurrentGround } from '../ground/ground.ts';
+import { measureLadder } from '../ground/ladder.ts';
+import { median } from '../stats/median.ts';
+import { scaledMad } from '../stats/mad.ts';
+
+/** Unknown place on the ladder: no current here, or a flaw. */
+export const unknownStep = -128;
+
+export interface Terraces {
+  /** Layers from the first (thinnest) measured terrace per pixel, `unknownStep` where unknown. */
+  readonly steps: Int8Array;
+  readonly stepDecades: number;
+  readonly stepSeDecades: number;
+  readonly from: 'map' | 'model' | 'assumed';
+  readonly rungs: readonly MeasuredRung[];
+}
+
+export interface MeasuredRung {
+  readonly step: number;
+  readonly pixels: number;
+  readonly medianLog10: number;
+  readonly scatterDecades: number;
+  readonly bound: 'exact' | 'at-most' | 'at-least';
+}
+
+/** Currents below this many times the detection limit (10σ against 3σ; Currie, Anal. Chem. 40, 586, 1968) are seen but not measured well enough for a ladder. */
+export const quantifiedOverFloor = 10 / 3;
+
+/**
+ * Places the ground on a ladder of whole layers. Where the map shows two terraces or more, boundaries lie half-way between neighbouring
+ * peaks and the step is the map's own; otherwise the step is `fallback`. Saturated ground is placed on the first rung that would
+ * saturate (a bound: at most this thick), floor ground on the first rung that would vanish (at least this thick).
+ *
+ * @param ground admits ground of the footprint free of flaws.
+ */
+export function findTerraces(current: CurrentGround, ground: (index: number) => boolean, fallback: { stepDecades: number; from: 'model' | 'assumed' }): Terraces {
+  const log10 = current.log10.data;
+  const saturated = current.saturated.data;
+  const floor = current.floor.data;
+  const quantified = Math.log10(current.floorA * quantifiedOverFloor);
+  const ladder = measureLadder(log10, (i) => ground(i) && saturated[i] === 0 && log10[i]! >= quantified);
+  const measured = ladder.stepDecades !== undefined;
+  const stepDecades = ladder.stepDecades ?? fallback.stepDecades;
+  const centres = rungCentres(ladder.peaks, log10, ground);
+  const place = placer(centres, stepDecades);
+  const thinnest = current.saturationA === undefined ? -127 : Math.max(-127, firstBeyond(centres, stepDecades, Math.log10(current.saturationA), -1));
+  const thickest = Math.min(127, firstBeyond(centres, stepDecades, Math.log10(current.floorA), 1));
+
+  const steps = new Int8Array(log10.length).fill(unknownStep);
+  for (let i = 0; i < steps.length; i++) {
+    const value = log10[i]!;
+    if (Number.isNaN(value) || !ground(i)) continue;
+    // A single noisy pixel must not leave the ladder beyond its censored ends.
+    steps[i] = saturated[i] === 1 ? thinnest : floor[i] === 1 ? thickest : Math.min(thickest, Math.max(thinnest, place(value)));
+  }
+  return {
+    steps,
+    stepDecades,
+    stepSeDecades: ladder.stepSeDecades ?? 0,
+    from: measured ? 'map' : fallback.from,
+    rungs: summarise(steps, current, thinnest, thickest),
+  };
+}
+
+/** Known centres by rung; with no peak at all, the median of the ground is rung 0. */
+function rungCentres(peaks: readonly { log10: number; rung: number }[], log10: Float32Array, ground: (index: number) => boolean): Map<number, number> {
+  if (peaks.length > 0) return new Map(peaks.map((peak) => [peak.rung, peak.log10]));
+  const values = log10.filter((value, i) => ground(i) && !Number.isNaN(value));
+  return new Map([[0, values.length > 0 ? median(values) : 0]]);
+}
+
+/** Centre of any rung: measured, interpolated between measured ones, or a whole number of steps beyond. */
+function centreOf(centres: Map<number, number>, stepDecades: number, rung: number): number {
+  const known = centres.get(rung);
+  if (known !== undefined) return known;
+  const rungs = [...centres.keys()].sort((a, b) => a - b);
+  const first = rungs[0]!;
+  const last = rungs[rungs.length - 1]!;
+  if (rung < first) return centres.get(first)! + (first - rung) * stepDecades;
+  if (rung > last) return centres.get(last)! - (rung - last) * stepDecades;
+  const below = rungs.filter((k) => k < rung).pop()!;
+  const above = rungs.find((k) => k > rung)!;
+  return centres.get(below)! + ((centres.get(above)! - centres.get(below)!) * (rung - below)) / (above - below);
+}
+
+/** Nearest rung to a log current. */
+function placer(centres: Map<number, number>, stepDecades: number): (log10: number) => number {
+  const rungs = [...centres.keys()].sort((a, b) => a - b);
+  const first = rungs[0]!;
+  const last = rungs[rungs.length - 1]!;
+  const inner: number[] = [];
+  for (let rung = first; rung <= last; rung++) inner.push(centreOf(centres, stepDecades, rung));
+  return (value) => {
+    if (value > inner[0]! + stepDecades / 2) return first - Math.round((value - inner[0]!) / stepDecades);
+    if (value < inner[inner.length - 1]! - stepDecades / 2) return last + Math.round((inner[inner.length - 1]! - value) / stepDecades);
+    let k = 0;
+    while (k + 1 < inner.length && value < (inner[k]! + inner[k + 1]!) / 2) k++;
+    return first + k;
+  };
+}
+
+/** First rung from the measured ones outwards (direction −1 thinner, +1 thicker) whose centre lies beyond a limit. */
+function firstBeyond(centres: Map<number, number>, stepDecades: number, limitLog10: number, direction: 1 | -1): number {
+  const rungs = [...centres.keys()];
+  let rung = direction < 0 ? Math.min(...rungs) : Math.max(...rungs);
+  for (let guard = 0; guard < 120 && direction * (limitLog10 - centreOf(centres, stepDecades, rung)) < 0; guard++) rung += direction;
+  return rung;
+}
+
+function summarise(steps: Int8Array, current: CurrentGround, thinnest: number, thickest: number): MeasuredRung[] {
+  const log10 = current.log10.data;
+  const values = new Map<number, number[]>();
+  const pixels = new Map<number, number>();
+  for (let i = 0; i < steps.length; i++) {
+    const step = steps[i]!;
+    if (step === unknownStep) continue;
+    pixels.set(step, (pixels.get(step) ?? 0) + 1);
+    if (!values.has(step)) values.set(step, []);
+    if (current.saturated.data[i] === 0 && current.floor.data[i] === 0) values.get(step)!.push(log10[i]!);
+  }
+  return [...pixels.keys()].sort((a, b) => a - b).map((step) => {
+    const known = Float64Array.from(values.get(step)!);
+    const total = pixels.get(step)!;
+    const censored = known.length < 0.5 * total;
+    const bound = !censored ? 'exact' : step === thinnest ? 'at-most' : step === thickest ? 'at-least' : 'exact';
+    const fallback = bound === 'at-most' ? Math.log10(current.saturationA ?? Number.NaN) : Math.log10(current.floorA);
+    return {
+      step,
+      pixels: total,
+      medianLog10: censored ? fallback : median(known),
+      scatterDecades: known.length > 1 ? scaledMad(known) : 0,
+      bound,
+    };
+  });
+}

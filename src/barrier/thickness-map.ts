@@ -1,0 +1,84 @@
+/** Layers, thickness and relative density per pixel. */
+import type { Grid } from '../grid/maps.ts';
+import { pixelCount } from '../grid/maps.ts';
+import type { CurrentGround } from '../ground/ground.ts';
+import type { Anchor, Anchored } from './anchor.ts';
+import type { Rung } from './barrier.ts';
+import { densityTable } from './model/table.ts';
+import { unknownStep } from './terraces.ts';
+import type { Terraces } from './terraces.ts';
+
+interface MapQuestion {
+  readonly withinTerrace: 'contact' | 'barrier';
+  /** Log10 current of the reference terrace. */
+  readonly referenceLog10: number;
+  readonly rungs: readonly Rung[];
+  readonly anchor?: Anchor;
+  readonly anchored?: Anchored;
+  readonly deviceBiasV?: number;
+}
+
+interface ThicknessMaps {
+  readonly layers?: Uint8Array;
+  readonly thickness?: Float32Array;
+  /** Log10 of density at the device's bias over the reference's; NaN unknown. */
+  readonly log10Relative: Float32Array;
+}
+
+/**
+ * Relative density per pixel. At the scan's own bias (or when no device bias is known) it is the ratio of currents, whatever the
+ * barrier; at another bias it follows from whole layers (or, with `withinTerrace: barrier`, from the thickness of each
+ * pixel) through the model.
+ */
+export function thicknessMap(current: CurrentGround, terraces: Terraces, origin: number, grid: Grid, question: MapQuestion): ThicknessMaps {
+  const count = pixelCount(grid);
+  const { anchor, anchored, deviceBiasV, withinTerrace } = question;
+  const log10 = current.log10.data;
+  const relative = new Float32Array(count).fill(Number.NaN);
+  const layers = anchored && new Uint8Array(count);
+  const thickness = anchored && new Float32Array(count).fill(Number.NaN);
+  const sameBias = !anchor || deviceBiasV === undefined || Math.abs(anchor.acrossV(deviceBiasV) - Math.abs(anchor.scanBiasV)) < 1e-9;
+  const byStep = relativeByStep(question, sameBias);
+  const scanTable = withinTerrace === 'barrier' && anchor && anchored ? densityTable(anchor.model, anchor.material, Math.abs(anchor.scanBiasV)) : undefined;
+  const deviceTable = scanTable && !sameBias ? densityTable(anchor!.model, anchor!.material, anchor!.acrossV(deviceBiasV!)) : undefined;
+  // With a per-pixel thickness the contact's area is set so that the reference terrace has its own thickness.
+  const scanReference = scanTable && anchored ? scanTable.log10Density(anchored.thicknessM) : Number.NaN;
+  const deviceReference = deviceTable && anchored ? deviceTable.log10Density(anchored.thicknessM) : Number.NaN;
+
+  for (let i = 0; i < count; i++) {
+    const step = terraces.steps[i]!;
+    if (step === unknownStep) continue;
+    const k = step - origin;
+    if (layers && anchored) layers[i] = Math.max(1, Math.min(255, anchored.layers + k));
+    if (withinTerrace === 'contact') {
+      relative[i] = byStep(k);
+      if (thickness && anchored && anchor) thickness[i] = (anchored.layers + k) * anchor.layerM;
+      continue;
+    }
+    const difference = log10[i]! - question.referenceLog10;
+    if (!scanTable) {
+      relative[i] = difference;
+      continue;
+    }
+    const own = scanTable.thicknessM(scanReference + difference);
+    if (thickness) thickness[i] = own;
+    relative[i] = deviceTable ? deviceTable.log10Density(own) - deviceReference : difference;
+  }
+  return { ...(layers ? { layers } : {}), ...(thickness ? { thickness } : {}), log10Relative: relative };
+}
+
+/** Relative density of a whole terrace k layers from the reference. */
+function relativeByStep(question: MapQuestion, sameBias: boolean): (k: number) => number {
+  const { anchor, anchored, deviceBiasV } = question;
+  const cache = new Map<number, number>();
+  const measured = new Map(question.rungs.map((rung) => [rung.step, rung.medianLog10 - question.referenceLog10]));
+  const lnAt = (layers: number): number =>
+    anchor!.model.lnDensity({ ...anchor!.material, thicknessM: Math.max(layers, 0.5) * anchor!.layerM }, anchor!.acrossV(deviceBiasV!));
+  return (k) => {
+    const known = cache.get(k);
+    if (known !== undefined) return known;
+    const value = sameBias || !anchored ? (k === 0 ? 0 : measured.get(k) ?? Number.NaN) : (lnAt(anchored.layers + k) - lnAt(anchored.layers)) / Math.LN10;
+    cache.set(k, value);
+    return value;
+  };
+}

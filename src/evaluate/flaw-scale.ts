@@ -1,0 +1,34 @@
+import { anchorOf } from '../barrier/anchor.ts';
+import { quantifiedOverFloor } from '../barrier/terraces.ts';
+import type { FlawScale } from '../flaws/find-flaws.ts';
+import type { Ground } from '../ground/ground.ts';
+import { measureLadder } from '../ground/ladder.ts';
+import type { Recipe } from '../recipe/recipe.ts';
+
+/** Ground higher than this over its surroundings is left out of the first look at the ladder, metres. */
+const flatM = 2e-9;
+/** Without a ladder, a bias and amperes, a layer is taken to cost a decade: between what the models give at low and at high bias. */
+const assumedDecades = 1;
+
+/** What a layer is worth before flaws are known: from the map's own ladder, else the model, else a decade. */
+export function flawScale(ground: Ground, recipe: Recipe): FlawScale {
+  return {
+    layerM: recipe.barrier.layerNm * 1e-9,
+    layerDecades: layerDecades(ground, recipe),
+    shortMaxM2: recipe.band.shortMaxUm2 * 1e-12,
+    terraceMinM2: recipe.band.terraceMinUm2 * 1e-12,
+  };
+}
+
+function layerDecades(ground: Ground, recipe: Recipe): number {
+  const current = ground.current;
+  if (!current) return assumedDecades;
+  const levelled = ground.height?.levelled.data;
+  const least = Math.log10(current.floorA * quantifiedOverFloor);
+  const log10 = current.log10.data;
+  const saturated = current.saturated.data;
+  const ladder = measureLadder(log10, (i) => saturated[i] === 0 && log10[i]! >= least && !(levelled && levelled[i]! > flatM));
+  if (ladder.stepDecades !== undefined) return ladder.stepDecades;
+  const anchor = anchorOf(recipe.barrier, { offsetV: 0, targetAPerM2: 1 }, current.unit === 'A' ? current.biasV : undefined);
+  return anchor?.modelStepDecades ?? assumedDecades;
+}

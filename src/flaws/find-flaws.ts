@@ -1,0 +1,122 @@
+import { squaredDistance } from '../grid/distance.ts';
+import type { Grid } from '../grid/maps.ts';
+import { labelMap, pixelAreaM2 } from '../grid/maps.ts';
+import { labelComponents } from '../grid/label-components.ts';
+import type { Ground } from '../ground/ground.ts';
+import { notice } from '../problems/problem.ts';
+import type { Notice } from '../problems/problem.ts';
+import { classifyRaised } from './classify.ts';
+import type { Classified } from './classify.ts';
+import { findOpens, findShorts } from './find-spots.ts';
+import { findRaised } from './find-raised.ts';
+import type { Flaw, Flaws } from './flaws.ts';
+import { riseAboveGround } from './local-ground.ts';
+import { measureRegions } from './measure.ts';
+import type { Region } from './measure.ts';
+import type { FlawsSection } from './recipe.ts';
+import { splitRegions } from './split-regions.ts';
+
+/** What the flaw stage needs from other sections of the recipe, in SI. */
+export interface FlawScale {
+  /** Thickness of one layer of the barrier, metres. */
+  readonly layerM: number;
+  /** Decades of current one layer costs at the scan's bias. */
+  readonly layerDecades: number;
+  readonly shortMaxM2: number;
+  readonly terraceMinM2: number;
+}
+
+/** A conducting pit this much deeper than the thinnest barrier worth building (3 nm) less the tip's own rounding goes through it, metres. */
+const pitM = 2.6e-9;
+
+/**
+ * Flaws stage: finds and measures bubbles, residue and wrinkles (raised, with missing or lowered current), shorts and opens (seen by current
+ * alone), numbers them from 1 in the order shorts, raised, opens, and gives each a class with its reason.
+ *
+ * Height alone: raised regions only, by height. Current alone: shorts and opens only; what blocks the current is then an open spot or a thick
+ * terrace, as nothing tells it from a bubble. Pixels where a quantity is NaN take no part in what is concluded from it.
+ */
+export function findFlaws(ground: Ground, grid: Grid, section: FlawsSection, scale: FlawScale): Flaws {
+  const { columns, rows } = grid;
+  const count = columns * rows;
+  const warnings: Notice[] = [];
+  const current = ground.current;
+  const startM = section.heightNm * 1e-9;
+  const rise = ground.height && riseAboveGround(ground.height.levelled.data, columns, rows, startM);
+  const log10 = current?.log10.data;
+
+  const raised = rise && findRaised({
+    columns, rows, rise, startM,
+    ...(current && log10 ? { log10, floor: current.floor.data, saturated: current.saturated.data } : {}),
+    edgeShare: section.edgeShare, dropDecades: section.dropDecades, minPixels: section.minPixels,
+    layerDecades: scale.layerDecades, layerM: scale.layerM, noiseM: ground.height!.noiseM,
+  });
+  const raisedMask = raised?.mask ?? new Uint8Array(count);
+  if (raised && raised.conductingPixels > 0) {
+    warnings.push(notice('bumps-conduct', { areaUm2: raised.conductingPixels * pixelAreaM2(grid) * 1e12 }));
+  }
+  let shorts: Uint8Array = new Uint8Array(count);
+  let opens: Uint8Array = new Uint8Array(count);
+  if (current && log10) {
+    const input = {
+      columns, rows, log10, pixelAreaM2: pixelAreaM2(grid), saturated: current.saturated.data, floor: current.floor.data, raised: raisedMask,
+      ...(rise ? { rise } : {}), shortDecades: section.shortLayers * scale.layerDecades, layerDecades: scale.layerDecades, layerM: scale.layerM,
+      shortMaxM2: scale.shortMaxM2, terraceMinM2: scale.terraceMinM2, minPixels: section.minPixels, pitM,
+    };
+    shorts = findShorts(input);
+    const found = findOpens(input);
+    opens = found.opens;
+    for (let i = 0; i < count; i++) if (found.belongToRaised[i] === 1) raisedMask[i] = 1;
+  }
+  for (let i = 0; i < count; i++) if (shorts[i] === 1) raisedMask[i] = 0;
+
+  const labels = new Uint32Array(count);
+  const list: Flaw[] = [];
+  const shared = {
+    columns, rows, pitchXM: grid.pitchXM, pitchYM: grid.pitchYM,
+    ...(rise ? { rise } : {}), ...(current && log10 ? { log10, floor: current.floor.data } : {}), ...(raised?.drop ? { drop: raised.drop } : {}),
+  };
+  const add = (found: { labels: Uint32Array; count: number; distance2: Float32Array }, classify: (region: Region) => Classified): void => {
+    if (found.count === 0) return;
+    const offset = list.length;
+    for (const region of measureRegions({ ...shared, ...found })) list.push(flawOf(region, offset, classify(region)));
+    for (let i = 0; i < count; i++) if (found.labels[i]! > 0) labels[i] = offset + found.labels[i]!;
+  };
+  const spots = (mask: Uint8Array): { labels: Uint32Array; count: number; distance2: Float32Array } => ({
+    ...labelComponents(mask, columns, rows, 8), distance2: squaredDistance(mask, columns, rows, { pitchX: grid.pitchXM, pitchY: grid.pitchYM }),
+  });
+  add(spots(shorts), (region) => classifyShort(region, rise !== undefined));
+  add(splitRegions({ columns, rows, mask: raisedMask, pitchXM: grid.pitchXM, pitchYM: grid.pitchYM, minPixels: Math.max(6, section.minPixels) }), classifyRaised);
+  add(spots(opens), () => ({ cause: 'open', confidence: 0.8, reason: 'no current, and nothing in the height explains it: open' }));
+  return { labels: labelMap(grid, labels), list, warnings };
+}
+
+function classifyShort(region: Region, hasHeight: boolean): Classified {
+  const pit = hasHeight && region.meanM < -0.5e-9;
+  const height = !hasHeight ? '' : pit ? `, ${(-region.meanM * 1e9).toFixed(1)} nm pit` : ', no pit in the height';
+  return { cause: 'short', confidence: !hasHeight ? 0.8 : pit ? 1 : 0.7, reason: `current far above its surroundings${height}: short` };
+}
+
+function flawOf(region: Region, offset: number, classified: Classified): Flaw {
+  return {
+    flaw: offset + region.label,
+    cause: classified.cause,
+    confidence: classified.confidence,
+    reason: classified.reason,
+    xM: region.xM,
+    yM: region.yM,
+    pixels: region.pixels,
+    areaM2: region.areaM2,
+    boundaryM: region.boundaryM,
+    diameterM: region.diameterM,
+    longM: region.longM,
+    shortM: region.shortM,
+    angleDeg: region.angleDeg,
+    peakM: region.peakM,
+    meanM: region.meanM,
+    volumeM3: region.volumeM3,
+    heightToRadius: region.peakM / (region.diameterM / 2),
+    log10Current: region.log10Current,
+    touchesEdge: region.touchesEdge,
+  };
+}

@@ -1,0 +1,122 @@
+/** Spots that only the current shows: shorts (too much) and opens (none). */
+import { labelComponents } from '../grid/label-components.ts';
+import { greyOpening } from '../grid/opening.ts';
+import { dilate, nearestAdmitted } from './local-ground.ts';
+
+export interface SpotsInput {
+  readonly columns: number;
+  readonly rows: number;
+  readonly pixelAreaM2: number;
+  /** log10 current, NaN missing. */
+  readonly log10: Float32Array;
+  readonly saturated: Uint8Array;
+  readonly floor: Uint8Array;
+  /** Height above the local ground in metres; absent without a height map. */
+  readonly rise?: Float32Array;
+  /** Raised flaws found before. */
+  readonly raised: Uint8Array;
+  /** Decades of two layers (or what the recipe says) above the surroundings. */
+  readonly shortDecades: number;
+  /** Decades of one layer. */
+  readonly layerDecades: number;
+  readonly shortMaxM2: number;
+  readonly terraceMinM2: number;
+  readonly minPixels: number;
+  /** Thickness of one layer, metres. */
+  readonly layerM: number;
+  /** A pit this deep that conducts goes through the barrier, metres. */
+  readonly pitM: number;
+}
+
+/** Part of a layer's worth of current by which a spot must stand out to be a spot at all. */
+const standOut = 0.3;
+
+/**
+ * Shorts: patches up to `shortMaxM2` whose current lies `shortDecades` above the surroundings, or which saturate, or which are conducting
+ * pits through the barrier. Surroundings are the current with every bright patch narrower than the largest short removed
+ * (grey opening), raised flaws bridged from their edges. Down to one pixel.
+ *
+ * Saturation hides by how much a spot stands out. A saturated patch near a larger saturated terrace could be a piece of it, so there the
+ * height must show a pit; standing alone it needs none.
+ */
+export function findShorts(input: SpotsInput): Uint8Array {
+  const { columns, rows, log10, raised, saturated, floor, rise } = input;
+  const count = log10.length;
+  const use = new Uint8Array(count);
+  for (let i = 0; i < count; i++) use[i] = raised[i] === 1 || Number.isNaN(log10[i]!) ? 0 : 1;
+  const nearest = nearestAdmitted(use, columns, rows);
+  const filled = new Float32Array(count);
+  for (let i = 0; i < count; i++) filled[i] = nearest[i]! < 0 ? 0 : log10[nearest[i]!]!;
+  const width = openingWidth(input);
+  const surroundings = greyOpening(filled, columns, rows, width, width);
+  const nearTerrace = nearLargeSaturated(input, width);
+  const candidates = new Uint8Array(count);
+  for (let i = 0; i < count; i++) {
+    if (use[i] === 0) continue;
+    const above = log10[i]! - surroundings[i]!;
+    if (above < standOut * input.layerDecades) continue;
+    const pitM = rise ? -rise[i]! : 0;
+    if (above >= input.shortDecades) candidates[i] = 1;
+    else if (saturated[i] === 1) candidates[i] = nearTerrace[i] === 0 || pitM > 2 * input.layerM ? 1 : 0;
+    else if (pitM > input.pitM && floor[i] === 0) candidates[i] = 1;
+  }
+  const { labels, pixels } = labelComponents(candidates, columns, rows, 8);
+  for (let i = 0; i < count; i++) if (candidates[i] === 1 && pixels[labels[i]!]! * input.pixelAreaM2 > input.shortMaxM2) candidates[i] = 0;
+  return candidates;
+}
+
+/** 1 within one opening width of saturated ground larger than the largest short. */
+function nearLargeSaturated(input: SpotsInput, width: number): Uint8Array {
+  const { columns, rows, saturated } = input;
+  const { labels, pixels } = labelComponents(saturated, columns, rows, 8);
+  const large = new Uint8Array(saturated.length);
+  for (let i = 0; i < large.length; i++) large[i] = saturated[i] === 1 && pixels[labels[i]!]! * input.pixelAreaM2 > input.shortMaxM2 ? 1 : 0;
+  return dilate(large, columns, rows, width);
+}
+
+/** Width of the square that a largest short just fits into, in pixels; at least three. */
+function openingWidth(input: SpotsInput): number {
+  const across = Math.sqrt(input.shortMaxM2 / input.pixelAreaM2);
+  return Math.min(Math.max(3, 2 * Math.ceil(across / 2) + 3), input.columns, input.rows);
+}
+
+/**
+ * Opens: patches at the floor, smaller than a terrace and of at least `minPixels`, that no raised flaw explains and whose surroundings carry
+ * at least 0.8 of a layer (and half a decade) more than the floor. Floor pixels that touch a raised flaw belong to it and are
+ * returned apart.
+ */
+export function findOpens(input: SpotsInput): { opens: Uint8Array; belongToRaised: Uint8Array } {
+  const { columns, rows, log10, raised, floor } = input;
+  const candidates = new Uint8Array(log10.length);
+  const outside = new Uint8Array(log10.length);
+  for (let i = 0; i < candidates.length; i++) {
+    if (floor[i] === 1 && raised[i] === 0) candidates[i] = 1;
+    outside[i] = floor[i] === 0 && raised[i] === 0 && !Number.isNaN(log10[i]!) ? 1 : 0;
+  }
+  const nearest = nearestAdmitted(outside, columns, rows);
+  const { labels, count, pixels } = labelComponents(candidates, columns, rows, 8);
+  const sum = new Float64Array(count + 1);
+  const touches = new Uint8Array(count + 1);
+  for (let i = 0; i < labels.length; i++) {
+    const label = labels[i]!;
+    if (label === 0) continue;
+    if (nearest[i]! >= 0) sum[label]! += log10[nearest[i]!]! - log10[i]!;
+    if (touchesMask(raised, columns, rows, i)) touches[label] = 1;
+  }
+  const opens = new Uint8Array(log10.length);
+  const belongToRaised = new Uint8Array(log10.length);
+  const least = Math.max(0.5, 0.8 * input.layerDecades);
+  for (let i = 0; i < labels.length; i++) {
+    const label = labels[i]!;
+    if (label === 0 || pixels[label]! * input.pixelAreaM2 >= input.terraceMinM2 || sum[label]! / pixels[label]! < least) continue;
+    if (touches[label] === 1) belongToRaised[i] = 1;
+    else if (pixels[label]! >= input.minPixels) opens[i] = 1;
+  }
+  return { opens, belongToRaised };
+}
+
+function touchesMask(mask: Uint8Array, columns: number, rows: number, i: number): boolean {
+  const c = i % columns;
+  const r = (i - c) / columns;
+  return (c > 0 && mask[i - 1] === 1) || (c + 1 < columns && mask[i + 1] === 1) || (r > 0 && mask[i - columns] === 1) || (r + 1 < rows && mask[i + columns] === 1);
+}

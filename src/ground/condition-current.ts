@@ -1,0 +1,124 @@
+import type { Grid } from '../grid/maps.ts';
+import { maskMap, scalarMap } from '../grid/maps.ts';
+import { Problem } from '../problems/problem.ts';
+import type { Notice } from '../problems/problem.ts';
+import { notice } from '../problems/problem.ts';
+import type { Channel } from '../read/sample.ts';
+import type { ScanSection } from '../read/recipe.ts';
+import { fillFromNeighbours, markBrokenRuns } from './broken-runs.ts';
+import type { CurrentGround, HeightGround } from './ground.ts';
+import type { GroundSection } from './recipe.ts';
+import { findSaturation } from './saturation.ts';
+import { findWear, leastWearDecades } from './wear.ts';
+import { findZeroCurrent } from './zero-current.ts';
+
+/** Above this height over the ground nothing of a thin barrier's current is left, metres. */
+const blockedAboveM = 4e-9;
+/** Detection limit in standard deviations of the noise (Currie, Anal. Chem. 40, 586, 1968, one-sided 99.9 %). */
+const floorSigmas = 3;
+/** A break of log current this large in decades, in units of the run rule's six sigmas. */
+const runNoiseDecades = 0.05;
+/** Neighbours of a broken run agree when they differ by less than this, decades. */
+const agreeDecades = 0.3;
+
+/**
+ * Conditions a current map: turns it by the bias's sign, removes the offset, marks what is censored (saturated, floor), repairs broken
+ * runs of one or two lines between agreeing neighbours, and undoes tip wear as a factor per line. A current is never
+ * levelled like a height: only an offset and a factor are physical.
+ *
+ * @param channel current in A, or relative units; NaN missing.
+ * @param height levelled height of the same grid, when there is one: tall features show the reading at zero current.
+ * @throws Problem `current-saturated` when 99 % or more of the map is saturated.
+ */
+export function conditionCurrent(
+  channel: Channel, grid: Grid, height: HeightGround | undefined, section: GroundSection, scan: ScanSection, slowUp: boolean,
+): { current: CurrentGround; warnings: Notice[] } {
+  const { columns, rows } = grid;
+  const count = columns * rows;
+  const warnings: Notice[] = [];
+  const turned = channel.values.data.map((value) => value * signOf(channel, warnings));
+
+  const levelled = height?.levelled.data;
+  const zero = findZeroCurrent(turned, columns, levelled ? (i) => levelled[i]! > blockedAboveM : undefined);
+  if (zero.from === 'assumed') warnings.push(notice('current-offset-assumed', {}));
+  const saturationA = scan.saturationA ?? findSaturation(turned);
+  const saturationNet = saturationA === undefined ? Number.POSITIVE_INFINITY : saturationA * (1 - 1e-4) - zero.offset;
+  const offsetFree = turned.map((value) => value - zero.offset);
+  const floorA = scan.floorA ?? lowestFloor(floorSigmas * zero.noise, offsetFree);
+
+  const saturated = new Uint8Array(count);
+  const floor = new Uint8Array(count);
+  let log10 = new Float32Array(count);
+  let saturatedPixels = 0;
+  for (let i = 0; i < count; i++) {
+    const value = offsetFree[i]!;
+    log10[i] = Number.isNaN(value) ? Number.NaN : Math.log10(Math.min(Math.max(value, floorA), saturationNet));
+    if (value >= saturationNet) {
+      saturated[i] = 1;
+      saturatedPixels++;
+    }
+  }
+  if (saturatedPixels >= 0.99 * count) throw new Problem('current-saturated', { file: channel.source, share: saturatedPixels / count });
+
+  let repaired: Uint8Array = new Uint8Array(count);
+  if (section.repair) {
+    const marks = markBrokenRuns(log10, columns, rows, { noise: runNoiseDecades, minLength: 8 });
+    repaired = fillFromNeighbours(log10, marks, columns, rows, agreeDecades);
+    for (let i = 0; i < count; i++) if (marks[i] === 1 || repaired[i] === 1) saturated[i] = 0;
+  }
+
+  const floorLog = Math.log10(floorA);
+  const wear = findWear(log10, columns, rows, (i) => log10[i]! > floorLog && saturated[i] === 0 && !(levelled && levelled[i]! > blockedAboveM), slowUp);
+  const applied = section.wear ? wear.perRow : new Float64Array(rows);
+  const conditioned = new Float32Array(count);
+  for (let i = 0; i < count; i++) {
+    if (log10[i]! <= floorLog + 1e-6) floor[i] = 1;
+    // Censored pixels stay at their bound: a factor on a bound would invent a value.
+    const shift = floor[i] === 1 || saturated[i] === 1 ? 0 : applied[(i / columns) | 0]!;
+    const repairedValue = repaired[i] === 1 ? 10 ** log10[i]! : Number.isNaN(log10[i]!) ? Number.NaN : offsetFree[i]!;
+    conditioned[i] = shift === 0 ? repairedValue : repairedValue * 10 ** shift;
+    if (shift !== 0) log10[i] = log10[i]! + shift;
+  }
+  log10 = Float32Array.from(log10);
+  if (section.wear && wear.decades >= leastWearDecades) warnings.push(notice('current-wear', { decades: wear.decades }));
+
+  let repairedPixels = 0;
+  for (const mark of repaired) repairedPixels += mark;
+  return {
+    current: {
+      unit: channel.unit === 'A' ? 'A' : 'relative',
+      ...(channel.biasV === undefined ? {} : { biasV: channel.biasV }),
+      offsetFree: scalarMap(grid, offsetFree),
+      conditioned: scalarMap(grid, conditioned),
+      log10: scalarMap(grid, log10),
+      saturated: maskMap(grid, saturated),
+      floor: maskMap(grid, floor),
+      repaired: maskMap(grid, repaired),
+      repairedPixels,
+      offsetA: zero.offset,
+      noiseA: zero.noise,
+      floorA,
+      ...(saturationA === undefined ? {} : { saturationA: saturationA - zero.offset }),
+      saturatedPixels,
+      wearDecades: wear.decades,
+    },
+    warnings,
+  };
+}
+
+/** Sign that makes real currents positive: the bias's, or the current's own when no bias is known. */
+function signOf(channel: Channel, warnings: Notice[]): 1 | -1 {
+  if (channel.biasV !== undefined && channel.biasV !== 0) return channel.biasV < 0 ? -1 : 1;
+  let sum = 0;
+  for (const value of channel.values.data) if (!Number.isNaN(value)) sum += value;
+  if (channel.biasV === undefined && channel.unit === 'A') warnings.push(notice('bias-missing', {}));
+  return sum < 0 ? -1 : 1;
+}
+
+/** A noiseless map still needs a positive floor for its logs: the smallest positive value. */
+function lowestFloor(measured: number, values: Float32Array): number {
+  if (measured > 0) return measured;
+  let least = Number.POSITIVE_INFINITY;
+  for (const value of values) if (value > 0 && value < least) least = value;
+  return Number.isFinite(least) ? least : 1e-15;
+}

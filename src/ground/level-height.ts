@@ -1,0 +1,76 @@
+import type { Grid, ScalarMap } from '../grid/maps.ts';
+import { maskMap, scalarMap } from '../grid/maps.ts';
+import { fillFromNeighbours, markBrokenRuns } from './broken-runs.ts';
+import { lowerScatter, mostCommon } from './centre.ts';
+import { fitForm, fitGroundForm, formSurface, subSample, subStep, subtractForm } from './form.ts';
+import type { HeightGround } from './ground.ts';
+import { lineOffsets } from './lines.ts';
+import { pixelNoise } from './noise.ts';
+import type { GroundSection } from './recipe.ts';
+
+/** Shortest broken run that is repaired, pixels along the fast axis. */
+const runLength = 8;
+
+/**
+ * Levels a height map: robust form with features masked, line offsets from differences between nearby lines, repair of
+ * broken runs, and the form once more over the ground that is left.
+ *
+ * Levelled ground has its most common height at 0. A form of the section's order added to the input does not change
+ * the result (to float32 rounding). Missing pixels stay missing unless `repair` can fill them from agreeing neighbours.
+ *
+ * @param height shape [rows, columns], metres, NaN missing.
+ * @throws never for finite or missing values; a map without any finite value must be refused before.
+ */
+export function levelHeight(height: ScalarMap, grid: Grid, section: GroundSection): HeightGround {
+  const { columns, rows } = grid;
+  const raw = height.data;
+  const first = fitGroundForm(raw, columns, rows, section.order);
+  let values = first.residual;
+  const isGround = groundTest(values, columns, rows);
+  const offsets = section.lines ? lineOffsets(values, columns, rows, isGround) : new Float64Array(rows);
+  values = values.map((value, i) => value - offsets[(i / columns) | 0]!);
+
+  const noiseM = pixelNoise(values, columns, rows);
+  const repaired = section.repair ? repairHeight(values, columns, rows, noiseM) : new Uint8Array(values.length);
+
+  const groundAgain = groundTest(values, columns, rows);
+  const again = fitForm(values, columns, rows, section.order, groundAgain);
+  values = subtractForm(values, again, columns, rows);
+  const zero = mostCommon(subSample(values, columns, rows, subStep(columns, rows)));
+  values = values.map((value) => value - zero);
+
+  let repairedPixels = 0;
+  for (const mark of repaired) repairedPixels += mark;
+  return {
+    levelled: scalarMap(grid, values),
+    repaired: maskMap(grid, repaired),
+    repairedPixels,
+    noiseM: pixelNoise(values, columns, rows, groundAgain),
+    tiltM: peakToPeak(formSurface(first.form, columns, rows)),
+  };
+}
+
+/** A pixel is ground when it lies within the scatter around the most common height. */
+function groundTest(values: Float32Array, columns: number, rows: number): (index: number) => boolean {
+  const sample = subSample(values, columns, rows, subStep(columns, rows));
+  const centre = mostCommon(sample);
+  const scatter = lowerScatter(sample, centre);
+  const low = centre - 4 * scatter;
+  const high = centre + 3 * scatter;
+  return (i) => values[i]! >= low && values[i]! <= high;
+}
+
+function repairHeight(values: Float32Array, columns: number, rows: number, noise: number): Uint8Array {
+  const marks = markBrokenRuns(values, columns, rows, { noise, minLength: runLength });
+  return fillFromNeighbours(values, marks, columns, rows, Math.max(1e-9, 12 * noise));
+}
+
+function peakToPeak(surface: Float64Array): number {
+  let low = Number.POSITIVE_INFINITY;
+  let high = Number.NEGATIVE_INFINITY;
+  for (const value of surface) {
+    if (value < low) low = value;
+    if (value > high) high = value;
+  }
+  return high - low;
+}

@@ -1,0 +1,108 @@
+/** Offset and noise of a current amplifier, read from pixels that carry no current. */
+import { mostCommon } from './centre.ts';
+import { medianInPlace } from '../stats/median.ts';
+
+export interface ZeroCurrent {
+  /** Reading at zero current. */
+  readonly offset: number;
+  /** Standard deviation of the reading at zero current. */
+  readonly noise: number;
+  /** Where the offset came from: blocked spots, the noise peak, or nowhere (then 0 is assumed). */
+  readonly from: 'blocked' | 'noise peak' | 'assumed';
+}
+
+/** Least number of pixels a noise peak must be read from. */
+const leastPixels = 30;
+
+/**
+ * Finds the reading at zero current.
+ *
+ * 1. Under tall features (`blocked`) no current flows: the most common reading there is the offset.
+ * 2. Without such features, the densest readings on a linear scale are the noise peak, because scatter of a real current grows with
+ *    the current; they count only if neighbouring pixels are uncorrelated, as amplifier noise is and a terrace is not.
+ * 3. Otherwise offset 0 is assumed and the noise is what remains between neighbours on the weakest tenth.
+ *
+ * @param values current times the bias's sign, row-major, NaN missing.
+ * @param blocked whether a pixel lies under a feature too tall to carry current; absent without a height map.
+ */
+export function findZeroCurrent(values: Float32Array, columns: number, blocked?: (index: number) => boolean): ZeroCurrent {
+  if (blocked) {
+    const under = thinned(values, (i) => blocked(i));
+    if (under.length >= leastPixels) {
+      const peak = peakOf(under);
+      const below = thinned(values, (i) => values[i]! < peak.centre - 6 * peak.width);
+      // A feature that conducts is no reference: then much of the map would lie below "zero".
+      if (peak.width > 0 && below.length < 0.02 * under.length + leastPixels && isWhite(values, columns, peak, blocked)) {
+        return { offset: peak.centre, noise: peak.width, from: 'blocked' };
+      }
+    }
+  }
+  const peak = peakOf(thinned(values, () => true));
+  if (peak.count >= leastPixels && peak.width > 0 && isWhite(values, columns, peak, () => true)) {
+    return { offset: peak.centre, noise: peak.width, from: 'noise peak' };
+  }
+  return { offset: 0, noise: weakNoise(values, columns), from: 'assumed' };
+}
+
+interface Peak {
+  readonly centre: number;
+  readonly width: number;
+  readonly count: number;
+}
+
+/** Finite values of admitted pixels, thinned to at most about 100 000. */
+function thinned(values: Float32Array, use: (index: number) => boolean): Float64Array {
+  const step = Math.max(1, Math.floor(values.length / 100_000));
+  const out: number[] = [];
+  for (let i = 0; i < values.length; i += step) if (!Number.isNaN(values[i]!) && use(i)) out.push(values[i]!);
+  return Float64Array.from(out);
+}
+
+/** Densest place of a sample, its robust width from the side below, then refined by the median within three widths. */
+function peakOf(sample: Float64Array): Peak {
+  if (sample.length === 0) return { centre: Number.NaN, width: 0, count: 0 };
+  let centre = mostCommon(sample);
+  let width = 0;
+  let count = 0;
+  for (let round = 0; round < 6; round++) {
+    const below = sample.filter((v) => v <= centre).map((v) => centre - v).sort();
+    const near = below.filter((d) => width === 0 || d < 4 * width);
+    width = near.length === 0 ? 0 : 1.482602218505602 * near[near.length >> 1]!;
+    const around = sample.filter((v) => Math.abs(v - centre) < 3 * width);
+    count = around.length;
+    if (count === 0) break;
+    centre = medianInPlace(around, count);
+  }
+  return { centre, width, count };
+}
+
+/** Whether horizontal neighbours inside the peak, among admitted pixels, are uncorrelated (|r| < 0.3). */
+function isWhite(values: Float32Array, columns: number, peak: Peak, use: (index: number) => boolean): boolean {
+  let n = 0;
+  let xy = 0;
+  let xx = 0;
+  const limit = 3 * peak.width;
+  for (let i = 1; i < values.length; i++) {
+    if (i % columns === 0 || !use(i) || !use(i - 1)) continue;
+    const a = values[i - 1]! - peak.centre;
+    const b = values[i]! - peak.centre;
+    if (!(Math.abs(a) < limit && Math.abs(b) < limit)) continue;
+    n++;
+    xy += a * b;
+    xx += (a * a + b * b) / 2;
+  }
+  return n >= leastPixels && Math.abs(xy) < 0.3 * xx;
+}
+
+/** Robust noise between neighbours on the weakest tenth of the map. */
+function weakNoise(values: Float32Array, columns: number): number {
+  const sorted = thinned(values, () => true).map(Math.abs).sort();
+  const limit = sorted[Math.floor(sorted.length / 10)] ?? Number.NaN;
+  const differences: number[] = [];
+  for (let i = 1; i < values.length; i++) {
+    if (i % columns !== 0 && Math.abs(values[i]!) <= limit && Math.abs(values[i - 1]!) <= limit) differences.push(Math.abs(values[i]! - values[i - 1]!));
+  }
+  const buffer = Float64Array.from(differences);
+  const noise = (1.482602218505602 * medianInPlace(buffer, buffer.length)) / Math.SQRT2;
+  return Number.isNaN(noise) ? 0 : noise;
+}

@@ -1,0 +1,146 @@
+import ndarray from 'ndarray';
+import type { Barrier } from '../barrier/barrier.ts';
+import type { Flaws } from '../flaws/flaws.ts';
+import { labelComponents } from '../grid/label-components.ts';
+import { pixelAreaM2, scalarMap } from '../grid/maps.ts';
+import type { Ground } from '../ground/ground.ts';
+import type { Sample } from '../read/sample.ts';
+import type { Sheet } from '../sheet/sheet.ts';
+import { bookCauses, codeOf } from './book-causes.ts';
+import { glowMap } from './glow-map.ts';
+import type { Cause, Ledger, LedgerRow, Usable } from './ledger.ts';
+import { causes } from './ledger.ts';
+import { missedShorts } from './missed-shorts.ts';
+import type { BandSection } from './recipe.ts';
+import { usableHalfWidth } from './usable-interval.ts';
+import { verdictSentence } from './verdict.ts';
+
+export interface LedgerInput {
+  readonly sample: Sample;
+  readonly ground: Ground;
+  readonly flaws: Flaws;
+  readonly barrier?: Barrier | undefined;
+  readonly sheet?: Sheet | undefined;
+  readonly band: BandSection;
+  /** Area of the probe's contact, m². */
+  readonly contactAreaM2: number;
+  /** True when the emitter's or injector's voltage drop was asked for. */
+  readonly sheetAsked: boolean;
+}
+
+/**
+ * Ledger stage: books every pixel of the footprint to exactly one cause, adds up areas, and says the verdict. Areas are pixel counts times pixel area, so they add up
+ * to the footprint to the last pixel.
+ *
+ * Height alone: the ledger books raised flaws, and what is left is `flaw-free`, not usable. Current alone: flaws in height are not assessed.
+ */
+export function keepLedger(input: LedgerInput): Ledger {
+  const { sample, ground, flaws, barrier, sheet, band } = input;
+  const { grid, footprint } = sample;
+  const count = footprint.data.length;
+  const current = ground.current;
+  const measured = current ? current.log10.data : ground.height!.levelled.data;
+  const unmeasured = new Uint8Array(count);
+  for (let i = 0; i < count; i++) unmeasured[i] = Number.isNaN(measured[i]!) ? 1 : 0;
+
+  const codes = bookCauses({
+    grid, footprint: footprint.data, flawLabels: flaws.labels.data, flawCauses: [undefined, ...flaws.list.map((flaw) => flaw.cause)], unmeasured,
+    ...(barrier ? { log10Relative: barrier.log10Relative.data } : {}),
+    ...(sheet?.starved ? { starved: sheet.starved.data } : {}), ...(sheet?.unconnected ? { unconnected: sheet.unconnected.data } : {}),
+    bandFactor: band.factor, rimM: band.rimUm * 1e-6, shortRimM: band.shortRimUm * 1e-6, strayMinM2: band.strayMinUm2 * 1e-12,
+  });
+
+  const areaM2 = pixelAreaM2(grid);
+  const pixels = new Uint32Array(causes.length);
+  for (const code of codes) pixels[code]!++;
+  const footprintPixels = count - pixels[0]!;
+  const rows: LedgerRow[] = causes.slice(1).map((cause, k) => ({
+    code: k + 1, cause, pixels: pixels[k + 1]!, areaM2: pixels[k + 1]! * areaM2,
+    share: footprintPixels > 0 ? pixels[k + 1]! / footprintPixels : 0, assessed: isAssessed(cause, input),
+  }));
+
+  const usable = usableOf(input, codes, pixels[codeOf('usable')]!, footprintPixels, areaM2);
+  const repaired = current ? current.repaired.data : ground.height!.repaired.data;
+  let repairedPixels = 0;
+  for (let i = 0; i < count; i++) if (repaired[i] === 1 && footprint.data[i] === 1) repairedPixels++;
+  const shorts = flaws.list.filter((flaw) => flaw.cause === 'short' && insideFootprint(input, flaw.xM, flaw.yM)).length;
+  const seenOnM2 = (footprintPixels - pixels[codeOf('unmeasured')]! - pixels[codeOf('bubble')]! - pixels[codeOf('residue')]! - pixels[codeOf('wrinkle')]!) * areaM2;
+  return {
+    codes: ndarray(codes, [grid.rows, grid.columns]),
+    glow: scalarMap(grid, glowMap(codes, sheet?.relativeDensity.data ?? relativeOf(barrier))),
+    rows,
+    footprintM2: footprintPixels * areaM2,
+    footprintPixels,
+    repairedM2: repairedPixels * areaM2,
+    usable,
+    missedShorts: missedShorts(shorts, seenOnM2, grid, input.contactAreaM2),
+    verdict: verdictSentence({
+      usable, footprintM2: footprintPixels * areaM2, surface: sample.surface, bandFactor: band.factor, hasCurrent: current !== undefined,
+      biasV: barrier?.device?.biasV, proposed: barrier?.device?.proposed,
+      mayGlow: barrier?.device !== undefined && barrier.device.high95 >= band.minNaPerUm2 * 1e3 && barrier.device.low95 <= band.maxNaPerUm2 * 1e3,
+    }),
+    warnings: [],
+  };
+}
+
+function usableOf(input: LedgerInput, codes: Uint8Array, pixels: number, footprintPixels: number, areaM2: number): Usable {
+  const { sample, ground, barrier } = input;
+  const { columns, rows } = sample.grid;
+  const patches = labelComponents(Uint8Array.from(codes, (code) => (code === codeOf('usable') ? 1 : 0)), columns, rows, 4);
+  let largest = 0;
+  for (let n = 1; n <= patches.count; n++) largest = Math.max(largest, patches.pixels[n]!);
+  const half = usableHalfWidth({
+    grid: sample.grid, codes, pixelAreaM2: areaM2,
+    ...(barrier && ground.current
+      ? { log10: ground.current.log10.data, referenceLog10: Math.log10(barrier.reference.median), stepDecades: barrier.ladder.stepDecades, stepSeDecades: barrier.ladder.stepSeDecades }
+      : {}),
+  });
+  return {
+    areaM2: pixels * areaM2,
+    share: footprintPixels > 0 ? pixels / footprintPixels : 0,
+    low95M2: Math.max(0, pixels * areaM2 - half),
+    high95M2: Math.min(footprintPixels * areaM2, pixels * areaM2 + half),
+    largestPatchM2: largest * areaM2,
+    knownToGlow: barrier?.reference.inRange === true,
+    meaning: ground.current ? 'usable' : 'flaw-free',
+  };
+}
+
+/** Whether the input allows a cause to be told at all. */
+function isAssessed(cause: Cause, input: LedgerInput): boolean {
+  const hasHeight = input.ground.height !== undefined;
+  const hasCurrent = input.ground.current !== undefined;
+  switch (cause) {
+    case 'bubble':
+    case 'residue':
+    case 'wrinkle':
+      return hasHeight;
+    case 'short':
+    case 'open':
+    case 'thin':
+    case 'thick':
+      return hasCurrent;
+    case 'starved':
+      return input.sheet?.starved !== undefined;
+    case 'rim':
+      return input.band.rimUm > 0 || input.band.shortRimUm > 0;
+    case 'stray':
+      return input.band.strayMinUm2 > 0 || input.sheet?.unconnected !== undefined;
+    case 'usable':
+    case 'unmeasured':
+    case 'outside':
+      return true;
+  }
+}
+
+function insideFootprint(input: LedgerInput, xM: number, yM: number): boolean {
+  const { columns, rows, pitchXM, pitchYM } = input.sample.grid;
+  const c = Math.min(columns - 1, Math.max(0, Math.floor(xM / pitchXM)));
+  const r = Math.min(rows - 1, Math.max(0, rows - 1 - Math.floor(yM / pitchYM)));
+  return input.sample.footprint.data[r * columns + c] === 1;
+}
+
+/** Without a sheet stage the density is that of the barrier alone. */
+function relativeOf(barrier: Barrier | undefined): Float32Array | undefined {
+  return barrier?.log10Relative.data.map((value) => 10 ** value);
+}

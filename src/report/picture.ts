@@ -1,0 +1,139 @@
+/** Maps as small pictures: one palette entry per pixel, ready for PNG or for a canvas. */
+import { encode } from 'fast-png';
+import { appearanceByCode, isHatchInk } from './appearance.ts';
+import { base64 } from './base64.ts';
+import { cividis, cividisLength } from './cividis.ts';
+
+export interface Picture {
+  readonly width: number;
+  readonly height: number;
+  /** Row-major, row 0 at the top; an index into the palette per pixel. */
+  readonly indices: Uint8Array;
+  readonly palette: readonly (readonly [red: number, green: number, blue: number])[];
+}
+
+export interface Extent {
+  readonly columns: number;
+  readonly rows: number;
+}
+
+/** A PNG palette has 256 places: 255 levels of the colour scale and one for missing values. */
+const levels = 255;
+const missingIndex = levels;
+export const missingColour = [226, 230, 233] as const;
+const largestPicture = 1024;
+const smallestCausePicture = 640;
+
+/**
+ * Values in cividis between `low` and `high` (clipped outside), missing ones in light grey. Maps larger
+ * than 1024 pixels on a side are reduced to it: each pixel is the mean of the values present in its box.
+ */
+export function valuePicture(values: Float32Array, extent: Extent, low: number, high: number): Picture {
+  const width = Math.min(extent.columns, largestPicture);
+  const height = Math.min(extent.rows, largestPicture);
+  const indices = new Uint8Array(width * height);
+  const means = meanInBoxes(values, extent, width, height);
+  const span = high > low ? high - low : 1;
+  for (let i = 0; i < indices.length; i++) {
+    const share = ((means[i] ?? Number.NaN) - low) / span;
+    indices[i] = Number.isNaN(share) ? missingIndex : Math.round(Math.min(1, Math.max(0, share)) * (levels - 1));
+  }
+  const ramp = Array.from({ length: levels }, (_, level) => cividis(Math.round((level / (levels - 1)) * (cividisLength - 1))));
+  return { width, height, indices, palette: [...ramp, missingColour] };
+}
+
+/**
+ * Cause codes in their colours and hatches. `aspect` is the map's width over its height on the sample; the
+ * picture has that shape, its longer side between 640 and 1024 pixels whatever the map's, so that hatches
+ * keep their size. Where it is coarser than the map each pixel shows the most common cause of its box.
+ */
+export function causePicture(codes: Uint8Array, extent: Extent, aspect: number): Picture {
+  const longer = Math.min(largestPicture, Math.max(smallestCausePicture, extent.columns, extent.rows));
+  const width = Math.max(1, Math.round(aspect >= 1 ? longer : longer * aspect));
+  const height = Math.max(1, Math.round(aspect >= 1 ? longer / aspect : longer));
+  const common = modeInBoxes(codes, extent, width, height);
+  const indices = new Uint8Array(width * height);
+  for (let i = 0; i < indices.length; i++) {
+    const code = common[i] ?? 0;
+    const look = appearanceByCode[code];
+    const ink = look !== undefined && isHatchInk(look.hatch, i % width, Math.floor(i / width));
+    indices[i] = code * 2 + (ink ? 1 : 0);
+  }
+  return { width, height, indices, palette: appearanceByCode.flatMap(({ fill, ink }) => [rgb(fill), rgb(ink)]) };
+}
+
+/** A one-line picture of the colour scale, low on the left. */
+export function scalePicture(): Picture {
+  return valuePicture(Float32Array.from({ length: levels }, (_, level) => level), { columns: levels, rows: 1 }, 0, levels - 1);
+}
+
+/** Red, green, blue, alpha per pixel, opaque. */
+export function rgbaOf({ indices, palette }: Picture): Uint8ClampedArray {
+  const rgba = new Uint8ClampedArray(indices.length * 4);
+  indices.forEach((index, pixel) => rgba.set([...(palette[index] ?? missingColour), 255], pixel * 4));
+  return rgba;
+}
+
+/** The picture as an indexed-colour PNG inside a `data:` address. */
+export function pngAddress({ width, height, indices, palette }: Picture): string {
+  const png = encode(
+    { width, height, data: indices, channels: 1, depth: 8, palette: palette.map((colour) => [...colour]) },
+    { zlib: { level: 9 } },
+  );
+  return `data:image/png;base64,${base64(png)}`;
+}
+
+/** First source index of each of `count` boxes over `length` pixels, and one past the last; never empty, also when count > length. */
+function boxEdges(length: number, count: number): { from: Int32Array; to: Int32Array } {
+  const from = Int32Array.from({ length: count }, (_, box) => Math.floor((box * length) / count));
+  const to = from.map((start, box) => Math.max(start + 1, Math.floor(((box + 1) * length) / count)));
+  return { from, to };
+}
+
+function meanInBoxes(values: Float32Array, extent: Extent, width: number, height: number): Float64Array {
+  const across = boxEdges(extent.columns, width);
+  const down = boxEdges(extent.rows, height);
+  const means = new Float64Array(width * height);
+  for (let y = 0; y < height; y++) {
+    for (let x = 0; x < width; x++) {
+      let sum = 0;
+      let count = 0;
+      for (let row = down.from[y] ?? 0; row < (down.to[y] ?? 0); row++) {
+        for (let column = across.from[x] ?? 0; column < (across.to[x] ?? 0); column++) {
+          const value = values[row * extent.columns + column] ?? Number.NaN;
+          if (Number.isNaN(value)) continue;
+          sum += value;
+          count++;
+        }
+      }
+      means[y * width + x] = count > 0 ? sum / count : Number.NaN;
+    }
+  }
+  return means;
+}
+
+/** Ties go to the lower code. */
+function modeInBoxes(codes: Uint8Array, extent: Extent, width: number, height: number): Uint8Array {
+  const across = boxEdges(extent.columns, width);
+  const down = boxEdges(extent.rows, height);
+  const modes = new Uint8Array(width * height);
+  const counts = new Uint32Array(appearanceByCode.length);
+  for (let y = 0; y < height; y++) {
+    for (let x = 0; x < width; x++) {
+      counts.fill(0);
+      for (let row = down.from[y] ?? 0; row < (down.to[y] ?? 0); row++) {
+        for (let column = across.from[x] ?? 0; column < (across.to[x] ?? 0); column++) {
+          const code = codes[row * extent.columns + column] ?? 0;
+          counts[code] = (counts[code] ?? 0) + 1;
+        }
+      }
+      modes[y * width + x] = counts.indexOf(Math.max(...counts));
+    }
+  }
+  return modes;
+}
+
+function rgb(hex: string): [number, number, number] {
+  const channel = (offset: number): number => Number.parseInt(hex.slice(offset, offset + 2), 16);
+  return [channel(1), channel(3), channel(5)];
+}

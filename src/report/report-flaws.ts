@@ -1,0 +1,36 @@
+/** The report's part on flaws: how many, how dense, what the scan lines may have missed, and the largest ones. */
+import type { Flaw } from '../flaws/flaws.ts';
+import type { Appraised } from './appraised.ts';
+import { swatch } from './ledger-figure.ts';
+import { markup } from './markup.ts';
+import type { Markup } from './markup.ts';
+import { counted, figure, fixed, interval, percent, withUnit } from './numbers.ts';
+import { toNm, toUm, toUm2 } from './units.ts';
+import type { Verdict } from './verdict.ts';
+
+const shown = 100;
+
+export function flawsPart({ flaws }: Appraised, verdict: Verdict): Markup {
+  const { count, densityPerUm2: density, shorts, expectedMissedShorts } = verdict.flaws;
+  const counts = [
+    counted(count.bubble, 'bubble'), counted(count.residue, 'patch of residue', 'patches of residue'), counted(count.wrinkle, 'wrinkle'),
+    counted(count.short, 'short'), counted(count.open, 'open spot'),
+  ].join(', ');
+  // Without current no short can be seen, and the number missed is not a number either.
+  const shortsLine = Number.isFinite(shorts.crossedShare)
+    ? markup`<p>Scan lines cross about ${percent(shorts.crossedShare)} of point shorts: ${shorts.seen} seen, about ${figure(expectedMissedShorts, 2)} more expected. Density of shorts ${withUnit(shorts.densityPerUm2.estimate, '/µm²', 2)} (95 %: ${interval(shorts.densityPerUm2.low95, shorts.densityPerUm2.high95, '/µm²', 2)}).</p>`
+    : markup`<p>Shorts cannot be seen without a current map.</p>`;
+  return markup`<section><h2>Flaws</h2>
+<p>${counts}: ${withUnit(density.estimate, '/µm²')} (95 %: ${interval(density.low95, density.high95, '/µm²')}, exact Poisson).</p>
+${shortsLine}
+${flaws.list.length > 0 ? flawTable(flaws.list) : undefined}</section>`;
+}
+
+/** Largest first; equal areas in the order of their numbers. */
+function flawTable(list: readonly Flaw[]): Markup {
+  const sorted = [...list].sort((a, b) => b.areaM2 - a.areaM2 || a.flaw - b.flaw);
+  const rows = sorted.slice(0, shown).map((flaw) => markup`<tr><td class="n">${flaw.flaw}</td><td>${swatch(flaw.cause)}${flaw.cause}</td><td class="n">${figure(toUm2(flaw.areaM2))}</td><td class="n">${fixed(toUm(flaw.xM), 2)}</td><td class="n">${fixed(toUm(flaw.yM), 2)}</td><td class="n">${figure(toNm(flaw.peakM))}</td><td class="n">${figure(flaw.heightToRadius, 2)}</td><td>${flaw.reason}</td><td class="n">${fixed(flaw.confidence, 2)}</td></tr>`);
+  const more = sorted.length - shown;
+  return markup`<table><thead><tr><th class="n">no.</th><th>cause</th><th class="n">area, µm²</th><th class="n">x, µm</th><th class="n">y, µm</th><th class="n">peak, nm</th><th class="n">h/R</th><th>reason</th><th class="n">confidence</th></tr></thead><tbody>${rows}</tbody></table>
+${more > 0 ? markup`<p class="note">The ${shown} largest; ${more} more are in flaws.csv.</p>` : undefined}`;
+}

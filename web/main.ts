@@ -1,0 +1,2 @@
+/** Entry of the page: defines its elements. */
+import './welcome.ts';
