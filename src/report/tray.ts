@@ -5,6 +5,7 @@ import type { App, Appraised } from './appraised.ts';
 import { writeCsv } from './csv.ts';
 import type { Cell } from './csv.ts';
 import { verdictOf } from './verdict.ts';
+import type { Verdict } from './verdict.ts';
 
 /**
  * Groups are ranked apart, because their areas do not mean the same: ground whose reference is known to
@@ -50,7 +51,11 @@ export function isFailed(row: TrayRow): row is FailedRow {
 
 /** The row of an appraised sample; `folder` is where its results lie, relative to the tray's files. */
 export function trayRow(appraised: Appraised, app: App, folder?: string): GoodRow {
-  const { sample, verdict, usable, ledger, reference, device, flaws, warnings, recipe } = verdictOf(appraised, app);
+  return rowFromVerdict(verdictOf(appraised, app), folder);
+}
+
+/** The same from a verdict that was written before. */
+export function rowFromVerdict({ sample, verdict, usable, ledger, reference, device, flaws, warnings, recipe }: Verdict, folder?: string): GoodRow {
   const required = recipe.plan.requiredUm2;
   return {
     sample,

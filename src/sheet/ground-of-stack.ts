@@ -3,7 +3,8 @@ import { maskMap, pixelCount } from '../grid/maps.ts';
 import type { MaskMap } from '../grid/maps.ts';
 import { notice } from '../problems/problem.ts';
 import type { Notice } from '../problems/problem.ts';
-import { rasterise } from './rasterise-temp.ts';
+import { layerMask } from '../read/footprint.ts';
+import type { OutlineLayer } from '../read/sample.ts';
 import { groundOfSheet } from './ground-of-sheet.ts';
 import type { SheetGround } from './ground-of-sheet.ts';
 import type { SheetInput } from './sheet-input.ts';
@@ -40,14 +41,14 @@ export function groundOfStack(input: SheetInput): StackGround {
 }
 
 function sheetGround(input: SheetInput, sheet: 'emitter' | 'injector', warnings: Notice[]): SheetGround {
-  const { grid, footprint } = input;
+  const { grid, footprint, outlines } = input;
   const sheetOhm = sheet === 'emitter' ? input.emitterSheetOhm : input.injectorSheetOhm;
-  const own = input.outlines.filter((outline) => outline.layer === sheet);
-  const contacts = input.outlines.filter((outline) => outline.layer === `contact-${sheet}`);
+  const contact = `contact-${sheet}` as const;
+  const has = (layer: OutlineLayer) => outlines.some((outline) => outline.layer === layer);
   const ground = groundOfSheet(
     grid,
-    own.length > 0 ? rasterise(grid, own).data : footprint.data,
-    contacts.length > 0 ? rasterise(grid, contacts).data : undefined,
+    has(sheet) ? layerMask(grid, outlines, sheet).data : footprint.data,
+    has(contact) ? layerMask(grid, outlines, contact).data : undefined,
   );
   if (!ground.drawn && (sheetOhm ?? 0) > 0) warnings.push(notice('sheet-fed-all-round', { sheet }));
   if (ground.drawn && !ground.reached.includes(1)) warnings.push(notice('sheet-contact-apart', { sheet }));

@@ -12,7 +12,7 @@ const read = (...features: unknown[]) => readOutlines({ name: 'S.outlines.geojso
 
 /** 6 × 5 pixels of 1 µm. */
 const grid = { columns: 6, rows: 5, pitchXM: 1e-6, pitchYM: 1e-6 };
-const drawn = (mask: { data: Uint8Array }) => Array.from({ length: 5 }, (_, r) => [...mask.data.slice(6 * r, 6 * r + 6)].map((v) => (v ? '#' : '.')).join(''));
+const drawn = (mask: { data: Uint8Array }) => Array.from({ length: 5 }, (_, r) => [...mask.data.subarray(6 * r, 6 * r + 6)].map((v) => (v ? '#' : '.')).join(''));
 
 test('y is up: a box at the lower left fills the last rows', () => {
   const [outline] = read(feature('barrier', [box(0, 0, 2, 1)]));

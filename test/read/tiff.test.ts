@@ -184,9 +184,9 @@ test('byte counts that overstate a strip are clamped, ones that understate it ar
 test('GDAL’s missing value and orientation are applied', async () => {
   const [missing] = await read(floatTiff(5, 4, values, { 42113: { type: 'ascii', text: '-8.75' } }));
   assert.ok(Number.isNaN(missing!.values[0]));
-  assert.deepEqual([...missing!.values.slice(1)], values.slice(1));
+  assert.deepEqual([...missing!.values.subarray(1)], values.slice(1));
   const [flipped] = await read(floatTiff(5, 4, values, { 274: short(4) }));
-  assert.deepEqual([...flipped!.values.slice(0, 5)], values.slice(15));
+  assert.deepEqual([...flipped!.values.subarray(0, 5)], values.slice(15));
   const [turned] = await read(floatTiff(5, 4, values, { 274: short(3) }));
   assert.deepEqual([...turned!.values], [...values].reverse());
   assert.match((await refused(floatTiff(5, 4, values, { 274: short(6) }))).message, /on its side/);

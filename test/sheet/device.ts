@@ -13,7 +13,7 @@ export function createGrid(columns: number, rows: number, pitchXUm = 1, pitchYUm
 export function createBox(grid: Grid, layer: OutlineLayer, left: number, top: number, right: number, bottom: number): Outline {
   const x = (column: number) => column * grid.pitchXM;
   const y = (row: number) => (grid.rows - row) * grid.pitchYM;
-  return { layer, rings: [[[x(left), y(bottom)], [x(right), y(bottom)], [x(right), y(top)], [x(left), y(top)]]] };
+  return { layer, rings: [[[x(left), y(bottom)], [x(right), y(bottom)], [x(right), y(top)], [x(left), y(top)], [x(left), y(bottom)]]] };
 }
 
 /** Mask from a picture: `#` is 1. */
