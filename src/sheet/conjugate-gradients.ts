@@ -21,7 +21,8 @@ export interface LinearSolve {
   readonly decrease: number;
 }
 
-const maxIterations = 400;
+/** A Newton step that needs more is better taken inexactly and followed by another. */
+const maxIterations = 100;
 
 /**
  * Solves (network + slopes)·step = residual on level `from` until the residual has shrunk by

@@ -35,8 +35,9 @@ interface Balance {
 const coldPixels = 1024;
 const maxSteps = 200;
 const maxHalvings = 40;
-/** Steps in a row without gain before giving up. */
-const patience = 10;
+/** Steps in a row without gain, and conjugate-gradient steps on one grid, before giving up. Usual are none and 30. */
+const patience = 4;
+const maxIterations = 1000;
 
 /**
  * Finds the drops a (sheet 0) and b (sheet 1) with L_a·a = J(V − a − b) and L_b·b = J(V − a − b), the
@@ -76,7 +77,7 @@ function settleLevel(levels: readonly Level[], from: number, drops: Drops, curve
   let iterations = 0;
   let steps = 0;
   let stalled = 0;
-  while (residual > goal * current && steps < maxSteps && stalled < patience) {
+  while (residual > goal * current && steps < maxSteps && iterations < maxIterations && stalled < patience) {
     spreadSlopes(levels, from);
     const before = residual;
     const solved = conjugateGradients(levels, from, work, Math.max(forcing, (0.3 * goal * current) / residual));

@@ -42,7 +42,7 @@ function randomMask(columns: number, rows: number, seed: string): Uint8Array {
 }
 
 test('OpenCV’s connectedComponentsWithStats parts the mask the same way; its distanceTransform agrees', async () => {
-  const cv = await loadOpenCv();
+  const { cv } = await loadOpenCv();
   const columns = 190;
   const rows = 133;
   for (const seed of ['one', 'two', 'three']) {
@@ -90,12 +90,13 @@ interface OpenCv {
   onRuntimeInitialized?: () => void;
 }
 
-async function loadOpenCv(): Promise<OpenCv> {
+/** Wrapped in an object: the module has a `then` of its own, which an await would follow for ever. */
+async function loadOpenCv(): Promise<{ cv: OpenCv }> {
   const cv = createRequire(import.meta.url)('@techstark/opencv-js') as OpenCv;
   if (typeof cv.Mat !== 'function') {
     await new Promise<void>((resolve) => {
       cv.onRuntimeInitialized = resolve;
     });
   }
-  return cv;
+  return { cv };
 }
