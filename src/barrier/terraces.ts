@@ -110,27 +110,39 @@ function firstBeyond(centres: Map<number, number>, stepDecades: number, limitLog
 
 function summarise(steps: Int8Array, current: CurrentGround, thinnest: number, thickest: number): MeasuredRung[] {
   const log10 = current.log10.data;
-  const values = new Map<number, number[]>();
-  const pixels = new Map<number, number>();
+  const saturated = current.saturated.data;
+  const floor = current.floor.data;
+  // Counted first, so that each terrace's values go into an array of the right size; index 0 is step −128, which is no place.
+  const pixels = new Uint32Array(256);
+  const measured = new Uint32Array(256);
   for (let i = 0; i < steps.length; i++) {
-    const step = steps[i]!;
-    if (step === unknownStep) continue;
-    pixels.set(step, (pixels.get(step) ?? 0) + 1);
-    if (!values.has(step)) values.set(step, []);
-    if (current.saturated.data[i] === 0 && current.floor.data[i] === 0) values.get(step)!.push(log10[i]!);
+    const place = steps[i]! + 128;
+    pixels[place]!++;
+    if (saturated[i] === 0 && floor[i] === 0) measured[place]!++;
   }
-  return [...pixels.keys()].sort((a, b) => a - b).map((step) => {
-    const known = Float64Array.from(values.get(step)!);
-    const total = pixels.get(step)!;
+  pixels[0] = 0;
+  const values = Array.from(pixels, (total, place) => (total > 0 ? new Float64Array(measured[place]!) : undefined));
+  const used = new Uint32Array(256);
+  for (let i = 0; i < steps.length; i++) {
+    const place = steps[i]! + 128;
+    if (saturated[i] === 0 && floor[i] === 0) {
+      const list = values[place];
+      if (list) list[used[place]!++] = log10[i]!;
+    }
+  }
+  return values.flatMap((known, place) => {
+    if (!known) return [];
+    const step = place - 128;
+    const total = pixels[place]!;
     const censored = known.length < 0.5 * total;
     const bound = !censored ? 'exact' : step === thinnest ? 'at-most' : step === thickest ? 'at-least' : 'exact';
     const fallback = bound === 'at-most' ? Math.log10(current.saturationA ?? Number.NaN) : Math.log10(current.floorA);
-    return {
+    return [{
       step,
       pixels: total,
       medianLog10: censored ? fallback : median(known),
       scatterDecades: known.length > 1 ? scaledMad(known) : 0,
       bound,
-    };
+    } satisfies MeasuredRung];
   });
 }

@@ -70,6 +70,7 @@ function nearLargeSaturated(input: SpotsInput, width: number): Uint8Array {
   const { columns, rows, saturated } = input;
   const { labels, pixels } = labelComponents(saturated, columns, rows, 8);
   const large = new Uint8Array(saturated.length);
+  if (!pixels.some((size, n) => n > 0 && size * input.pixelAreaM2 > input.shortMaxM2)) return large;
   for (let i = 0; i < large.length; i++) large[i] = saturated[i] === 1 && pixels[labels[i]!]! * input.pixelAreaM2 > input.shortMaxM2 ? 1 : 0;
   return dilate(large, columns, rows, width);
 }

@@ -41,6 +41,7 @@ export function splitRegions(input: SplitInput): { labels: Uint32Array; count: n
   }
   for (let i = 0; i < core.length; i++) if (core[i] === 1 && widest[cores.labels[i]!]! < wider) core[i] = 0;
 
+  if (!core.includes(1)) return { labels: whole.labels, count: whole.count, distance2 };
   const part = growBack(input, core, whole.labels, halfWidth);
   return { ...relabel(input, part), distance2 };
 }
@@ -84,11 +85,13 @@ function isCrest(before: number, here: number, after: number): boolean {
 /** Numbers the grown cores from 1; 0 elsewhere. A pixel belongs to a core of its own component within `cutAt` half-widths. */
 function growBack(input: SplitInput, core: Uint8Array, labels: Uint32Array, halfWidth: Float64Array): Uint8Array {
   const { columns, rows, pitchXM, pitchYM } = input;
-  const away = squaredDistance(Uint8Array.from(core, (value) => 1 - value), columns, rows, { pitchX: pitchXM, pitchY: pitchYM });
+  const away = squaredDistance(core.map((value) => 1 - value), columns, rows, { pitchX: pitchXM, pitchY: pitchYM });
   const part = new Uint8Array(core.length);
   for (let i = 0; i < part.length; i++) {
-    const w = halfWidth[labels[i]!]!;
-    if (labels[i]! > 0 && w > 0 && away[i]! <= (cutAt * w) ** 2) part[i] = 1;
+    const label = labels[i]!;
+    if (label === 0) continue;
+    const reach = cutAt * halfWidth[label]!;
+    if (reach > 0 && away[i]! <= reach * reach) part[i] = 1;
   }
   return part;
 }

@@ -68,7 +68,7 @@ export function bookCauses(input: BookingInput): Uint8Array {
   if (input.rimM > 0) bookNear(codes, footprint, grid, input.rimM, true);
   if (input.shortRimM > 0) {
     const short = codeOf('short');
-    bookNear(codes, Uint8Array.from(codes, (code) => (code === short ? 0 : 1)), grid, input.shortRimM, false);
+    bookNear(codes, codes.map((code) => (code === short ? 0 : 1)), grid, input.shortRimM, false);
   }
   bookStray(codes, input, pixelAreaM2(grid));
   return codes;
@@ -89,6 +89,6 @@ function bookStray(codes: Uint8Array, input: BookingInput, areaM2: number): void
   const stray = codeOf('stray');
   if (input.unconnected) for (let i = 0; i < codes.length; i++) if (codes[i] === usable && input.unconnected[i] === 1) codes[i] = stray;
   if (!(input.strayMinM2 > 0)) return;
-  const { labels, pixels } = labelComponents(Uint8Array.from(codes, (code) => (code === usable ? 1 : 0)), input.grid.columns, input.grid.rows, 4);
+  const { labels, pixels } = labelComponents(codes.map((code) => (code === usable ? 1 : 0)), input.grid.columns, input.grid.rows, 4);
   for (let i = 0; i < codes.length; i++) if (labels[i]! > 0 && pixels[labels[i]!]! * areaM2 < input.strayMinM2) codes[i] = stray;
 }

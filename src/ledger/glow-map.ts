@@ -1,5 +1,7 @@
 import { median } from '../stats/median.ts';
 import { codeOf } from './book-causes.ts';
+import type { Cause } from './ledger.ts';
+import { causes } from './ledger.ts';
 
 /**
  * Relative emission per pixel: proportional to the density, 1 at the median of usable ground, 0 under bubbles, shorts, residue and open spots; NaN under wrinkles
@@ -9,14 +11,19 @@ import { codeOf } from './book-causes.ts';
  */
 export function glowMap(codes: Uint8Array, density: Float32Array | undefined): Float32Array {
   const usable = codeOf('usable');
-  const dark = new Set([codeOf('bubble'), codeOf('short'), codeOf('residue'), codeOf('open')]);
-  const unknown = new Set([codeOf('wrinkle'), codeOf('unmeasured'), codeOf('outside')]);
+  const dark = flagsOf(['bubble', 'short', 'residue', 'open']);
+  const unknown = flagsOf(['wrinkle', 'unmeasured', 'outside']);
   const norm = density ? median(density.filter((value, i) => codes[i] === usable && !Number.isNaN(value))) : Number.NaN;
   const glow = new Float32Array(codes.length).fill(Number.NaN);
   for (let i = 0; i < glow.length; i++) {
     const code = codes[i]!;
-    if (dark.has(code)) glow[i] = 0;
-    else if (!unknown.has(code) && density) glow[i] = density[i]! / (norm > 0 ? norm : 1);
+    if (dark[code] === 1) glow[i] = 0;
+    else if (unknown[code] === 0 && density) glow[i] = density[i]! / (norm > 0 ? norm : 1);
   }
   return glow;
+}
+
+/** One flag per code. */
+function flagsOf(named: readonly Cause[]): Uint8Array {
+  return Uint8Array.from(causes, (cause) => (named.includes(cause) ? 1 : 0));
 }

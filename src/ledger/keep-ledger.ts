@@ -86,7 +86,8 @@ export function keepLedger(input: LedgerInput): Ledger {
 function usableOf(input: LedgerInput, codes: Uint8Array, pixels: number, footprintPixels: number, areaM2: number): Usable {
   const { sample, ground, barrier } = input;
   const { columns, rows } = sample.grid;
-  const patches = labelComponents(Uint8Array.from(codes, (code) => (code === codeOf('usable') ? 1 : 0)), columns, rows, 4);
+  const usableCode = codeOf('usable');
+  const patches = labelComponents(codes.map((code) => (code === usableCode ? 1 : 0)), columns, rows, 4);
   let largest = 0;
   for (let n = 1; n <= patches.count; n++) largest = Math.max(largest, patches.pixels[n]!);
   const half = usableHalfWidth({

@@ -95,3 +95,17 @@ test('a contact edge of 10 kΩ·µm over 6 µm adds 1667 Ω in series [F]', () =
   const sheet = assessSheet({ ...strip(10, 50, 3, 6), emitterSheetOhm: 1e-3, contactOhmUm: 1e4, device });
   assert.ok(relativeError(V / sheet.totals!.deviceCurrentA!, 1e4 / 6 + 1 / (1e7 * 60e-12)) < 1e-6);
 });
+
+// [F] A slanted edge counts with its true length √2·n·h, not with the 2·n·h of its pixel sides.
+test('a contact edge at 45° counts with its length', () => {
+  const n = 64;
+  const grid = createGrid(n, n, 0.1);
+  const footprint = maskMap(grid);
+  for (let p = 0; p < footprint.data.length; p++) footprint.data[p] = (p % n) + (n - 1 - Math.floor(p / n)) >= n ? 1 : 0;
+  const side = n * grid.pitchXM + 1e-9;
+  const outlines = [{ layer: 'contact-emitter' as const, rings: [[[0, 0], [side, 0], [0, side], [0, 0]] as const] }];
+  const device = { biasV: V, densityAPerM2: (v: number) => 1e14 * v };
+  const sheet = assessSheet({ ...createInput(grid), footprint, outlines, emitterSheetOhm: 1, contactOhmUm: 1e6, device });
+  const length = Math.SQRT2 * n * grid.pitchXM * 1e6;
+  assert.ok(relativeError(sheet.totals!.deviceCurrentA!, (V * length) / 1e6) < 0.02);
+});

@@ -69,7 +69,7 @@ function compare(input: SheetInput, dense: number[], footprint: Uint8Array): voi
 }
 
 for (const [name, picture] of Object.entries(shapes)) {
-  for (const [sheets, emitterSheetOhm, injectorSheetOhm, contactOhmUm] of [['emitter', 3e6, 0, 0], ['injector', 0, 3e7, 1e7], ['both', 3e6, 1e6, 2e6]] as const) {
+  for (const [sheets, emitterSheetOhm, injectorSheetOhm, contactOhmUm] of [['emitter', 1e8, 0, 0], ['injector', 0, 1e8, 1e8], ['both', 1e8, 3e7, 5e7]] as const) {
     test(`${name}, ${sheets} resisting: as the dense solution, on pitches 1 × 0.5 µm`, () => {
       const grid = createGrid(10, 7, 1, 0.5);
       const footprint = createMask(picture);
@@ -96,11 +96,11 @@ test('each step may follow its own curve, scaled to its ratio', () => {
   const densityAPerM2 = (step: number, v: number) => tunnelDensity(3000)(v) * Math.exp(step * (1 - v)) * Math.max(0, v) ** (step + 1);
   const reference = (v: number) => densityAPerM2(0, v);
   const full = (step: number) => densityAPerM2(step, 4);
-  const dense = denseLocalBias(grid, [{ sheetOhm: 1e5, ground: footprint, metal: createMask(leftMetal) }], Array.from(log10, (value) => 10 ** value),
+  const dense = denseLocalBias(grid, [{ sheetOhm: 1e7, ground: footprint, metal: createMask(leftMetal) }], Array.from(log10, (value) => 10 ** value),
     (p, v) => (densityAPerM2(steps[p]!, v) / full(steps[p]!)) * full(0), 4, 0);
   const outlines: Outline[] = [createBox(grid, 'contact-emitter', 0, 0, 1, 7)];
   compare({
-    ...createInput(grid), log10Relative: scalarMap(grid, log10), outlines, emitterSheetOhm: 1e5,
+    ...createInput(grid), log10Relative: scalarMap(grid, log10), outlines, emitterSheetOhm: 1e7,
     device: { biasV: 4, densityAPerM2: reference }, steps: { map: ndarray(steps, [7, 10]), densityAPerM2 },
   }, dense, footprint);
 });

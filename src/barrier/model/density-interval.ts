@@ -14,6 +14,10 @@
  *   conditioned on the observation: var − cov²/(var_probe + σ_area²). A precise area pins the
  *   probe's density; a vague one leaves the prior of height and mass.
  * - Thickness known and no current: height and mass alone.
+ *
+ * First order is enough: medians and ends lie within 5 % of the interval's width of a Monte Carlo
+ * with the same spreads (tested). With WKB and Fowler–Nordheim, and thickness from the current, the
+ * mass drops out: their J depends on m·d² alone.
  */
 import { defaultThicknessRange, thicknessFromLnDensity } from './inverse.ts';
 import type { ThicknessRange } from './inverse.ts';

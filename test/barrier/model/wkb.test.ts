@@ -2,7 +2,6 @@ import assert from 'node:assert/strict';
 import { test } from 'node:test';
 import { fowlerNordheimModel } from '../../../src/barrier/model/fowler-nordheim.ts';
 import { wkbModel } from '../../../src/barrier/model/wkb.ts';
-import { assertClose } from '../../fixtures/assert-close.ts';
 
 // [F] ln J (A/m²) of the formula in wkb.ts by mpmath 30-digit tanh–sinh quadrature in depth, split at V−φ and V.
 const integrated: readonly (readonly [heightEv: number, massRatio: number, thicknessNm: number, biasV: number, lnDensity: number])[] = [
