@@ -8,8 +8,8 @@ export interface Command {
 }
 
 const commands: readonly Command[] = [
-  { line: 'npx evenglow demo samples', does: 'writes the demo samples into the folder “samples”' },
-  { line: 'npx evenglow appraise samples --out results', does: 'appraises every scan in it and writes ledgers, maps and a report' },
+  { line: 'npx evenglow appraise scans --out results', does: 'appraises every scan in the folder “scans” and writes ledgers, maps and a report' },
+  { line: 'npx evenglow --help', does: 'lists all commands' },
 ];
 
 export class WelcomeElement extends LitElement {

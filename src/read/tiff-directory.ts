@@ -113,6 +113,7 @@ export function tiffPages(file: InputFile): TiffPage[] {
   const littleEndian = bytes[0] === 0x49;
   const big = bytes[2] === 43 || bytes[3] === 43;
   need(big ? 16 : 8, 'the header');
+  if (big && view.getUint16(4, littleEndian) !== 8) throw new Problem('tiff-damaged', { file: name, place: 'the header', reason: 'its offsets are not of 8 bytes' });
   const pointer = (at: number) => (big ? Number(view.getBigUint64(at, littleEndian)) : view.getUint32(at, littleEndian));
   const [countSize, entrySize, inline] = big ? [8, 20, 8] : [2, 12, 4];
 

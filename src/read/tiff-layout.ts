@@ -5,6 +5,7 @@ import type { InputFile } from './input.ts';
 import type { NumberKind } from './numeric.ts';
 import { tags } from './tiff-directory.ts';
 import type { TiffPage } from './tiff-directory.ts';
+import { packedLength, packedLimit } from './tiff-packed.ts';
 
 /** One strip or tile: where its bytes lie and which pixels they hold. */
 export interface TiffBlock {
@@ -13,8 +14,6 @@ export interface TiffBlock {
   readonly length: number;
   readonly firstRow: number;
   readonly firstColumn: number;
-  /** Rows stored in the block (a tile stores them all, even beyond the map's edge). */
-  readonly storedRows: number;
 }
 
 export interface TiffLayout {
@@ -24,7 +23,9 @@ export interface TiffLayout {
   readonly size: number;
   readonly compression: number;
   readonly predictor: number;
+  readonly tiled: boolean;
   readonly blockColumns: number;
+  readonly blockRows: number;
   readonly blocks: readonly TiffBlock[];
 }
 
@@ -63,8 +64,8 @@ export function tiffLayout(file: InputFile, page: TiffPage): TiffLayout {
   if (!(blockColumns >= 1 && blockRows >= 1)) throw new Problem('tiff-damaged', { file: name, place, reason: 'its strips or tiles have no size' });
   checkSize(name, Math.max(blockColumns, 4), Math.max(blockRows, 4));
 
-  const blocks = blockList(file, page, { columns, rows, blockColumns, blockRows, size, ratio, tiled });
-  return { columns, rows, kind, size, compression, predictor, blockColumns, blocks };
+  const blocks = blockList(file, page, { columns, rows, blockColumns, blockRows, size, compression, ratio, tiled });
+  return { columns, rows, kind, size, compression, predictor, tiled, blockColumns, blockRows, blocks };
 }
 
 function refusePictures(file: string, page: TiffPage): void {
@@ -80,7 +81,7 @@ function refusePictures(file: string, page: TiffPage): void {
 
 interface Tiling {
   readonly columns: number; readonly rows: number; readonly blockColumns: number; readonly blockRows: number;
-  readonly size: number; readonly ratio: number; readonly tiled: boolean;
+  readonly size: number; readonly compression: number; readonly ratio: number; readonly tiled: boolean;
 }
 
 function blockList(file: InputFile, page: TiffPage, t: Tiling): TiffBlock[] {
@@ -96,17 +97,18 @@ function blockList(file: InputFile, page: TiffPage, t: Tiling): TiffBlock[] {
   const counts = page.numbers(countTag);
   const blocks: TiffBlock[] = [];
   const present = file.bytes.length;
+  const whole = t.blockRows * t.blockColumns * t.size;
   let stored = 0;
   let needed = 0;
   for (let i = 0; i < across * down; i++) {
     const firstRow = Math.floor(i / across) * t.blockRows;
-    const storedRows = t.tiled ? t.blockRows : Math.min(t.blockRows, t.rows - firstRow);
-    const full = storedRows * t.blockColumns * t.size;
+    // A tile stores all its rows, even beyond the map's edge; the last strip only those of the map.
+    const full = (t.tiled ? t.blockRows : Math.min(t.blockRows, t.rows - firstRow)) * t.blockColumns * t.size;
     const offset = offsets[i]!;
     const stated = counts[i];
     const leftOut = offset === 0 && (stated ?? 0) === 0;
     // Files in the wild overstate the count of uncompressed strips; what the pixels need is what counts.
-    const wanted = t.ratio === 1 ? full : Math.min(stated ?? Infinity, 2 * full + 65536);
+    const wanted = t.ratio === 1 ? full : Math.min(stated ?? Infinity, 2 * whole + 65536);
     const length = leftOut ? 0 : Math.max(0, Math.min(wanted, present - offset));
     if (!leftOut && t.ratio === 1 && stated !== undefined && stated < full) {
       throw new Problem('tiff-damaged', { file: file.name, place, reason: `it gives a block ${stated} bytes where its pixels need ${full}` });
@@ -116,12 +118,26 @@ function blockList(file: InputFile, page: TiffPage, t: Tiling): TiffBlock[] {
     }
     stored += length;
     needed += leftOut ? 0 : full;
-    blocks.push({ offset, length, firstRow, firstColumn: (i % across) * t.blockColumns, storedRows });
+    blocks.push({ offset, length, firstRow, firstColumn: (i % across) * t.blockColumns });
   }
   // Many blocks may point at the same bytes to claim more pixels than the file can hold.
   if (needed > Math.min(stored, present) * t.ratio) {
     throw new Problem('file-truncated', { file: file.name, place: `the data of ${place}`, needed: Math.ceil(needed / t.ratio), present });
   }
   if (needed === 0) throw new Problem('channel-missing', { file: file.name });
-  return blocks;
+  return t.compression === 5 || t.compression === 32773 ? walkedBlocks(file, place, blocks, t) : blocks;
+}
+
+/** The same blocks, each cut to the bytes that its pixels need. */
+function walkedBlocks(file: InputFile, place: string, blocks: readonly TiffBlock[], t: Tiling): TiffBlock[] {
+  const damaged = (reason: string) => new Problem('tiff-damaged', { file: file.name, place, reason });
+  const whole = t.blockRows * t.blockColumns * t.size;
+  if (whole > packedLimit) throw damaged(`a block of ${whole} bytes is too large for compression ${t.compression} (at most ${packedLimit})`);
+  return blocks.map((block) => {
+    if (block.length === 0) return block;
+    const full = t.tiled ? whole : Math.min(whole, (t.rows - block.firstRow) * t.blockColumns * t.size);
+    const length = packedLength(file.bytes.subarray(block.offset, block.offset + block.length), t.compression, full, whole + 65536);
+    if (length === undefined) throw damaged('its compressed data are damaged or end too early');
+    return { ...block, length };
+  });
 }

@@ -61,7 +61,7 @@ function joinTerminal(level: Level, field: SheetField, terminal: Uint8Array, con
       const sidesY = terminal[i - width]! + terminal[i + width]!;
       if (sidesX + sidesY === 0) continue;
       // A slanted edge is a staircase of pixel sides. In a pixel at a step the edge is the diagonal, not both sides.
-      const share = sidesX > 0 && sidesY > 0 ? 1 : 1;
+      const share = sidesX > 0 && sidesY > 0 ? Math.hypot(pitchXM, pitchYM) / (pitchXM + pitchYM) : 1;
       if (sidesX > 0) feedX[i] = sidesX / (halfX + contactM / (pitchYM * share));
       if (sidesY > 0) feedY[i] = sidesY / (halfY + contactM / (pitchXM * share));
     }

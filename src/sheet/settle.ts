@@ -8,7 +8,7 @@ import type { TunnelCurve } from './tunnel-curve.ts';
 
 export interface Settled {
   /** Drop between terminal and pixel in volts per sheet, one ringed array after the other. */
-  readonly drops: Float64Array;
+  readonly drops: Drops;
   readonly converged: boolean;
   /** 2-norm of what flows into pixels and not out of them, over that of the tunnel currents. */
   readonly residual: number;
@@ -21,9 +21,15 @@ export interface Settled {
  * Drops as unevaluated sums high + low. A well conducting sheet behind a poor contact carries a large
  * even drop whose tiny differences are the whole current: one double would round them away.
  */
-interface Drops {
+export interface Drops {
   readonly high: Float64Array;
   readonly low: Float64Array;
+}
+
+/** Bias left across the element in pixel `i`; `second` is the offset of the second sheet's drops, 0 without one. */
+export function localBias({ high, low }: Drops, biasV: number, i: number, second: number): number {
+  const left = biasV - high[i]! - low[i]!;
+  return second === 0 ? left : left - high[second + i]! - low[second + i]!;
 }
 
 interface Balance {
@@ -88,7 +94,7 @@ function settleLevel(levels: readonly Level[], from: number, drops: Drops, curve
     stalled = residual > 0.99 * before ? stalled + 1 : 0;
   }
   const relative = current > 0 ? residual / current : 0;
-  return { drops: drops.high, converged: relative <= goal, residual: relative, steps, iterations };
+  return { drops, converged: relative <= goal, residual: relative, steps, iterations };
 }
 
 /** Takes the step, halved until the energy's slope along it is no longer steeply upwards. */
@@ -130,7 +136,7 @@ function balance(level: Level, drops: Drops, curves: readonly TunnelCurve[], res
     const full = source[i]!;
     if (full === 0) continue;
     const tunnel = curves[curve[i]!]!;
-    tunnel.at(tunnel.biasV - high[i]! - (both ? high[size + i]! : 0));
+    tunnel.at(localBias(drops, tunnel.biasV, i, both ? size : 0));
     const flow = full * tunnel.density;
     const slope = full * tunnel.slope;
     current += flow * flow;

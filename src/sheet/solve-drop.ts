@@ -6,7 +6,7 @@ import { curvesOf } from './elements.ts';
 import type { Elements } from './elements.ts';
 import type { StackGround } from './ground-of-stack.ts';
 import type { Level } from './network.ts';
-import { settle } from './settle.ts';
+import { localBias, settle } from './settle.ts';
 import type { SheetInput } from './sheet-input.ts';
 
 export interface Drop {
@@ -56,14 +56,14 @@ export function solveDrop(input: SheetInput, stack: StackGround, elements: Eleme
     if (stack.live[p] !== 1) continue;
     const i = ringedIndex(grid.columns, p);
     const curve = curves[numbers[p]!]!;
-    localBiasV[p] = biasV - settled.drops[i]! - (sheets.length === 2 ? settled.drops[level.size + i]! : 0);
+    localBiasV[p] = localBias(settled.drops, biasV, i, sheets.length === 2 ? level.size : 0);
     curve.at(localBiasV[p]!);
     factor[p] = curve.density;
     const flow = level.source[i]! * curve.density;
     current += flow;
     if (input.shorts?.mask.data[p] === 1) shortCurrent += flow;
   }
-  const imbalance = current > 0 ? Math.max(...sheets.map((_, f) => Math.abs(terminalCurrent(level, f, settled.drops, factor) / current - 1))) : 0;
+  const imbalance = current > 0 ? Math.max(...sheets.map((_, f) => Math.abs(terminalCurrent(level, f, settled.drops.high, factor) / current - 1))) : 0;
   return {
     converged: settled.converged && imbalance <= maxImbalance,
     residual: Math.max(settled.residual, imbalance),

@@ -70,7 +70,7 @@ describe('the checker notices', () => {
       'workers/a.worker.ts': `import 'comlink'; import './compute.ts';`,
       'workers/client.ts': `import 'comlink'; import type { B } from './api.ts'; new Worker(new URL('./a.worker.ts', import.meta.url));`,
       'web/main.ts': `import { html } from 'lit'; import 'lit/directives/map.js'; import '../workers/client.ts'; import './look.css';`,
-      'test/grid/maps.test.ts': `import 'node:test'; import '../../src/grid/maps.ts';`,
+      'test/grid/maps.test.ts': `import 'node:test'; import '../../src/grid/maps.ts'; new URL(name + '.png', import.meta.url);`,
     }, []],
     ['a base folder that imports a stage', { 'src/grid/a.ts': `import '../read/b.ts';` },
       ['src/grid/a.ts imports src/read/b.ts: a base folder imports only problems, schema, grid, stats']],

@@ -96,7 +96,7 @@ test('a contact edge of 10 kΩ·µm over 6 µm adds 1667 Ω in series [F]', () =
   assert.ok(relativeError(V / sheet.totals!.deviceCurrentA!, 1e4 / 6 + 1 / (1e7 * 60e-12)) < 1e-6);
 });
 
-// [F] A slanted edge counts with its true length √2·n·h, not with the 2·n·h of its pixel sides.
+// [F] A slanted edge counts with its true length √2·n·h (less half a pixel at each end), not with the 2·n·h of its pixel sides.
 test('a contact edge at 45° counts with its length', () => {
   const n = 64;
   const grid = createGrid(n, n, 0.1);

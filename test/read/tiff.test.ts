@@ -1,11 +1,10 @@
 import assert from 'node:assert/strict';
 import { deflateSync } from 'node:zlib';
 import { test } from 'node:test';
-import { fromArrayBuffer, getDecoder } from 'geotiff';
+import { fromArrayBuffer } from 'geotiff';
 import { Problem } from '../../src/problems/problem.ts';
 import { decodeMaps } from '../../src/read/decode.ts';
-import { decodeLzw } from '../../src/read/tiff-lzw.ts';
-import { float32Bytes, floatTiff, mapTags, writeTiff } from './write-tiff.ts';
+import { differences, encodeLzw, encodePackBits, float32Bytes, floatDifferences, floatTiff, mapTags, packCodes, writeTiff } from './write-tiff.ts';
 import type { TagValue } from './write-tiff.ts';
 
 const short = (value: number): TagValue => ({ type: 'short', values: [value] });
@@ -29,55 +28,30 @@ async function refused(bytes: Uint8Array): Promise<Problem> {
   assert.fail('it was read');
 }
 
-/** Horizontal differences of 32-bit words per row, as predictor 2 stores them. */
-function differences(columns: number, words: Uint32Array): Uint8Array {
-  const out = words.slice();
-  for (let i = 0; i < out.length; i++) if (i % columns !== 0) out[i] = words[i]! - words[i - 1]!;
-  return new Uint8Array(out.buffer);
-}
-
-/** Predictor 3: byte planes, most significant first, then byte differences per row. */
-function floatDifferences(columns: number, source: readonly number[]): Uint8Array {
-  const out: number[] = [];
-  for (let start = 0; start < source.length; start += columns) {
-    const big = float32Bytes(source.slice(start, start + columns), true);
-    const planes = [0, 1, 2, 3].flatMap((b) => Array.from({ length: columns }, (_, i) => big[4 * i + b]!));
-    planes.forEach((byte, i) => out.push((byte - (i === 0 ? 0 : planes[i - 1]!)) & 255));
+// First in the file: once a process has read five kinds of numbers, geotiff's inner loop takes about three times as long.
+test('a map of 1024 × 1024 floats reads in under 60 ms', async () => {
+  const block = new Uint8Array(4 << 20);
+  // Built by hand: the test's writer works byte by byte.
+  const head = floatTiff(4, 4, Array(16).fill(1));
+  const at = new DataView(head.buffer).getUint32(4, true);
+  const bytes = new Uint8Array(head.length + block.length);
+  bytes.set(head);
+  const view = new DataView(bytes.buffer);
+  const edit: Record<number, number> = { 256: 1024, 257: 1024, 278: 1024, 273: head.length, 279: block.length };
+  for (let i = 0; i < view.getUint16(at, true); i++) {
+    const entry = at + 2 + 12 * i;
+    const value = edit[view.getUint16(entry, true)];
+    if (value !== undefined) view.setUint32(entry + 8, value, true);
   }
-  return Uint8Array.from(out);
-}
-
-/** LZW encoder after TIFF 6.0, section 13. */
-function encodeLzw(input: Uint8Array): Uint8Array {
-  const out: number[] = [];
-  let bits = 0;
-  let held = 0;
-  let width = 9;
-  let next = 258;
-  let table = new Map<string, number>();
-  const emit = (code: number) => {
-    bits = (bits << width) | code;
-    held += width;
-    while (held >= 8) { held -= 8; out.push((bits >> held) & 255); }
-    bits &= (1 << held) - 1;
-  };
-  const codeOf = (text: string) => (text.length === 1 ? text.charCodeAt(0) : table.get(text));
-  emit(256);
-  let text = '';
-  for (const byte of input) {
-    const longer = text + String.fromCharCode(byte);
-    if (codeOf(longer) !== undefined) { text = longer; continue; }
-    emit(codeOf(text)!);
-    table.set(longer, next++);
-    text = String.fromCharCode(byte);
-    if (next === 512 || next === 1024 || next === 2048) width++;
-    if (next === 4095) { emit(256); table = new Map(); next = 258; width = 9; }
+  new Float32Array(bytes.buffer, Math.ceil(head.length / 4) * 4, 1000).fill(2.5);
+  let best = Infinity;
+  for (let run = 0; run < 5; run++) {
+    const start = performance.now();
+    await read(bytes);
+    best = Math.min(best, performance.now() - start);
   }
-  if (text !== '') { emit(codeOf(text)!); if (next + 1 === 512 || next + 1 === 1024 || next + 1 === 2048) width++; }
-  emit(257);
-  if (held > 0) out.push((bits << (8 - held)) & 255);
-  return Uint8Array.from(out);
-}
+  assert.ok(best < 60, `${best.toFixed(1)} ms`);
+});
 
 test('plain floats in both byte orders and as BigTIFF are read exactly', async () => {
   for (const bigEndian of [false, true]) {
@@ -100,60 +74,132 @@ test('strips of unequal height and tiles beyond the edge are put together', asyn
   assert.deepEqual([...tiled!.values], values);
 });
 
-test('deflate and LZW with all predictors give the same values, and geotiff agrees', async () => {
+test('deflate, LZW and PackBits with all predictors give the same values', async () => {
   const plain = float32Bytes(values);
   const horizontal = differences(5, new Uint32Array(plain.buffer));
   const floating = floatDifferences(5, values);
-  for (const [compression, pack] of [[8, deflateSync], [32946, deflateSync], [5, encodeLzw]] as const) {
+  for (const [compression, pack] of [[8, deflateSync], [32946, deflateSync], [5, encodeLzw], [32773, encodePackBits]] as const) {
     for (const [predictor, stored] of [[1, plain], [2, horizontal], [3, floating]] as const) {
       const block = new Uint8Array(pack(stored));
       const bytes = writeTiff([{ tags: mapTags(5, 4, 32, 3, { 259: short(compression), 317: short(predictor) }), blocks: [block] }]);
       const [map] = await read(bytes);
       assert.deepEqual([...map!.values], values, `compression ${compression}, predictor ${predictor}`);
-      const image = await (await fromArrayBuffer(bytes.slice().buffer)).getImage();
-      const [band] = await image.readRasters() as unknown as [Float32Array];
-      assert.deepEqual([...band], values, `geotiff, compression ${compression}, predictor ${predictor}`);
     }
   }
 });
 
-test('predictors in a big-endian file are undone in its own byte order', async () => {
+/** The first page as geotiff alone reads it. */
+async function geotiffAlone(bytes: Uint8Array): Promise<number[]> {
+  const image = await (await fromArrayBuffer(bytes.slice().buffer)).getImage();
+  return [...(await image.readRasters({ interleave: false }))[0]!];
+}
+
+test('predictors in a big-endian file are right, where geotiff alone is wrong', async () => {
   const words = new Uint32Array(float32Bytes(values).buffer);
   const horizontal = differences(5, words);
   for (let i = 0; i < horizontal.length; i += 4) horizontal.subarray(i, i + 4).reverse();
   for (const [predictor, stored] of [[2, horizontal], [3, floatDifferences(5, values)]] as const) {
-    const page = { tags: mapTags(5, 4, 32, 3, { 259: short(8), 317: short(predictor) }), blocks: [new Uint8Array(deflateSync(stored))] };
-    const [map] = await read(writeTiff([page], { bigEndian: true }));
-    assert.deepEqual([...map!.values], values);
+    const bytes = writeTiff([{ tags: mapTags(5, 4, 32, 3, { 259: short(8), 317: short(predictor) }), blocks: [new Uint8Array(deflateSync(stored))] }], { bigEndian: true });
+    assert.deepEqual([...(await read(bytes))[0]!.values], values, `predictor ${predictor}`);
+    // When a newer geotiff makes this fail, the correction in tiff-values.ts can go.
+    assert.notDeepEqual(await geotiffAlone(bytes), values, `predictor ${predictor}`);
   }
 });
 
-test('LZW survives table resets, agrees with geotiff and stops at the expected length', async () => {
+test('predictor 2 in big-endian tiles starts anew in each tile, with signs', async () => {
+  const numbers = Array.from({ length: 20 }, (_, i) => (i * 7919) % 4001 - 2000);
+  const tile = (c0: number) => {
+    const view = new DataView(new ArrayBuffer(32));
+    const at = (i: number) => (c0 + (i % 4) < 5 ? numbers[Math.floor(i / 4) * 5 + c0 + (i % 4)]! : 0);
+    for (let i = 0; i < 16; i++) view.setInt16(2 * i, i % 4 === 0 ? at(i) : at(i) - at(i - 1));
+    return new Uint8Array(deflateSync(new Uint8Array(view.buffer)));
+  };
+  const { 278: _, ...tags } = mapTags(5, 4, 16, 2, { 259: short(8), 317: short(2), 322: long(4), 323: long(4) });
+  const [map] = await read(writeTiff([{ tags, blocks: [tile(0), tile(4)], tiled: true }], { bigEndian: true }));
+  assert.deepEqual([...map!.values], numbers);
+});
+
+test('a big-endian file of very many strips is right, where geotiff alone is wrong', async () => {
+  const rows = 600;
+  const numbers = Array.from({ length: 4 * rows }, (_, i) => i / 8);
+  const blocks = Array.from({ length: rows }, (_, r) => float32Bytes(numbers.slice(4 * r, 4 * r + 4), true));
+  const bytes = writeTiff([{ tags: mapTags(4, rows, 32, 3, { 278: long(1) }), blocks }], { bigEndian: true });
+  assert.deepEqual([...(await read(bytes))[0]!.values], numbers);
+  // It reads the lists of strips, kept away from the directory, low byte first. Without this, they need not be passed to it.
+  const other = await geotiffAlone(bytes).catch(() => undefined);
+  assert.notDeepEqual(other, numbers);
+});
+
+test('LZW survives table resets, junk after its end and a missing end code', async () => {
   let state = 1;
   const input = Uint8Array.from({ length: 60_000 }, () => { state = (state * 48271) % 2147483647; return state & 15; });
   const packed = encodeLzw(input);
-  assert.deepEqual(decodeLzw(packed, input.length), input);
-  const other = await getDecoder(5, { tileWidth: 0, tileHeight: 0, predictor: 1, bitsPerSample: [8], planarConfiguration: 1 });
-  assert.deepEqual(new Uint8Array(await other.decodeBlock(packed.slice().buffer)), input);
-  assert.deepEqual(decodeLzw(packed, 1001), input.slice(0, 1001));
-  assert.equal(decodeLzw(packed, 70_000)!.length, 60_000);
-  assert.equal(decodeLzw(Uint8Array.of(0x80, 0x7f, 0xff, 0xff), 10), undefined);
+  const tags = mapTags(300, 200, 8, 1, { 259: short(5) });
+  const junk = Uint8Array.from([...packed, ...Array(5000).fill(0xff)]);
+  for (const block of [packed, junk]) assert.deepEqual(Uint8Array.from((await read(writeTiff([{ tags, blocks: [block] }])))[0]!.values), input);
+  const endless = writeTiff([{ tags: mapTags(4, 4, 8, 1, { 259: short(5) }), blocks: [packCodes([256, ...Array<number>(16).fill(3)])] }]);
+  assert.deepEqual([...(await read(endless))[0]!.values], Array<number>(16).fill(3));
 });
 
-test('large deflate blocks go through the platform’s stream and give the same values', async () => {
+test('LZW blocks that would run away in geotiff are refused', async () => {
+  const block = (side: number, ...codes: number[]) => writeTiff([{ tags: mapTags(side, side, 8, 1, { 259: short(5) }), blocks: [packCodes(codes)] }]);
+  const cases: Record<string, Uint8Array> = {
+    // 3838 ones fill the table and the map; from code 4093 geotiff would never come back.
+    'a code without room': block(60, 256, ...Array<number>(3838).fill(1), 4093, 257),
+    // Each code is one byte longer than the one before: 5 kB stand for 7 MB where the pixels need 60 kB.
+    'a swelling block': block(245, 256, 1, ...Array.from({ length: 3800 }, (_, i) => 258 + i), 257),
+    'a code not yet defined': block(4, 256, ...Array<number>(20).fill(1), 300, 257),
+    'no first string': block(4, 256, 258, ...Array<number>(20).fill(1), 257),
+    'an early end': block(60, 256, ...Array<number>(200).fill(1), 257),
+  };
+  for (const [name, bytes] of Object.entries(cases)) assert.match((await refused(bytes)).message, /compressed data are damaged/, name);
+  // The same table, full, without that code.
+  const [map] = await read(block(60, 256, ...Array<number>(3838).fill(1), 4092, 257));
+  assert.ok(map!.values.every((value) => value === 1));
+  const { 278: _, ...large } = mapTags(10_000, 10_000, 8, 1, { 259: short(5) });
+  assert.match((await refused(writeTiff([{ tags: large, blocks: [new Uint8Array(40_000)] }]))).message, /100000000 bytes is too large for compression 5/);
+});
+
+test('PackBits blocks are cut where their pixels end, damaged ones refused', async () => {
+  const tags = mapTags(5, 4, 8, 1, { 259: short(32773) });
+  const block = (...bytes: number[]) => writeTiff([{ tags, blocks: [Uint8Array.from(bytes)] }]);
+  const [map] = await read(block(2, 10, 11, 12, 256 - 16, 7, 0x81, 9, 0x81, 9));
+  assert.deepEqual([...map!.values], [10, 11, 12, ...Array<number>(17).fill(7)]);
+  for (const bytes of [[2, 10, 11, 12], [0x80, 1, 0x80, 1], [127, 1, 2, 3]]) assert.match((await refused(block(...bytes))).message, /compressed data are damaged/);
+});
+
+test('a deflate block that swells far beyond its pixels costs no more than they do', async () => {
+  const swollen = new Uint8Array(deflateSync(new Uint8Array(64 << 20)));
+  const before = process.memoryUsage().arrayBuffers;
+  const [map] = await read(writeTiff([{ tags: mapTags(100, 100, 32, 3, { 259: short(8) }), blocks: [swollen] }]));
+  assert.ok(map!.values.every((value) => value === 0));
+  const grown = process.memoryUsage().arrayBuffers - before;
+  assert.ok(grown < 16 << 20, `${grown} bytes`);
+});
+
+test('blocks that the file leaves out are missing, in strips and tiles', async () => {
+  const { 278: _, ...tags } = mapTags(6, 8, 32, 3, { 322: long(4), 323: long(4), 324: long(8, 0, 72, 0), 325: long(64, 0, 64, 0) });
+  const bytes = writeTiff([{ tags, blocks: [float32Bytes(Array<number>(16).fill(1)), float32Bytes(Array<number>(16).fill(2))], tiled: true }]);
+  const [map] = await read(bytes);
+  const row = (v: number) => [v, v, v, v, Number.NaN, Number.NaN];
+  assert.deepEqual([...map!.values], [1, 1, 1, 1, 2, 2, 2, 2].flatMap(row));
+});
+
+test('large deflate blocks are read, also with junk after them, and refused when cut', async () => {
   const columns = 256;
   const rows = 256;
   let state = 7;
   const noise = Array.from({ length: columns * rows }, () => { state = (state * 48271) % 2147483647; return Math.fround(state / 2147483647); });
   const block = new Uint8Array(deflateSync(float32Bytes(noise)));
-  assert.ok(block.length > 65536, 'long enough for the stream');
   // Junk after the stream, as files with an overstated count have, is no damage.
   const padded = new Uint8Array(block.length + 100);
   padded.set(block);
   const tags = mapTags(columns, rows, 32, 3, { 259: short(8) });
   for (const stored of [block, padded]) assert.deepEqual([...(await read(writeTiff([{ tags, blocks: [stored] }])))[0]!.values], noise);
-  const cut = await refused(writeTiff([{ tags, blocks: [block.slice(0, 70_000)] }]));
-  assert.ok(['tiff-damaged', 'file-truncated'].includes(cut.code), cut.code);
+  assert.match((await refused(writeTiff([{ tags, blocks: [block.slice(0, 70_000)] }]))).message, /damaged or end too early/);
+  const broken = block.slice();
+  broken.fill(0xff, 1000, 2000);
+  assert.match((await refused(writeTiff([{ tags, blocks: [broken] }]))).message, /damaged or end too early/);
 });
 
 test('integers of every width and sign are exact', async () => {
@@ -163,7 +209,8 @@ test('integers of every width and sign are exact', async () => {
     [16, 2, (view, i, v) => view.setInt16(2 * i, v, true), [-32768, 32767]],
     [32, 1, (view, i, v) => view.setUint32(4 * i, v, true), [0, 4294967295]],
     [32, 2, (view, i, v) => view.setInt32(4 * i, v, true), [-2147483648, 2147483647]],
-    [64, 2, (view, i, v) => view.setBigInt64(8 * i, BigInt(v), true), [-9007199254740991, 9007199254740991]],
+    [64, 1, (view, i, v) => view.setBigUint64(8 * i, BigInt(v), true), [0, 9007199254740991]],
+    [64, 2, (view, i, v) => view.setBigInt64(8 * i, BigInt(v), true), [-9007199254740991, 9007199254740991, -1, -4294967296]],
   ];
   for (const [bits, format, set, ends] of cases) {
     const numbers = Array.from({ length: 16 }, (_, i) => ends[i] ?? i);
@@ -171,6 +218,11 @@ test('integers of every width and sign are exact', async () => {
     numbers.forEach((v, i) => set(view, i, v));
     const [map] = await read(writeTiff([{ tags: mapTags(4, 4, bits, format), blocks: [new Uint8Array(view.buffer)] }]));
     assert.deepEqual([...map!.values], numbers, `${bits} bits, format ${format}`);
+    const size = bits / 8;
+    const turned = new Uint8Array(view.buffer.slice(0));
+    for (let at = 0; at < turned.length; at += size) turned.subarray(at, at + size).reverse();
+    const [other] = await read(writeTiff([{ tags: mapTags(4, 4, bits, format), blocks: [turned] }], { bigEndian: true }));
+    assert.deepEqual([...other!.values], numbers, `${bits} bits, format ${format}, big-endian`);
   }
 });
 
@@ -255,28 +307,4 @@ test('pages, their names and what they state; previews are left out', async () =
   assert.deepEqual(maps[3]!.pitches, [{ by: 'resolution', xM: 1e-8, yM: 2e-8 }]);
   // 300 dots per inch are 85 µm: the resolution of a picture, not of a scan.
   assert.deepEqual(maps[4]!.pitches, []);
-});
-
-test('a map of 1024 × 1024 floats reads in well under 150 ms', async () => {
-  const block = new Uint8Array(4 << 20);
-  // Built by hand: the test's writer works byte by byte.
-  const head = floatTiff(4, 4, Array(16).fill(1));
-  const at = new DataView(head.buffer).getUint32(4, true);
-  const bytes = new Uint8Array(head.length + block.length);
-  bytes.set(head);
-  const view = new DataView(bytes.buffer);
-  const edit: Record<number, number> = { 256: 1024, 257: 1024, 278: 1024, 273: head.length, 279: block.length };
-  for (let i = 0; i < view.getUint16(at, true); i++) {
-    const entry = at + 2 + 12 * i;
-    const value = edit[view.getUint16(entry, true)];
-    if (value !== undefined) view.setUint32(entry + 8, value, true);
-  }
-  new Float32Array(bytes.buffer, Math.ceil(head.length / 4) * 4, 1000).fill(2.5);
-  let best = Infinity;
-  for (let run = 0; run < 5; run++) {
-    const start = performance.now();
-    await read(bytes);
-    best = Math.min(best, performance.now() - start);
-  }
-  assert.ok(best < 150, `${best.toFixed(1)} ms`);
 });

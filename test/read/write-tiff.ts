@@ -1,4 +1,4 @@
-/** Writes small TIFFs for tests: any byte order, BigTIFF, strips or tiles, compressions by the caller. */
+/** Writes small TIFFs for tests: any byte order, BigTIFF, strips or tiles; packs their blocks as LZW or PackBits, with differences. */
 
 export type TagValue = { type: 'ascii'; text: string } | { type: 'short' | 'long' | 'double' | 'rational'; values: readonly number[] };
 
@@ -103,4 +103,81 @@ export function float32Bytes(values: readonly number[], bigEndian = false): Uint
 /** A float32 map in one strip. */
 export function floatTiff(columns: number, rows: number, values: readonly number[], more: Readonly<Record<number, TagValue>> = {}): Uint8Array {
   return writeTiff([{ tags: mapTags(columns, rows, 32, 3, more), blocks: [float32Bytes(values)] }]);
+}
+
+/** Horizontal differences of 32-bit words per row, as predictor 2 stores them. */
+export function differences(columns: number, words: Uint32Array): Uint8Array {
+  const out = words.slice();
+  for (let i = 0; i < out.length; i++) if (i % columns !== 0) out[i] = words[i]! - words[i - 1]!;
+  return new Uint8Array(out.buffer);
+}
+
+/** Predictor 3: byte planes, most significant first, then byte differences per row. */
+export function floatDifferences(columns: number, source: readonly number[]): Uint8Array {
+  const out: number[] = [];
+  for (let start = 0; start < source.length; start += columns) {
+    const big = float32Bytes(source.slice(start, start + columns), true);
+    const planes = [0, 1, 2, 3].flatMap((b) => Array.from({ length: columns }, (_, i) => big[4 * i + b]!));
+    planes.forEach((byte, i) => out.push((byte - (i === 0 ? 0 : planes[i - 1]!)) & 255));
+  }
+  return Uint8Array.from(out);
+}
+
+/** LZW encoder after TIFF 6.0, section 13. */
+export function encodeLzw(input: Uint8Array): Uint8Array {
+  const out: number[] = [];
+  let bits = 0;
+  let held = 0;
+  let width = 9;
+  let next = 258;
+  let table = new Map<string, number>();
+  const emit = (code: number) => {
+    bits = (bits << width) | code;
+    held += width;
+    while (held >= 8) { held -= 8; out.push((bits >> held) & 255); }
+    bits &= (1 << held) - 1;
+  };
+  const codeOf = (text: string) => (text.length === 1 ? text.charCodeAt(0) : table.get(text));
+  emit(256);
+  let text = '';
+  for (const byte of input) {
+    const longer = text + String.fromCharCode(byte);
+    if (codeOf(longer) !== undefined) { text = longer; continue; }
+    emit(codeOf(text)!);
+    table.set(longer, next++);
+    text = String.fromCharCode(byte);
+    if (next === 512 || next === 1024 || next === 2048) width++;
+    if (next === 4095) { emit(256); table = new Map(); next = 258; width = 9; }
+  }
+  if (text !== '') { emit(codeOf(text)!); if (next + 1 === 512 || next + 1 === 1024 || next + 1 === 2048) width++; }
+  emit(257);
+  if (held > 0) out.push((bits << (8 - held)) & 255);
+  return Uint8Array.from(out);
+}
+
+/** LZW codes as they are, with the widths a decoder expects. */
+export function packCodes(codes: readonly number[]): Uint8Array {
+  let text = '';
+  let next = 258;
+  for (const code of codes) {
+    const width = next + 1 >= 4096 ? 12 : Math.max(9, Math.floor(Math.log2(next + 1)) + 1);
+    text += code.toString(2).padStart(width, '0');
+    if (code === 256) next = 257;
+    else if (next < 4095) next++;
+  }
+  const bytes = text.match(/.{1,8}/g) ?? [];
+  return Uint8Array.from(bytes, (byte) => Number.parseInt(byte.padEnd(8, '0'), 2));
+}
+
+/** PackBits after TIFF 6.0, section 9: literal runs, and runs of equal bytes. */
+export function encodePackBits(input: Uint8Array): Uint8Array {
+  const out: number[] = [];
+  for (let at = 0; at < input.length;) {
+    let run = 1;
+    while (run < 128 && input[at + run] === input[at]) run++;
+    if (run > 1) out.push(257 - run, input[at]!);
+    else out.push(0, input[at]!);
+    at += run;
+  }
+  return Uint8Array.from(out);
 }

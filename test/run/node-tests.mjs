@@ -9,7 +9,7 @@ import { describeFailure } from './failure.mjs';
 import { noTotals } from './totals.mjs';
 
 const processes = 2;
-const fileLimitMs = 15 * 60 * 1000;
+const fileLimitMs = 5 * 60 * 1000;
 const slowMs = 5000;
 
 const root = fileURLToPath(new URL('../../', import.meta.url));

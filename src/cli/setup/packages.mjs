@@ -1,7 +1,7 @@
 /** Installs the packages that package-lock.json names, when they are not there yet. Plain Node, no packages. */
 import { spawnSync } from 'node:child_process';
 import { createHash } from 'node:crypto';
-import { chmodSync, existsSync, mkdirSync, readFileSync, rmSync, symlinkSync, writeFileSync } from 'node:fs';
+import { existsSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { SetUpError } from './set-up-error.mjs';
@@ -23,7 +23,6 @@ export function ensurePackages(root, say) {
     if (packagesAreThere(root)) return;
     say('Installing packages (once, about half a minute) …');
     runNpm(root);
-    linkCommand(root);
     writeStamp(root);
   } finally {
     release();
@@ -38,7 +37,6 @@ export function ensurePackages(root, say) {
 export function packagesAreThere(root) {
   if (readOr(join(root, 'node_modules/.evenglow-stamp'), '') === stampOf(root)) return true;
   if (!lockIsInstalled(readOr(join(root, 'package-lock.json'), ''), readOr(join(root, 'node_modules/.package-lock.json'), ''))) return false;
-  linkCommand(root);
   writeStamp(root);
   return true;
 }
@@ -93,24 +91,6 @@ function npmEnvironment() {
     delete env[`npm_config_${name}`];
   }
   return env;
-}
-
-/**
- * Puts the command where `npx evenglow` looks first. Without it npx works too, more slowly, through
- * a link in its own cache; so a file system without links is no failure.
- * @param {string} root
- */
-function linkCommand(root) {
-  if (process.platform === 'win32') return;
-  const link = join(root, 'node_modules/.bin/evenglow');
-  try {
-    mkdirSync(join(root, 'node_modules/.bin'), { recursive: true });
-    rmSync(link, { force: true });
-    symlinkSync('../../src/cli/evenglow.mjs', link);
-    chmodSync(join(root, 'src/cli/evenglow.mjs'), 0o755);
-  } catch {
-    rmSync(link, { force: true });
-  }
 }
 
 /**
