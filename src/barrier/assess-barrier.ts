@@ -79,6 +79,7 @@ export function assessBarrier(
     bound: candidate.bound,
   }));
   if (choice) warnings.push(...referenceNotices(choice, candidates, origin, device), ...ladderNotices(terraces, anchor?.modelStepDecades));
+  if (!amperes) warnings.push(notice(current.unit === 'A' ? 'bias-missing' : 'current-relative', {}));
   if (surface === 'stack') warnings.push(notice('barrier-stack-surface', {}));
 
   const maps = thicknessMap(current, terraces, origin, grid, {

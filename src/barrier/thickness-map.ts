@@ -50,12 +50,13 @@ export function thicknessMap(current: CurrentGround, terraces: Terraces, origin:
     if (step === unknownStep) continue;
     const k = step - origin;
     if (layers && anchored) layers[i] = Math.max(1, Math.min(255, anchored.layers + k));
-    if (withinTerrace === 'contact') {
+    const difference = log10[i]! - question.referenceLog10;
+    // Without a ladder there are no whole layers to go by: then every pixel speaks for itself.
+    if (withinTerrace === 'contact' && terraces.from !== 'assumed') {
       relative[i] = byStep(k);
       if (thickness && anchored && anchor) thickness[i] = (anchored.layers + k) * anchor.layerM;
       continue;
     }
-    const difference = log10[i]! - question.referenceLog10;
     if (!scanTable) {
       relative[i] = difference;
       continue;

@@ -7,7 +7,7 @@ import type { Recipe } from '../recipe/recipe.ts';
 import { failedTrayRow, isFailed } from '../report/tray.ts';
 import type { TrayRow } from '../report/tray.ts';
 import { thisApp } from './app.ts';
-import type { AppraiseResult, AppraiseTask } from './appraise-one.ts';
+import type { AppraiseResult, AppraiseTask } from './appraise-task.ts';
 import type { Command, Parsed } from './command.ts';
 import { exitCodes, numberOption } from './command.ts';
 import { folderNames } from './folder-names.ts';

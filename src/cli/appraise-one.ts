@@ -4,40 +4,13 @@ import { join } from 'node:path';
 import { evaluate } from '../evaluate/evaluate.ts';
 import { Problem } from '../problems/problem.ts';
 import { filesOf } from '../read/pairing.ts';
-import type { SampleGroup } from '../read/pairing.ts';
 import { readSample } from '../read/read-sample.ts';
 import { sha256 } from '../read/sha256.ts';
-import type { Recipe } from '../recipe/recipe.ts';
-import type { App } from '../report/appraised.ts';
 import { failedTrayRow, rowFromVerdict } from '../report/tray.ts';
-import type { TrayRow } from '../report/tray.ts';
 import { verdictOf } from '../report/verdict.ts';
+import type { AppraiseResult, AppraiseTask } from './appraise-task.ts';
 import { keptVerdict } from './resume.ts';
 import { writeResults } from './write-results.ts';
-import type { ResultKind } from './write-results.ts';
-
-/** Plain data, so that it crosses to a thread. */
-export interface AppraiseTask {
-  readonly directory: string;
-  readonly group: SampleGroup;
-  readonly recipe: Recipe;
-  readonly out: string;
-  /** Folder of the results inside `out`. */
-  readonly folder: string;
-  readonly only?: readonly ResultKind[];
-  readonly resume: boolean;
-  readonly app: App;
-}
-
-export interface AppraiseResult {
-  readonly row: TrayRow;
-  /** Remarks of the sample, in sentences. */
-  readonly remarks: readonly string[];
-  /** True when unchanged results were kept. */
-  readonly kept: boolean;
-  /** Text of an unforeseen error (a bug); the row then says so too. */
-  readonly bug?: string;
-}
 
 /** Appraises one sample and writes its folder. A problem of the sample becomes a failed row; only an abort is thrown. */
 export async function appraiseOne(task: AppraiseTask, options: { signal?: AbortSignal; onStage?: (stage: string) => void } = {}): Promise<AppraiseResult> {

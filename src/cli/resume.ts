@@ -4,7 +4,7 @@ import { join } from 'node:path';
 import type { InputFile } from '../read/input.ts';
 import { sha256 } from '../read/sha256.ts';
 import type { Verdict } from '../report/verdict.ts';
-import type { AppraiseTask } from './appraise-one.ts';
+import type { AppraiseTask } from './appraise-task.ts';
 
 /**
  * The verdict of earlier results that the same program made from the same bytes (SHA-256) with the same recipe; undefined when anything

@@ -3,7 +3,7 @@ import { rm } from 'node:fs/promises';
 import { join } from 'node:path';
 import { Worker } from 'node:worker_threads';
 import { appraiseOne } from './appraise-one.ts';
-import type { AppraiseResult, AppraiseTask } from './appraise-one.ts';
+import type { AppraiseResult, AppraiseTask } from './appraise-task.ts';
 
 export interface RunOptions {
   readonly jobs: number;

@@ -26,6 +26,8 @@ export interface FlawScale {
   readonly terraceMinM2: number;
 }
 
+/** A rise of fewer standard deviations of the height's noise starts no flaw. */
+const noiseFactor = 6;
 /** A conducting pit this much deeper than the thinnest barrier worth building (3 nm) less the tip's own rounding goes through it, metres. */
 const pitM = 2.6e-9;
 
@@ -41,7 +43,10 @@ export function findFlaws(ground: Ground, grid: Grid, section: FlawsSection, sca
   const count = columns * rows;
   const warnings: Notice[] = [];
   const current = ground.current;
-  const startM = section.heightNm * 1e-9;
+  // On a rough or noisy surface the stated rise would be noise itself.
+  const leastM = noiseFactor * (ground.height?.noiseM ?? 0);
+  const startM = Math.max(section.heightNm * 1e-9, leastM);
+  if (startM === leastM && leastM > 0) warnings.push(notice('threshold-raised', { statedNm: section.heightNm, usedNm: startM * 1e9, noiseNm: ground.height!.noiseM * 1e9 }));
   const rise = ground.height && riseAboveGround(ground.height.levelled.data, columns, rows, startM);
   const log10 = current?.log10.data;
 

@@ -36,7 +36,8 @@ export function conditionCurrent(
   const { columns, rows } = grid;
   const count = columns * rows;
   const warnings: Notice[] = [];
-  const turned = channel.values.data.map((value) => value * signOf(channel, warnings));
+  const sign = signOf(channel);
+  const turned = channel.values.data.map((value) => value * sign);
 
   const levelled = height?.levelled.data;
   const zero = findZeroCurrent(turned, columns, levelled ? (i) => levelled[i]! > blockedAboveM : undefined);
@@ -107,11 +108,10 @@ export function conditionCurrent(
 }
 
 /** Sign that makes real currents positive: the bias's, or the current's own when no bias is known. */
-function signOf(channel: Channel, warnings: Notice[]): 1 | -1 {
+function signOf(channel: Channel): 1 | -1 {
   if (channel.biasV !== undefined && channel.biasV !== 0) return channel.biasV < 0 ? -1 : 1;
   let sum = 0;
   for (const value of channel.values.data) if (!Number.isNaN(value)) sum += value;
-  if (channel.biasV === undefined && channel.unit === 'A') warnings.push(notice('bias-missing', {}));
   return sum < 0 ? -1 : 1;
 }
 

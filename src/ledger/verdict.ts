@@ -21,7 +21,7 @@ export function verdictSentence(input: VerdictInput): string {
   if (!input.hasCurrent) return `${area} is free of flaws in height; without a current map nothing is known of the barrier.`;
   const bias = input.biasV === undefined ? 'at the scan’s bias' : `at ${input.biasV.toFixed(1)} V${input.proposed ? ' (proposed)' : ''}`;
   const what = surface === 'stack' ? 'carries an even current' : 'is even barrier';
-  const glow = input.biasV === undefined ? '; not known to glow, as no density is known' : usable.knownToGlow ? '' : input.mayGlow ? '; its density may glow but lies outside the range' : '; even, but not known to glow';
-  const bound = surface === 'barrier' ? '; a bare barrier was scanned, so this is an upper bound for the finished stack' : '';
+  const glow = input.biasV === undefined ? '; not known to glow, as no density is known' : usable.knownToGlow ? '' : input.mayGlow ? '; it may glow: the density’s interval reaches the range' : '; even, but not known to glow';
+  const bound = surface === 'barrier' ? '; an upper bound, as a bare barrier was scanned' : '';
   return `${area} ${what}, ×/÷${Number(input.bandFactor.toPrecision(3))} ${bias}${glow}${bound}.`;
 }

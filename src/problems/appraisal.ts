@@ -6,6 +6,8 @@ export const appraisalSentences = {
     'The current map shows no spot without current, so its offset could not be measured and zero was assumed.',
   'current-wear': (d: { decades: number }) =>
     `The tip lost ${d.decades.toFixed(2)} decades of conductance from the first line to the last; this was undone as a factor per line.`,
+  'threshold-raised': (d: { statedNm: number; usedNm: number; noiseNm: number }) =>
+    `The height's noise is ${short(d.noiseNm)} nm, so flaws were sought from ${short(d.usedNm)} nm up instead of flaws.heightNm = ${short(d.statedNm)} nm.`,
   'bumps-conduct': (d: { areaUm2: number }) =>
     `Bumps over ${d.areaUm2.toFixed(2)} µm² stand above the ground but conduct like it; they are noted and not booked as flaws.`,
   'barrier-no-ground': (_: Record<string, never>) => 'No flawless ground with a current is left in the footprint, so there is no reference and nothing is usable.',
@@ -25,7 +27,9 @@ export const appraisalSentences = {
   'ladder-contradicts': (d: { measured: number; model: number }) =>
     `The current falls by ${d.measured.toFixed(2)} decades per layer, the model expects ${d.model.toFixed(2)}; thickness and density from this model are in doubt.`,
   'bias-missing': (_: Record<string, never>) =>
-    'No scan bias is stated (scan.biasV), so no thickness and no density at the device are given.',
+    'No scan bias is stated (scan.biasV): layers, thickness, device bias and density are absent, and the band is judged by the ratio of currents.',
+  'current-relative': (_: Record<string, never>) =>
+    'The current has no scale in amperes: layers, thickness, device bias and density are absent, and the band is judged by the ratio of currents.',
 };
 
 function short(value: number): string {

@@ -173,7 +173,7 @@ class Gathering {
       else this.refuse(file, `sample ${sample} already has ${draft[kind]}`);
     }
     for (const [name, draft] of this.drafts) this.dropStrays(name, draft);
-    const samples = [...this.drafts].map(([name, { files: _, ...draft }]): SampleGroup => ({ name, ...draft }));
+    const samples = [...this.drafts].flatMap(([name, { files: _, ...draft }]): SampleGroup[] => apart(name, draft));
     return { samples: samples.sort((a, b) => (a.name < b.name ? -1 : 1)), skipped: this.skipped, failed: this.failed };
   }
 
@@ -186,6 +186,16 @@ class Gathering {
       this.refuse(file, `its name gives no role while other files give the channels of sample ${name}`);
     }
   }
+}
+
+/**
+ * `S.tif` and `S.npy` without a word about their roles are two looks at one thing rather than two channels: each becomes a sample, called by its
+ * whole file name. With a sidecar, which may say which is which, they stay together.
+ */
+function apart(name: string, draft: Omit<SampleGroup, 'name'>): SampleGroup[] {
+  const files = new Set(draft.maps.map((map) => map.file));
+  if (files.size < 2 || draft.sidecar !== undefined || draft.row !== undefined || draft.maps.some((map) => map.quantity !== undefined)) return [{ name, ...draft }];
+  return draft.maps.map((map) => ({ ...draft, name: map.file, maps: [map] }));
 }
 
 /** Name of a sample whose files are called just `height.tif` and `current.tif`. */

@@ -5,19 +5,22 @@ import type { Values } from './decoded-map.ts';
 import type { InputFile } from './input.ts';
 import { mirrorMap } from './mirror.ts';
 import { numbersFrom } from './numeric.ts';
+import { boundedDecoders } from './tiff-decoders.ts';
 import { tags } from './tiff-directory.ts';
 import type { TiffPage } from './tiff-directory.ts';
-import { loadGeotiff } from './tiff-geotiff.ts';
 import type { TiffLayout } from './tiff-layout.ts';
 
 const formats = { unsigned: 1, signed: 2, float: 3 } as const;
 
 /** Values of a page, row 0 at the top, NaN where the file says missing. The file's bytes are not changed. */
 export async function tiffValues(file: InputFile, page: TiffPage, layout: TiffLayout): Promise<Values> {
-  const image = await openImage(file, page, layout);
+  // Loaded only when a TIFF is read.
+  const geotiff = await import('geotiff');
+  const image = await openImage(geotiff, file, page, layout);
   let stored: TypedArray;
   try {
-    stored = (await image.readRasters({ interleave: false }))[0]!;
+    const pool = layout.compression === 1 ? null : boundedDecoders(geotiff);
+    stored = (await image.readRasters({ interleave: false, pool }))[0]!;
   } catch (error) {
     // Uncompressed blocks have been checked to the last byte: then it is not the file.
     if (layout.compression === 1) throw error;
@@ -40,12 +43,17 @@ function inDifferences(page: TiffPage, layout: TiffLayout): boolean {
   return layout.predictor === 2 && layout.size > 1 && !page.littleEndian;
 }
 
+/** geotiff 3.0.5 fails where a block of half floats is left out and holds an odd number of them: they are read as words. */
+function inHalves(layout: TiffLayout): boolean {
+  return layout.size === 2 && layout.kind === 'float';
+}
+
 /**
  * The page as geotiff sees it: with a directory of the checked numbers only. Its own parsing believes every count,
  * allocates for it, and misreads long lists of strips in big-endian files.
  */
-async function openImage(file: InputFile, page: TiffPage, layout: TiffLayout): Promise<GeoTIFFImage> {
-  const { fromArrayBuffer, GeoTIFFImage, ImageFileDirectory } = await loadGeotiff();
+async function openImage(geotiff: typeof import('geotiff'), file: InputFile, page: TiffPage, layout: TiffLayout): Promise<GeoTIFFImage> {
+  const { fromArrayBuffer, GeoTIFFImage, ImageFileDirectory } = geotiff;
   const { bytes } = file;
   const whole = bytes.byteLength === bytes.buffer.byteLength ? bytes : bytes.slice();
   const { source } = await fromArrayBuffer(whole.buffer as ArrayBuffer);
@@ -57,7 +65,7 @@ async function openImage(file: InputFile, page: TiffPage, layout: TiffLayout): P
   const counts = blocks.map((block) => block.length);
   const directory = new Map<number | string, number | number[]>([
     [tags.columns, columns * words], [tags.rows, rows], [tags.samplesPerPixel, 1], [tags.bitsPerSample, [8 * size / words]],
-    [tags.sampleFormat, [words === 2 || differences ? formats.unsigned : formats[kind]]],
+    [tags.sampleFormat, [words === 2 || differences || inHalves(layout) ? formats.unsigned : formats[kind]]],
     [tags.compression, compression], [tags.predictor, differences ? 1 : predictor],
   ]);
   if (tiled) directory.set(tags.tileWidth, blockColumns * words).set(tags.tileLength, blockRows).set(tags.tileOffsets, offsets).set(tags.tileByteCounts, counts);
@@ -73,8 +81,8 @@ function toValues(stored: TypedArray, page: TiffPage, layout: TiffLayout): Value
   if (inPairs(layout)) return joinPairs(stored, kind === 'signed', page.littleEndian);
   if (inDifferences(page, layout)) {
     for (let i = 1; i < stored.length; i++) if ((i % columns) % blockColumns !== 0) stored[i] = stored[i]! + stored[i - 1]!;
-    return numbersFrom(new Uint8Array(stored.buffer), kind, size);
   }
+  if (inDifferences(page, layout) || inHalves(layout)) return numbersFrom(new Uint8Array(stored.buffer), kind, size);
   if (stored instanceof Float32Array || stored instanceof Float64Array) return stored;
   return size <= 2 ? new Float32Array(stored) : new Float64Array(stored);
 }

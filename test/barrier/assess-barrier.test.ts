@@ -1,0 +1,169 @@
+import assert from 'node:assert/strict';
+import { test } from 'node:test';
+import { assessBarrier } from '../../src/barrier/assess-barrier.ts';
+import type { BandQuestion } from '../../src/barrier/assess-barrier.ts';
+import type { Barrier } from '../../src/barrier/barrier.ts';
+import { wkbModel } from '../../src/barrier/model/wkb.ts';
+import { evaluate } from '../../src/evaluate/evaluate.ts';
+import type { Flaws } from '../../src/flaws/flaws.ts';
+import { labelMap, maskMap } from '../../src/grid/maps.ts';
+import { levelGround } from '../../src/ground/level-ground.ts';
+import { assertClose } from '../fixtures/assert-close.ts';
+import { createRecipe, createSample } from '../fixtures/create-sample.ts';
+import type { RecipeChanges } from '../fixtures/create-sample.ts';
+import { createScene, layerNm, terraceCurrentA, threeTerraces, typicalThings } from '../fixtures/create-scene.ts';
+import type { Scene } from '../fixtures/create-scene.ts';
+
+const size = 128;
+const scanV = 5.9;
+const band: BandQuestion = { biasV: 4, offsetV: 0, targetAPerM2: 1e3, minAPerM2: 1e2, maxAPerM2: 3e4, bandFactor: 3, terraceMinM2: 0.25e-12 };
+const wide: Partial<BandQuestion> = { minAPerM2: 0, maxAPerM2: 1e12 };
+const materials = { heightEv: 2.5, massRatio: 0.5 };
+
+/** Assesses a scene without looking for flaws: those of the scene's truth are taken. */
+function assess(scene: Scene, barrier: RecipeChanges[string] = {}, more: Partial<BandQuestion> = wide, surface: 'barrier' | 'stack' = 'barrier'): Barrier {
+  const { sample } = scene;
+  const recipe = createRecipe({ barrier });
+  const current = levelGround(sample, recipe.ground, recipe.scan).current!;
+  const flaws: Flaws = { labels: labelMap(sample.grid, Uint32Array.from(scene.things, (thing) => (thing === '' ? 0 : 1))), list: [], warnings: [] };
+  return assessBarrier(current, flaws, sample.footprint, sample.grid, surface, recipe.barrier, { ...band, ...more });
+}
+const codes = (barrier: Barrier) => barrier.warnings.map(({ code }) => code);
+
+for (const seed of ['a', 'b', 'c']) {
+  const scene = createScene({ seed, size, layersAt: threeTerraces(size), things: typicalThings(size) });
+
+  test(`the ladder’s step is recovered on model-made terraces, seed ${seed}`, () => {
+    const { ladder } = assess(scene);
+    const made = (Math.log10(terraceCurrentA(10, scanV)) - Math.log10(terraceCurrentA(12, scanV))) / 2;
+    assert.equal(ladder.from, 'map');
+    assert.ok(Math.abs(ladder.stepDecades - made) < 0.02, `${ladder.stepDecades} for ${made}`);
+    assert.ok(Math.abs(ladder.stepDecades - made) < 3 * ladder.stepSeDecades + 0.01);
+    assertClose(ladder.modelStepDecades, made, 0.05, 'the model’s own step at 4 nm');
+    for (const [k, layers] of [10, 11, 12].entries()) {
+      const rung = ladder.rungs[k]!;
+      assert.ok(Math.abs(rung.medianLog10 - Math.log10(terraceCurrentA(layers, scanV))) < 0.02);
+      assertClose(rung.scatterDecades, 0.05, 0.15, 'scatter put in');
+      assert.equal(rung.bound, 'exact');
+    }
+  });
+
+  test(`layers are right with the contact’s area known, and with referenceLayers without it, seed ${seed}`, () => {
+    for (const barrier of [{}, { referenceLayers: 11 }, { referenceLayers: 11, tipAreaNm2: 100 }]) {
+      const { layers, step, thickness, reference } = assess(scene, barrier);
+      assert.equal(reference.layers, 11);
+      let wrong = 0;
+      for (let i = 0; i < size * size; i++) {
+        if (scene.things[i] !== '') {
+          assert.deepEqual([layers!.data[i], step.data[i], Number.isNaN(thickness!.data[i]!)], [0, -128, true]);
+          continue;
+        }
+        if (layers!.data[i] !== scene.layers[i]) wrong++;
+        else assert.ok(step.data[i] === scene.layers[i]! - 11 && Math.abs(thickness!.data[i]! - scene.layers[i]! * layerNm * 1e-9) < 1e-15);
+      }
+      assert.ok(wrong < 0.001 * size ** 2, `${wrong} pixels with a wrong count`);
+    }
+  });
+
+  test(`density at another bias follows whole layers through the model, seed ${seed}`, () => {
+    const { log10Relative } = assess(scene, { referenceLayers: 11 });
+    const at4 = (layers: number) => Math.log10(wkbModel.density({ ...materials, thicknessM: layers * layerNm * 1e-9 }, 4));
+    const seen = new Set<number>();
+    for (let i = 0; i < size * size; i += 7) {
+      if (scene.things[i] !== '') continue;
+      seen.add(Math.round(1e3 * log10Relative.data[i]!));
+    }
+    assert.deepEqual([...seen].sort((p, q) => q - p), [10, 11, 12].map((layers) => Math.round(1e3 * (at4(layers) - at4(11)))));
+  });
+}
+
+const scene = createScene({ seed: 'one', size, layersAt: threeTerraces(size), things: typicalThings(size) });
+
+test('the reference: median current, area and share', () => {
+  const { reference } = assess(scene, { referenceLayers: 11 });
+  const pixels = scene.layers.filter((layers, i) => layers === 11 && scene.things[i] === '').length;
+  const unflawed = scene.things.filter((thing) => thing === '').length;
+  assertClose(reference.median, terraceCurrentA(11, scanV), 0.02);
+  assertClose(reference.areaM2, pixels * 4e-16, 0.01);
+  assertClose(reference.shareOfUnflawed, pixels / unflawed, 0.01);
+  assert.equal(reference.step, 0);
+  assertClose(reference.thicknessM, 11 * layerNm * 1e-9, 1e-9);
+});
+
+test('density at the device’s bias: the model’s, with an interval around it', () => {
+  const { device } = assess(scene, { referenceLayers: 11 });
+  assertClose(device!.median, wkbModel.density({ ...materials, thicknessM: 11 * layerNm * 1e-9 }, 4), 0.05);
+  assert.ok(device!.low95 < device!.median / 2 && device!.high95 > 2 * device!.median);
+  assert.deepEqual([device!.biasV, device!.proposed], [4, false]);
+});
+
+test('stack.offsetV does not fall across the barrier', () => {
+  const plain = assess(scene, { referenceLayers: 11 }, { ...wide, biasV: 4 }).device!;
+  const shifted = assess(scene, { referenceLayers: 11 }, { ...wide, biasV: 4.5, offsetV: 0.5 }).device!;
+  assertClose(shifted.median, plain.median, 1e-9);
+  assert.equal(shifted.biasV, 4.5);
+});
+
+test('at the scan’s own bias density is the ratio of currents', () => {
+  const { log10Relative, ladder } = assess(scene, { referenceLayers: 11 }, { ...wide, biasV: scanV });
+  const [thin, reference] = ladder.rungs;
+  assertClose(log10Relative.data[3 * size + 3], thin!.medianLog10 - reference!.medianLog10, 1e-6);
+});
+
+test('within a terrace: the contact’s scatter stays out by default, and goes to the barrier when asked', () => {
+  const own = assess(scene, { referenceLayers: 11, withinTerrace: 'barrier' });
+  const shared = assess(scene, { referenceLayers: 11 });
+  const on = [...scene.layers.keys()].filter((i) => scene.layers[i] === 11 && scene.things[i] === '');
+  const spread = (values: Float32Array) => Math.sqrt(on.reduce((sum, i) => sum + (values[i]! - mean(values)) ** 2 / on.length, 0));
+  const mean = (values: Float32Array) => on.reduce((sum, i) => sum + values[i]! / on.length, 0);
+  assert.ok(spread(shared.thickness!.data) < 1e-4 * 1e-9);
+  // 0.05 decades at 0.55 decades per layer are 0.09 layers, 0.03 nm.
+  assertClose(spread(own.thickness!.data), 0.03e-9, 0.15);
+  assertClose(mean(own.thickness!.data), 11 * layerNm * 1e-9, 2e-3);
+  assert.ok(spread(own.log10Relative.data) > 0.05, 'the steeper device bias widens the scatter');
+  assert.deepEqual(own.layers!.data, shared.layers!.data, 'layers are whole either way');
+});
+
+test('one terrace: the step is the model’s, and said', () => {
+  const found = assess(createScene({ seed: 'single', size, things: typicalThings(size) }), { referenceLayers: 11 });
+  assert.equal(found.ladder.from, 'model');
+  assert.equal(found.ladder.stepDecades, found.ladder.modelStepDecades);
+  assert.ok(codes(found).includes('ladder-one-terrace'));
+});
+
+test('a ladder that contradicts the model is said', () => {
+  // Terraces two layers apart look like single ones: twice the model's step.
+  const found = assess(createScene({ seed: 'jump', size, layersAt: (c) => (c < 60 ? 10 : 12), things: typicalThings(size) }));
+  assert.ok(codes(found).includes('ladder-contradicts'));
+  assert.ok(!codes(assess(scene)).includes('ladder-contradicts'));
+});
+
+test('a runner-up within 10 % is a remark', () => {
+  const halves = assess(createScene({ seed: 'halves', size, layersAt: (c) => (c < 62 ? 11 : 12), things: typicalThings(size).slice(0, 1) }));
+  assert.ok(codes(halves).includes('reference-runner-up'));
+  assert.ok(!codes(assess(scene)).includes('reference-runner-up'));
+});
+
+test('a stack’s surface gives no layers, no thickness, no device density', () => {
+  const found = assess(scene, { referenceLayers: 11 }, wide, 'stack');
+  assert.deepEqual([found.layers, found.thickness, found.device, found.reference.layers], [undefined, undefined, undefined, undefined]);
+  assert.ok(codes(found).includes('barrier-stack-surface'));
+  assert.equal(found.step.data[3 * size + 3], -1, 'terraces are still told apart');
+});
+
+test('a footprint without ground: nothing known, said', () => {
+  const recipe = createRecipe();
+  const current = levelGround(scene.sample, recipe.ground, recipe.scan).current!;
+  const none = assessBarrier(current, { labels: labelMap(scene.sample.grid), list: [], warnings: [] }, maskMap(scene.sample.grid), scene.sample.grid, 'barrier', recipe.barrier, band);
+  assert.ok(codes(none).includes('barrier-no-ground'));
+  assert.ok(none.step.data.every((step) => step === -128));
+  assert.ok(none.log10Relative.data.every((value) => Number.isNaN(value)));
+  assert.equal(none.device, undefined);
+});
+
+test('a model that does not hold at the scan’s bias: terraces, but no layers', () => {
+  // Simmons' formula needs a bias below the barrier's height of 2.5 eV.
+  const appraisal = evaluate(createSample({ columns: size, rows: size, heightM: scene.heightM, currentA: scene.currentA, biasV: scanV }), createRecipe({ barrier: { model: 'simmons' }, stack: { biasV: 4 } }));
+  assert.deepEqual([appraisal.barrier!.layers, appraisal.barrier!.device], [undefined, undefined]);
+  assert.ok(appraisal.barrier!.ladder.from === 'map');
+});
