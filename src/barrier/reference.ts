@@ -26,7 +26,7 @@ export interface ReferenceChoice {
   readonly reaches?: boolean;
   /** Second largest of the candidates, when its area is within 10 % of the chosen one's. */
   readonly runnerUp?: Candidate;
-  /** Terraces in range that were passed over because they are too small or too near the floor. */
+  /** Terraces in range (and no smaller than the smallest terrace) that were passed over because they are too rare or too near the floor. */
   readonly passedOver: readonly Candidate[];
 }
 
@@ -58,7 +58,7 @@ export function chooseReference(candidates: readonly Candidate[], rule: Referenc
     chosen,
     ...(density ? { inRange: density.median >= rule.minAPerM2 && density.median <= rule.maxAPerM2, reaches: reaches(chosen, rule) } : {}),
     ...(second && second.areaM2 > 0.9 * chosen.areaM2 ? { runnerUp: second } : {}),
-    passedOver: reaching.length > 0 ? [] : byArea.filter((c) => c !== chosen && c.bound === 'exact' && reaches(c, rule)),
+    passedOver: reaching.length > 0 ? [] : byArea.filter((c) => c !== chosen && c.bound === 'exact' && c.areaM2 >= rule.terraceMinM2 && reaches(c, rule)),
   };
 }
 

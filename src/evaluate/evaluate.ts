@@ -34,13 +34,23 @@ export interface EvaluateOptions {
  * @throws Problem when a map carries no information (see the stages).
  */
 export function evaluate(sample: Sample, recipe: Recipe, options: EvaluateOptions = {}): Appraisal {
+  const steps = evaluateInSteps(sample, recipe, options);
+  for (;;) {
+    const step = steps.next();
+    if (step.done) return step.value;
+    options.onStage?.(step.value);
+  }
+}
+
+/** The same, halting before each stage with its name, so that a worker can listen in between. */
+export function* evaluateInSteps(sample: Sample, recipe: Recipe, options: EvaluateOptions = {}): Generator<StageName, Appraisal, void> {
   const cache = options.cache ?? new StageCache(0);
   const now = options.now ?? Date.now;
   const timings: Record<string, number> = {};
   let key = JSON.stringify([sample.name, sample.sources.map((source) => source.sha256), recipe.scan]);
-  const run = <T>(stage: StageName, read: unknown, compute: () => T): T => {
+  const run = function* <T>(stage: StageName, read: unknown, compute: () => T): Generator<StageName, T, void> {
     key += JSON.stringify([stage, read]);
-    options.onStage?.(stage);
+    yield stage;
     const start = now();
     const value = cache.take(key, compute);
     timings[stage] = now() - start;
@@ -48,12 +58,12 @@ export function evaluate(sample: Sample, recipe: Recipe, options: EvaluateOption
   };
 
   const { band, barrier: barrierSection, stack } = recipe;
-  const ground = run('ground', recipe.ground, () => levelGround(sample, recipe.ground, recipe.scan));
-  const flaws = run('flaws', [recipe.flaws, barrierSection, band.shortMaxUm2, band.terraceMinUm2], () =>
+  const ground = yield* run('ground', recipe.ground, () => levelGround(sample, recipe.ground, recipe.scan));
+  const flaws = yield* run('flaws', [recipe.flaws, barrierSection, band.shortMaxUm2, band.terraceMinUm2], () =>
     findFlaws(ground, sample.grid, recipe.flaws, flawScale(ground, recipe)));
-  const barrier = run('barrier', [stack, band], () => barrierOf(sample, ground, flaws, recipe));
-  const sheet: Sheet | undefined = run('sheet', [], () => barrier && assessSheet(sheetInput(sample, ground, flaws, barrier, recipe)));
-  const ledger = run('ledger', [], () => keepLedger({
+  const barrier = yield* run('barrier', [stack, band], () => barrierOf(sample, ground, flaws, recipe));
+  const sheet: Sheet | undefined = yield* run('sheet', [], () => barrier && assessSheet(sheetInput(sample, ground, flaws, barrier, recipe)));
+  const ledger = yield* run('ledger', [], () => keepLedger({
     sample, ground, flaws, barrier, sheet, band, contactAreaM2: barrierSection.tipAreaNm2 * 1e-18,
     sheetAsked: stack.emitterSheetOhm !== undefined || stack.injectorSheetOhm !== undefined,
   }));

@@ -20,7 +20,7 @@ export const appraisalSentences = {
   'reference-not-known-to-glow': (d: { naPerUm2: number; lowNaPerUm2: number; highNaPerUm2: number; biasV: number }) =>
     `Even, but not known to glow: the reference would carry ${short(d.naPerUm2)} nA/µm² (95 %: ${short(d.lowNaPerUm2)}–${short(d.highNaPerUm2)}) at ${short(d.biasV)} V, outside the recipe's range.`,
   'reference-passed-over': (d: { layers: number; areaUm2: number }) =>
-    `A terrace ${layersApart(d.layers)} (${d.areaUm2.toFixed(2)} µm²) would carry a density in range, but it is too small or too near the floor to measure a map against.`,
+    `A terrace ${layersApart(d.layers)} (${d.areaUm2.toFixed(2)} µm²) would carry a density in range, but it is too rare or too near the floor to measure a map against.`,
   'reference-censored': (_: Record<string, never>) =>
     'The reference terrace lies at the amplifier’s limit, so its current is only a bound; scan again at another gain.',
   'ladder-one-terrace': (_: Record<string, never>) => 'The map shows one terrace only, so the step per layer is taken from the model.',

@@ -19,7 +19,7 @@ const scenes = ['a', 'b', 'c'].map((seed) => createScene({
   broken: [{ r: 40, lines: 1, from: 5, to: 60, current: true }, { r: 70, lines: 2, from: 30, to: 80, current: false }],
 }));
 
-/** All, a rectangle, half a plane, discs, single pixels, none of the current’s ground … */
+/** All, a rectangle, half a plane, a disc, or single pixels. */
 function randomFootprint(random: Random): Uint8Array {
   const kind = random.integer(5);
   const a = 2 * Math.PI * random.uniform();
@@ -119,7 +119,9 @@ for (const [k, scene] of scenes.entries()) {
   test(`transposed the areas stay when nothing works line by line, scene ${k}`, () => {
     const still: RecipeChanges = { ...changes, ground: { lines: false, repair: false, wear: false } };
     // Without broken runs and line offsets: those exist along one axis only, and the steps that undo them are off.
-    const clean = createScene({ seed: `turn ${k}`, size, layersAt: threeTerraces(size), things: typicalThings(size), tiltNm: 10, bowNm: 2 });
+    // Without residue: slivers of its edge change class with a pixel (see the test of a patch of residue among those of the flaws).
+    const things = typicalThings(size).filter((thing) => thing.kind !== 'residue');
+    const clean = createScene({ seed: `turn ${k}`, size, layersAt: threeTerraces(size), things, tiltNm: 10, bowNm: 2 });
     const own = pixelsOf(appraise(clean.heightM, clean.currentA, still));
     const turned = pixelsOf(appraise(transposed(clean.heightM, size), transposed(clean.currentA, size), still));
     // Ties are broken by direction, and the height's noise is read from neighbours along a line: a few pixels on outlines.
