@@ -20,7 +20,6 @@ export function referenceNotices(choice: ReferenceChoice, candidates: readonly C
   }
   const passed = choice.passedOver[0];
   if (passed) found.push(notice('reference-passed-over', { layers: passed.step - origin, areaUm2: passed.areaM2 * 1e12 }));
-  if (choice.chosen.bound !== 'exact') found.push(notice('reference-censored', {}));
   if (candidates.every((candidate) => candidate.bound !== 'exact' || candidate === choice.chosen) && candidates.length === 1) found.push(notice('ladder-one-terrace', {}));
   return found;
 }

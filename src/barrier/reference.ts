@@ -39,7 +39,7 @@ const leastShare = 0.05;
  *
  * Only terraces that can carry a band count: not censored, at least the smallest terrace and a twentieth of the flawless ground, and
  * bright enough that the band's lower edge is still quantifiable (10σ of the noise; Currie, Anal. Chem. 40, 586, 1968).
- * Without any such terrace the largest one of all is taken.
+ * Without any such terrace the largest uncensored one is taken; where all ground is censored there is no reference (undefined).
  */
 export function chooseReference(candidates: readonly Candidate[], rule: ReferenceRule): ReferenceChoice | undefined {
   if (candidates.length === 0) return undefined;
@@ -50,8 +50,11 @@ export function chooseReference(candidates: readonly Candidate[], rule: Referenc
     (c) => c.bound === 'exact' && c.areaM2 >= Math.max(rule.terraceMinM2, leastShare * total) && c.medianLog10 >= quantified,
   );
   const reaching = fit.filter((c) => reaches(c, rule));
-  const pool = reaching.length > 0 ? reaching : fit.length > 0 ? fit : byArea.filter((c) => c.bound === 'exact').length > 0 ? byArea.filter((c) => c.bound === 'exact') : byArea;
-  const chosen = pool[0]!;
+  // A map too small for a terrace, or all near the floor, still has a most common ground; specks of noise above the floor are none.
+  const common = byArea.filter((c) => c.bound === 'exact' && c.areaM2 >= leastShare * total);
+  const pool = reaching.length > 0 ? reaching : fit.length > 0 ? fit : common;
+  const chosen = pool[0];
+  if (!chosen) return undefined;
   const second = pool[1];
   const density = chosen.density;
   return {

@@ -10,7 +10,7 @@ import type { Terraces } from './terraces.ts';
 
 interface MapQuestion {
   readonly withinTerrace: 'contact' | 'barrier';
-  /** Log10 current of the reference terrace. */
+  /** Log10 current of the reference terrace, NaN without one: then saturated ground is thin and the rest thick. */
   readonly referenceLog10: number;
   readonly rungs: readonly Rung[];
   readonly anchor?: Anchor;
@@ -49,6 +49,11 @@ export function thicknessMap(current: CurrentGround, terraces: Terraces, origin:
     const step = terraces.steps[i]!;
     if (step === unknownStep) continue;
     const k = step - origin;
+    if (Number.isNaN(question.referenceLog10)) {
+      // No reference: all that is known is on which side of the amplifier's range the ground lies.
+      relative[i] = current.saturated.data[i] === 1 ? Number.POSITIVE_INFINITY : Number.NEGATIVE_INFINITY;
+      continue;
+    }
     if (layers && anchored) layers[i] = Math.max(1, Math.min(255, anchored.layers + k));
     const difference = log10[i]! - question.referenceLog10;
     // Without a ladder there are no whole layers to go by: then every pixel speaks for itself.

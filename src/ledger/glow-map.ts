@@ -18,7 +18,7 @@ export function glowMap(codes: Uint8Array, density: Float32Array | undefined): F
   for (let i = 0; i < glow.length; i++) {
     const code = codes[i]!;
     if (dark[code] === 1) glow[i] = 0;
-    else if (unknown[code] === 0 && density) glow[i] = density[i]! / (norm > 0 ? norm : 1);
+    else if (unknown[code] === 0 && density && Number.isFinite(density[i]!)) glow[i] = density[i]! / (norm > 0 ? norm : 1);
   }
   return glow;
 }

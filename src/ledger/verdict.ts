@@ -16,6 +16,7 @@ export interface VerdictInput {
 /** "40.7 µm² (95 %: 39.8–41.6) of 100.0 µm² is even barrier, ×/÷3 at 4.0 V …". */
 export function verdictSentence(input: VerdictInput): string {
   const { usable, surface } = input;
+  if (usable.areaM2 === 0) return `Nothing of ${(input.footprintM2 * 1e12).toPrecision(3)} µm² is ${input.hasCurrent ? (surface === 'stack' ? 'usable' : 'even barrier') : 'free of flaws in height'}.`;
   const um2 = (m2: number): string => (m2 * 1e12).toPrecision(3).replace(/e\+?(-?\d+)$/, '·10^$1');
   const area = `${um2(usable.areaM2)} µm² (95 %: ${um2(usable.low95M2)}–${um2(usable.high95M2)}) of ${um2(input.footprintM2)} µm²`;
   if (!input.hasCurrent) return `${area} is free of flaws in height; without a current map nothing is known of the barrier.`;

@@ -10,7 +10,7 @@ export const appraisalSentences = {
     `The height's noise is ${short(d.noiseNm)} nm, so flaws were sought from ${short(d.usedNm)} nm up instead of flaws.heightNm = ${short(d.statedNm)} nm.`,
   'bumps-conduct': (d: { areaUm2: number }) =>
     `Bumps over ${d.areaUm2.toFixed(2)} µm² stand above the ground but conduct like it; they are noted and not booked as flaws.`,
-  'barrier-no-ground': (_: Record<string, never>) => 'No flawless ground with a current is left in the footprint, so there is no reference and nothing is usable.',
+  'barrier-no-ground': (_: Record<string, never>) => 'All flawless ground lies at the amplifier’s floor or limit, so there is no reference and nothing is usable; scan again at another gain or bias.',
   'barrier-stack-surface': (_: Record<string, never>) =>
     'A finished stack was scanned: its emitter spreads the current, so layers and thickness are not given.',
   'reference-runner-up': (d: { layers: number; areaUm2: number; ownUm2: number }) =>
@@ -21,8 +21,6 @@ export const appraisalSentences = {
     `Even, but not known to glow: the reference would carry ${short(d.naPerUm2)} nA/µm² (95 %: ${short(d.lowNaPerUm2)}–${short(d.highNaPerUm2)}) at ${short(d.biasV)} V, outside the recipe's range.`,
   'reference-passed-over': (d: { layers: number; areaUm2: number }) =>
     `A terrace ${layersApart(d.layers)} (${d.areaUm2.toFixed(2)} µm²) would carry a density in range, but it is too rare or too near the floor to measure a map against.`,
-  'reference-censored': (_: Record<string, never>) =>
-    'The reference terrace lies at the amplifier’s limit, so its current is only a bound; scan again at another gain.',
   'ladder-one-terrace': (_: Record<string, never>) => 'The map shows one terrace only, so the step per layer is taken from the model.',
   'ladder-contradicts': (d: { measured: number; model: number }) =>
     `The current falls by ${d.measured.toFixed(2)} decades per layer, the model expects ${d.model.toFixed(2)}; thickness and density from this model are in doubt.`,

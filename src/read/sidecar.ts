@@ -1,4 +1,5 @@
 /** What a sidecar `S.json` or a manifest's row states about a sample; both have the same keys. */
+import { reasonOf } from '../schema/reason.ts';
 import { z } from 'zod';
 import { notice, Problem } from '../problems/problem.ts';
 import type { Notice } from '../problems/problem.ts';
@@ -44,7 +45,8 @@ export function checkStated(file: string, value: Readonly<Record<string, unknown
   const issue = result.error.issues[0]!;
   const key = String(issue.path[0] ?? '');
   const shown = JSON.stringify(value[key]);
-  throw new Problem('sidecar-value', { file, place: place(key), reason: `${shown} does not fit (${issue.message.replace(/^./, (first) => first.toLowerCase())})` });
+  const reason = reasonOf(issue, shown);
+  throw new Problem('sidecar-value', { file, place: place(key), reason });
 }
 
 /**

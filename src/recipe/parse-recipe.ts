@@ -1,6 +1,7 @@
 /** Recipes from outside: JSON text, `path=value` settings, older versions. */
 import { z } from 'zod';
 import { Problem } from '../problems/problem.ts';
+import { reasonOf } from '../schema/reason.ts';
 import type { Recipe } from './recipe.ts';
 import { recipeFormat, recipeSchema, recipeVersion } from './recipe.ts';
 
@@ -94,22 +95,4 @@ function problemOf(error: z.ZodError, value: unknown): Problem {
   const path = ['recipe', ...keys.map(String)].join('.');
   const found = JSON.stringify(keys.reduce<unknown>((at, key) => (typeof at === 'object' && at !== null ? (at as Record<PropertyKey, unknown>)[key] : undefined), value));
   return new Problem('recipe-value', { path, reason: reasonOf(issue, found) });
-}
-
-function reasonOf(issue: z.core.$ZodIssue, found: string | undefined): string {
-  const value = found ?? 'nothing';
-  switch (issue.code) {
-    case 'too_small':
-      return issue.inclusive === false ? `${value} is not above ${String(issue.minimum)}` : `${value} is below ${String(issue.minimum)}`;
-    case 'too_big':
-      return issue.origin === 'array' ? `has more than ${String(issue.maximum)} entries${issue.message.startsWith('Too big') ? '' : ` (${issue.message})`}` : `${value} is above ${String(issue.maximum)}`;
-    case 'unrecognized_keys':
-      return 'is not a setting this version knows; "evenglow recipe" lists them';
-    case 'invalid_value':
-      return `${value} is not one of ${issue.values.map(String).join(', ')}`;
-    case 'invalid_type':
-      return issue.expected === 'int' ? `${value} is not a whole number` : `${value} is not a ${issue.expected}`;
-    default:
-      return `${value} is not valid (${issue.message})`;
-  }
 }

@@ -38,7 +38,7 @@ test('widths are full widths, made odd by rounding up; 1 changes nothing', () =>
   const line = Float32Array.from([0, 0, 3, 3, 3, 0, 0, 3, 3, 3, 3, 0, 0]);
   assert.deepEqual(greyOpening(line, 13, 1, 1, 1), line);
   assert.deepEqual(greyOpening(line, 13, 1, 3, 1), line);
-  assert.deepEqual([...greyOpening(line, 13, 1, 4, 1)], new Array(13).fill(0));
+  assert.deepEqual([...greyOpening(line, 13, 1, 4, 1)], [...new Float32Array(13)]);
   assert.deepEqual(greyOpening(line, 13, 1, 5, 1), greyOpening(line, 13, 1, 4, 1));
 });
 

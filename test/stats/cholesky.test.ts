@@ -5,7 +5,7 @@ import { seededRandom } from '../../src/stats/random.ts';
 import { assertClose } from '../fixtures/assert-close.ts';
 
 test('a full matrix solved by hand: Wilson’s, with x = (1, 1, 1, 1)', () => {
-  // T. S. Wilson's matrix (J. Morris, Philos. Mag. 37, 106, 1946) [P, typed from memory]: positive definite, condition number 2984, row sums 32, 23, 33, 31.
+  // T. S. Wilson's matrix (J. Morris, Philos. Mag. 37, 106, 1946) [M]: positive definite, condition number 2984, row sums 32, 23, 33, 31.
   const a = [[10, 7, 8, 7], [7, 5, 6, 5], [8, 6, 10, 9], [7, 5, 9, 10]];
   const band = new Float64Array(16);
   for (let i = 0; i < 4; i++) for (let k = 0; k <= i; k++) band[i * 4 + k] = a[i]![i - k]!;

@@ -1,0 +1,59 @@
+/**
+ * `npm run pace`: how long an appraisal takes, part by part and end to end. `npm run pace -- --quick` does 512² only.
+ *
+ * Absolute times lie: they differ between machines and with what else runs. The last column divides by a fixed loop over as
+ * many pixels, timed in the same run; compare that, and the minimum rather than the median.
+ */
+import { mkdtemp, rm } from 'node:fs/promises';
+import { cpus, tmpdir } from 'node:os';
+import { join } from 'node:path';
+import { parseArgs } from 'node:util';
+import { appraisalPace } from './appraisal-pace.ts';
+import type { AppraisalPace } from './appraisal-pace.ts';
+import { commandPace } from './command-pace.ts';
+import { paintedFiles } from './scans.ts';
+import { aligned, shownMs } from './times.ts';
+import type { Times } from './times.ts';
+
+/** Larger maps are repeated less often; their times scatter less. */
+const sizes = [{ side: 512, repeats: 7 }, { side: 1024, repeats: 5 }, { side: 2048, repeats: 3 }] as const;
+const commandRepeats = 3;
+const header = ['', 'min ms', 'median ms', '× reference'] as const;
+
+const { values } = parseArgs({ options: { quick: { type: 'boolean', default: false } } });
+const chosen = values.quick ? sizes.slice(0, 1) : sizes;
+const commandSide = values.quick ? 512 : 1024;
+
+const directory = await mkdtemp(join(tmpdir(), 'evenglow-pace-'));
+try {
+  const processors = cpus();
+  print(`Node ${process.versions.node}, ${process.platform} ${process.arch}, ${processors.length} × ${processors[0]?.model.trim() || 'unnamed processor'}`);
+  let sink = 0;
+  let commandReference: Times | undefined;
+  for (const { side, repeats } of chosen) {
+    const pace = await appraisalPace(paintedFiles(side), directory, repeats);
+    sink += pace.sink;
+    if (side === commandSide) commandReference = pace.reference;
+    print(`\n${side} × ${side} pixels, ${repeats} repeats after a warm-up, usable ${(100 * pace.usableShare).toFixed(4)} %`);
+    print(aligned(appraisalRows(pace)));
+  }
+  const command = await commandPace(paintedFiles(commandSide), directory, commandRepeats);
+  print(`\nCommand line, a pair of ${commandSide} × ${commandSide} pixels, ${commandRepeats} repeats after a warm-up`);
+  print(aligned([header, row('start-up', command.startUp, commandReference), row('appraise, end to end', command.appraise, commandReference)]));
+  print(`\nsink ${sink.toPrecision(12)}`);
+} finally {
+  await rm(directory, { recursive: true, force: true });
+}
+
+function appraisalRows({ reference, parts }: AppraisalPace): (readonly string[])[] {
+  return [header, row('reference loop', reference, reference), ...[...parts].map(([name, times]) => row(name, times, reference))];
+}
+
+function row(name: string, { minMs, medianMs }: Times, reference: Times | undefined): readonly string[] {
+  const ratio = reference === undefined ? '' : (minMs / reference.minMs).toFixed(1);
+  return [name, shownMs(minMs), shownMs(medianMs), ratio];
+}
+
+function print(text: string): void {
+  process.stdout.write(`${text}\n`);
+}
