@@ -8,7 +8,7 @@ import type { Notice } from '../problems/problem.ts';
 import { anchorOf } from './anchor.ts';
 import type { Anchor, DeviceQuestion } from './anchor.ts';
 import type { Barrier, DeviceDensity, Reference, Rung } from './barrier.ts';
-import { ladderNotices, referenceNotices } from './barrier-notices.ts';
+import { ladderNotices, probeFieldNotices, referenceNotices } from './barrier-notices.ts';
 import type { BarrierSection } from './recipe.ts';
 import { chooseReference } from './reference.ts';
 import type { Candidate } from './reference.ts';
@@ -79,6 +79,7 @@ export function assessBarrier(
     bound: candidate.bound,
   }));
   if (choice) warnings.push(...referenceNotices(choice, candidates, origin, device), ...ladderNotices(terraces, anchor?.modelStepDecades));
+  warnings.push(...probeFieldNotices(anchor?.scanBiasV, anchored?.thicknessM));
   if (!amperes) warnings.push(notice(current.unit === 'A' ? 'bias-missing' : 'current-relative', {}));
   if (surface === 'stack') warnings.push(notice('barrier-stack-surface', {}));
 

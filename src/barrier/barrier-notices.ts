@@ -1,6 +1,8 @@
 /** What is worth saying about the reference and the ladder. */
 import { notice } from '../problems/problem.ts';
 import type { Notice } from '../problems/problem.ts';
+import { breakdownVPerNm } from './model/barrier-warnings.ts';
+import { fieldVPerNm } from './model/field.ts';
 import type { DeviceDensity } from './barrier.ts';
 import type { Candidate, ReferenceChoice } from './reference.ts';
 import type { Terraces } from './terraces.ts';
@@ -22,6 +24,13 @@ export function referenceNotices(choice: ReferenceChoice, candidates: readonly C
   if (passed) found.push(notice('reference-passed-over', { layers: passed.step - origin, areaUm2: passed.areaM2 * 1e12 }));
   if (candidates.every((candidate) => candidate.bound !== 'exact' || candidate === choice.chosen) && candidates.length === 1) found.push(notice('ladder-one-terrace', {}));
   return found;
+}
+
+/** What the scan itself may have done to the barrier: a field under the probe above the published breakdown is said. */
+export function probeFieldNotices(scanBiasV: number | undefined, thicknessM: number | undefined): Notice[] {
+  if (scanBiasV === undefined || thicknessM === undefined) return [];
+  const field = fieldVPerNm(scanBiasV, thicknessM);
+  return field > breakdownVPerNm ? [notice('probe-field', { fieldVPerNm: field, biasV: Math.abs(scanBiasV) })] : [];
 }
 
 /** Remarks about the step of the ladder: a ladder that contradicts the model is said, not hidden. */

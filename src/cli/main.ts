@@ -6,11 +6,12 @@ import { appraiseCommand } from './appraise-command.ts';
 import { barrierCommand } from './barrier-command.ts';
 import type { Command } from './command.ts';
 import { exitCodes, isUsageError } from './command.ts';
+import { demoCommand } from './demo-command.ts';
 import { helpOf, overview } from './help.ts';
 import type { Output } from './output.ts';
 import { recipeCommand } from './recipe-command.ts';
 
-export const commands: readonly Command[] = [appraiseCommand, barrierCommand, recipeCommand];
+export const commands: readonly Command[] = [appraiseCommand, barrierCommand, recipeCommand, demoCommand];
 
 const processOutput: Output = {
   out: (text) => void process.stdout.write(text),

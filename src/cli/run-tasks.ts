@@ -60,7 +60,8 @@ class Thread {
   private stopped = false;
 
   work(task: AppraiseTask, onStage: (stage: string) => void): Promise<AppraiseResult> {
-    this.worker ??= new Worker(new URL('./appraise-thread.mjs', import.meta.url));
+    // A library in the thread reads workerData as soon as it loads, so it must be there.
+    this.worker ??= new Worker(new URL('./appraise-thread.mjs', import.meta.url), { workerData: {} });
     const worker = this.worker;
     return new Promise((resolve, reject) => {
       const settle = (): void => {

@@ -28,7 +28,7 @@ export interface Raised {
   readonly mask: Uint8Array;
   /** Decades the current lies below that of the nearest undisturbed ground, within three pixels of raised ground; absent without current. */
   readonly drop?: Float32Array;
-  /** Raised pixels whose current is in order: worth a note, not a loss. */
+  /** Raised pixels apart from all flaws whose current is in order: worth a note, not a loss. */
   readonly conductingPixels: number;
 }
 
@@ -53,7 +53,7 @@ export function findRaised(input: RaisedInput): Raised {
   const nearest = nearestAdmitted(outside, columns, rows);
   const mask = new Uint8Array(zone.length);
   const drop = new Float32Array(zone.length);
-  let conductingPixels = 0;
+  const conducting = new Uint8Array(zone.length);
   for (let i = 0; i < zone.length; i++) {
     if (zone[i] === 0) continue;
     const from = nearest[i]!;
@@ -64,10 +64,15 @@ export function findRaised(input: RaisedInput): Raised {
     else if (raised[i] === 1 && rise[i]! > input.startM) {
       // Beside ground that is itself saturated or at the floor a drop cannot be judged: the height alone decides.
       if (input.saturated?.[from] === 1 || input.floor?.[from] === 1) mask[i] = 1;
-      else conductingPixels++;
+      else conducting[i] = 1;
     }
   }
-  return { mask: withoutSpecks(keepTouching(mask, raised, columns, rows), columns, rows, input.minPixels), drop, conductingPixels };
+  const final = withoutSpecks(keepTouching(mask, raised, columns, rows), columns, rows, input.minPixels);
+  // The flanks of a flaw rise too; only what stands apart from all flaws is a bump of its own.
+  const near = dilate(final, columns, rows, reachPx);
+  let conductingPixels = 0;
+  for (let i = 0; i < near.length; i++) if (conducting[i] === 1 && near[i] === 0) conductingPixels++;
+  return { mask: final, drop, conductingPixels };
 }
 
 /**

@@ -1,6 +1,7 @@
 /** What the ground stage hands on: levelled height and conditioned current with their masks. */
 import type { MaskMap, ScalarMap } from '../grid/maps.ts';
 import type { Notice } from '../problems/problem.ts';
+import type { Outline } from '../read/sample.ts';
 
 export interface HeightGround {
   /** Levelled height in metres: ground near 0, NaN where missing and not repaired. */
@@ -39,8 +40,24 @@ export interface CurrentGround {
   readonly wearDecades: number;
 }
 
+/** What lies bare beside the flake: `both` injector and substrate, `unknown` when only the height tells. */
+export type BareGround = 'injector' | 'substrate' | 'both' | 'unknown';
+
+/** An outline for a map that has none and shows more than the flake. Nothing has been left out by it. */
+export interface FootprintProposal {
+  readonly ground: BareGround;
+  /** Area of the bare ground and its depth below the flake at their common border, m² and metres. */
+  readonly bareM2: number;
+  readonly stepM: number;
+  readonly flakeM2: number;
+  /** The flake as one polygon of layer `barrier`; gaps of 0.25 µm² and more are holes. */
+  readonly outline: Outline;
+}
+
 export interface Ground {
   readonly height?: HeightGround;
   readonly current?: CurrentGround;
+  /** Only for a sample without outlines, and only on evidence. */
+  readonly footprintProposal?: FootprintProposal;
   readonly warnings: readonly Notice[];
 }

@@ -6,6 +6,8 @@ export const appraisalSentences = {
     'The current map shows no spot without current, so its offset could not be measured and zero was assumed.',
   'current-wear': (d: { decades: number }) =>
     `The tip lost ${d.decades.toFixed(2)} decades of conductance from the first line to the last; this was undone as a factor per line.`,
+  'footprint-proposed': (d: { sample: string; ground: 'injector' | 'substrate' | 'both' | 'unknown'; areaUm2: number; stepNm: number; flakeUm2: number }) =>
+    `${bareWords[d.ground]} seems to be in view over ${d.areaUm2.toFixed(2)} µm², ${d.stepNm.toFixed(1)} nm below the rest, and is counted as footprint; to appraise the flake alone, save footprintProposal from verdict.json (${d.flakeUm2.toFixed(2)} µm²) as ${d.sample}.outlines.geojson beside the maps.`,
   'threshold-raised': (d: { statedNm: number; usedNm: number; noiseNm: number }) =>
     `The height's noise is ${short(d.noiseNm)} nm, so flaws were sought from ${short(d.usedNm)} nm up instead of flaws.heightNm = ${short(d.statedNm)} nm.`,
   'bumps-conduct': (d: { areaUm2: number }) =>
@@ -21,6 +23,8 @@ export const appraisalSentences = {
     `Even, but not known to glow: the reference would carry ${short(d.naPerUm2)} nA/µm² (95 %: ${short(d.lowNaPerUm2)}–${short(d.highNaPerUm2)}) at ${short(d.biasV)} V, outside the recipe's range.`,
   'reference-passed-over': (d: { layers: number; areaUm2: number }) =>
     `A terrace ${layersApart(d.layers)} (${d.areaUm2.toFixed(2)} µm²) would carry a density in range, but it is too rare or too near the floor to measure a map against.`,
+  'probe-field': (d: { fieldVPerNm: number; biasV: number }) =>
+    `The scan put ${short(d.fieldVPerNm)} V/nm on the reference terrace at ${short(d.biasV)} V; hBN was found to break down near 1.2 V/nm (Hattori et al., ACS Nano 9, 916, 2015), so some shorts may be the scan's own.`,
   'ladder-one-terrace': (_: Record<string, never>) => 'The map shows one terrace only, so the step per layer is taken from the model.',
   'ladder-contradicts': (d: { measured: number; model: number }) =>
     `The current falls by ${d.measured.toFixed(2)} decades per layer, the model expects ${d.model.toFixed(2)}; thickness and density from this model are in doubt.`,
@@ -29,6 +33,10 @@ export const appraisalSentences = {
   'current-relative': (_: Record<string, never>) =>
     'The current has no scale in amperes: layers, thickness, device bias and density are absent, and the band is judged by the ratio of currents.',
 };
+
+const bareWords = {
+  injector: 'Bare injector', substrate: 'Substrate or barrier without injector', both: 'Bare injector and substrate', unknown: 'Substrate or bare injector',
+} as const;
 
 function short(value: number): string {
   return String(Number(value.toPrecision(2)));

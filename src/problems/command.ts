@@ -10,4 +10,7 @@ export const commandSentences = {
   'input-unreadable': (d: { path: string; reason: string }) => `${d.path} cannot be read (${d.reason}).`,
   'input-none': (d: { path: string }) => `${d.path} holds no map that Evenglow reads; see "evenglow appraise --help" for how files are named.`,
   'output-unwritable': (d: { path: string; reason: string }) => `${d.path} cannot be written (${d.reason}); choose another folder with --out.`,
+  'demo-differs': (d: { path: string; others: number }) =>
+    `${d.path} is there already and differs${d.others > 0 ? `, and so ${d.others === 1 ? 'does 1 more file' : `do ${d.others} more files`}` : ''}, so nothing was written; choose another folder, or replace with --force.`,
+  'demo-unwritable': (d: { path: string; reason: string }) => `${d.path} cannot be written (${d.reason}); choose another folder.`,
 };

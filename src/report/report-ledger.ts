@@ -68,6 +68,6 @@ ${current ? currentLine(current) : markup`<dt>Current</dt><dd>not measured: shor
 
 function currentLine(current: NonNullable<Appraised['ground']['current']>): Markup {
   const value = (amount: number): string => (current.unit === 'A' ? withPrefix(amount, 'A') : withUnit(amount, 'of the file’s unit'));
-  const wear = current.wearDecades === 0 ? 'no tip wear found' : `the tip lost ${withUnit(current.wearDecades, 'decades', 2)} of conductance`;
+  const wear = Math.abs(current.wearDecades) < 0.2 ? 'no tip wear told from the barrier' : `the tip ${current.wearDecades > 0 ? 'lost' : 'gained'} ${withUnit(Math.abs(current.wearDecades), 'decades', 2)} of conductance`;
   return markup`<dt>Current</dt><dd>offset ${value(current.offsetA)} removed, noise ${value(current.noiseA)}, floor ${value(current.floorA)}, ${counted(current.saturatedPixels, 'pixel')} saturated, ${current.repairedPixels} repaired; ${wear}</dd>`;
 }

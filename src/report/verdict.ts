@@ -1,7 +1,7 @@
 /** verdict.json: the appraisal in numbers, for scripts. Its layout is frozen by `version`. */
 import type { Barrier } from '../barrier/barrier.ts';
 import type { Flaw, FlawCause, Flaws } from '../flaws/flaws.ts';
-import type { CurrentGround, Ground } from '../ground/ground.ts';
+import type { CurrentGround, FootprintProposal, Ground } from '../ground/ground.ts';
 import type { Ledger } from '../ledger/ledger.ts';
 import type { Sample } from '../read/sample.ts';
 import type { SheetTotals } from '../sheet/sheet.ts';
@@ -33,6 +33,7 @@ export function verdictOf(appraised: Appraised, app: App) {
     recipe,
     map: mapPart(sample),
     ground: groundPart(ground),
+    footprintProposal: ground.footprintProposal && footprintPart(ground.footprintProposal),
     ledger: ledgerPart(ledger),
     usable: usablePart(ledger),
     reference: barrier && referencePart(barrier, ground.current),
@@ -58,6 +59,12 @@ function groundPart({ height, current }: Ground) {
     height: height && { noiseNm: toNm(height.noiseM), repairedPixels: height.repairedPixels, tiltNm: toNm(height.tiltM) },
     current: current && currentPart(current),
   };
+}
+
+/** GeoJSON (RFC 7946) in µm from the map's lower-left corner: saved by itself it is an outlines file that the read stage takes. */
+function footprintPart({ outline }: FootprintProposal) {
+  const coordinates = outline.rings.map((ring) => ring.map(([xM, yM]) => [toUm(xM), toUm(yM)]));
+  return { type: 'FeatureCollection', features: [{ type: 'Feature', properties: { layer: outline.layer }, geometry: { type: 'Polygon', coordinates } }] };
 }
 
 /** Without amperes the fields that end in A are absent; the same numbers are given as `…Relative`. */

@@ -124,6 +124,16 @@ test('within a terrace: the contact’s scatter stays out by default, and goes t
   assert.deepEqual(own.layers!.data, shared.layers!.data, 'layers are whole either way');
 });
 
+test('the border between two terraces lies half-way between them in log current', () => {
+  const [upper, lower] = [Math.log10(terraceCurrentA(11, scanV)), Math.log10(terraceCurrentA(12, scanV))];
+  const currentA = scene.currentA.slice();
+  const parts = [0.4, 0.45, 0.55, 0.6];
+  const at = (k: number) => 60 * size + 50 + 3 * k;
+  parts.forEach((part, k) => { currentA[at(k)] = 10 ** (upper + part * (lower - upper)); });
+  const found = assess({ ...scene, sample: createSample({ columns: size, rows: size, biasV: scanV, heightM: scene.heightM, currentA }) }, { referenceLayers: 11 });
+  assert.deepEqual(parts.map((_, k) => found.layers!.data[at(k)]), [11, 11, 12, 12]);
+});
+
 test('one terrace: the step is the model’s, and said', () => {
   const found = assess(createScene({ seed: 'single', size, things: typicalThings(size) }), { referenceLayers: 11 });
   assert.equal(found.ladder.from, 'model');

@@ -52,7 +52,10 @@ test('a centre out of range whose interval reaches into it may glow', () => {
 test('censored terraces are not taken while a measured one is there', () => {
   const found = choose([terrace(-3, 6, 5, { bound: 'at-most' }), terrace(1, 1, 500), terrace(9, 4, 5, { bound: 'at-least' })])!;
   assert.equal(found.chosen.step, 1);
-  assert.equal(choose([terrace(-3, 6, undefined, { bound: 'at-most' }), terrace(9, 7, undefined, { bound: 'at-least' })])!.chosen.step, 9);
+  assert.equal(choose([terrace(-3, 6, undefined, { bound: 'at-most' }), terrace(9, 7, undefined, { bound: 'at-least' })]), undefined, 'all ground is censored');
+  const speck = terrace(1, 0.1);
+  assert.equal(choose([terrace(-3, 6, undefined, { bound: 'at-most' }), speck]), undefined, 'a speck between censored ground is none either');
+  assert.equal(choose([speck])!.chosen, speck, 'all there is on a tiny map');
 });
 
 test('too small a share or too near the floor: passed over, and said; what is smaller than a terrace is not even said', () => {

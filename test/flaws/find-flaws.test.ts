@@ -179,6 +179,17 @@ test('one saturated pixel is a short; a spot two layers brighter is, a spot of o
   assert.equal(flawAt(three, 91, 91)?.cause, 'short');
 });
 
+test('the largest short: 49 pixels of 0.0004 µm² are within 0.02 µm², 56 are not', () => {
+  const made = createScene({ seed: 'largest', size, things: plain.slice(0, 1), scatterDecades: 0.02 });
+  const currentA = made.currentA.slice();
+  for (let r = 90; r < 97; r++) {
+    for (let c = 30; c < 37; c++) currentA[r * size + c]! *= 10 ** (2.4 * scale.layerDecades);
+    for (let c = 80; c < 88; c++) currentA[r * size + c]! *= 10 ** (2.4 * scale.layerDecades);
+  }
+  const flaws = find(createSample({ columns: size, rows: size, biasV, heightM: made.heightM, currentA }));
+  assert.deepEqual([flawAt(flaws, 33, 93)?.pixels, flawAt(flaws, 84, 93)], [49, undefined]);
+});
+
 test('thresholds: flaws.heightNm, flaws.dropDecades and flaws.minPixels decide', () => {
   const made = createScene({ seed: 'limits', size, things: [...plain.slice(0, 1), { kind: 'residue', c: 90, r: 90, radiusPx: 9, peakNm: 1.5, decades: 0.8 }] });
   assert.equal(flawAt(find(made.sample), 90, 90)?.cause, 'residue');

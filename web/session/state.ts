@@ -16,6 +16,8 @@ export interface SampleState {
   readonly id: string;
   readonly name: string;
   readonly files: readonly string[];
+  /** True for the invented samples that the page opens on. */
+  readonly demo?: boolean;
   readonly status: SampleStatus;
   /** Stage at work and how many of all are done, while working. */
   readonly progress?: { readonly stage: string; readonly done: number; readonly total: number };
@@ -29,6 +31,8 @@ export interface SampleState {
   readonly at: number;
   /** Number of the newest run; answers of older runs are dropped. */
   readonly run: number;
+  /** True after a run that ended with a lost worker, until one succeeds: it is retried once by itself. */
+  readonly restarted?: boolean;
 }
 
 export type Place = { readonly name: 'tray' } | { readonly name: 'sample'; readonly id: string };

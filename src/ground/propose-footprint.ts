@@ -1,0 +1,287 @@
+/**
+ * Where a map without outlines shows bare injector or substrate beside the flake, the flake's outline is proposed: that ground would
+ * otherwise be booked as if it were barrier. Without evidence there is no proposal, and nothing else is changed either way.
+ */
+import { labelComponents } from '../grid/label-components.ts';
+import type { Components } from '../grid/label-components.ts';
+import { pixelAreaM2 } from '../grid/maps.ts';
+import type { Grid, MaskMap, ScalarMap } from '../grid/maps.ts';
+import { traceOutline } from '../grid/trace-outline.ts';
+import { solveBand } from '../stats/cholesky.ts';
+import { median } from '../stats/median.ts';
+import { mostCommon } from './centre.ts';
+import type { BareGround, CurrentGround, FootprintProposal } from './ground.ts';
+import { lineDifferencesSolved } from './lines.ts';
+
+/** Ground this far below the most common one is looked at: more than four layers, so that a terrace or two below are not. */
+const lowM = 1.5e-9;
+/** With a telling current: least step at the border, metres, and least share of the map. */
+const told = { stepM: 2e-9, share: 0.03 };
+/** With the height alone. */
+const untold = { stepM: 2.5e-9, share: 0.05 };
+/** Censored share that makes a region's current telling; the rest must have less than `restShare`. */
+const censoredShare = 0.75;
+const restShare = 0.5;
+/** Smaller gaps inside the flake belong to it: they are pinholes, which the ledger books. Smaller bare pieces are no region. */
+const holeM2 = 0.25e-12;
+/** The step is read between points this far from the border on both sides, so that a rounded edge does not shrink it. */
+const reachM = 60e-9;
+/** A border with fewer crossings along the lines than this share of those across them is a jump between lines. */
+const crossingShare = 0.05;
+
+/**
+ * Proposes the flake's outline. A region counts as bare when it touches the map's border, lies at least 2 nm below the most common
+ * ground behind a distinct step, covers 3 % of the map, and its current is censored over three quarters while the rest's is not:
+ * saturated = injector, at the floor = substrate. Without such a current, 2.5 nm and 5 % are asked for and the ground is
+ * "unknown". A region whose border only runs along scan lines is never taken: the scanner may have jumped.
+ * The outline is the largest connected rest with gaps below 0.25 µm² filled.
+ *
+ * @param height as read, metres, not levelled: a form or lines fitted to heights lean on a step, so both are fitted here on differences, which
+ * a step spoils only where it is crossed. NaN is no evidence; missing pixels go with the pixel above.
+ * @param repaired pixels whose height is broken (they count as missing); @param order of the form.
+ * @returns undefined without evidence, and for maps below 32 × 32.
+ */
+export function proposeFootprint(height: ScalarMap, repaired: MaskMap, current: CurrentGround | undefined, grid: Grid, order: number): FootprintProposal | undefined {
+  const { columns, rows } = grid;
+  if (columns < 32 || rows < 32) return undefined;
+  const h = fillShortGaps(levelOnDifferences(height.data.map((value, i) => (repaired.data[i] === 1 ? Number.NaN : value)), columns, rows, order), columns);
+  const low = new Uint8Array(h.length);
+  let lowPixels = 0;
+  for (let i = 0; i < h.length; i++) if (h[i]! < -lowM) lowPixels += low[i] = 1;
+  if (lowPixels < told.share * h.length) return undefined;
+
+  const regions = labelComponents(low, columns, rows, 4);
+  const currents = current && censoredIn(current, regions);
+  const atBorder = touching(regions.labels, columns, rows, regions.count);
+  const accepted: { region: number; kind: BareGround; depthM: number; stepM: number }[] = [];
+  for (let region = 1; region <= regions.count; region++) {
+    if (atBorder[region] === 0 || regions.pixels[region]! < told.share * h.length) continue;
+    const kind = currents ? kindOf(currents, region) : 'unknown';
+    if (kind === undefined) continue;
+    const least = kind === 'unknown' ? untold : told;
+    if (regions.pixels[region]! < least.share * h.length) continue;
+    const depthM = -medianIn(h, regions, region);
+    const stepM = borderStep(h, regions.labels, region, grid);
+    if (depthM >= least.stepM && stepM >= least.stepM) accepted.push({ region, kind, depthM, stepM });
+  }
+  if (accepted.length === 0) return undefined;
+
+  const bare = bareMask(h, regions, grid, currents, accepted);
+  const flake = mainPatch(bare, grid);
+  const outlines = traceOutline(flake, grid);
+  const rings = outlines[0];
+  if (rings === undefined) return undefined;
+  const kinds = new Set(accepted.map(({ kind }) => kind));
+  const areaOf = (mask: Uint8Array) => mask.reduce((sum, value) => sum + value, 0) * pixelAreaM2(grid);
+  return {
+    ground: kinds.size === 1 ? accepted[0]!.kind : kinds.has('unknown') ? 'unknown' : 'both',
+    bareM2: areaOf(bare),
+    stepM: median(accepted.map(({ stepM }) => stepM)),
+    flakeM2: areaOf(flake),
+    outline: { layer: 'barrier', rings },
+  };
+}
+
+/**
+ * Height minus a form whose slopes agree with most differences between points a thirty-second of the map apart, minus line offsets from
+ * differences too small to cross the step sought, zero at the most common height.
+ */
+function levelOnDifferences(values: Float32Array, columns: number, rows: number, order: number): Float32Array {
+  const powers: [number, number][] = [];
+  for (let total = 1; total <= order; total++) for (let j = 0; j <= total; j++) powers.push([total - j, j]);
+  const form = slopeForm(values, columns, rows, powers);
+  const out = new Float32Array(values.length);
+  const byRow = new Float64Array(order + 1);
+  for (let r = 0, i = 0; r < rows; r++) {
+    const v = (2 * r) / (rows - 1) - 1;
+    byRow.fill(0);
+    powers.forEach(([p, q], k) => { byRow[p]! += form[k]! * v ** q; });
+    for (let c = 0; c < columns; c++, i++) {
+      const u = (2 * c) / (columns - 1) - 1;
+      let sum = 0;
+      for (let p = order; p >= 0; p--) sum = sum * u + byRow[p]!;
+      out[i] = values[i]! - sum;
+    }
+  }
+  const lines = lineDifferencesSolved(out, columns, rows, () => true, lowM);
+  for (let i = 0; i < out.length; i++) out[i]! -= lines[(i / columns) | 0]!;
+  const step = Math.max(1, Math.floor(out.length / 40_000));
+  const zero = mostCommon(Float64Array.from(out.filter((value, i) => i % step === 0 && !Number.isNaN(value))));
+  return out.map((value) => value - zero);
+}
+
+/**
+ * Coefficients of u^p·v^q, u and v from −1 to 1, by least squares on differences with Tukey's biweight, which leaves out the few that
+ * cross a step (Beaton & Tukey, Technometrics 16, 147, 1974; constant 4.685 by Holland & Welsch, Commun. Stat. A6, 813, 1977).
+ */
+function slopeForm(values: Float32Array, columns: number, rows: number, powers: readonly (readonly [number, number])[]): Float64Array {
+  const n = powers.length;
+  const lagC = Math.max(2, Math.round(columns / 32));
+  const lagR = Math.max(2, Math.round(rows / 32));
+  const step = Math.max(1, Math.floor(Math.sqrt((columns * rows) / 20_000)));
+  const basis: number[] = [];
+  const differences: number[] = [];
+  const add = (r0: number, c0: number, r1: number, c1: number) => {
+    const difference = values[r1 * columns + c1]! - values[r0 * columns + c0]!;
+    if (Number.isNaN(difference)) return;
+    differences.push(difference);
+    const [u0, v0, u1, v1] = [(2 * c0) / (columns - 1) - 1, (2 * r0) / (rows - 1) - 1, (2 * c1) / (columns - 1) - 1, (2 * r1) / (rows - 1) - 1];
+    for (const [p, q] of powers) basis.push(u1 ** p * v1 ** q - u0 ** p * v0 ** q);
+  };
+  for (let r = step >> 1; r < rows; r += step) {
+    for (let c = step >> 1; c < columns; c += step) {
+      if (c + lagC < columns) add(r, c, r, c + lagC);
+      if (r + lagR < rows) add(r, c, r + lagR, c);
+    }
+  }
+  let form: Float64Array = new Float64Array(n);
+  const residual = Float64Array.from(differences);
+  let weights = new Float64Array(residual.length).fill(1);
+  for (let round = 0; round < 15; round++) {
+    const normal = new Float64Array(n * n);
+    const right = new Float64Array(n);
+    for (let e = 0; e < residual.length; e++) {
+      const w = weights[e]!;
+      if (w === 0) continue;
+      for (let i = 0; i < n; i++) {
+        const wb = w * basis[e * n + i]!;
+        right[i]! += wb * differences[e]!;
+        for (let j = 0; j <= i; j++) normal[i * n + (i - j)]! += wb * basis[e * n + j]!;
+      }
+    }
+    const next = solveBand(normal, n - 1, right);
+    // Too few differences to tell: the form found so far is kept.
+    if (next.some(Number.isNaN)) break;
+    form = next;
+    for (let e = 0; e < residual.length; e++) {
+      let fit = 0;
+      for (let i = 0; i < n; i++) fit += form[i]! * basis[e * n + i]!;
+      residual[e] = differences[e]! - fit;
+    }
+    const reach = 4.685 * Math.max(1e-12, 1.482602218505602 * median(residual.map(Math.abs)));
+    weights = residual.map((d) => (Math.abs(d) < reach ? (1 - (d / reach) ** 2) ** 2 : 0));
+  }
+  return form;
+}
+
+/** Missing pixels take the value above, three lines far at most: a broken run must not cut a region in two. Changes `h`. */
+function fillShortGaps(h: Float32Array, columns: number): Float32Array {
+  const depth = new Uint8Array(columns);
+  for (let i = 0; i < h.length; i++) {
+    const c = i % columns;
+    if (!Number.isNaN(h[i]!)) depth[c] = 0;
+    else if (i >= columns && depth[c]! < 3) {
+      h[i] = h[i - columns]!;
+      depth[c]!++;
+    }
+  }
+  return h;
+}
+
+/** Per region (0 = the rest): all pixels, those with a current, and how many of these are saturated or at the floor. */
+interface Censored {
+  readonly pixels: Uint32Array;
+  readonly known: Float64Array;
+  readonly saturated: Float64Array;
+  readonly floor: Float64Array;
+}
+
+function censoredIn(current: CurrentGround, regions: Components): Censored {
+  const [known, saturated, floor] = [0, 0, 0].map(() => new Float64Array(regions.count + 1)) as [Float64Array, Float64Array, Float64Array];
+  const log10 = current.log10.data;
+  for (let i = 0; i < log10.length; i++) {
+    if (Number.isNaN(log10[i]!)) continue;
+    const region = regions.labels[i]!;
+    known[region]!++;
+    saturated[region]! += current.saturated.data[i]!;
+    floor[region]! += current.floor.data[i]!;
+  }
+  return { pixels: regions.pixels, known, saturated, floor };
+}
+
+/** What a region's current makes of it; undefined when it carries a current like a barrier. */
+function kindOf({ pixels, known, saturated, floor }: Censored, region: number): BareGround | undefined {
+  const share = (of: Float64Array, k: number) => (known[k]! > 0 ? of[k]! / known[k]! : 0);
+  if (known[region]! < pixels[region]! / 2) return 'unknown';
+  if (share(saturated, region) + share(floor, region) < censoredShare) return undefined;
+  // A flake that is censored itself leaves only the height to judge by.
+  if (share(saturated, 0) + share(floor, 0) > restShare) return 'unknown';
+  return share(saturated, region) >= censoredShare ? 'injector' : share(floor, region) >= censoredShare ? 'substrate' : 'both';
+}
+
+function touching(labels: Uint32Array, columns: number, rows: number, count: number): Uint8Array {
+  const touches = new Uint8Array(count + 1);
+  for (let c = 0; c < columns; c++) touches[labels[c]!] = touches[labels[(rows - 1) * columns + c]!] = 1;
+  for (let r = 0; r < rows; r++) touches[labels[r * columns]!] = touches[labels[r * columns + columns - 1]!] = 1;
+  return touches;
+}
+
+function medianIn(h: Float32Array, { labels }: Components, region: number): number {
+  return median(h.filter((_, i) => labels[i] === region));
+}
+
+/**
+ * Median rise from inside a region to outside, over all places along its border; 0 where the step is not distinct (a quarter of the
+ * places rise by less than half of it), is seen at fewer than twenty places, or follows the scan lines.
+ */
+function borderStep(h: Float32Array, labels: Uint32Array, region: number, { columns, rows, pitchXM, pitchYM }: Grid): number {
+  const reachC = Math.min(20, Math.max(3, Math.round(reachM / pitchXM)));
+  const reachR = Math.min(20, Math.max(3, Math.round(reachM / pitchYM)));
+  const steps: number[] = [];
+  let along = 0;
+  let across = 0;
+  for (let r = 0, i = 0; r < rows; r++) {
+    for (let c = 0; c < columns; c++, i++) {
+      if (labels[i] !== region) continue;
+      for (const [dc, dr] of [[1, 0], [-1, 0], [0, 1], [0, -1]] as const) {
+        const beside = i + dc + dr * columns;
+        if (c + dc < 0 || c + dc >= columns || r + dr < 0 || r + dr >= rows || labels[beside] === region || Number.isNaN(h[beside]!)) continue;
+        if (dr === 0) along++;
+        else across++;
+        const [c1, r1, c0, r0] = [c + dc * reachC, r + dr * reachR, c - dc * reachC, r - dr * reachR];
+        if (Math.min(c0, c1) < 0 || Math.max(c0, c1) >= columns || Math.min(r0, r1) < 0 || Math.max(r0, r1) >= rows) continue;
+        const inner = r0 * columns + c0;
+        const outer = r1 * columns + c1;
+        const step = h[outer]! - h[inner]!;
+        if (labels[inner] === region && labels[outer] !== region && !Number.isNaN(step)) steps.push(step);
+      }
+    }
+  }
+  if (steps.length < 20 || along < crossingShare * across) return 0;
+  const sorted = Float64Array.from(steps).sort();
+  const middle = median(sorted);
+  return sorted[sorted.length >> 2]! >= middle / 2 ? middle : 0;
+}
+
+/** Accepted regions and their like (as deep, same current, 0.25 µm² or more), each up to half the depth, where the edge's slope is cut in two. */
+function bareMask(h: Float32Array, regions: Components, grid: Grid, currents: Censored | undefined, accepted: readonly { region: number; kind: BareGround; depthM: number }[]): Uint8Array {
+  const limit = new Float64Array(regions.count + 1).fill(Number.NEGATIVE_INFINITY);
+  for (const { region, depthM } of accepted) limit[region] = -Math.max(lowM, depthM / 2);
+  for (let region = 1; region <= regions.count; region++) {
+    if (Number.isFinite(limit[region]!) || regions.pixels[region]! * pixelAreaM2(grid) < holeM2) continue;
+    const kind = currents ? kindOf(currents, region) : 'unknown';
+    const depthM = -medianIn(h, regions, region);
+    if (accepted.some((known) => known.kind === kind && Math.abs(depthM / known.depthM - 1) < 0.25)) limit[region] = -Math.max(lowM, depthM / 2);
+  }
+  const bare = new Uint8Array(h.length);
+  for (let i = 0; i < h.length; i++) {
+    if (Number.isNaN(h[i]!)) bare[i] = i >= grid.columns ? bare[i - grid.columns]! : 0;
+    else if (h[i]! < limit[regions.labels[i]!]!) bare[i] = 1;
+  }
+  return bare;
+}
+
+/** The largest connected part of what is not bare, its small gaps filled. */
+function mainPatch(bare: Uint8Array, grid: Grid): Uint8Array {
+  const { columns, rows } = grid;
+  const rest = labelComponents(bare.map((value) => 1 - value), columns, rows, 4);
+  let largest = 1;
+  for (let k = 2; k <= rest.count; k++) if (rest.pixels[k]! > rest.pixels[largest]!) largest = k;
+  const patch = bare.map((_, i) => (rest.labels[i] === largest ? 1 : 0));
+  const gaps = labelComponents(patch.map((value) => 1 - value), columns, rows, 8);
+  const outside = touching(gaps.labels, columns, rows, gaps.count);
+  return patch.map((value, i) => {
+    const gap = gaps.labels[i]!;
+    return gap !== 0 && outside[gap] === 0 && gaps.pixels[gap]! * pixelAreaM2(grid) < holeM2 ? 1 : value;
+  });
+}

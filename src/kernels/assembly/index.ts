@@ -1,0 +1,6 @@
+/** All kernels as one module. Numbers and pointers only: memory is planned by the caller, nothing is imported. */
+export { findRuns, numberRuns } from "./label-runs";
+export { squaredDistances } from "./squared-distances";
+export { greyOpening } from "./grey-opening";
+export { rowDifferenceMedians } from "./row-difference-medians";
+export { riseAboveGround } from "./rise-above-ground";

@@ -1,0 +1,58 @@
+/** Where the ledger's segments and their labels stand; plain arithmetic in CSS pixels. */
+
+export interface Span {
+  readonly x: number;
+  readonly width: number;
+}
+
+/** A segment below this cannot be seen or hit. */
+export const leastWidth = 3;
+
+/**
+ * Widths in proportion to `shares` that fill `width` exactly, none below `least` and `gaps[i]` pixels free before segment i.
+ * What the small ones gain, the large ones give in proportion. When not even `least` fits for all, they are equal.
+ */
+export function segmentSpans(shares: readonly number[], width: number, gaps: readonly number[], least = leastWidth): readonly Span[] {
+  const room = Math.max(0, width - gaps.reduce((sum, gap) => sum + gap, 0));
+  const widths = sharedWidths(shares, room, least);
+  let x = 0;
+  return widths.map((each, index) => {
+    x += gaps[index] ?? 0;
+    const span = { x, width: each };
+    x += each;
+    return span;
+  });
+}
+
+function sharedWidths(shares: readonly number[], room: number, least: number): readonly number[] {
+  if (shares.length * least >= room) return shares.map(() => room / Math.max(1, shares.length));
+  const small = new Set<number>();
+  // Each round lifts segments to the least width; the others share what is left, which may push further ones below it.
+  for (;;) {
+    const left = room - small.size * least;
+    const sum = shares.reduce((total, share, index) => (small.has(index) ? total : total + share), 0);
+    const before = small.size;
+    const widths = shares.map((share, index) => (small.has(index) ? least : (share / (sum > 0 ? sum : 1)) * left));
+    widths.forEach((each, index) => { if (each < least) small.add(index); });
+    if (small.size === before) return widths;
+  }
+}
+
+/**
+ * Left edges of labels in one row so that none overlap, each as near as the order allows to the left edge of its own segment;
+ * undefined when the row is too short for all (then a wrapped legend is the answer).
+ */
+export function labelRow(wanted: readonly number[], widths: readonly number[], width: number, gap: number): readonly number[] | undefined {
+  const needed = widths.reduce((sum, each) => sum + each, 0) + gap * Math.max(0, widths.length - 1);
+  if (needed > width) return undefined;
+  const places = [...wanted];
+  for (let i = 0, free = 0; i < places.length; i++) {
+    places[i] = Math.max(places[i] ?? 0, free);
+    free = (places[i] ?? 0) + (widths[i] ?? 0) + gap;
+  }
+  for (let i = places.length - 1, end = width; i >= 0; i--) {
+    places[i] = Math.min(places[i] ?? 0, end - (widths[i] ?? 0));
+    end = (places[i] ?? 0) - gap;
+  }
+  return places;
+}

@@ -1,0 +1,262 @@
+/** The map itself: a canvas of the screen's pixels that asks the computation for exactly the part in sight. */
+import { LitElement, css, html } from 'lit';
+import type { PropertyValues } from 'lit';
+import type { Compute, FlawEntry, MapName, Picture, PictureRequest, PointValues, SampleSummary } from '../../workers/api.ts';
+import { drawMap } from './draw-map.ts';
+import type { HeldPicture } from './draw-map.ts';
+import { Gestures } from './gestures.ts';
+import type { GestureTarget } from './gestures.ts';
+import { Latest } from './latest.ts';
+import type { Limits } from './value-axis.ts';
+import { centreView, fitView, panView, toSample, visiblePart, zoomView } from './view.ts';
+import type { Size, View } from './view.ts';
+
+export interface Cut {
+  readonly fromUm: readonly [number, number];
+  readonly toUm: readonly [number, number] | undefined;
+}
+
+interface PointQuestion {
+  readonly id: string;
+  readonly xUm: number;
+  readonly yUm: number;
+  readonly clicked: boolean;
+}
+
+/** A selected flaw is brought to at least this many stage pixels. */
+const flawPixels = 36;
+
+export class MapStage extends LitElement implements GestureTarget {
+  static override properties = {
+    summary: { attribute: false }, compute: { attribute: false }, map: { attribute: false }, limits: { attribute: false }, causes: { attribute: false },
+    flaw: { attribute: false }, cut: { attribute: false }, cutting: { type: Boolean, reflect: true },
+  };
+
+  declare summary: SampleSummary;
+  declare compute: Compute;
+  declare map: MapName;
+  declare limits: Limits;
+  declare causes: PictureRequest['causes'];
+  declare flaw: FlawEntry | undefined;
+  declare cut: Cut | undefined;
+  /** Clicks set the ends of a cut. */
+  declare cutting: boolean;
+
+  private view: View | undefined;
+  /** Whether the whole map is to stay in sight when the stage changes its size. */
+  private whole = true;
+  private stage: Size = { width: 0, height: 0 };
+  private picture: HeldPicture | undefined;
+  private askedKey = '';
+  private cross: { readonly xUm: number; readonly yUm: number } | undefined;
+  private frame = 0;
+  private readonly sizes = new ResizeObserver(() => { this.onSize(); });
+  private readonly pictures = new Latest<PictureRequest, Picture>((request) => this.compute.picture(request), (request, picture) => { this.hold(request, picture); }, (_, error) => { this.fail(error); });
+  private readonly points = new Latest<PointQuestion, PointValues>(
+    ({ id, xUm, yUm }) => this.compute.point(id, xUm, yUm),
+    ({ clicked }, values) => {
+      this.send('point', values);
+      if (clicked) this.send('flaw-select', { flaw: values.flaw?.flaw });
+    },
+    (_, error) => { this.fail(error); },
+  );
+
+  static override styles = css`
+    :host { display: block; position: relative; min-height: 0; }
+    canvas { position: absolute; inset: 0; width: 100%; height: 100%; border-radius: 4px; cursor: crosshair; touch-action: none; }
+    canvas:active { cursor: grabbing; }
+    canvas:focus-visible { outline: 2px solid var(--focus, var(--glow-soft, #ffd9a0)); outline-offset: 2px; }
+    @media (max-width: 760px) { canvas { touch-action: pan-y; } }
+  `;
+
+  override render() {
+    return html`<canvas tabindex="0" role="application" aria-roledescription="map" aria-label="Map: ${this.map}. Plus and minus zoom, arrows move, 0 shows all of it." @keydown=${this.onKey}></canvas>`;
+  }
+
+  override connectedCallback(): void {
+    super.connectedCallback();
+    this.sizes.observe(this);
+  }
+
+  override disconnectedCallback(): void {
+    super.disconnectedCallback();
+    this.sizes.disconnect();
+    cancelAnimationFrame(this.frame);
+    this.pictures.forget();
+    this.points.forget();
+  }
+
+  override firstUpdated(): void {
+    new Gestures(this.canvas, this);
+  }
+
+  override willUpdate(changed: PropertyValues<this>): void {
+    const before = changed.get('summary');
+    if (before === undefined || !changed.has('summary')) return;
+    this.askedKey = '';
+    if (before.id === this.summary.id && before.columns === this.summary.columns && before.rows === this.summary.rows) return;
+    this.picture = undefined;
+    this.cross = undefined;
+    this.whole = true;
+    this.onSize();
+  }
+
+  override updated(): void {
+    this.refresh();
+  }
+
+  /** Brings a flaw to the middle, large enough to be seen. */
+  centreOn({ xUm, yUm, diameterUm }: FlawEntry): void {
+    if (!this.view) return;
+    const scale = Math.min(flawPixels / Math.max(diameterUm, 1e-9), fitView(this.summary, this.stage).scale * 8);
+    this.show(centreView(this.view, xUm, this.summary.heightUm - yUm, scale, this.summary, this.stage));
+  }
+
+  fit(): void {
+    this.whole = true;
+    this.view = fitView(this.summary, this.stage);
+    this.refresh();
+  }
+
+  pan(dx: number, dy: number): void {
+    if (this.view) this.show(panView(this.view, dx, dy, this.summary, this.stage));
+  }
+
+  zoom(factor: number, x = this.stage.width / 2, y = this.stage.height / 2): void {
+    if (this.view) this.show(zoomView(this.view, factor, x, y, this.summary, this.stage));
+  }
+
+  hover(x: number, y: number): void {
+    const place = this.place(x, y);
+    if (this.cross) {
+      this.cross = undefined;
+      this.refresh();
+    }
+    if (place) this.points.ask({ id: this.summary.id, ...place, clicked: false });
+    if (this.cutting && this.cut && !this.cut.toUm) this.send('cut-preview', place);
+  }
+
+  leave(): void {
+    this.send('point', undefined);
+  }
+
+  click(x: number, y: number): void {
+    const place = this.place(x, y);
+    if (!place) return;
+    if (this.cutting) this.send('cut-point', place);
+    else this.points.ask({ id: this.summary.id, ...place, clicked: true });
+  }
+
+  line(fromX: number, fromY: number, toX: number, toY: number, done: boolean): void {
+    const from = this.place(fromX, fromY);
+    const to = this.place(toX, toY);
+    if (from && to) this.send('cut-line', { fromUm: [from.xUm, from.yUm], toUm: [to.xUm, to.yUm], done });
+  }
+
+  /** Zoom and movement by keys; true when the key meant something. */
+  press(key: string): boolean {
+    const step = 60;
+    const moves: Readonly<Record<string, readonly [number, number]>> = { ArrowLeft: [step, 0], ArrowRight: [-step, 0], ArrowUp: [0, step], ArrowDown: [0, -step] };
+    const move = moves[key];
+    if (move) this.pan(...move);
+    else if (key === '+' || key === '=') this.zoom(1.4);
+    else if (key === '-') this.zoom(1 / 1.4);
+    else if (key === '0') this.fit();
+    else return false;
+    this.readMiddle();
+    return true;
+  }
+
+  private readonly onKey = (event: KeyboardEvent): void => {
+    if (event.ctrlKey || event.metaKey || event.altKey || !this.press(event.key)) return;
+    event.preventDefault();
+    event.stopPropagation();
+  };
+
+  /** Without a pointer the values in the middle are read out. */
+  private readMiddle(): void {
+    const place = this.place(this.stage.width / 2, this.stage.height / 2);
+    if (!place) return;
+    this.cross = place;
+    this.points.ask({ id: this.summary.id, ...place, clicked: false });
+    this.refresh();
+  }
+
+  private place(x: number, y: number) {
+    return this.view && toSample(this.view, x, y, this.summary);
+  }
+
+  private show(view: View): void {
+    this.whole = false;
+    this.view = view;
+    this.refresh();
+  }
+
+  private onSize(): void {
+    this.stage = { width: this.clientWidth, height: this.clientHeight };
+    if (this.stage.width === 0 || this.stage.height === 0 || !this.summary) return;
+    if (this.whole || !this.view) this.view = fitView(this.summary, this.stage);
+    else this.view = panView(this.view, 0, 0, this.summary, this.stage);
+    this.refresh();
+  }
+
+  /** Draws what is at hand and asks for what is wanted, if it differs. */
+  private refresh(): void {
+    cancelAnimationFrame(this.frame);
+    this.frame = requestAnimationFrame(() => { this.draw(); });
+    const part = this.view && visiblePart(this.view, this.summary, this.stage, devicePixelRatio);
+    if (!part || !this.limits) return;
+    const { low, high, log } = this.limits;
+    const request: PictureRequest = {
+      id: this.summary.id, map: this.map, ...part.part, width: part.picture.width, height: part.picture.height, low, high, log,
+      causes: this.causes, pixelRatio: devicePixelRatio, ...(this.flaw ? { flaw: this.flaw.flaw } : {}),
+    };
+    const key = JSON.stringify(request);
+    if (key === this.askedKey) return;
+    this.askedKey = key;
+    this.pictures.ask(request);
+  }
+
+  private hold(request: PictureRequest, { width, height, rgba }: Picture): void {
+    if (request.id !== this.summary.id) return;
+    const image = document.createElement('canvas');
+    image.width = width;
+    image.height = height;
+    image.getContext('2d')?.putImageData(new ImageData(rgba, width, height), 0, 0);
+    this.picture = { image, part: { left: request.left, top: request.top, columns: request.columns, rows: request.rows } };
+    this.send('picture', { map: request.map });
+    this.refresh();
+  }
+
+  private draw(): void {
+    const canvas = this.canvas;
+    const pen = canvas.getContext('2d');
+    if (!pen || !this.view || this.stage.width === 0) return;
+    const width = Math.round(this.stage.width * devicePixelRatio);
+    const height = Math.round(this.stage.height * devicePixelRatio);
+    if (canvas.width !== width || canvas.height !== height) {
+      canvas.width = width;
+      canvas.height = height;
+    }
+    const style = getComputedStyle(this);
+    const colour = (name: string, fallback: string): string => style.getPropertyValue(name).trim() || fallback;
+    drawMap(pen, {
+      extent: this.summary, stage: this.stage, pixelRatio: devicePixelRatio, view: this.view, picture: this.picture, flaw: this.flaw, cut: this.cut, cross: this.cross,
+      colours: { background: colour('--background', '#0d1216'), line: colour('--line', '#25313b'), ink: '#ffffff', mark: '#ffffff', halo: '#0d1216' },
+    });
+  }
+
+  private get canvas(): HTMLCanvasElement {
+    return this.renderRoot.querySelector('canvas') ?? document.createElement('canvas');
+  }
+
+  private fail(error: unknown): void {
+    this.send('map-problem', { message: error instanceof Error ? error.message : String(error) });
+  }
+
+  private send(type: string, detail: unknown): void {
+    this.dispatchEvent(new CustomEvent(type, { detail }));
+  }
+}
+
+customElements.define('eg-map-stage', MapStage);
