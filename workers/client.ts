@@ -34,7 +34,8 @@ export function createPool(options: PoolOptions = {}): ComputePool {
   const listeners = new Set<(lost: Lost) => void>();
   const onLost = (samples: readonly string[], reason: string): void => listeners.forEach((listener) => listener({ samples, reason }));
   const crew = Array.from({ length: size }, () => new PoolWorker(options.worker ?? startWorker, onLost));
-  const runs = new Map<number, { readonly home: PoolWorker; readonly reject: (error: ComputeError) => void }>();
+  /** Which worker an unfinished run is on. */
+  const runs = new Map<number, PoolWorker>();
   let opened = 0;
   let isOver = false;
 
@@ -59,10 +60,12 @@ export function createPool(options: PoolOptions = {}): ComputePool {
 
   const appraise = async (run: number, id: string, recipe: RecipeData, onStage?: OnStage): Promise<SampleSummary> => {
     const worker = home(id);
-    const stopped = new Promise<never>((_, reject) => runs.set(run, { home: worker, reject }));
+    runs.set(run, worker);
+    const listener: OnStage = (progress) => {
+      if (runs.get(run) === worker) onStage?.(progress);
+    };
     try {
-      const work = worker.call((remote) => remote.appraise(run, id, recipe, ...(onStage ? [proxy(onStage)] : [])), id);
-      const summary = await Promise.race([work, stopped]);
+      const summary = await worker.call((remote) => (onStage ? remote.appraise(run, id, recipe, proxy(listener)) : remote.appraise(run, id, recipe)), id, run);
       const placed = worker.samples.get(id);
       if (placed) placed.recipe = recipe;
       return summary;
@@ -81,12 +84,8 @@ export function createPool(options: PoolOptions = {}): ComputePool {
     openDemo: async () => place(await leastLoaded().call((remote) => remote.demos())),
     close: async (id) => home(id).remove(id),
     appraise,
-    async abort(run) {
-      const known = runs.get(run);
-      if (!known) return;
-      runs.delete(run);
-      known.reject(new ComputeError('aborted', 'Stopped before it was finished.'));
-      await known.home.abort(run, options.patienceMs ?? 5000);
+    abort: async (run) => {
+      runs.get(run)?.abort(run, options.patienceMs ?? 5000);
     },
     picture: async (request) => home(request.id).call((remote) => remote.picture(request), request.id),
     point: async (id, xUm, yUm) => home(id).call((remote) => remote.point(id, xUm, yUm), id),

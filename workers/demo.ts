@@ -5,9 +5,13 @@ import type { Offers, SampleSource } from './local-compute.ts';
 
 /** Names only; painting waits until a sample is appraised, and the painter is loaded when it is first needed. */
 export async function demoOffers(): Promise<Offers> {
-  const { demoSamples } = await import('../src/demo/demo-samples.ts');
+  const { demoScenes } = await import('../src/demo/demo-scenes.ts');
   return {
-    samples: demoSamples.map(({ name }) => ({ name, files: [`${name}.height.tif`, `${name}.current.tif`, `${name}.json`], source: { kind: 'demo', name } })),
+    samples: demoScenes.map(({ name, barrierUm }) => ({
+      name,
+      files: [`${name}.height.tif`, `${name}.current.tif`, `${name}.json`, ...(barrierUm ? [`${name}.outlines.geojson`] : [])],
+      source: { kind: 'demo', name },
+    })),
     skipped: [], failed: [],
   };
 }

@@ -5,7 +5,7 @@ import type { RecipeData } from './api.ts';
 import { ComputeError } from './api.ts';
 import type { SampleOffer } from './local-compute.ts';
 import type { Reply, WorkerApi } from './wire.ts';
-import { valueOf } from './wire.ts';
+import { errorOf } from './wire.ts';
 
 /** A sample and what it takes to bring it back in a new worker. */
 export interface Placed {
@@ -44,15 +44,24 @@ export class PoolWorker {
   call<Value>(ask: Ask<Value>, id?: string, run?: number): Promise<Value> {
     return new Promise<Value>((resolve, reject) => {
       const send = (): void => {
-        const running = this.running;
-        this.answer(ask, id).then(
-          (reply) => settle(() => resolve(reply)),
-          (error: unknown) => settle(() => reject(error)),
-        );
-        const settle = (finish: () => void): void => {
+        try {
+          const { worker, remote } = this.ready(id);
           // What a worker said before it was replaced counts no more.
-          if ((running === undefined || this.running === running) && this.pending.delete(pending)) finish();
-        };
+          const isFirst = (): boolean => this.running?.worker === worker && this.pending.delete(pending);
+          ask(remote).then(
+            (reply) => {
+              if (!isFirst()) return;
+              if (reply.ok) resolve(reply.value);
+              else reject(errorOf(reply));
+            },
+            (error: unknown) => {
+              if (isFirst()) reject(lostError(`a message could not be sent: ${String(error)}`));
+            },
+          );
+        } catch (error) {
+          this.pending.delete(pending);
+          reject(lostError(String(error)));
+        }
       };
       const pending: Pending = { run, send, reject };
       this.pending.add(pending);
@@ -60,13 +69,32 @@ export class PoolWorker {
     });
   }
 
+  /** Rejects a run at once and tells the worker, which is replaced when it has not heard after `patienceMs`. */
+  abort(run: number, patienceMs: number): void {
+    const pending = [...this.pending].find((candidate) => candidate.run === run);
+    if (!pending || !this.running) return;
+    const { worker, remote } = this.running;
+    pending.reject(new ComputeError('aborted', 'Stopped before it was finished.'));
+    remote.abort(run).catch(() => {});
+    setTimeout(() => {
+      if (this.running?.worker !== worker || !this.pending.delete(pending)) return;
+      this.replace();
+    }, patienceMs);
+  }
+
+  /** Ends a worker that does not listen and sends what it has not answered to a new one. */
+  private replace(): void {
+    this.end();
+    for (const { send } of this.pending) send();
+  }
+
   /** Takes the sample out of the worker, if it runs. */
   remove(id: string): void {
     this.samples.delete(id);
-    if (this.running?.knows.delete(id)) void this.running.remote.close(id);
+    if (this.running?.knows.delete(id)) this.running.remote.close(id).catch(() => {});
   }
 
-  /** Ends the worker for good or until the next call; what it has not answered is rejected. */
+  /** Ends the worker, until the next call starts another; what it has not answered is rejected. */
   lose(reason: string): void {
     const lost = this.end();
     if (!lost) return;
@@ -76,8 +104,7 @@ export class PoolWorker {
     this.onLost([...lost], reason);
   }
 
-  /** Ends the worker; its samples' ids when there was one. */
-  end(): ReadonlySet<string> | undefined {
+  private end(): ReadonlySet<string> | undefined {
     const { running } = this;
     this.running = undefined;
     running?.worker.terminate();
@@ -90,7 +117,7 @@ export class PoolWorker {
     if (placed && !running.knows.has(placed.id)) {
       running.knows.add(placed.id);
       // Not waited for: messages arrive in their order.
-      void running.remote.adopt(placed.id, placed.offer, placed.recipe);
+      running.remote.adopt(placed.id, placed.offer, placed.recipe).catch(() => {});
     }
     return running;
   }
@@ -110,5 +137,5 @@ export class PoolWorker {
 }
 
 function lostError(reason: string): ComputeError {
-  return new ComputeError('worker-lost', `The computation was lost (${reason}); the sample is still open, ask again.`, reason);
+  return new ComputeError('worker-lost', `The computation was lost (${reason}); what was open is still there, ask again.`, reason);
 }

@@ -25,8 +25,7 @@ export interface WorkerApi {
   resultFile(id: string, name: string): Promise<Reply<Uint8Array<ArrayBuffer>>>;
 }
 
-/** The value of an answer. @throws ComputeError */
-export function valueOf<Value>(reply: Reply<Value>): Value {
-  if (reply.ok) return reply.value;
-  throw new ComputeError(reply.code, reply.message, reply.detail);
+/** The error that an answer carries. */
+export function errorOf({ code, message, detail }: Extract<Reply<unknown>, { ok: false }>): ComputeError {
+  return new ComputeError(code, message, detail);
 }

@@ -5,7 +5,7 @@ import { register } from 'tsx/esm/api';
 
 register({ tsconfig: fileURLToPath(new URL('../../tsconfig.json', import.meta.url)) });
 // The import is part of the promise, so that a task posted before it settles waits instead of being lost.
-const ready = import('./appraise-one.ts');
+const ready = import('./load-kernels.ts').then(({ loadKernels }) => loadKernels()).then(() => import('./appraise-one.ts'));
 
 parentPort?.on('message', async (task) => {
   const { appraiseOne } = await ready;

@@ -8,6 +8,7 @@ import type { Command } from './command.ts';
 import { exitCodes, isUsageError } from './command.ts';
 import { demoCommand } from './demo-command.ts';
 import { helpOf, overview } from './help.ts';
+import { loadKernels } from './load-kernels.ts';
 import type { Output } from './output.ts';
 import { recipeCommand } from './recipe-command.ts';
 
@@ -43,6 +44,7 @@ export async function main(argv: readonly string[], output: Output = processOutp
       return exitCodes.good;
     }
     const { values, positionals } = parseArgs({ args: [...rest], options: command.options, allowPositionals: true, strict: true });
+    await loadKernels();
     return await command.run({ values: values as Record<string, unknown>, positionals }, output);
   } catch (error) {
     if (error instanceof Problem) {

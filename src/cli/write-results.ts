@@ -2,23 +2,14 @@
 import { mkdir, rename, rm, writeFile } from 'node:fs/promises';
 import { join } from 'node:path';
 import type { App, Appraised } from '../report/appraised.ts';
-import { writeReport } from '../report/report.ts';
-import { resultMaps } from '../report/result-maps.ts';
-import { writeFlawsCsv, writeLedgerCsv } from '../report/tables.ts';
+import { resultFiles } from '../report/result-files.ts';
+import type { ResultFile, ResultKind } from '../report/result-files.ts';
 import { writeTrayPage } from '../report/tray-page.ts';
 import { writeTrayCsv, writeTrayLines } from '../report/tray.ts';
 import type { TrayRow } from '../report/tray.ts';
-import { writeVerdict } from '../report/verdict.ts';
 
-/** Kinds of files that `--only` names. */
-export const resultKinds = ['json', 'csv', 'tif', 'html', 'gds', 'dxf', 'svg'] as const;
-export type ResultKind = (typeof resultKinds)[number];
-
-interface ResultFile {
-  readonly file: string;
-  readonly kind: ResultKind;
-  readonly content: () => string | Uint8Array;
-}
+export { resultKinds } from '../report/result-files.ts';
+export type { ResultKind } from '../report/result-files.ts';
 
 export interface WriteOptions {
   /** Only these kinds; all when absent. */
@@ -38,9 +29,9 @@ export async function writeResults(directory: string, folder: string, appraised:
   await rm(partial, { recursive: true, force: true });
   await mkdir(partial, { recursive: true });
   try {
-    for (const { file, content } of wanted(sampleFiles(appraised, app), options)) {
+    for (const { name, content } of wanted(resultFiles(appraised, app), options)) {
       options.signal?.throwIfAborted();
-      await writeFile(join(partial, file), content());
+      await writeFile(join(partial, name), content());
     }
     options.signal?.throwIfAborted();
     await replaceFolder(partial, target, join(directory, `.${folder}.replaced`));
@@ -54,27 +45,17 @@ export async function writeResults(directory: string, folder: string, appraised:
 /** Writes tray.csv, tray.jsonl and tray.html beside the sample folders, each whole or not at all. */
 export async function writeTray(directory: string, rows: readonly TrayRow[], app: App, options: WriteOptions = {}): Promise<void> {
   const files: ResultFile[] = [
-    { file: 'tray.csv', kind: 'csv', content: () => writeTrayCsv(rows) },
-    { file: 'tray.jsonl', kind: 'json', content: () => writeTrayLines(rows) },
-    { file: 'tray.html', kind: 'html', content: () => writeTrayPage(rows, app) },
+    { name: 'tray.csv', kind: 'csv', content: () => writeTrayCsv(rows) },
+    { name: 'tray.jsonl', kind: 'json', content: () => writeTrayLines(rows) },
+    { name: 'tray.html', kind: 'html', content: () => writeTrayPage(rows, app) },
   ];
   await mkdir(directory, { recursive: true });
-  for (const { file, content } of wanted(files, options)) {
+  for (const { name, content } of wanted(files, options)) {
     options.signal?.throwIfAborted();
-    const partial = join(directory, `.${file}.partial`);
+    const partial = join(directory, `.${name}.partial`);
     await writeFile(partial, content());
-    await rename(partial, join(directory, file));
+    await rename(partial, join(directory, name));
   }
-}
-
-function sampleFiles(appraised: Appraised, app: App): ResultFile[] {
-  return [
-    ...resultMaps(appraised).map(({ file, bytes }): ResultFile => ({ file, kind: 'tif', content: bytes })),
-    { file: 'ledger.csv', kind: 'csv', content: () => writeLedgerCsv(appraised.ledger) },
-    { file: 'flaws.csv', kind: 'csv', content: () => writeFlawsCsv(appraised.flaws) },
-    { file: 'report.html', kind: 'html', content: () => writeReport(appraised, app) },
-    { file: 'verdict.json', kind: 'json', content: () => writeVerdict(appraised, app) },
-  ];
 }
 
 function wanted(files: readonly ResultFile[], { only }: WriteOptions): readonly ResultFile[] {

@@ -6,13 +6,23 @@ import type { DemoScene } from './demo-scenes.ts';
 import { demoScenes } from './demo-scenes.ts';
 import { paintScene } from './paint-scene.ts';
 
+// Module-scoped because the science is compiled without DOM and Node types; every realm has it.
+declare const TextEncoder: new () => { encode(text: string): Uint8Array };
+
 export interface DemoFile {
   readonly name: string;
   readonly bytes: Uint8Array;
 }
 
-/** Names and titles of the demo samples, in the order of the tray. */
-export const demoSamples: readonly { readonly name: string; readonly title: string }[] = demoScenes.map(({ name, title }) => ({ name, title }));
+export interface DemoSample {
+  readonly name: string;
+  readonly title: string;
+  /** Names of the files that `demoFiles` gives, known without painting. */
+  readonly files: readonly string[];
+}
+
+/** The demo samples in the order of the tray. */
+export const demoSamples: readonly DemoSample[] = demoScenes.map((scene) => ({ name: scene.name, title: scene.title, files: fileNames(scene) }));
 
 /**
  * Files of one demo sample: `NAME.height.tif` (nm, as scanned, nothing levelled), `NAME.current.tif` (A), the sidecar `NAME.json`, and for a
@@ -35,6 +45,10 @@ export function demoFiles(name: string, size = 512): DemoFile[] {
     { name: `${name}.json`, bytes: textBytes(sidecarOf(found)) },
     ...(found.barrierUm ? [{ name: `${name}.outlines.geojson`, bytes: textBytes(outlinesOf(found.barrierUm)) }] : []),
   ];
+}
+
+function fileNames({ name, barrierUm }: DemoScene): string[] {
+  return [`${name}.current.tif`, `${name}.height.tif`, `${name}.json`, ...(barrierUm ? [`${name}.outlines.geojson`] : [])];
 }
 
 function sidecarOf({ name, title, scene }: DemoScene): object {

@@ -1,4 +1,5 @@
 /** Level of the ground around each pixel, features left out. */
+import { riseOverGround } from '../kernels/rise-above-ground.ts';
 
 /**
  * Mean of the admitted pixels in a square window around each pixel, by summed-area tables (Crow, SIGGRAPH 1984). Where the
@@ -64,14 +65,24 @@ function areaOf(table: Float64Array, columns: number, top: number, bottom: numbe
 /**
  * Height above the local ground: the ground is the window mean over pixels that do not stand out, found by three rounds.
  *
+ * Computed by the kernel where one is installed, with the same result.
+ *
  * @param levelled metres, NaN missing; @param startM pixels further than this above the ground do not count as ground.
  */
 export function riseAboveGround(levelled: Float32Array, columns: number, rows: number, startM: number): Float32Array {
   const windowPx = Math.max(15, Math.round(Math.min(columns, rows) / 8));
+  return riseOverGround(levelled, columns, rows, windowPx >> 1, startM, rounds) ?? risePlainly(levelled, columns, rows, windowPx, startM);
+}
+
+/** Enough for the ground no longer to change. */
+const rounds = 3;
+
+/** The same in plain TypeScript. */
+function risePlainly(levelled: Float32Array, columns: number, rows: number, windowPx: number, startM: number): Float32Array {
   const use = new Uint8Array(levelled.length);
   for (let i = 0; i < use.length; i++) use[i] = Math.abs(levelled[i]!) < 3 * startM ? 1 : 0;
   let rise: Float32Array = levelled;
-  for (let round = 0; round < 3; round++) {
+  for (let round = 0; round < rounds; round++) {
     const ground = windowMean(levelled, use, columns, rows, windowPx);
     const next = new Float32Array(levelled.length);
     for (let i = 0; i < next.length; i++) {

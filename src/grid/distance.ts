@@ -1,4 +1,5 @@
 /** How far each pixel of a mask lies from what is outside it. */
+import { squaredDistances } from '../kernels/squared-distances.ts';
 
 export interface DistanceOptions {
   /** Distance between the centres of neighbouring columns and rows, any one unit; 1 by default. */
@@ -13,11 +14,16 @@ export interface DistanceOptions {
  * zero pixel's centre; 0 on zero pixels, Infinity where there is none. Exact: separable lower
  * envelopes of parabolas (Felzenszwalb & Huttenlocher, Theory of Computing 8, 415, 2012), worked in
  * doubles and rounded once to single precision (whole numbers up to 2²⁴ stay whole). Throws a
- * RangeError when the mask is not columns × rows.
+ * RangeError when the mask is not columns × rows. Computed by the kernel where one is installed, with the same result.
  */
 export function squaredDistance(mask: Uint8Array, columns: number, rows: number, options: DistanceOptions = {}): Float32Array {
   if (mask.length !== columns * rows) throw new RangeError(`a mask of ${columns} × ${rows} pixels needs ${columns * rows} values, got ${mask.length}`);
   const { pitchX = 1, pitchY = 1, outsideIsBackground = false } = options;
+  return squaredDistances(mask, columns, rows, pitchX, pitchY, outsideIsBackground) ?? squaredPlainly(mask, columns, rows, pitchX, pitchY, outsideIsBackground);
+}
+
+/** The same in plain TypeScript. */
+function squaredPlainly(mask: Uint8Array, columns: number, rows: number, pitchX: number, pitchY: number, outsideIsBackground: boolean): Float32Array {
   const vertical = distancesAlongColumns(mask, columns, rows, outsideIsBackground);
   const result = new Float32Array(mask.length);
 

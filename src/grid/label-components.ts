@@ -1,4 +1,5 @@
 /** Connected regions of a mask. */
+import { labelRuns } from '../kernels/label-runs.ts';
 
 export interface Components {
   /** Region of each pixel, 1…count in the order in which a raster scan meets them, 0 where the mask is 0. */
@@ -12,10 +13,15 @@ export interface Components {
  * Numbers the connected regions of the non-zero pixels of a row-major mask, joined by edges (4) or
  * by edges and corners (8). Two passes with union–find (Rosenfeld & Pfaltz, J. ACM 13, 471, 1966;
  * the smaller provisional number is always the root, so numbers come out in raster order). Throws a
- * RangeError when the mask is not columns × rows.
+ * RangeError when the mask is not columns × rows. Computed by the kernel where one is installed, with the same result.
  */
 export function labelComponents(mask: Uint8Array, columns: number, rows: number, connectivity: 4 | 8): Components {
   if (mask.length !== columns * rows) throw new RangeError(`a mask of ${columns} × ${rows} pixels needs ${columns * rows} values, got ${mask.length}`);
+  return labelRuns(mask, columns, rows, connectivity) ?? labelPlainly(mask, columns, rows, connectivity);
+}
+
+/** The same in plain TypeScript. */
+function labelPlainly(mask: Uint8Array, columns: number, rows: number, connectivity: 4 | 8): Components {
   const labels = new Uint32Array(mask.length);
   // A new number needs a pixel with nothing before it; two such pixels are never neighbours.
   const parents = new Uint32Array((mask.length >>> 1) + 2 + rows);

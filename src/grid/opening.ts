@@ -1,7 +1,9 @@
+import { openedMap } from '../kernels/grey-opening.ts';
+
 /**
  * Grey opening by a square: removes bright structure narrower than the square and keeps the rest. Running minima and maxima by
  * van Herk (Pattern Recognit. Lett. 13, 517, 1992) and Gil & Werman (IEEE Trans. PAMI 15, 504, 1993), three comparisons a pixel
- * whatever the width.
+ * whatever the width. Computed by the kernel where one is installed, with the same result.
  *
  * @param values row-major without NaN (fill them before); borders: the square is cut off at the picture's edge.
  * @param widthX, widthY full widths in pixels, made odd by rounding up.
@@ -9,6 +11,11 @@
 export function greyOpening(values: Float32Array, columns: number, rows: number, widthX: number, widthY: number): Float32Array {
   const halfX = widthX >> 1;
   const halfY = widthY >> 1;
+  return openedMap(values, columns, rows, halfX, halfY) ?? openedPlainly(values, columns, rows, halfX, halfY);
+}
+
+/** The same in plain TypeScript. */
+function openedPlainly(values: Float32Array, columns: number, rows: number, halfX: number, halfY: number): Float32Array {
   const low = sweep(values, columns, rows, halfX, halfY, -1);
   return sweep(low, columns, rows, halfX, halfY, 1);
 }

@@ -10,6 +10,7 @@ import { traceOutline } from '../grid/trace-outline.ts';
 import { solveBand } from '../stats/cholesky.ts';
 import { median } from '../stats/median.ts';
 import { mostCommon } from './centre.ts';
+import { subSample, subStep } from './form.ts';
 import type { BareGround, CurrentGround, FootprintProposal } from './ground.ts';
 import { lineDifferencesSolved } from './lines.ts';
 
@@ -44,7 +45,10 @@ const crossingShare = 0.05;
 export function proposeFootprint(height: ScalarMap, repaired: MaskMap, current: CurrentGround | undefined, grid: Grid, order: number): FootprintProposal | undefined {
   const { columns, rows } = grid;
   if (columns < 32 || rows < 32) return undefined;
-  const h = fillShortGaps(levelOnDifferences(height.data.map((value, i) => (repaired.data[i] === 1 ? Number.NaN : value)), columns, rows, order), columns);
+  const h = Float32Array.from(height.data);
+  for (let i = 0; i < h.length; i++) if (repaired.data[i] === 1) h[i] = Number.NaN;
+  levelOnDifferences(h, columns, rows, order);
+  fillShortGaps(h, columns);
   const low = new Uint8Array(h.length);
   let lowPixels = 0;
   for (let i = 0; i < h.length; i++) if (h[i]! < -lowM) lowPixels += low[i] = 1;
@@ -72,25 +76,23 @@ export function proposeFootprint(height: ScalarMap, repaired: MaskMap, current: 
   const rings = outlines[0];
   if (rings === undefined) return undefined;
   const kinds = new Set(accepted.map(({ kind }) => kind));
-  const areaOf = (mask: Uint8Array) => mask.reduce((sum, value) => sum + value, 0) * pixelAreaM2(grid);
   return {
     ground: kinds.size === 1 ? accepted[0]!.kind : kinds.has('unknown') ? 'unknown' : 'both',
-    bareM2: areaOf(bare),
+    bareM2: areaOf(bare, grid),
     stepM: median(accepted.map(({ stepM }) => stepM)),
-    flakeM2: areaOf(flake),
+    flakeM2: areaOf(flake, grid),
     outline: { layer: 'barrier', rings },
   };
 }
 
 /**
  * Height minus a form whose slopes agree with most differences between points a thirty-second of the map apart, minus line offsets from
- * differences too small to cross the step sought, zero at the most common height.
+ * differences too small to cross the step sought, zero at the most common height. Changes `h`.
  */
-function levelOnDifferences(values: Float32Array, columns: number, rows: number, order: number): Float32Array {
+function levelOnDifferences(h: Float32Array, columns: number, rows: number, order: number): void {
   const powers: [number, number][] = [];
   for (let total = 1; total <= order; total++) for (let j = 0; j <= total; j++) powers.push([total - j, j]);
-  const form = slopeForm(values, columns, rows, powers);
-  const out = new Float32Array(values.length);
+  const form = slopeForm(h, columns, rows, powers);
   const byRow = new Float64Array(order + 1);
   for (let r = 0, i = 0; r < rows; r++) {
     const v = (2 * r) / (rows - 1) - 1;
@@ -100,14 +102,13 @@ function levelOnDifferences(values: Float32Array, columns: number, rows: number,
       const u = (2 * c) / (columns - 1) - 1;
       let sum = 0;
       for (let p = order; p >= 0; p--) sum = sum * u + byRow[p]!;
-      out[i] = values[i]! - sum;
+      h[i]! -= sum;
     }
   }
-  const lines = lineDifferencesSolved(out, columns, rows, () => true, lowM);
-  for (let i = 0; i < out.length; i++) out[i]! -= lines[(i / columns) | 0]!;
-  const step = Math.max(1, Math.floor(out.length / 40_000));
-  const zero = mostCommon(Float64Array.from(out.filter((value, i) => i % step === 0 && !Number.isNaN(value))));
-  return out.map((value) => value - zero);
+  const lines = lineDifferencesSolved(h, columns, rows, () => true, lowM);
+  for (let i = 0; i < h.length; i++) h[i]! -= lines[(i / columns) | 0]!;
+  const zero = mostCommon(subSample(h, columns, rows, subStep(columns, rows)));
+  for (let i = 0; i < h.length; i++) h[i]! -= zero;
 }
 
 /**
@@ -165,7 +166,7 @@ function slopeForm(values: Float32Array, columns: number, rows: number, powers: 
 }
 
 /** Missing pixels take the value above, three lines far at most: a broken run must not cut a region in two. Changes `h`. */
-function fillShortGaps(h: Float32Array, columns: number): Float32Array {
+function fillShortGaps(h: Float32Array, columns: number): void {
   const depth = new Uint8Array(columns);
   for (let i = 0; i < h.length; i++) {
     const c = i % columns;
@@ -175,7 +176,6 @@ function fillShortGaps(h: Float32Array, columns: number): Float32Array {
       depth[c]!++;
     }
   }
-  return h;
 }
 
 /** Per region (0 = the rest): all pixels, those with a current, and how many of these are saturated or at the floor. */
@@ -216,8 +216,12 @@ function touching(labels: Uint32Array, columns: number, rows: number, count: num
   return touches;
 }
 
-function medianIn(h: Float32Array, { labels }: Components, region: number): number {
-  return median(h.filter((_, i) => labels[i] === region));
+/** Median over a region; of a large one every n-th pixel says enough. */
+function medianIn(h: Float32Array, { labels, pixels }: Components, region: number): number {
+  const every = Math.ceil(pixels[region]! / 50_000);
+  const values: number[] = [];
+  for (let i = 0, seen = 0; i < h.length; i++) if (labels[i] === region && seen++ % every === 0) values.push(h[i]!);
+  return median(values);
 }
 
 /**
@@ -284,4 +288,10 @@ function mainPatch(bare: Uint8Array, grid: Grid): Uint8Array {
     const gap = gaps.labels[i]!;
     return gap !== 0 && outside[gap] === 0 && gaps.pixels[gap]! * pixelAreaM2(grid) < holeM2 ? 1 : value;
   });
+}
+
+function areaOf(mask: Uint8Array, grid: Grid): number {
+  let pixels = 0;
+  for (const value of mask) pixels += value;
+  return pixels * pixelAreaM2(grid);
 }

@@ -74,6 +74,8 @@ describe('the checker notices', () => {
     }, []],
     ['a base folder that imports a stage', { 'src/grid/a.ts': `import '../read/b.ts';` },
       ['src/grid/a.ts imports src/read/b.ts: a base folder imports only problems, schema, grid, stats']],
+    ['a kernel that imports a base folder, by type alone', { 'src/kernels/a.ts': `import type { B } from '../grid/b.ts';`, 'src/stats/c.ts': `import '../kernels/a.ts';` },
+      ['src/kernels/a.ts imports src/grid/b.ts: kernels import nothing of src']],
     ['a stage that imports a later one, by type alone', { 'src/ground/a.ts': `import type { B } from '../ledger/b.ts';` },
       ['src/ground/a.ts imports src/ledger/b.ts: ground comes before ledger']],
     ['a stage that imports what lies above', { 'src/report/a.ts': `export type { R } from '../evaluate/b.ts';` },

@@ -67,6 +67,9 @@ function scienceBreach(from: string, to: string): string | undefined {
   if (from.startsWith('src/problems/') && !/\/(problem|catalogue)\.ts$/.test(from)) return 'a file of sentences imports nothing';
   if (lower === undefined || upper === undefined) return 'only the folders of the design may be imported';
   if (folderOf(from) === folderOf(to)) return undefined;
+  // Numbers and typed arrays only: the lowest floor, on which the base folders stand too.
+  if (folderOf(from) === 'kernels') return 'kernels import nothing of src';
+  if (folderOf(to) === 'kernels') return undefined;
   if (folderOf(from) === 'recipe' && stages.includes(folderOf(to))) {
     return to.endsWith('/recipe.ts') ? undefined : 'recipe takes only recipe.ts from a stage';
   }
@@ -131,7 +134,7 @@ function isTool(path: string): boolean {
 
 /** Height of a src folder: it may import what is lower. Undefined when the design knows no such folder. */
 function level(path: string): number | undefined {
-  const order = [...base, 'kernels', ...stages, ...above, 'cli'];
+  const order = ['kernels', ...base, ...stages, ...above, 'cli'];
   const at = order.indexOf(folderOf(path));
   return at < 0 || path.split('/').length < 3 ? undefined : at;
 }

@@ -157,7 +157,7 @@ test('without any spot free of current offset 0 is assumed and said', () => {
   assert.ok(found.codes.includes('current-offset-assumed'));
 });
 
-test('an even terrace whose contact scatters from pixel to pixel is no reading at zero current', { todo: 'white scatter of 12 % around 1.3 nA is taken for the amplifier\'s noise peak: the whole terrace becomes the offset' }, () => {
+test('an even terrace whose contact scatters from pixel to pixel is no reading at zero current', { todo: 'white scatter of 12 % around 1.3 nA is taken for the amplifier’s noise peak: the whole terrace becomes the offset and the ledger says all thick' }, () => {
   for (const heightM of [undefined, new Float32Array(size * size)]) {
     const { currentA } = createScene({ seed: 'even', size, layersAt: () => 10 });
     const found = condition(createSample({ columns: size, rows: size, currentA, biasV: 5.9, ...(heightM ? { heightM } : {}) }));

@@ -58,7 +58,7 @@ function lineAt(values: Float32Array, from: number, to: number, at: number): num
   return sum + (moment / norm) * (at - middle);
 }
 
-for (const seed of ['a', 'b', 'c']) {
+for (const seed of ['a', 'b']) {
   test(`level(map + plane) = level(map), seed ${seed}`, () => {
     const { heightM } = busy(seed);
     const tilted = withForm(heightM, (u, v) => 37 * u - 21 * v + 5);

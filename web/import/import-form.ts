@@ -31,10 +31,10 @@ export class ImportForm extends LitElement {
     p { margin: 0 0 0.75rem; }
     .files { color: var(--dim); overflow-wrap: anywhere; }
     .fields { display: flex; flex-wrap: wrap; gap: 0.75rem 1.25rem; align-items: flex-start; }
-    .field { display: grid; gap: 0.2rem; width: 11rem; }
+    .field { display: grid; grid-template-columns: minmax(0, 1fr); gap: 0.2rem; width: 12rem; }
     .label { font-size: 0.875rem; }
     .box { display: flex; align-items: center; gap: 0.4rem; }
-    .box input, .box select { min-width: 0; flex: 1; }
+    .box input, .box select { min-width: 0; width: 0; flex: 1; }
     .unit, small { color: var(--dim); font-size: 0.8125rem; line-height: 1.35; }
     .complaint { color: var(--bad); }
     .end { display: flex; flex-wrap: wrap; gap: 0.75rem 1.25rem; align-items: center; margin-top: 1rem; }

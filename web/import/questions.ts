@@ -34,7 +34,7 @@ export function questionsOf({ code, detail }: Failure): readonly Question[] {
   switch (code) {
     case 'statements-missing': return missing(word(detail, 'options'));
     // A choice that already comes from the recipe is not asked for again: it has to be undone.
-    case 'size-disagreement': return word(detail, 'way').includes('scan.widthUm') ? size : [];
+    case 'size-disagreement': return word(detail, 'way').includes('decide with') ? size : [];
     case 'unit-disagreement': return word(detail, 'by').startsWith('scan.') ? [] : [/A$|^relative$/.test(word(detail, 'asked')) ? currentUnit : heightUnit];
     case 'map-flat': return [heightUnit];
     case 'role-unknown-pages': return pages(detail);

@@ -1,5 +1,6 @@
 /** What a person typed into the import form: checked, and put into words for the history. */
 import type { FieldInfo } from '../../workers/api.ts';
+import { typedNumber } from '../sample/format.ts';
 
 export type Typed = { readonly value: number | string } | { readonly complaint: string } | undefined;
 
@@ -8,7 +9,7 @@ export function readTyped(field: FieldInfo, text: string, required: boolean): Ty
   const typed = text.trim();
   if (typed === '') return required ? { complaint: field.kind === 'choice' ? 'Choose one.' : 'Type a number.' } : undefined;
   if (field.kind !== 'number') return { value: typed };
-  const value = Number(typed.replace(',', '.'));
+  const value = typedNumber(typed);
   if (!Number.isFinite(value)) return { complaint: `“${typed}” is not a number.` };
   const unit = field.unit === undefined ? '' : ` ${field.unit}`;
   // A length of nothing is no length, whatever the field's range says.

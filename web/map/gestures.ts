@@ -4,7 +4,7 @@ export interface GestureTarget {
   pan(dx: number, dy: number): void;
   zoom(factor: number, x: number, y: number): void;
   fit(): void;
-  click(x: number, y: number): void;
+  clicked(x: number, y: number): void;
   hover(x: number, y: number): void;
   leave(): void;
   /** A straight line dragged with Shift held; `done` with the last point. */
@@ -78,7 +78,7 @@ export class Gestures {
     const { start, moved } = this;
     this.start = undefined;
     if (!start) return;
-    if (!moved) this.target.click(at.x, at.y);
+    if (!moved) this.target.clicked(at.x, at.y);
     else if (start.line) this.target.line(start.x, start.y, at.x, at.y, true);
   };
 

@@ -50,6 +50,8 @@ export class MapStage extends LitElement implements GestureTarget {
   private askedKey = '';
   private cross: { readonly xUm: number; readonly yUm: number } | undefined;
   private frame = 0;
+  /** Where the second end of a cut would be. */
+  private aimed: readonly [number, number] | undefined;
   private readonly sizes = new ResizeObserver(() => { this.onSize(); });
   private readonly pictures = new Latest<PictureRequest, Picture>((request) => this.compute.picture(request), (request, picture) => { this.hold(request, picture); }, (_, error) => { this.fail(error); });
   private readonly points = new Latest<PointQuestion, PointValues>(
@@ -91,6 +93,7 @@ export class MapStage extends LitElement implements GestureTarget {
   }
 
   override willUpdate(changed: PropertyValues<this>): void {
+    if (changed.has('cut')) this.aimed = undefined;
     const before = changed.get('summary');
     if (before === undefined || !changed.has('summary')) return;
     this.askedKey = '';
@@ -133,14 +136,16 @@ export class MapStage extends LitElement implements GestureTarget {
       this.refresh();
     }
     if (place) this.points.ask({ id: this.summary.id, ...place, clicked: false });
-    if (this.cutting && this.cut && !this.cut.toUm) this.send('cut-preview', place);
+    if (!this.cutting || !this.cut || this.cut.toUm) return;
+    this.aimed = place && [place.xUm, place.yUm];
+    this.refresh();
   }
 
   leave(): void {
     this.send('point', undefined);
   }
 
-  click(x: number, y: number): void {
+  clicked(x: number, y: number): void {
     const place = this.place(x, y);
     if (!place) return;
     if (this.cutting) this.send('cut-point', place);
@@ -241,7 +246,7 @@ export class MapStage extends LitElement implements GestureTarget {
     const style = getComputedStyle(this);
     const colour = (name: string, fallback: string): string => style.getPropertyValue(name).trim() || fallback;
     drawMap(pen, {
-      extent: this.summary, stage: this.stage, pixelRatio: devicePixelRatio, view: this.view, picture: this.picture, flaw: this.flaw, cut: this.cut, cross: this.cross,
+      extent: this.summary, stage: this.stage, pixelRatio: devicePixelRatio, view: this.view, picture: this.picture, flaw: this.flaw, cut: this.cut && { fromUm: this.cut.fromUm, toUm: this.cut.toUm ?? this.aimed }, cross: this.cross,
       colours: { background: colour('--background', '#0d1216'), line: colour('--line', '#25313b'), ink: '#ffffff', mark: '#ffffff', halo: '#0d1216' },
     });
   }

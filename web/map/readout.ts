@@ -2,10 +2,7 @@
 import { LitElement, css, html, nothing } from 'lit';
 import type { MapInfo, MapName, PointValues } from '../../workers/api.ts';
 import { confidenceWord, fixed, mapValue } from '../sample/format.ts';
-
-const words: Readonly<Record<MapName, string>> = {
-  height: 'height', current: 'current', layers: 'layers', thickness: 'thickness', glow: 'glow', rawHeight: 'raw height', rawCurrent: 'raw current',
-};
+import { mapWords } from './map-words.ts';
 
 export class Readout extends LitElement {
   static override properties = { point: { attribute: false }, maps: { attribute: false } };
@@ -32,7 +29,7 @@ export class Readout extends LitElement {
       <dl>
         <dt>x</dt><dd>${point ? `${fixed(point.xUm, 2)}\u00a0µm` : '–'}</dd>
         <dt>y</dt><dd>${point ? `${fixed(point.yUm, 2)}\u00a0µm` : '–'}</dd>
-        ${this.maps.map(({ name, unit }) => html`<dt>${words[name]}</dt><dd>${this.valueText(name, unit)}</dd>`)}
+        ${this.maps.map(({ name, unit }) => html`<dt>${mapWords[name]}</dt><dd>${this.valueText(name, unit)}</dd>`)}
         <dt>booked as</dt><dd class="booked">${point?.cause ?? '–'}</dd>
         ${point?.flaw ? html`<dt>flaw</dt><dd>${point.flaw.flaw} · ${point.flaw.cause}, ${confidenceWord(point.flaw.confidence)}</dd>` : nothing}
       </dl>

@@ -79,10 +79,10 @@ export function span(low: number | undefined, high: number | undefined, digits =
 /**
  * A value of a map in the unit that the computation speaks in: amperes and metres get an SI prefix, everything else a plain figure.
  *
- * @param unit `A`, `nm`, `layers`, or empty for pure numbers and relative currents.
+ * @param unit `A`, `nm`, or empty for pure numbers; `relative` (a current of unknown scale) is shown as a bare figure.
  */
 export function mapValue(value: number | undefined, unit: string): string {
-  return unit === 'A' || unit === 'm' ? withPrefix(value, unit) : withUnit(value, unit);
+  return unit === 'A' || unit === 'm' ? withPrefix(value, unit) : withUnit(value, unit === 'relative' ? '' : unit);
 }
 
 /** How sure a class is, in a word: from 0.5 (as likely another) to 1. */

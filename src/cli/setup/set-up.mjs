@@ -7,7 +7,7 @@ import { nodeTooOld } from './node-version.mjs';
 export const projectRoot = fileURLToPath(new URL('../../../', import.meta.url));
 
 /**
- * Checks Node's version and installs missing packages; ends the process with a sentence and code 1 when it cannot.
+ * Checks Node's version, installs missing packages and compiles the kernels; ends the process with a sentence and code 1 when it cannot.
  * Progress goes to stderr.
  */
 export async function setUp() {
@@ -15,8 +15,10 @@ export async function setUp() {
   if (tooOld) stop(tooOld);
   // Loaded only now: an older Node could not even parse it.
   const { ensurePackages } = await import('./packages.mjs');
+  const { ensureKernels } = await import('./kernels.mjs');
   try {
     ensurePackages(projectRoot, say);
+    ensureKernels(projectRoot, say);
   } catch (error) {
     if (/** @type {Error} */ (error).name !== 'SetUpError') throw error;
     stop(/** @type {Error} */ (error).message);

@@ -29,12 +29,12 @@ async function reopen(session: Session, sample: SampleState, said: Readonly<Reco
   const reply = await session.compute.open(files);
   const [opened] = reply.samples;
   if (opened === undefined || reply.samples.length > 1) {
-    for (const extra of reply.samples) void session.compute.close(extra.id);
+    for (const extra of reply.samples) forget(session, extra.id);
     throw new Error(reply.failed[0]?.message ?? 'its files no longer make one sample.');
   }
   session.handles.delete(sample.id);
   session.handles.set(opened.id, files);
-  void session.compute.close(sample.id);
+  forget(session, sample.id);
   session.update((state) => ({
     ...state,
     place: state.place.name === 'sample' && state.place.id === sample.id ? { name: 'sample', id: opened.id } : state.place,
@@ -46,4 +46,8 @@ async function reopen(session: Session, sample: SampleState, said: Readonly<Reco
 async function contentOf({ content }: SourceFile): Promise<object> {
   const parsed: unknown = JSON.parse(content instanceof Blob ? await content.text() : new TextDecoder().decode(content));
   return typeof parsed === 'object' && parsed !== null ? parsed : {};
+}
+
+function forget(session: Session, id: string): void {
+  session.compute.close(id).catch(() => { /* What is gone needs no closing. */ });
 }

@@ -1,4 +1,0 @@
-export async function instantiate(module, imports = {}) {
-  const { exports } = await WebAssembly.instantiate(module, imports);
-  return exports;
-}

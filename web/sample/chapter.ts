@@ -1,0 +1,87 @@
+/** What all chapters share: the finding first, then a fold with the knobs and the effect of the last change. */
+import { LitElement, css, html, nothing } from 'lit';
+import type { TemplateResult } from 'lit';
+import type { FieldInfo, RecipeData, SampleSummary } from '../../workers/api.ts';
+import { valueAt } from '../session/recipe.ts';
+import './knob.ts';
+import { changedPaths, knobsOf } from './knobs.ts';
+import type { ChapterName } from './knobs.ts';
+
+export abstract class Chapter extends LitElement {
+  static override properties = { summary: { attribute: false }, fields: { attribute: false }, recipe: { attribute: false }, effect: { attribute: false }, open: { type: Boolean } };
+
+  declare summary: SampleSummary;
+  declare fields: readonly FieldInfo[];
+  /** Sparse recipe in force. */
+  declare recipe: RecipeData;
+  /** "This returned 0.3 µm²." when the last change was made here. */
+  declare effect: string;
+  declare open: boolean;
+
+  static override styles = css`
+    :host { display: block; border-bottom: 1px solid var(--line, #25313b); }
+    summary { display: grid; grid-template-columns: 1fr auto; gap: 2px 12px; padding: 12px 20px; cursor: pointer; list-style: none; }
+    summary::-webkit-details-marker { display: none; }
+    summary:hover { background: var(--panel, #141b21); }
+    summary:focus-visible { outline: 2px solid var(--focus, #7cc0ea); outline-offset: -3px; }
+    h2 { margin: 0; font-size: 0.9375rem; font-weight: 600; color: var(--glow-soft, #ffd9a0); }
+    h2::before { content: '▸'; display: inline-block; width: 1.1em; margin-left: -0.2em; color: var(--dim, #8fa0af); }
+    details[open] h2::before { content: '▾'; }
+    .count { color: var(--dim, #8fa0af); font-size: 0.8125rem; align-self: center; }
+    .finding { grid-column: 1 / -1; margin: 0; font-size: 0.9375rem; line-height: 1.45; }
+    .body { padding: 0 20px 14px; }
+    .effect { margin: 0; padding: 0 20px 10px; color: var(--good, #7fd6bb); font-size: 0.875rem; }
+    .note { margin: 6px 0; color: var(--dim, #8fa0af); font-size: 0.8125rem; line-height: 1.45; }
+    .caution { margin: 6px 0; padding: 6px 10px; border-left: 3px solid var(--bad, #ff9a76); background: var(--panel, #141b21); font-size: 0.8125rem; line-height: 1.45; }
+    h3 { margin: 14px 0 2px; font-size: 0.8125rem; font-weight: 600; color: var(--dim, #8fa0af); }
+  `;
+
+  constructor() {
+    super();
+    this.effect = '';
+    this.open = false;
+  }
+
+  abstract readonly chapter: ChapterName;
+  abstract readonly heading: string;
+  abstract finding(): string;
+  /** What stands between the finding and the knobs. */
+  aboveKnobs(): TemplateResult | typeof nothing {
+    return nothing;
+  }
+  /** What follows the knobs. */
+  belowKnobs(): TemplateResult | typeof nothing {
+    return nothing;
+  }
+  /** What the appraisal uses where a field is absent. */
+  found(_path: string): string | undefined {
+    return undefined;
+  }
+
+  override render() {
+    const changed = changedPaths(this.chapter, this.fields, this.recipe).length;
+    return html`
+      <details ?open=${this.open} @toggle=${(event: Event) => { this.open = (event.target as HTMLDetailsElement).open; }}>
+        <summary>
+          <h2>${this.heading}</h2><span class="count">${changed === 0 ? 'all by default' : `${changed} changed`}</span>
+          <p class="finding">${this.finding()}</p>
+        </summary>
+        <div class="body">
+          ${this.aboveKnobs()}
+          ${knobsOf(this.chapter, this.fields).map(({ field, plan }) => html`<eg-knob .field=${field} .slider=${plan.slider} .value=${this.given(field.path)} .found=${this.found(field.path)}></eg-knob>`)}
+          ${this.belowKnobs()}
+        </div>
+      </details>
+      ${this.effect === '' ? nothing : html`<p class="effect" role="status">${this.effect}</p>`}`;
+  }
+
+  /** From the recipe in force, else the default. */
+  protected value(path: string): unknown {
+    return valueAt(this.recipe, path) ?? this.fields.find((field) => field.path === path)?.fallback;
+  }
+
+  private given(path: string): number | string | boolean | undefined {
+    const value = valueAt(this.recipe, path);
+    return typeof value === 'number' || typeof value === 'string' || typeof value === 'boolean' ? value : undefined;
+  }
+}

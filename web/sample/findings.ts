@@ -1,0 +1,82 @@
+/** What each chapter found, in one or two plain sentences composed from the summary. */
+import type { SampleSummary } from '../../workers/api.ts';
+import { area, counted, density, figure, fixed, percent, span, volts, withUnit } from './format.ts';
+
+/** "Bare barrier, height and current, 5.9 V between tip and sample; 512 × 512 pixels on 10.0 × 10.0 µm." */
+export function scanFinding(summary: SampleSummary): string {
+  const surface = summary.surface === 'stack' ? 'Finished stack' : 'Bare barrier';
+  const channels = summary.height && summary.current ? 'height and current' : summary.height ? 'height only' : 'current only';
+  const bias = summary.current === undefined ? '' : summary.current.biasV === undefined ? ', bias not stated' : `, ${volts(summary.current.biasV)} at the scan`;
+  return `${surface}, ${channels}${bias}; ${summary.columns} × ${summary.rows} pixels on ${figure(summary.widthUm)} × ${withUnit(summary.heightUm, 'µm')}.`;
+}
+
+/** "38 nm of tilt removed, 12 broken pixels repaired, noise 0.08 nm; the tip lost 0.08 decades." */
+export function groundFinding({ height, current, repairedUm2 }: SampleSummary): string {
+  const parts: string[] = [];
+  const repaired = (height?.repairedPixels ?? 0) + (current?.repairedPixels ?? 0);
+  if (height) parts.push(`${withUnit(height.tiltNm, 'nm', 2)} of tilt removed`);
+  parts.push(repaired === 0 ? 'nothing to repair' : `${counted(repaired, 'broken pixel')} repaired${repairedUm2 > 0 ? ` (${area(repairedUm2)})` : ''}`);
+  if (height) parts.push(`noise ${withUnit(height.noiseNm, 'nm', 2)}`);
+  const first = capital(parts.join(', '));
+  if (!current) return `${first}.`;
+  const wear = Math.abs(current.wearDecades) < 0.005 ? 'no wear of the tip undone' : current.wearDecades > 0 ? `the tip lost ${fixed(current.wearDecades, 2)} decades` : `the tip gained ${fixed(-current.wearDecades, 2)} decades`;
+  return `${first}; ${wear}.`;
+}
+
+/** "34 bubbles, 9 residue patches, 4 wrinkles; 6 shorts seen, about 25 expected." Expected: seen and those between the scan lines. */
+export function flawsFinding({ flaws, shorts, current }: SampleSummary): string {
+  const count = (cause: string): number => flaws.filter((flaw) => flaw.cause === cause).length;
+  const kinds = [
+    [count('bubble'), 'bubble', 'bubbles'], [count('residue'), 'residue patch', 'residue patches'], [count('wrinkle'), 'wrinkle', 'wrinkles'], [count('open'), 'open spot', 'open spots'],
+  ] as const;
+  const seen = kinds.filter(([number]) => number > 0).map(([number, one, many]) => counted(number, one, many));
+  const first = seen.length > 0 ? seen.join(', ') : 'No bubbles, residue or wrinkles';
+  if (!current) return `${first}. Shorts do not show in height.`;
+  const expected = shorts.seen + shorts.expectedMissed;
+  const more = shorts.seen === 0 ? '' : expected < shorts.seen * 1.05 ? ', hardly any missed between the scan lines' : `, about ${expected < 10 ? figure(expected, 2) : String(Math.round(expected))} expected`;
+  return `${first}; ${counted(shorts.seen, 'short')} seen${more}.`;
+}
+
+/** "At 4.0 V the reference (12 layers, 4.00 nm) would carry 6.3 nA/µm² (95 %: 0.9–40)." Or why that is not known. */
+export function glowFinding(summary: SampleSummary): string {
+  const { device, reference, current } = summary;
+  if (!current) return 'Nothing is known of the barrier without a current map.';
+  if (device) {
+    const known = [reference?.layers === undefined ? '' : counted(reference.layers, 'layer'), reference?.thicknessNm === undefined ? '' : withUnit(reference.thicknessNm, 'nm')].filter((part) => part !== '');
+    return `At ${volts(device.biasV)}${device.proposed ? ' (proposed)' : ''} the reference${known.length > 0 ? ` (${known.join(', ')})` : ''} would carry ${density(device.medianNaPerUm2)} (95 %: ${span(device.low95NaPerUm2, device.high95NaPerUm2, 2)}).`;
+  }
+  const share = reference ? ` The reference is ${percent(reference.shareOfUnflawed)} of the unflawed ground.` : '';
+  if (current.unit !== 'A') return `Density is not known: the current has no scale in amperes.${share}`;
+  if (current.biasV === undefined) return `Density is not known without a scan bias.${share}`;
+  if (summary.surface === 'stack') return `Density is not predicted from a finished stack: its emitter spreads the probe’s current.${share}`;
+  return `Density is not known for this sample.${share}`;
+}
+
+/** What the density rests on; empty when there is none. */
+export function glowAssumption(summary: SampleSummary, value: (path: string) => unknown): string {
+  if (!summary.device) return '';
+  const number = (path: string): number | undefined => { const found = value(path); return typeof found === 'number' ? found : undefined; };
+  const anchor = number('barrier.referenceLayers') === undefined
+    ? `a probe contact of ${withUnit(number('barrier.tipAreaNm2'), 'nm²', 2)}, known to about a decade`
+    : `${counted(number('barrier.referenceLayers') ?? 0, 'layer')} on the reference, as given`;
+  return `Assumes ${anchor}, a barrier of ${withUnit(number('barrier.heightEv'), 'eV')} and a mass of ${figure(number('barrier.massRatio'), 2)}; extrapolated in field from the probe to the device.`;
+}
+
+/** Effect of the last change in µm²; empty when there is nothing to compare with. */
+export function effectOf(before: number | undefined, now: number | undefined): string {
+  if (before === undefined || now === undefined) return '';
+  const gained = now - before;
+  if (Math.abs(gained) < 5e-4) return 'This changed no usable area.';
+  return gained > 0 ? `This returned ${area(gained)}.` : `This cost ${area(-gained)}.`;
+}
+
+/** The verdict's sentence without its leading area and interval, which are shown on their own; split at the first semicolon. */
+export function verdictRest(verdict: string): { readonly what: string; readonly remarks: string } {
+  const rest = verdict.replace(/^\S+\s+µm²\s*(\([^)]*\))?\s*/, '').replace(/\.$/, '');
+  const at = rest.indexOf(';');
+  return at < 0 ? { what: rest, remarks: '' } : { what: rest.slice(0, at), remarks: rest.slice(at + 1).trim() };
+}
+
+function capital(text: string): string {
+  return text.charAt(0).toUpperCase() + text.slice(1);
+}

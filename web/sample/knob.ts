@@ -1,0 +1,148 @@
+/** One setting of the recipe: number with or without a slider, choice, or flag; with its default, its reset and its hint. */
+import { LitElement, css, html, nothing } from 'lit';
+import type { PropertyValues } from 'lit';
+import type { FieldInfo } from '../../workers/api.ts';
+import { controlStyles } from '../app/controls.ts';
+import type { RecipeChange } from './events.ts';
+import { plain, typedNumber } from './format.ts';
+import { refusal, stepLabel } from './knobs.ts';
+import type { Slider } from './knobs.ts';
+
+const sliderSteps = 400;
+
+export class Knob extends LitElement {
+  static override properties = {
+    field: { attribute: false }, slider: { attribute: false }, value: { attribute: false }, found: { attribute: false },
+    draft: { state: true }, problem: { state: true },
+  };
+
+  declare field: FieldInfo;
+  declare slider: Slider | undefined;
+  /** As in the sparse recipe; undefined: by default. */
+  declare value: number | string | boolean | undefined;
+  /** What is used while the field is absent, where the appraisal found it: "5.9 V". */
+  declare found: string | undefined;
+  /** Number on a slider that is still held. */
+  declare draft: number | undefined;
+  declare problem: string;
+
+  static override styles = [controlStyles, css`
+    :host { display: block; padding: 5px 0; font-size: 0.875rem; }
+    .row { display: grid; grid-template-columns: minmax(7rem, 10.5rem) minmax(0, 1fr) 1.6rem; gap: 2px 10px; align-items: center; }
+    label { line-height: 1.3; }
+    .control { display: flex; gap: 8px; align-items: center; min-width: 0; }
+    input[type='text'] { width: 5.5rem; padding: 0.1rem 0.4rem; text-align: right; font-size: 0.875rem; }
+    select { padding: 0.1rem 0.3rem; font-size: 0.875rem; max-width: 100%; }
+    input[type='range'] { flex: 1; min-width: 3rem; accent-color: var(--glow, #ffb454); padding: 0; margin: 0; background: none; border: 0; }
+    .unit { color: var(--dim, #8fa0af); white-space: nowrap; }
+    .reset { padding: 0; width: 1.6rem; height: 1.6rem; line-height: 1; }
+    .changed label { color: var(--glow-soft, #ffd9a0); }
+    .hint { margin: 1px 0 0; color: var(--dim, #8fa0af); font-size: 0.78rem; line-height: 1.4; }
+    .problem { margin: 2px 0 0; color: var(--bad, #ff9a76); font-size: 0.8125rem; }
+  `];
+
+  constructor() {
+    super();
+    this.problem = '';
+  }
+
+  override willUpdate(changed: PropertyValues<this>): void {
+    if (changed.has('value') || changed.has('field')) {
+      this.draft = undefined;
+      this.problem = '';
+    }
+  }
+
+  override render() {
+    const { field } = this;
+    const changed = this.isChanged;
+    return html`
+      <div class="row ${changed ? 'changed' : ''}">
+        <label for="control">${field.title}</label>
+        <div class="control">${this.renderControl()}</div>
+        ${changed ? html`<button type="button" class="plain reset" title="Back to the default (${this.defaultText()})" aria-label="${field.title} back to the default" @click=${() => { this.send(undefined); }}>↺</button>` : nothing}
+      </div>
+      ${this.problem === '' ? nothing : html`<p class="problem" role="alert">${this.problem}</p>`}
+      <p class="hint" id="hint">${field.description} <span class="default">Default: ${this.defaultText()}.</span></p>`;
+  }
+
+  private get isChanged(): boolean {
+    return this.value !== undefined && this.value !== this.field.fallback;
+  }
+
+  private defaultText(): string {
+    const { fallback, absent, unit } = this.field;
+    if (fallback === undefined) return absent ?? 'none';
+    if (typeof fallback === 'boolean') return fallback ? 'on' : 'off';
+    return typeof fallback === 'number' ? `${plain(fallback)}${unit === undefined ? '' : `\u00a0${unit}`}` : fallback;
+  }
+
+  private renderControl() {
+    const { field, value } = this;
+    const now = value ?? field.fallback;
+    switch (field.kind) {
+      case 'flag':
+        return html`<input id="control" type="checkbox" .checked=${now === true} aria-describedby="hint" @change=${(event: Event) => { this.send((event.target as HTMLInputElement).checked); }}>`;
+      case 'choice':
+        return html`<select id="control" aria-describedby="hint" .value=${String(now ?? '')} @change=${(event: Event) => { this.send((event.target as HTMLSelectElement).value || undefined); }}>
+          ${field.fallback === undefined ? html`<option value="" ?selected=${now === undefined}>not given</option>` : nothing}
+          ${(field.choices ?? []).map((choice) => html`<option value=${choice} ?selected=${choice === now}>${choice}</option>`)}
+        </select>`;
+      case 'word':
+        return html`<input id="control" type="text" aria-describedby="hint" .value=${String(now ?? '')} @change=${(event: Event) => { this.send((event.target as HTMLInputElement).value.trim() || undefined); }}>`;
+      case 'number':
+        return this.renderNumber(typeof now === 'number' ? now : undefined);
+    }
+  }
+
+  private renderNumber(now: number | undefined) {
+    const shown = this.draft ?? now;
+    const { slider, field } = this;
+    return html`
+      ${slider === undefined ? nothing : html`<input type="range" min="0" max=${sliderSteps} aria-label="${field.title}, slider" aria-valuetext=${this.withUnit(shown)} .value=${String(this.toSlider(shown, slider))}
+        @input=${(event: Event) => { this.draft = this.fromSlider(event, slider); }} @change=${(event: Event) => { this.commit(this.fromSlider(event, slider)); }}>`}
+      <input id="control" type="text" inputmode="decimal" autocomplete="off" placeholder=${this.found ?? '–'} aria-describedby="hint" aria-invalid=${this.problem === '' ? 'false' : 'true'}
+        .value=${shown === undefined ? '' : plain(shown)} @change=${this.onTyped}>
+      ${field.unit === undefined ? nothing : html`<span class="unit">${field.unit}</span>`}`;
+  }
+
+  private withUnit(value: number | undefined): string {
+    return value === undefined ? 'not given' : `${plain(value)} ${this.field.unit ?? ''}`.trim();
+  }
+
+  private toSlider(value: number | undefined, { from, to, log }: Slider): number {
+    if (value === undefined) return 0;
+    const share = log ? Math.log(value / from) / Math.log(to / from) : (value - from) / (to - from);
+    return Math.round(Math.min(1, Math.max(0, share)) * sliderSteps);
+  }
+
+  /** Two significant digits on a logarithmic slider, whole steps on an even one. */
+  private fromSlider(event: Event, { from, to, log, step }: Slider): number {
+    const share = Number((event.target as HTMLInputElement).value) / sliderSteps;
+    const exact = log ? from * (to / from) ** share : from + share * (to - from);
+    const round = log ? Number(exact.toPrecision(2)) : exact;
+    return step === undefined ? round : Number((Math.round(round / step) * step).toPrecision(6));
+  }
+
+  private readonly onTyped = (event: Event): void => {
+    const text = (event.target as HTMLInputElement).value;
+    if (text.trim() === '') this.send(undefined);
+    else this.commit(typedNumber(text));
+  };
+
+  private commit(value: number): void {
+    this.problem = refusal(this.field, value) ?? '';
+    this.draft = undefined;
+    if (this.problem === '') this.send(value);
+  }
+
+  /** Nothing is sent when nothing changes; the default is sent as "not given". */
+  private send(value: number | string | boolean | undefined): void {
+    const sparse = value === this.field.fallback ? undefined : value;
+    if (sparse === this.value || (sparse === undefined && !this.isChanged)) return;
+    const detail: RecipeChange = { path: this.field.path, value: sparse, label: stepLabel(this.field, sparse === undefined && value !== undefined ? value : sparse) };
+    this.dispatchEvent(new CustomEvent('recipe-change', { detail, bubbles: true, composed: true }));
+  }
+}
+
+customElements.define('eg-knob', Knob);

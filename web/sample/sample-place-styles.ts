@@ -1,0 +1,30 @@
+/** Styles of the Sample place. */
+import { css } from 'lit';
+
+export const samplePlaceStyles = css`
+  :host { display: flex; flex-direction: column; box-sizing: border-box; height: calc(100dvh - var(--header-height, 3.6rem)); min-height: 620px; overflow: hidden; }
+  .top { padding: 10px 24px 8px; border-bottom: 1px solid var(--line, #25313b); }
+  .headline { display: flex; gap: 8px 24px; align-items: flex-start; justify-content: space-between; margin-bottom: 10px; }
+  eg-verdict-line { flex: 1; min-width: 0; }
+  .steps { display: flex; gap: 8px; flex: none; padding-top: 4px; }
+  .steps button { font-size: 0.875rem; max-width: 18rem; overflow: hidden; text-overflow: ellipsis; }
+  .steps button:disabled { opacity: 0.45; cursor: default; }
+  eg-progress-line, .error { margin-top: 6px; }
+  .error { margin-bottom: 0; color: var(--bad, #ff9a76); font-size: 0.9375rem; }
+  .main { flex: 1; display: grid; grid-template-columns: minmax(0, 1fr) 26rem; min-height: 0; }
+  eg-map-panel { padding: 12px 18px 10px 24px; }
+  .chapters { border-left: 1px solid var(--line, #25313b); overflow: auto; scrollbar-gutter: stable; }
+  .stale .result { opacity: 0.72; }
+  .result { transition: opacity 200ms; }
+  .empty { padding: 2rem 24px; }
+  @media (max-width: 1180px) and (min-width: 901px) { .main { grid-template-columns: minmax(0, 1fr) 22rem; } }
+  @media (max-width: 900px) {
+    :host { height: auto; min-height: 0; overflow: visible; }
+    .top { padding: 10px 14px; }
+    .headline { flex-direction: column; }
+    .main { display: block; }
+    eg-map-panel { padding: 12px 14px; min-height: 0; grid-template-rows: auto min(100vw, 70dvh) auto auto auto; }
+    .chapters { border-left: 0; border-top: 1px solid var(--line, #25313b); overflow: visible; }
+  }
+  @media (prefers-reduced-motion: reduce) { .result { transition: none; } }
+`;

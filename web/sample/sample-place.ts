@@ -1,0 +1,190 @@
+/** The Sample place: verdict and ledger on top, the map with as much room as there is, the chapters beside it. */
+import { LitElement, html, nothing } from 'lit';
+import type { PropertyValues } from 'lit';
+import type { Compute, ComputeFacts, FlawEntry, SampleSummary } from '../../workers/api.ts';
+import { controlStyles } from '../app/controls.ts';
+import '../ledger/ledger-bar.ts';
+import type { IsolateEvent } from '../ledger/ledger-bar.ts';
+import '../map/map-panel.ts';
+import type { MapPanel } from '../map/map-panel.ts';
+import { recipeOf, valueAt } from '../session/recipe.ts';
+import type { SampleState } from '../session/state.ts';
+import './chapter-flaws.ts';
+import './chapter-glow.ts';
+import './chapter-ground.ts';
+import './chapter-scan.ts';
+import type { FlawSelectEvent } from './events.ts';
+import { effectOf } from './findings.ts';
+import { chapterOfChange } from './knobs.ts';
+import type { ChapterName } from './knobs.ts';
+import './progress-line.ts';
+import { samplePlaceStyles } from './sample-place-styles.ts';
+import './verdict-line.ts';
+
+export class SamplePlace extends LitElement {
+  static override properties = {
+    sample: { attribute: false }, facts: { attribute: false }, compute: { attribute: false }, isolated: { state: true }, flaw: { state: true }, touched: { state: true },
+  };
+
+  declare sample: SampleState;
+  declare facts: ComputeFacts | undefined;
+  declare compute: Compute;
+  /** Cause shown alone on the map. */
+  declare isolated: number | undefined;
+  /** Number of the selected flaw. */
+  declare flaw: number | undefined;
+  /** Chapter of the last change of the recipe. */
+  declare touched: ChapterName | undefined;
+
+  static override styles = [controlStyles, samplePlaceStyles];
+
+  override connectedCallback(): void {
+    super.connectedCallback();
+    addEventListener('keydown', this.onKey);
+    addEventListener('keyup', this.onRelease);
+  }
+
+  override disconnectedCallback(): void {
+    super.disconnectedCallback();
+    removeEventListener('keydown', this.onKey);
+    removeEventListener('keyup', this.onRelease);
+  }
+
+  override willUpdate(changed: PropertyValues<this>): void {
+    const before = changed.get('sample');
+    if (!before) return;
+    if (before.id !== this.sample.id) {
+      this.isolated = undefined;
+      this.flaw = undefined;
+      this.touched = undefined;
+      return;
+    }
+    const [from, to] = [recipeOf(before), recipeOf(this.sample)];
+    if (from !== to) this.touched = chapterOfChange(from, to);
+    // Flaws are numbered anew by every appraisal.
+    if (before.summary !== this.sample.summary) {
+      if (this.flaw !== undefined) this.flaw = sameFlaw(before.summary, this.flaw, this.sample.summary);
+      const entry = this.sample.summary?.ledger.find(({ code }) => code === this.isolated);
+      if (!entry || entry.areaUm2 === 0) this.isolated = undefined;
+    }
+  }
+
+  override render() {
+    const { sample, facts } = this;
+    const { summary, status } = sample;
+    const working = status === 'working' || status === 'waiting';
+    if (!summary || !facts) return this.renderWithout(working);
+    const effect = working ? '' : effectOf(sample.previousUsableUm2, summary.usable.areaUm2);
+    return html`
+      <div class="top ${working ? 'stale' : ''}">
+        <div class="headline">
+          <eg-verdict-line class="result" .summary=${summary} .effect=${this.touched === undefined ? effect : ''}></eg-verdict-line>
+          ${this.renderSteps()}
+        </div>
+        <eg-ledger-bar class="result" .entries=${summary.ledger} .causes=${facts.causes} .hatchPeriod=${facts.hatchPeriod} .isolated=${this.isolated}
+          @isolate=${(event: IsolateEvent) => { this.isolated = event.detail.code; }}></eg-ledger-bar>
+        ${working ? html`<eg-progress-line .progress=${sample.progress}></eg-progress-line>` : nothing}
+        ${this.renderError()}
+      </div>
+      <div class="main ${working ? 'stale' : ''}" @flaw-select=${(event: FlawSelectEvent) => { this.selectFlaw(event.detail.flaw, true); }}>
+        <eg-map-panel class="result" .summary=${summary} .facts=${facts} .compute=${this.compute} .isolated=${this.isolated} .flaw=${this.selected} .bandFactor=${this.bandFactor(summary)}
+          @flaw-select=${(event: FlawSelectEvent) => { event.stopPropagation(); this.selectFlaw(event.detail.flaw, false); }}></eg-map-panel>
+        <div class="chapters">${this.renderChapters(summary, facts, effect)}</div>
+      </div>`;
+  }
+
+  private renderChapters(summary: SampleSummary, { fields }: ComputeFacts, effect: string) {
+    const recipe = recipeOf(this.sample);
+    const of = (chapter: ChapterName): string => (this.touched === chapter ? effect : '');
+    return html`
+      <eg-chapter-scan .summary=${summary} .fields=${fields} .recipe=${recipe} .effect=${of('scan')}></eg-chapter-scan>
+      <eg-chapter-ground .summary=${summary} .fields=${fields} .recipe=${recipe} .effect=${of('ground')}></eg-chapter-ground>
+      <eg-chapter-flaws .summary=${summary} .fields=${fields} .recipe=${recipe} .effect=${of('flaws')} .selected=${this.flaw}></eg-chapter-flaws>
+      <eg-chapter-glow .summary=${summary} .fields=${fields} .recipe=${recipe} .effect=${of('glow')}></eg-chapter-glow>`;
+  }
+
+  /** The step that each button would undo or redo is named on it. */
+  private renderSteps() {
+    const { history, at } = this.sample;
+    const back = at > 0 ? history[at]?.label : undefined;
+    const forth = history[at + 1]?.label;
+    return html`<div class="steps">
+      <button type="button" ?disabled=${back === undefined} aria-keyshortcuts="Control+Z" title="Ctrl+Z" @click=${() => { this.send('undo'); }}>${back === undefined ? 'Undo' : `Undo: ${back}`}</button>
+      <button type="button" ?disabled=${forth === undefined} aria-keyshortcuts="Control+Shift+Z" title="Ctrl+Shift+Z" @click=${() => { this.send('redo'); }}>${forth === undefined ? 'Redo' : `Redo: ${forth}`}</button>
+    </div>`;
+  }
+
+  private renderError() {
+    const { error, status } = this.sample;
+    if (status === 'cancelled') return html`<p class="error">Cancelled; what is shown is the last result. <button type="button" @click=${() => { this.send('retry'); }}>Run again</button></p>`;
+    return status === 'failed' && error ? html`<p class="error" role="alert">${error.message} What is shown is the last result.</p>` : nothing;
+  }
+
+  private renderWithout(working: boolean) {
+    const { status, error, progress } = this.sample;
+    if (working || !this.facts) return html`<div class="empty"><eg-progress-line .progress=${progress}></eg-progress-line></div>`;
+    if (status === 'asking') return nothing;
+    return html`<div class="empty">
+      ${status === 'cancelled' ? html`<p class="error">Cancelled.</p>` : error ? html`<p class="error" role="alert">${error.message}</p>` : nothing}
+      <button type="button" @click=${() => { this.send('retry'); }}>Run again</button>
+      <button type="button" @click=${() => { this.send('leave'); }}>Back to the tray</button>
+    </div>`;
+  }
+
+  private get selected(): FlawEntry | undefined {
+    return this.sample.summary?.flaws.find(({ flaw }) => flaw === this.flaw);
+  }
+
+  private bandFactor(summary: SampleSummary): number {
+    const factor = valueAt(summary.recipe, 'band.factor');
+    return typeof factor === 'number' ? factor : 3;
+  }
+
+  private selectFlaw(flaw: number | undefined, centre: boolean): void {
+    this.flaw = flaw;
+    if (centre && this.selected) this.panel?.centreOn(this.selected);
+    else if (!centre && flaw !== undefined) this.renderRoot.querySelector('eg-chapter-flaws')?.toggleAttribute('open', true);
+  }
+
+  private readonly onKey = (event: KeyboardEvent): void => {
+    if (event.defaultPrevented || isTyping(event)) return;
+    if ((event.ctrlKey || event.metaKey) && !event.altKey && event.key.toLowerCase() === 'z') this.step(event.shiftKey ? 'redo' : 'undo');
+    else if (event.key === 'Escape' && this.isolated !== undefined) this.isolated = undefined;
+    else if (event.key === 'Escape' && this.flaw !== undefined && !this.panel?.press(event)) this.flaw = undefined;
+    else if (event.key === 'Escape' || !this.panel?.press(event)) return;
+    event.preventDefault();
+  };
+
+  private readonly onRelease = (event: KeyboardEvent): void => {
+    this.panel?.release(event);
+  };
+
+  private step(name: 'undo' | 'redo'): void {
+    const { at, history } = this.sample;
+    if (name === 'undo' ? at > 0 : history[at + 1] !== undefined) this.send(name);
+  }
+
+  private get panel(): MapPanel | null {
+    return this.renderRoot.querySelector<MapPanel>('eg-map-panel');
+  }
+
+  private send(type: 'undo' | 'redo' | 'leave' | 'retry'): void {
+    this.dispatchEvent(new CustomEvent(type, { bubbles: true, composed: true }));
+  }
+}
+
+/** Where text is typed, keys are letters; a slider or a box to tick is no such place. */
+function isTyping(event: KeyboardEvent): boolean {
+  const [target] = event.composedPath();
+  if (target instanceof HTMLSelectElement || target instanceof HTMLTextAreaElement) return true;
+  return target instanceof HTMLInputElement && !['range', 'checkbox', 'radio', 'button'].includes(target.type);
+}
+
+/** The flaw of a new appraisal that covers the place of a flaw of the one before; undefined when there is none of about its size. */
+function sameFlaw(before: SampleSummary | undefined, flaw: number, after: SampleSummary | undefined): number | undefined {
+  const old = before?.flaws.find((candidate) => candidate.flaw === flaw);
+  if (!old || !after) return undefined;
+  return after.flaws.find(({ xUm, yUm }) => Math.hypot(xUm - old.xUm, yUm - old.yUm) < old.diameterUm / 2)?.flaw;
+}
+
+customElements.define('eg-sample-place', SamplePlace);

@@ -1,0 +1,47 @@
+/** The verdict as a sentence, its area large and glowing; interval, largest patch and remarks below. */
+import { LitElement, css, html, nothing } from 'lit';
+import type { SampleSummary } from '../../workers/api.ts';
+import { controlStyles } from '../app/controls.ts';
+import { verdictRest } from './findings.ts';
+import { area, counted, span } from './format.ts';
+
+export class VerdictLine extends LitElement {
+  static override properties = { summary: { attribute: false }, effect: { attribute: false }, open: { state: true } };
+
+  declare summary: SampleSummary;
+  declare effect: string;
+  declare open: boolean;
+
+  static override styles = [controlStyles, css`
+    :host { display: block; }
+    h1 { margin: 0; font-size: 1.1875rem; font-weight: 400; line-height: 1.3; text-wrap: pretty; }
+    .area { margin-right: 0.25em; color: var(--glow, #ffb454); font-size: 2.125rem; font-weight: 600; line-height: 1.1; white-space: nowrap; text-shadow: 0 0 22px rgb(255 180 84 / 0.35); }
+    .more { margin: 2px 0 0; color: var(--dim, #8fa0af); font-size: 0.875rem; }
+    .effect { color: var(--good, #7fd6bb); }
+    ul { margin: 6px 0 0; padding: 8px 12px 8px 28px; background: var(--panel, #141b21); border: 1px solid var(--line, #25313b); border-radius: 7px; font-size: 0.875rem; max-height: 11rem; overflow: auto; }
+    li { margin: 2px 0; }
+    @media (max-width: 760px) { h1 { font-size: 1.0625rem; } .area { display: block; font-size: 2.5rem; } }
+  `];
+
+  constructor() {
+    super();
+    this.effect = '';
+    this.open = false;
+  }
+
+  override render() {
+    const { usable, verdict, remarks } = this.summary;
+    const rest = verdictRest(verdict);
+    const facts = [
+      `95 %: ${span(usable.low95Um2, usable.high95Um2)} µm²`, `largest patch ${area(usable.largestPatchUm2)}`,
+    ];
+    return html`
+      <h1><span class="area">${area(usable.areaUm2)}</span> ${rest.what}</h1>
+      <p class="more">${facts.join(' · ')}
+        ${remarks.length === 0 ? nothing : html` · <button type="button" class="plain" aria-expanded=${this.open ? 'true' : 'false'} aria-controls="remarks" @click=${() => { this.open = !this.open; }}>${counted(remarks.length, 'remark')}</button>`}
+        ${this.effect === '' ? nothing : html`<span class="effect" role="status">${this.effect}</span>`}</p>
+      ${this.open ? html`<ul id="remarks">${remarks.map((remark) => html`<li>${remark.message}</li>`)}</ul>` : nothing}`;
+  }
+}
+
+customElements.define('eg-verdict-line', VerdictLine);
