@@ -52,7 +52,7 @@ export function createPool(options: PoolOptions = {}): ComputePool {
   const place = ({ samples, skipped, failed }: Offers): OpenReply => ({
     samples: samples.map((offer) => {
       const id = `sample-${++opened}`;
-      leastLoaded().samples.set(id, { id, offer });
+      leastLoaded().samples.set(id, { id, offer, run: Number.NEGATIVE_INFINITY });
       return { id, name: offer.name, files: offer.files };
     }),
     skipped, failed,
@@ -67,7 +67,7 @@ export function createPool(options: PoolOptions = {}): ComputePool {
     try {
       const summary = await worker.call((remote) => (onStage ? remote.appraise(run, id, recipe, proxy(listener)) : remote.appraise(run, id, recipe)), id, run);
       const placed = worker.samples.get(id);
-      if (placed) placed.recipe = recipe;
+      if (placed && run >= placed.run) Object.assign(placed, { run, recipe });
       return summary;
     } finally {
       runs.delete(run);
@@ -95,8 +95,8 @@ export function createPool(options: PoolOptions = {}): ComputePool {
     resultFile: async (id, name) => home(id).call((remote) => remote.resultFile(id, name), id),
     dispose() {
       isOver = true;
-      for (const worker of crew) worker.lose('it was ended');
       listeners.clear();
+      for (const worker of crew) worker.lose('it was ended');
     },
     onLost(listener) {
       listeners.add(listener);

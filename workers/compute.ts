@@ -1,6 +1,5 @@
 /** The computation, in the thread that calls it: no worker, no page, no file system. */
-import type { Appraised } from '../src/report/appraised.ts';
-import type { App } from '../src/report/appraised.ts';
+import type { App, Appraised } from '../src/report/appraised.ts';
 import { resultFiles } from '../src/report/result-files.ts';
 import type { OpenReply, RecipeData } from './api.ts';
 import { Appraiser } from './appraiser.ts';

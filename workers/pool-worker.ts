@@ -11,6 +11,8 @@ import { errorOf } from './wire.ts';
 export interface Placed {
   readonly id: string;
   readonly offer: SampleOffer;
+  /** The newest run that succeeded, and its recipe. */
+  run: number;
   recipe?: RecipeData;
 }
 

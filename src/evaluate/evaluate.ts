@@ -60,7 +60,7 @@ export function* evaluateInSteps(sample: Sample, recipe: Recipe, options: Evalua
   const { band, barrier: barrierSection, stack } = recipe;
   const ground = yield* run('ground', recipe.ground, () => levelGround(sample, recipe.ground, recipe.scan));
   const flaws = yield* run('flaws', [recipe.flaws, barrierSection, band.shortMaxUm2, band.terraceMinUm2], () =>
-    findFlaws(ground, sample.grid, recipe.flaws, flawScale(ground, recipe)));
+    findFlaws(ground, sample.grid, sample.footprint, recipe.flaws, flawScale(ground, recipe)));
   const barrier = yield* run('barrier', [stack, band], () => barrierOf(sample, ground, flaws, recipe));
   const sheet: Sheet | undefined = yield* run('sheet', [], () => barrier && assessSheet(sheetInput(sample, ground, flaws, barrier, recipe)));
   const ledger = yield* run('ledger', [], () => keepLedger({

@@ -38,7 +38,7 @@ export function classifyRaised(region: Region): Classified {
     const confidence = sure(Math.max((thinRoundness - roundness) / 0.3, (elongation - 3) / 5));
     return { cause: 'wrinkle', confidence, reason: `long thin ridge, ${oneDigit(elongation)} times as long as wide, ${current}: wrinkle` };
   }
-  const fullness = region.meanM / region.peakM;
+  const { fullness } = region;
   const isDome = region.domeShare >= surelyDome || fullness < domeToPatch;
   const margin = Math.max(Math.abs(fullness - domeToPatch) / 0.14, region.domeShare >= surelyDome ? 0.6 : 0);
   const confidence = sure(region.pixels < 12 ? margin / 2 : margin);

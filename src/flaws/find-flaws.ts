@@ -1,5 +1,5 @@
 import { squaredDistance } from '../grid/distance.ts';
-import type { Grid } from '../grid/maps.ts';
+import type { Grid, MaskMap } from '../grid/maps.ts';
 import { labelMap, pixelAreaM2 } from '../grid/maps.ts';
 import { labelComponents } from '../grid/label-components.ts';
 import type { Ground } from '../ground/ground.ts';
@@ -35,10 +35,12 @@ const pitM = 2.6e-9;
  * Flaws stage: finds and measures bubbles, residue and wrinkles (raised, with missing or lowered current), shorts and opens (seen by current
  * alone), numbers them from 1 in the order shorts, raised, opens, and gives each a class with its reason.
  *
+ * Only the footprint's own flaws count: what lies beyond it is left out, and a flaw across its edge is cut there.
+ *
  * Height alone: raised regions only, by height. Current alone: shorts and opens only; what blocks the current is then an open spot or a thick
  * terrace, as nothing tells it from a bubble. Pixels where a quantity is NaN take no part in what is concluded from it.
  */
-export function findFlaws(ground: Ground, grid: Grid, section: FlawsSection, scale: FlawScale): Flaws {
+export function findFlaws(ground: Ground, grid: Grid, footprint: MaskMap, section: FlawsSection, scale: FlawScale): Flaws {
   const { columns, rows } = grid;
   const count = columns * rows;
   const warnings: Notice[] = [];
@@ -73,7 +75,11 @@ export function findFlaws(ground: Ground, grid: Grid, section: FlawsSection, sca
     opens = found.opens;
     for (let i = 0; i < count; i++) if (found.belongToRaised[i] === 1) raisedMask[i] = 1;
   }
-  for (let i = 0; i < count; i++) if (shorts[i] === 1) raisedMask[i] = 0;
+  const inside = footprint.data;
+  for (let i = 0; i < count; i++) {
+    if (shorts[i] === 1) raisedMask[i] = 0;
+    if (inside[i] === 0) raisedMask[i] = shorts[i] = opens[i] = 0;
+  }
 
   const labels = new Uint32Array(count);
   const list: Flaw[] = [];

@@ -1,4 +1,5 @@
 /** Where the surface stands above the ground and the current is missing or lowered: bubbles, residue, wrinkles. */
+import { squaredDistance } from '../grid/distance.ts';
 import { labelComponents } from '../grid/label-components.ts';
 import { dilate, nearestAdmitted } from './local-ground.ts';
 
@@ -34,6 +35,8 @@ export interface Raised {
 
 /** How far a flaw may reach beyond its raised part to follow the missing current, pixels. */
 const reachPx = 3;
+/** Half-width from which ground with the rise and loss of whole layers is a terrace, pixels. */
+const terraceHalfPx = 2.5;
 
 /**
  * Joint two-threshold detection. A region starts where the rise exceeds `startM` and extends to `edgeShare · startM`
@@ -53,6 +56,7 @@ export function findRaised(input: RaisedInput): Raised {
   const nearest = nearestAdmitted(outside, columns, rows);
   const mask = new Uint8Array(zone.length);
   const drop = new Float32Array(zone.length);
+  const step = new Uint8Array(zone.length);
   const conducting = new Uint8Array(zone.length);
   for (let i = 0; i < zone.length; i++) {
     if (zone[i] === 0) continue;
@@ -60,19 +64,37 @@ export function findRaised(input: RaisedInput): Raised {
     const loss = from < 0 ? Number.NaN : log10[from]! - log10[i]!;
     drop[i] = loss;
     if (Number.isNaN(loss)) mask[i] = raised[i]!;
-    else if (loss > input.dropDecades) mask[i] = isBarrierStep(input, i, loss) ? 0 : 1;
+    else if (loss > input.dropDecades) {
+      mask[i] = 1;
+      if (isBarrierStep(input, i, loss)) step[i] = 1;
+    }
     else if (raised[i] === 1 && rise[i]! > input.startM) {
       // Beside ground that is itself saturated or at the floor a drop cannot be judged: the height alone decides.
       if (input.saturated?.[from] === 1 || input.floor?.[from] === 1) mask[i] = 1;
       else conducting[i] = 1;
     }
   }
-  const final = withoutSpecks(keepTouching(mask, raised, columns, rows), columns, rows, input.minPixels);
+  removeTerraces(mask, step, columns, rows);
+  // What is left of a terrace's border does not reach the starting threshold and goes with it.
+  const strong = new Uint8Array(zone.length);
+  for (let i = 0; i < strong.length; i++) strong[i] = mask[i] === 1 && rise[i]! > input.startM ? 1 : 0;
+  const final = withoutSpecks(keepTouching(mask, strong, columns, rows), columns, rows, input.minPixels);
   // The flanks of a flaw rise too; only what stands apart from all flaws is a bump of its own.
   const near = dilate(final, columns, rows, reachPx);
   let conductingPixels = 0;
   for (let i = 0; i < near.length; i++) if (conducting[i] === 1 && near[i] === 0) conductingPixels++;
   return { mask: final, drop, conductingPixels };
+}
+
+/** Takes pixels of a mere barrier step out of the mask where they form ground of some width: the rounded edge of a film passes through such values too. */
+function removeTerraces(mask: Uint8Array, step: Uint8Array, columns: number, rows: number): void {
+  const distance2 = squaredDistance(step, columns, rows);
+  const wide = distance2.some((d) => d > terraceHalfPx ** 2);
+  if (!wide) return;
+  const cores = new Uint8Array(step.length);
+  for (let i = 0; i < cores.length; i++) cores[i] = distance2[i]! > terraceHalfPx ** 2 ? 1 : 0;
+  const terraces = keepTouching(step, cores, columns, rows);
+  for (let i = 0; i < mask.length; i++) if (terraces[i] === 1) mask[i] = 0;
 }
 
 /**

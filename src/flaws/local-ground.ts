@@ -1,4 +1,6 @@
 /** Level of the ground around each pixel, features left out. */
+import { dilateByKernel } from '../kernels/dilate.ts';
+import { nearestByKernel } from '../kernels/nearest-admitted.ts';
 import { riseOverGround } from '../kernels/rise-above-ground.ts';
 
 /**
@@ -96,9 +98,14 @@ function risePlainly(levelled: Float32Array, columns: number, rows: number, wind
 
 /**
  * For every pixel the index of a nearest admitted pixel (city-block distance), spreading breadth first from the edge of the
- * admitted region; an admitted pixel is its own nearest. −1 where nothing is admitted.
+ * admitted region; an admitted pixel is its own nearest. −1 where nothing is admitted. Computed by the kernel where one is installed, with the same result.
  */
 export function nearestAdmitted(use: Uint8Array, columns: number, rows: number): Int32Array {
+  return nearestByKernel(use, columns, rows) ?? nearestPlainly(use, columns, rows);
+}
+
+/** The same in plain TypeScript. */
+function nearestPlainly(use: Uint8Array, columns: number, rows: number): Int32Array {
   const count = columns * rows;
   const nearest = new Int32Array(count).fill(-1);
   const queue = new Int32Array(count);
@@ -137,8 +144,13 @@ export function nearestAdmitted(use: Uint8Array, columns: number, rows: number):
   return nearest;
 }
 
-/** Grows a mask by `radius` pixels (square neighbourhood, cut off at borders). */
+/** Grows a mask by `radius` pixels (square neighbourhood, cut off at borders). Computed by the kernel where one is installed, with the same result. */
 export function dilate(mask: Uint8Array, columns: number, rows: number, radius: number): Uint8Array {
+  return dilateByKernel(mask, columns, rows, radius) ?? dilatePlainly(mask, columns, rows, radius);
+}
+
+/** The same in plain TypeScript. */
+function dilatePlainly(mask: Uint8Array, columns: number, rows: number, radius: number): Uint8Array {
   const along = new Uint8Array(mask.length);
   for (let r = 0; r < rows; r++) {
     let until = -1;

@@ -75,6 +75,30 @@ function breakSign(values: Float32Array, columns: number, rows: number, r: numbe
 }
 
 /**
+ * Marks spikes: single pixels that stand off all eight neighbours by more than twelve times the noise while these agree among themselves to within
+ * four. A pit of up to `pitDepth` is left alone, because it may be a pinhole.
+ */
+export function markSpikes(values: Float32Array, marks: Uint8Array, columns: number, rows: number, noise: number, pitDepth: number): void {
+  for (let r = 1; r + 1 < rows; r++) {
+    for (let c = 1; c + 1 < columns; c++) {
+      const i = r * columns + c;
+      const value = values[i]!;
+      // Most pixels are settled by one neighbour.
+      if (!(Math.abs(value - values[i - 1]!) > 12 * noise)) continue;
+      let low = Number.POSITIVE_INFINITY;
+      let high = Number.NEGATIVE_INFINITY;
+      for (const step of [-columns - 1, -columns, -columns + 1, -1, 1, columns - 1, columns, columns + 1]) {
+        const neighbour = values[i + step]!;
+        if (neighbour < low) low = neighbour;
+        if (neighbour > high) high = neighbour;
+      }
+      if (high - low > 8 * noise) continue;
+      if (value > high + 12 * noise || value < low - Math.max(12 * noise, pitDepth)) marks[i] = 1;
+    }
+  }
+}
+
+/**
  * Fills marked or missing pixels from the nearest unmarked pixels above and below in the same column, when these are at
  * most three lines apart and agree within `tolerance`; otherwise, for single missing pixels, from left and right.
  *
@@ -82,9 +106,9 @@ function breakSign(values: Float32Array, columns: number, rows: number, r: numbe
  */
 export function fillFromNeighbours(values: Float32Array, marks: Uint8Array, columns: number, rows: number, tolerance: number): Uint8Array {
   const filled = new Uint8Array(values.length);
-  const usable = (r: number, c: number): boolean =>
-    r >= 0 && r < rows && c >= 0 && c < columns && marks[r * columns + c] === 0 && !Number.isNaN(values[r * columns + c]!);
   const source = Float32Array.from(values);
+  const usable = (r: number, c: number): boolean =>
+    r >= 0 && r < rows && c >= 0 && c < columns && marks[r * columns + c] === 0 && !Number.isNaN(source[r * columns + c]!);
   for (let r = 0; r < rows; r++) {
     for (let c = 0; c < columns; c++) {
       const i = r * columns + c;

@@ -1,4 +1,5 @@
 /** Form (tilt, bow and higher orders) of a height map as a polynomial in normalised coordinates. */
+import { withoutSurface } from '../kernels/subtract-surface.ts';
 import { solveBand } from '../stats/cholesky.ts';
 import { lowerScatter, mostCommon } from './centre.ts';
 
@@ -68,22 +69,31 @@ function fillBasis(basis: Float64Array, px: Float64Array, py: Float64Array, orde
   }
 }
 
-/** Values of the form at every pixel, row-major. */
-export function formSurface(form: Form, columns: number, rows: number): Float64Array {
+/** The form's polynomial in u on each row: rows × (order + 1) coefficients of P0…Porder. */
+function rowPolynomials(form: Form, rows: number): Float64Array {
   const { order, coefficients } = form;
-  const px = axisTable(columns, order);
   const py = axisTable(rows, order);
-  const surface = new Float64Array(columns * rows);
-  const alongRow = new Float64Array(order + 1);
+  const table = new Float64Array(rows * (order + 1));
   for (let r = 0; r < rows; r++) {
-    alongRow.fill(0);
+    const start = r * (order + 1);
     let k = 0;
     for (let total = 0; total <= order; total++) {
-      for (let j = 0; j <= total; j++) alongRow[total - j]! += coefficients[k++]! * py[r * (order + 1) + j]!;
+      for (let j = 0; j <= total; j++) table[start + total - j]! += coefficients[k++]! * py[start + j]!;
     }
+  }
+  return table;
+}
+
+/** Values of the form at every pixel, row-major. */
+export function formSurface(form: Form, columns: number, rows: number): Float64Array {
+  const terms = form.order + 1;
+  const px = axisTable(columns, form.order);
+  const alongRow = rowPolynomials(form, rows);
+  const surface = new Float64Array(columns * rows);
+  for (let r = 0; r < rows; r++) {
     for (let c = 0; c < columns; c++) {
       let sum = 0;
-      for (let n = 0; n <= order; n++) sum += alongRow[n]! * px[c * (order + 1) + n]!;
+      for (let n = 0; n < terms; n++) sum += alongRow[r * terms + n]! * px[c * terms + n]!;
       surface[r * columns + c] = sum;
     }
   }
@@ -116,8 +126,14 @@ export function fitGroundForm(values: Float32Array, columns: number, rows: numbe
   return { form, residual };
 }
 
-/** `values − form`; NaN stays NaN. */
+/** `values − form`; NaN stays NaN. Computed by the kernel where one is installed, with the same result. */
 export function subtractForm(values: Float32Array, form: Form, columns: number, rows: number): Float32Array {
+  return withoutSurface(values, columns, rows, form.order + 1, rowPolynomials(form, rows), axisTable(columns, form.order))
+    ?? subtractPlainly(values, form, columns, rows);
+}
+
+/** The same in plain TypeScript. */
+function subtractPlainly(values: Float32Array, form: Form, columns: number, rows: number): Float32Array {
   const surface = formSurface(form, columns, rows);
   const out = new Float32Array(values.length);
   for (let i = 0; i < out.length; i++) out[i] = values[i]! - surface[i]!;

@@ -1,6 +1,6 @@
 import type { Grid, ScalarMap } from '../grid/maps.ts';
 import { maskMap, scalarMap } from '../grid/maps.ts';
-import { fillFromNeighbours, markBrokenRuns } from './broken-runs.ts';
+import { fillFromNeighbours, markBrokenRuns, markSpikes } from './broken-runs.ts';
 import { lowerScatter, mostCommon } from './centre.ts';
 import { fitForm, fitGroundForm, formSurface, subSample, subStep, subtractForm } from './form.ts';
 import type { HeightGround } from './ground.ts';
@@ -10,6 +10,8 @@ import type { GroundSection } from './recipe.ts';
 
 /** Shortest broken run that is repaired, pixels along the fast axis. */
 const runLength = 8;
+/** A single pixel deeper than this below its surroundings is a spike; a probe does not reach deeper into a pinhole one pixel wide. */
+const deepestPitM = 6e-9;
 
 /**
  * Levels a height map: robust form with features masked, line offsets from differences between nearby lines, repair of
@@ -19,24 +21,27 @@ const runLength = 8;
  * the result (to float32 rounding). Missing pixels stay missing unless `repair` can fill them from agreeing neighbours.
  *
  * @param height shape [rows, columns], metres, NaN missing.
+ * @param inside 1 on the ground that the form and the line offsets follow; all of the map when absent.
  * @throws never for finite or missing values; a map without any finite value must be refused before.
  */
-export function levelHeight(height: ScalarMap, grid: Grid, section: GroundSection): HeightGround {
+export function levelHeight(height: ScalarMap, grid: Grid, section: GroundSection, inside?: Uint8Array): HeightGround {
   const { columns, rows } = grid;
   const raw = height.data;
-  const first = fitGroundForm(raw, columns, rows, section.order);
-  let values = first.residual;
-  const isGround = groundTest(values, columns, rows);
+  // What lies beside the flake has a level of its own and no say in the flake's form.
+  const within = (map: Float32Array): Float32Array => (inside ? map.map((value, i) => (inside[i] === 1 ? value : Number.NaN)) : map);
+  const first = fitGroundForm(within(raw), columns, rows, section.order);
+  let values = inside ? subtractForm(raw, first.form, columns, rows) : first.residual;
+  const isGround = groundTest(within(values), columns, rows);
   const offsets = section.lines ? lineOffsets(values, columns, rows, isGround) : new Float64Array(rows);
   values = values.map((value, i) => value - offsets[(i / columns) | 0]!);
 
   const noiseM = pixelNoise(values, columns, rows);
   const repaired = section.repair ? repairHeight(values, columns, rows, noiseM) : new Uint8Array(values.length);
 
-  const groundAgain = groundTest(values, columns, rows);
+  const groundAgain = groundTest(within(values), columns, rows);
   const again = fitForm(values, columns, rows, section.order, groundAgain);
   values = subtractForm(values, again, columns, rows);
-  const zero = mostCommon(subSample(values, columns, rows, subStep(columns, rows)));
+  const zero = mostCommon(subSample(within(values), columns, rows, subStep(columns, rows)));
   values = values.map((value) => value - zero);
 
   let repairedPixels = 0;
@@ -62,6 +67,7 @@ function groundTest(values: Float32Array, columns: number, rows: number): (index
 
 function repairHeight(values: Float32Array, columns: number, rows: number, noise: number): Uint8Array {
   const marks = markBrokenRuns(values, columns, rows, { noise, minLength: runLength });
+  markSpikes(values, marks, columns, rows, noise, deepestPitM);
   return fillFromNeighbours(values, marks, columns, rows, Math.max(1e-9, 12 * noise));
 }
 

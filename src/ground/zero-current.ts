@@ -1,6 +1,6 @@
 /** Offset and noise of a current amplifier, read from pixels that carry no current. */
-import { mostCommon } from './centre.ts';
 import { medianInPlace } from '../stats/median.ts';
+import { quantile } from '../stats/quantile.ts';
 
 export interface ZeroCurrent {
   /** Reading at zero current. */
@@ -13,13 +13,18 @@ export interface ZeroCurrent {
 
 /** Least number of pixels a noise peak must be read from. */
 const leastPixels = 30;
+/** A reading at zero current is at most this part of the map's larger currents. */
+const largest = 0.05;
+/** Share of a sample whose shortest interval marks its densest place. */
+const denseShare = 0.01;
 
 /**
  * Finds the reading at zero current.
  *
  * 1. Under tall features (`blocked`) no current flows: the most common reading there is the offset.
  * 2. Without such features, the densest readings on a linear scale are the noise peak, because scatter of a real current grows with
- *    the current; they count only if neighbouring pixels are uncorrelated, as amplifier noise is and a terrace is not.
+ *    the current. They count only if neighbouring pixels are uncorrelated, as amplifier noise is, and if they are small: either against the map's
+ *    larger currents (a twentieth) or against their own scatter (four times). An even terrace is neither.
  * 3. Otherwise offset 0 is assumed and the noise is what remains between neighbours on the weakest tenth.
  *
  * @param values current times the bias's sign, row-major, NaN missing.
@@ -37,8 +42,11 @@ export function findZeroCurrent(values: Float32Array, columns: number, blocked?:
       }
     }
   }
-  const peak = peakOf(thinned(values, () => true));
-  if (peak.count >= leastPixels && peak.width > 0 && isWhite(values, columns, peak, () => true)) {
+  const all = thinned(values, () => true);
+  const peak = peakOf(all);
+  const large = quantile(all, 0.9);
+  const small = Math.abs(peak.centre) < largest * Math.abs(large) || Math.abs(peak.centre) < 4 * peak.width;
+  if (peak.count >= leastPixels && peak.width > 0 && small && isWhite(values, columns, peak, () => true)) {
     return { offset: peak.centre, noise: peak.width, from: 'noise peak' };
   }
   return { offset: 0, noise: weakNoise(values, columns), from: 'assumed' };
@@ -58,10 +66,10 @@ function thinned(values: Float32Array, use: (index: number) => boolean): Float64
   return Float64Array.from(out);
 }
 
-/** Densest place of a sample, its robust width from the side below, then refined by the median within three widths. */
+/** Densest place of a sample (middle of the shortest interval with a hundredth of it), its robust width from the side below, then refined by the median within three widths. */
 function peakOf(sample: Float64Array): Peak {
   if (sample.length === 0) return { centre: Number.NaN, width: 0, count: 0 };
-  let centre = mostCommon(sample);
+  let centre = densest(sample);
   let width = 0;
   let count = 0;
   for (let round = 0; round < 6; round++) {
@@ -74,6 +82,14 @@ function peakOf(sample: Float64Array): Peak {
     centre = medianInPlace(around, count);
   }
   return { centre, width, count };
+}
+
+function densest(sample: Float64Array): number {
+  const sorted = Float64Array.from(sample).sort();
+  const n = Math.min(sorted.length, Math.max(leastPixels, Math.ceil(denseShare * sorted.length)));
+  let best = 0;
+  for (let i = 0; i + n <= sorted.length; i++) if (sorted[i + n - 1]! - sorted[i]! < sorted[best + n - 1]! - sorted[best]!) best = i;
+  return sorted[best + (n >> 1)]!;
 }
 
 /** Whether horizontal neighbours inside the peak, among admitted pixels, are uncorrelated (|r| < 0.3). */

@@ -23,9 +23,19 @@ export interface KernelExports {
   riseAboveGround(
     values: number, use: number, columns: number, rows: number, half: number, startM: number, rounds: number, sums: number, counts: number, rise: number,
   ): void;
+  nearestAdmitted(use: number, columns: number, rows: number, nearest: number, queue: number): void;
+  dilate(mask: number, columns: number, rows: number, radius: number, along: number, out: number): void;
+  subtractSurface(values: number, columns: number, rows: number, terms: number, byRow: number, byColumn: number): void;
+  colourMap(
+    data: number, columns: number, width: number, height: number, left: number, right: number, top: number, bottom: number,
+    factor: number, from: number, perUnit: number, palette: number, missing: number, rgba: number,
+  ): void;
 }
 
-declare const WebAssembly: { readonly Instance: new (module: KernelModule) => { readonly exports: unknown } };
+declare const WebAssembly: {
+  readonly compile: (bytes: Uint8Array) => Promise<KernelModule>;
+  readonly Instance: new (module: KernelModule) => { readonly exports: unknown };
+};
 
 const pageBytes = 65536;
 /** Below lies what the compiler may have put there. */
@@ -38,6 +48,11 @@ const keptBytes = 64 * 2 ** 20;
 let module: KernelModule | undefined;
 /** Made at the first call, of the module that it names. */
 let instance: { readonly of: KernelModule; readonly kernels: KernelExports } | undefined;
+
+/** Compiles the content of kernels.wasm. Rejects where it is not WebAssembly, or the machine does not know a part of it. */
+export function compileKernels(bytes: Uint8Array): Promise<KernelModule> {
+  return WebAssembly.compile(bytes);
+}
 
 /**
  * From now on this thread computes with the kernels of `compiled` (see assembly/; built by the set-up). Results are the same to the bit

@@ -1,6 +1,5 @@
 /** Books every pixel of the footprint to one cause. */
 import type { FlawCause } from '../flaws/flaws.ts';
-import { squaredDistance } from '../grid/distance.ts';
 import type { Grid } from '../grid/maps.ts';
 import { pixelAreaM2 } from '../grid/maps.ts';
 import { labelComponents } from '../grid/label-components.ts';
@@ -74,14 +73,34 @@ export function bookCauses(input: BookingInput): Uint8Array {
   return codes;
 }
 
-/** Books usable pixels closer than `reachM` to where `mask` is 0 as rim. The edge lies half a pixel before the nearest outside centre. */
+/**
+ * Books usable pixels whose centre lies closer than `reachM` to a pixel where `mask` is 0 (to its nearest edge, not its centre) as rim. Exact for
+ * unequal pitches: first the distance up and down to the nearest such pixel's edge, then the nearest over the columns within reach.
+ */
 function bookNear(codes: Uint8Array, mask: Uint8Array, grid: Grid, reachM: number, outsideIsBackground: boolean): void {
   const { columns, rows, pitchXM, pitchYM } = grid;
-  const distance2 = squaredDistance(mask, columns, rows, { pitchX: pitchXM, pitchY: pitchYM, outsideIsBackground });
-  const limit2 = (reachM + Math.min(pitchXM, pitchYM) / 2) ** 2;
-  const usable = codeOf('usable');
-  const rim = codeOf('rim');
-  for (let i = 0; i < codes.length; i++) if (codes[i] === usable && distance2[i]! < limit2) codes[i] = rim;
+  const vertical = new Float32Array(codes.length);
+  for (let c = 0; c < columns; c++) {
+    let run = outsideIsBackground ? 0 : Number.POSITIVE_INFINITY;
+    for (let r = 0; r < rows; r++) vertical[r * columns + c] = run = mask[r * columns + c] === 0 ? 0 : run + 1;
+    run = outsideIsBackground ? 0 : Number.POSITIVE_INFINITY;
+    for (let r = rows - 1; r >= 0; r--) {
+      const i = r * columns + c;
+      run = mask[i] === 0 ? 0 : run + 1;
+      vertical[i] = Math.max(0, Math.min(vertical[i]!, run) - 0.5) * pitchYM;
+    }
+  }
+  const [usable, rim] = [codeOf('usable'), codeOf('rim')];
+  const reachPx = Math.ceil(reachM / pitchXM + 0.5);
+  for (let r = 0, i = 0; r < rows; r++) {
+    for (let c = 0; c < columns; c++, i++) {
+      if (codes[i] !== usable) continue;
+      if (outsideIsBackground && (Math.min(c, columns - 1 - c) + 0.5) * pitchXM < reachM) codes[i] = rim;
+      for (let d = -Math.min(reachPx, c); codes[i] === usable && d <= Math.min(reachPx, columns - 1 - c); d++) {
+        if (Math.hypot(Math.max(0, Math.abs(d) - 0.5) * pitchXM, vertical[i + d]!) < reachM) codes[i] = rim;
+      }
+    }
+  }
 }
 
 function bookStray(codes: Uint8Array, input: BookingInput, areaM2: number): void {

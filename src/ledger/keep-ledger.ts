@@ -65,6 +65,7 @@ export function keepLedger(input: LedgerInput): Ledger {
   for (let i = 0; i < count; i++) if (repaired[i] === 1 && footprint.data[i] === 1) repairedPixels++;
   const shorts = flaws.list.filter((flaw) => flaw.cause === 'short' && insideFootprint(input, flaw.xM, flaw.yM)).length;
   const seenOnM2 = (footprintPixels - pixels[codeOf('unmeasured')]! - pixels[codeOf('bubble')]! - pixels[codeOf('residue')]! - pixels[codeOf('wrinkle')]!) * areaM2;
+  const missed = missedShorts(shorts, seenOnM2, grid, input.contactAreaM2);
   return {
     codes: ndarray(codes, [grid.rows, grid.columns]),
     glow: scalarMap(grid, glowMap(codes, sheet?.relativeDensity.data ?? relativeOf(barrier))),
@@ -73,10 +74,10 @@ export function keepLedger(input: LedgerInput): Ledger {
     footprintPixels,
     repairedM2: repairedPixels * areaM2,
     usable,
-    missedShorts: missedShorts(shorts, seenOnM2, grid, input.contactAreaM2),
+    missedShorts: missed,
     verdict: verdictSentence({
       usable, footprintM2: footprintPixels * areaM2, surface: sample.surface, bandFactor: band.factor, hasCurrent: current !== undefined,
-      biasV: barrier?.device?.biasV, proposed: barrier?.device?.proposed,
+      biasV: barrier?.device?.biasV, proposed: barrier?.device?.proposed, shorts: missed,
       mayGlow: barrier?.device !== undefined && barrier.device.high95 >= band.minNaPerUm2 * 1e3 && barrier.device.low95 <= band.maxNaPerUm2 * 1e3,
     }),
     warnings: [],

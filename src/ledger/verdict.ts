@@ -9,6 +9,8 @@ export interface VerdictInput {
   readonly biasV?: number | undefined;
   readonly proposed?: boolean | undefined;
   readonly hasCurrent: boolean;
+  /** Shorts seen, and how many more the scan's lines will have missed. */
+  readonly shorts: { readonly seen: number; readonly expectedMissed: number };
   /** Whether only the interval of the reference's density reaches the range that glows. */
   readonly mayGlow: boolean;
 }
@@ -23,6 +25,8 @@ export function verdictSentence(input: VerdictInput): string {
   const bias = input.biasV === undefined ? 'at the scan’s bias' : `at ${input.biasV.toFixed(1)} V${input.proposed ? ' (proposed)' : ''}`;
   const what = surface === 'stack' ? 'carries an even current' : 'is even barrier';
   const glow = input.biasV === undefined ? '; not known to glow, as no density is known' : usable.knownToGlow ? '' : input.mayGlow ? '; it may glow: the density’s interval reaches the range' : '; even, but not known to glow';
+  const { seen, expectedMissed } = input.shorts;
+  const shorts = seen === 0 ? '' : `; ${seen} ${seen === 1 ? 'short' : 'shorts'} seen${expectedMissed >= 1 ? `, about ${Math.round(expectedMissed)} more expected` : ''}`;
   const bound = surface === 'barrier' ? '; an upper bound, as a bare barrier was scanned' : '';
-  return `${area} ${what}, ×/÷${Number(input.bandFactor.toPrecision(3))} ${bias}${glow}${bound}.`;
+  return `${area} ${what}, ×/÷${Number(input.bandFactor.toPrecision(3))} ${bias}${glow}${shorts}${bound}.`;
 }

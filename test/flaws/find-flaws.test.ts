@@ -18,7 +18,7 @@ const scale: FlawScale = { layerM: 0.333e-9, layerDecades: 0.545, shortMaxM2: 0.
 
 function find(sample: Sample, changes: RecipeChanges = {}, more: Partial<FlawScale> = {}): Flaws {
   const recipe = createRecipe(changes);
-  return findFlaws(levelGround(sample, recipe.ground, recipe.scan), sample.grid, recipe.flaws, { ...scale, ...more });
+  return findFlaws(levelGround(sample, recipe.ground, recipe.scan), sample.grid, sample.footprint, recipe.flaws, { ...scale, ...more });
 }
 
 const flawAt = (flaws: Flaws, c: number, r: number): Flaw | undefined => flaws.list[flaws.labels.data[r * size + c]! - 1];
@@ -217,7 +217,7 @@ test('flawless ground has no flaws, over several seeds', () => {
   }
 });
 
-test('a patch of residue stays one flaw', { todo: 'on its rounded edge a rise of n layers meets a loss of about n layers’ current: those pixels are taken for barrier, and what lies outside them becomes small bubbles and wrinkles' }, () => {
+test('a patch of residue stays one flaw', () => {
   const things: Thing[] = [...plain.slice(0, 1), { kind: 'residue', c: 90, r: 90, radiusPx: 9, peakNm: 2.2, decades: 2.1 }];
   for (const seed of ['a', 'b', 'c']) assert.deepEqual(counts(find(createScene({ seed, size, things }).sample)), { bubble: 1, residue: 1, wrinkle: 0, short: 0, open: 0 }, seed);
 });

@@ -161,7 +161,7 @@ test('broken runs of one and two lines are repaired, a fold across the lines is 
   assert.equal(repaired.data[64 * size + 100], 0);
 });
 
-test('a single spike is repaired', { todo: 'the recipe text of ground.repair and the design say spikes are filled; only runs of 8 pixels and more are' }, () => {
+test('a single spike is repaired', () => {
   const { heightM } = createScene({ seed: 'spike', size });
   heightM[50 * size + 50]! += 4e-9;
   const found = level(heightM);

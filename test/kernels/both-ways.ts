@@ -3,11 +3,11 @@ import { readFile } from 'node:fs/promises';
 import { join } from 'node:path';
 import { ensureKernels, kernelsFile } from '../../src/cli/setup/kernels.mjs';
 import { projectRoot } from '../../src/cli/setup/set-up.mjs';
-import { installKernels, removeKernels } from '../../src/kernels/installed.ts';
+import { compileKernels, installKernels, removeKernels } from '../../src/kernels/installed.ts';
 import type { Random } from '../../src/stats/random.ts';
 
 ensureKernels(projectRoot, () => {});
-const compiled = await WebAssembly.compile(await readFile(join(projectRoot, kernelsFile)));
+const compiled = await compileKernels(await readFile(join(projectRoot, kernelsFile)));
 
 /** What plain TypeScript and what the kernel make of the same input; a kernel that leaves it to the plain TypeScript fails. */
 export function bothWays<T, K>(plain: () => T, kernel: () => K | undefined): { plain: T; kernel: K } {

@@ -134,3 +134,61 @@ test('a median of differences by hand: the odd one, the mean of the two in the m
   // Row 3 − row 2: −{0, 1, 4, 9, 16, 25, 36, 49}; row 2 − row 1 and row 2 − row 0: the squares up to 64.
   assert.deepEqual([kernel.medians[1], kernel.medians[2], kernel.medians[3], kernel.medians[6], kernel.medians[7]], [0, 16, -12.5, 16, 0]);
 });
+
+test('nearest admitted pixels, ties included', () => {
+  const random = seededRandom('nearest');
+  for (const [columns, rows] of shapes) {
+    for (const share of shares) {
+      const use = randomMask(random, columns * rows, share);
+      const { plain, kernel } = bothWays(() => nearestAdmitted(use, columns, rows), () => nearestByKernel(use, columns, rows));
+      assertSame(kernel, plain, `${columns} × ${rows}, share ${share}`);
+    }
+  }
+});
+
+test('grown masks, by nothing up to more than the map', () => {
+  const random = seededRandom('dilate');
+  for (const [columns, rows] of shapes) {
+    for (const share of [0, 0.002, 0.05, 1]) {
+      const mask = randomMask(random, columns * rows, share);
+      for (const radius of [0, 1, 3, 40, 400]) {
+        const { plain, kernel } = bothWays(() => dilate(mask, columns, rows, radius), () => dilateByKernel(mask, columns, rows, radius));
+        assertSame(kernel, plain, `${columns} × ${rows}, share ${share}, radius ${radius}`);
+      }
+    }
+  }
+});
+
+test('maps less a form, of every order', () => {
+  const random = seededRandom('form');
+  for (const [columns, rows] of shapes) {
+    const map = randomMap(random, columns * rows, 0.1);
+    for (let order = 0; order <= 5; order++) {
+      const coefficients = Float64Array.from({ length: ((order + 1) * (order + 2)) / 2 }, () => random.normal());
+      const subtract = (): Float32Array => subtractForm(map, { order, coefficients }, columns, rows);
+      const surface = formSurface({ order, coefficients }, columns, rows);
+      const { plain, kernel } = bothWays(subtract, subtract);
+      assertSame(kernel, plain, `${columns} × ${rows}, order ${order}`);
+      assertSame(plain, map.map((value, i) => value - surface[i]!), `${columns} × ${rows}, order ${order}, by definition`);
+    }
+  }
+});
+
+test('colours, magnified, reduced, beside the map, with equal limits and infinities', () => {
+  const random = seededRandom('colours');
+  const [columns, rows] = [37, 23];
+  const map = randomMap(random, columns * rows, 0.2);
+  map[5] = Number.POSITIVE_INFINITY;
+  map[6] = Number.NEGATIVE_INFINITY;
+  // 255 entries over 255 units: halves fall right between two entries.
+  for (let i = 60; i < 90; i++) map[i] = i + 0.5;
+  const appraised = createAppraised(map, columns, rows);
+  for (const [left, top, wide, high, width, height] of [[0, 0, 37, 23, 37, 23], [-5, 3, 20, 40, 64, 50], [0, 0, 37, 23, 9, 5], [100, 100, 10, 10, 8, 8], [3.3, 4.7, 1.5, 1.5, 1, 1]] as const) {
+    for (const [low, upper] of [[0, 255], [-1, 1], [0.5, 0.5]] as const) {
+      const request = { id: '', map: 'height', left, top, columns: wide, rows: high, width, height, pixelRatio: 1, low, high: upper, log: false, causes: 'none' } as const;
+      const draw = (): Uint8ClampedArray => drawPicture(appraised, request).rgba;
+      const { plain, kernel } = bothWays(draw, draw);
+      assertSame(kernel, plain, `${left}, ${top}, ${wide} × ${high} on ${width} × ${height}, ${low} to ${upper}`);
+    }
+  }
+});

@@ -20,8 +20,8 @@ import { retry } from '../session/actions/retry.ts';
 import { dismiss, go, setRequired, setTheme } from '../session/actions/settings.ts';
 import type { RecipeValue } from '../session/recipe.ts';
 import type { Session } from '../session/session.ts';
-import type { SampleState, SessionState } from '../session/state.ts';
-import '../tray/tray.ts';
+import type { Place, SampleState, SessionState } from '../session/state.ts';
+import { Tray } from '../tray/tray.ts';
 import './drop-zone.ts';
 import type { Dropped } from './dropped-files.ts';
 import { Header } from './header.ts';
@@ -33,10 +33,13 @@ export class App extends LitElement {
 
   declare session: Session;
   declare facts: ComputeFacts | undefined;
+  /** The place that is on the screen. */
+  private shownPlace: Place | undefined;
   private theme: ReturnType<typeof watchTheme> | undefined;
 
   static override styles = css`
     :host { display: block; min-height: 100vh; }
+    main:focus { outline: none; }
     .asking { max-width: 60rem; margin: 1rem auto; padding: 1rem clamp(0.9rem, 2vw, 1.5rem); background: var(--panel); border: 1px solid var(--line); border-radius: 10px; }
   `;
 
@@ -67,7 +70,7 @@ export class App extends LitElement {
       <eg-header .sampleName=${sample?.name} .count=${state.samples.length} .theme=${state.theme}
         @files=${this.filesGiven} @leave=${this.leave} @theme=${(event: CustomEvent<SessionState['theme']>) => { this.setTheme(event.detail); }}></eg-header>
       <eg-notices .notices=${state.notices} @dismiss=${(event: CustomEvent<{ index?: number }>) => { this.session.do(dismiss, event.detail.index); }}></eg-notices>
-      <main>${sample === undefined ? this.tray(state) : this.samplePlace(sample)}</main>
+      <main tabindex="-1">${sample === undefined ? this.tray(state) : this.samplePlace(sample)}</main>
     `;
   }
 
@@ -76,6 +79,21 @@ export class App extends LitElement {
     const { place } = this.session.state;
     const name = place.name === 'sample' ? this.session.sample(place.id)?.name : undefined;
     document.title = name === undefined ? 'Evenglow' : `${name} · Evenglow`;
+    if (place !== this.shownPlace) this.arrive(place);
+  }
+
+  /** The keyboard goes along: into a sample at its top, and back onto the row that one came from. */
+  private arrive(place: Place): void {
+    const from = this.shownPlace;
+    this.shownPlace = place;
+    if (from === undefined || (place.name === 'tray' && from.name === 'tray')) return;
+    if (place.name === 'sample') {
+      scrollTo(0, 0);
+      this.renderRoot.querySelector('main')?.focus({ preventScroll: true });
+    } else if (from.name === 'sample') {
+      const tray = this.renderRoot.querySelector('eg-tray');
+      if (tray instanceof Tray) void tray.focusRow(from.id);
+    }
   }
 
   private tray({ samples, requiredUm2 }: SessionState) {

@@ -1,4 +1,4 @@
-/** Asks for exactly what a sample's files do not state. Sends `answer` {values, label, forAll} or `answer-pages` {height, current}. */
+/** Asks for exactly what a sample's files do not state; other buttons may be put beside its own. Sends `answer` {values, label, forAll} or `answer-pages` {height, current}. */
 import { LitElement, css, html, nothing } from 'lit';
 import type { FieldInfo } from '../../workers/api.ts';
 import { controlStyles } from '../app/controls.ts';
@@ -14,6 +14,9 @@ export interface AnswerDetail {
   /** The same for all samples that ask for the same. */
   readonly forAll: boolean;
 }
+
+/** Where the recipe's own title would be read two ways among questions about maps. */
+const labels: Readonly<Record<string, string>> = { 'scan.widthUm': 'Width of the map', 'scan.heightUm': 'Height of the map', 'scan.channel': 'What the map shows' };
 
 export class ImportForm extends LitElement {
   static override properties = { sample: { attribute: false }, fields: { attribute: false }, others: { type: Number }, typed: { state: true }, complaints: { state: true } };
@@ -58,13 +61,14 @@ export class ImportForm extends LitElement {
       <p>${reasonOf(sample.error)}</p>
       <p class="files">${sample.files.length === 1 ? 'File' : 'Files'}: ${sample.files.join(', ')}</p>
       ${pages !== undefined
-        ? html`<eg-pages-form .question=${pages}></eg-pages-form>`
+        ? html`<eg-pages-form .question=${pages}><slot></slot></eg-pages-form>`
         : html`
           <form novalidate @submit=${this.submit} aria-label=${`What the files of ${sample.name} do not state`}>
             <div class="fields">${this.asked().map(({ question, field }) => this.field(question, field))}</div>
             <div class="end">
               <button class="main">Appraise</button>
               ${this.others > 0 ? html`<label><input type="checkbox" name="for-all"> the same for ${this.others === 1 ? 'the other sample that asks' : `the other ${this.others} samples that ask`} for this</label>` : nothing}
+              <slot></slot>
             </div>
           </form>`}
     `;
@@ -92,7 +96,7 @@ export class ImportForm extends LitElement {
     const hint = question.required ? field.description : `Optional: ${field.absent ?? 'may be left empty'}.`;
     return html`
       <div class="field">
-        <label class="label" for=${path}>${title}</label>
+        <label class="label" for=${path}>${labels[path] ?? title}</label>
         <span class="box">
           ${field.kind === 'choice'
             ? html`<select id=${path} @change=${keep} aria-describedby=${`${path}-hint`} aria-invalid=${complaint !== undefined} .value=${text}>

@@ -40,6 +40,7 @@ export class PagesForm extends LitElement {
             </select>
           </label>`)}
         <button class="main">Appraise</button>
+        <slot></slot>
         ${this.complaint === '' ? nothing : html`<p role="alert">${this.complaint}</p>`}
       </form>
     `;

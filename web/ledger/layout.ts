@@ -56,3 +56,36 @@ export function labelRow(wanted: readonly number[], widths: readonly number[], w
   }
   return places;
 }
+
+export interface LeaderRoute {
+  /** Where the line leaves the segment. */
+  readonly from: number;
+  /** Where it meets its label. */
+  readonly to: number;
+  /** Depth of its level run: 0 nearest the bar. */
+  readonly level: number;
+}
+
+/**
+ * Lines from segments to labels that do not begin inside them; undefined where none is needed. Of neighbours that move left the left one
+ * runs nearest the bar, of those that move right the right one: so no two lines cross.
+ *
+ * @param anchor distance from a label's left edge to where its line ends.
+ */
+export function leaderRoutes(spans: readonly Span[], places: readonly number[], anchor: number): readonly (LeaderRoute | undefined)[] {
+  const ends = spans.map((span, index) => {
+    const to = (places[index] ?? span.x) + anchor;
+    const from = span.x + Math.min(span.width / 2, anchor);
+    return to >= span.x && to <= span.x + span.width ? undefined : { from, to };
+  });
+  return ends.map((end, index) => {
+    if (!end) return undefined;
+    const left = end.to < end.from;
+    let level = 0;
+    for (let i = index + (left ? -1 : 1); ; i += left ? -1 : 1) {
+      const other = ends[i];
+      if (!other || (other.to < other.from) !== left) return { ...end, level };
+      level++;
+    }
+  });
+}

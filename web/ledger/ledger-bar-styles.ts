@@ -21,10 +21,10 @@ export const ledgerBarStyles = css`
   button:focus-visible { outline: 2px solid var(--focus, var(--glow-soft, #ffd9a0)); outline-offset: 3px; }
   text { fill: var(--dim, #8fa0af); font-size: 13px; font-variant-numeric: tabular-nums; }
   text .cause { fill: var(--ink, #dfe6ec); font-weight: 600; }
-  text.off, .legend .off { opacity: 0.45; }
-  text.shown .area { fill: var(--ink, #dfe6ec); }
-  .leader, .bracket { fill: none; stroke: var(--dim, #8fa0af); stroke-width: 1; }
-  .leader { opacity: 0.7; }
+  g.off, .legend .off { opacity: 0.45; }
+  g.shown .area { fill: var(--ink, #dfe6ec); }
+  .leader, .bracket { fill: none; stroke: var(--dim, #8fa0af); stroke-width: 1; shape-rendering: crispEdges; }
+  .leader { opacity: 0.8; }
   .legend { display: flex; flex-wrap: wrap; gap: 4px 14px; padding-top: 8px; color: var(--dim, #8fa0af); font-variant-numeric: tabular-nums; }
   .legend span { display: inline-flex; align-items: center; gap: 5px; cursor: pointer; }
   .legend b, .detail b { color: var(--ink, #dfe6ec); font-weight: 600; }

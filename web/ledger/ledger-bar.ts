@@ -4,7 +4,7 @@ import type { PropertyValues } from 'lit';
 import type { ComputeFacts, LedgerEntry } from '../../workers/api.ts';
 import { area, figure, percent } from '../sample/format.ts';
 import { causeFill, hatchDefinitions } from './hatches.ts';
-import { labelRow, segmentSpans } from './layout.ts';
+import { labelRow, leaderRoutes, segmentSpans } from './layout.ts';
 import type { Span } from './layout.ts';
 import { ledgerBarStyles } from './ledger-bar-styles.ts';
 import { notAssessed, orderEntries } from './order.ts';
@@ -18,8 +18,9 @@ const low = 14;
 const groupGap = 4;
 const pairGap = 1;
 const labelGap = 18;
-/** Room between bar and labels, for leader lines. */
-const leaderRoom = 14;
+const swatch = 12;
+/** Distance between the levels of leader lines. */
+const level = 4;
 
 export class LedgerBar extends LitElement {
   static override properties = {
@@ -73,7 +74,7 @@ export class LedgerBar extends LitElement {
     const spans = this.spansOf(ordered);
     if (this.compact) return this.renderCompact(ordered, spans);
     const labels = ordered.map((entry) => `${entry.cause} ${figure(entry.areaUm2)}`);
-    const widths = labels.map((label) => this.textWidth(label));
+    const widths = labels.map((label) => swatch + 5 + this.textWidth(label));
     const places = labelRow(spans.map((span) => span.x), widths, this.width, labelGap);
     return html`
       <div class="bar">
@@ -135,22 +136,24 @@ export class LedgerBar extends LitElement {
       @focus=${() => { this.walked = index; show(); }} @blur=${hide} @pointerenter=${show} @pointerleave=${hide}></button></li>`;
   }
 
+  /** Each label under its segment, or joined to it by a line; lines of labels that moved run on levels of their own and never cross. */
   private renderLabels(ordered: readonly OrderedEntry[], spans: readonly Span[], places: readonly number[]) {
     const pair = ordered.flatMap((entry, index) => (entry.group === 'uneven' ? [index] : []));
     const first = spans[pair[0] ?? -1];
     const last = spans[pair[1] ?? -1];
-    const bracket = first && last ? svg`<path class="bracket" d="M${first.x + 0.5} 1V5H${last.x + last.width - 0.5}V1"></path>` : nothing;
-    return html`<svg class="labels" aria-hidden="true" width=${this.width} height=${leaderRoom + 18}>
-      ${bracket}
+    const routes = leaderRoutes(spans, places, swatch / 2);
+    const base = first && last ? 6 : 1;
+    const top = base + 3 + level * (1 + Math.max(0, ...routes.map((route) => route?.level ?? 0)));
+    return html`<svg class="labels" aria-hidden="true" width=${this.width} height=${top + 16}>
+      ${first && last ? svg`<path class="bracket" d="M${first.x + 0.5} 2V6H${last.x + last.width - 0.5}V2"></path>` : nothing}
       ${ordered.map((entry, index) => {
         const x = places[index] ?? 0;
-        const span = spans[index] ?? { x, width: 0 };
-        const middle = span.x + Math.min(span.width / 2, 6);
-        const moved = Math.abs(x - span.x) > 1;
-        const from = entry.group === 'uneven' ? 5 : 1;
-        return svg`
-          ${moved || span.width < 24 ? svg`<path class="leader" d="M${middle} ${from}V7L${x + 4} ${leaderRoom}"></path>` : nothing}
-          <text class=${this.labelClass(entry)} x=${x} y=${leaderRoom + 12}><tspan class="cause">${entry.cause}</tspan> <tspan class="area">${figure(entry.areaUm2)}</tspan></text>`;
+        const route = routes[index];
+        return svg`<g class=${this.labelClass(entry)}>
+          ${route ? svg`<path class="leader" d="M${route.from} ${entry.group === 'uneven' ? base : 1}V${base + level * (route.level + 1)}H${route.to}V${top}"></path>` : nothing}
+          <rect x=${x} y=${top + 1} width=${swatch} height=${swatch} rx="2" fill=${causeFill(entry.code, entry.cause)}></rect>
+          <text x=${x + swatch + 5} y=${top + 12}><tspan class="cause">${entry.cause}</tspan> <tspan class="area">${figure(entry.areaUm2)}</tspan></text>
+        </g>`;
       })}
     </svg>`;
   }

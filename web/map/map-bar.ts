@@ -23,23 +23,25 @@ export class MapBar extends LitElement {
   declare cutting: boolean;
 
   static override styles = [controlStyles, css`
-    :host { display: flex; flex-wrap: wrap; gap: 6px 10px; align-items: center; }
-    [role='group'] { display: inline-flex; }
-    [role='group'] button { border-radius: 0; margin-left: -1px; }
-    [role='group'] button:first-child { border-radius: 7px 0 0 7px; margin-left: 0; }
-    [role='group'] button:last-child { border-radius: 0 7px 7px 0; }
-    [role='group'] button:only-child { border-radius: 7px; }
-    button { padding: 0.2rem 0.7rem; font-size: 0.875rem; border-color: var(--line, #25313b); }
-    button[aria-pressed='true'] { background: var(--raised, #1b252d); border-color: var(--edge, #5a6b79); color: var(--glow-soft, #ffd9a0); position: relative; }
-    kbd { margin-left: 5px; font: inherit; font-size: 0.75rem; color: var(--dim, #8fa0af); }
+    :host { display: block; container-type: inline-size; }
+    .all { display: flex; flex-wrap: wrap; gap: 6px 10px; align-items: center; }
+    [role='group'] { display: inline-flex; gap: 3px; }
     .zoom { margin-left: auto; }
-    .zoom button { min-width: 2.1rem; }
+    button { padding: 0.15rem 0.6rem; font-size: 0.875rem; border-color: var(--line, #25313b); color: var(--dim, #8fa0af); }
+    button[aria-pressed='true'] { background: var(--raised, #1b252d); border-color: var(--edge, #5a6b79); color: var(--glow-soft, #ffd9a0); }
+    kbd { margin-left: 5px; font: inherit; font-size: 0.75rem; color: var(--dim, #8fa0af); }
+    @container (max-width: 20rem) {
+      .all { display: grid; gap: 8px; }
+      [role='group'] { display: grid; grid-template-columns: repeat(3, 1fr); gap: 4px; }
+      .zoom { margin: 0; }
+      button { padding: 0.1rem 0.2rem; }
+    }
   `];
 
   override render() {
     const twin = rawTwin[this.map];
     const hasRaw = twin !== undefined && this.maps.includes(twin);
-    return html`
+    return html`<div class="all">
       <div role="group" aria-label="Map">
         ${switchMaps.filter((map) => this.maps.includes(map)).map((map) => html`
           <button type="button" aria-pressed=${map === this.map ? 'true' : 'false'} @click=${() => { this.send({ tool: 'map', map }); }}>${mapWords[map]}</button>`)}
@@ -53,7 +55,8 @@ export class MapBar extends LitElement {
         <button type="button" aria-label="Zoom out" title="Zoom out (−)" @click=${() => { this.send({ tool: 'out' }); }}>−</button>
         <button type="button" title="Whole map (0, or double click)" @click=${() => { this.send({ tool: 'fit' }); }}>whole</button>
         <button type="button" aria-label="Zoom in" title="Zoom in (+)" @click=${() => { this.send({ tool: 'in' }); }}>+</button>
-      </div>`;
+      </div>
+    </div>`;
   }
 
   private toggle(tool: 'raw' | 'causes' | 'cut', word: string, key: string, on: boolean, hint: string) {

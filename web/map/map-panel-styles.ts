@@ -2,7 +2,7 @@
 import { css } from 'lit';
 
 export const mapPanelStyles = css`
-  :host { display: grid; grid-template: 'bar bar' auto 'stage side' minmax(0, 1fr) 'scale side' auto 'cut side' auto / minmax(0, 1fr) 13.5rem; gap: 10px 16px; min-height: 0; }
+  :host { display: grid; grid-template: 'stage bar' auto 'stage side' minmax(0, 1fr) 'scale side' auto 'cut side' auto / minmax(0, 1fr) 14rem; gap: 10px 18px; min-height: 0; }
   eg-map-bar { grid-area: bar; }
   .stage { grid-area: stage; position: relative; min-height: 240px; }
   eg-map-stage { position: absolute; inset: 0; transition: opacity 200ms; }

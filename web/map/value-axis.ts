@@ -52,21 +52,23 @@ export interface Tick {
   readonly value: number;
   /** In layers, where the tick is a rung of the ladder; else the value itself is the label. */
   readonly label?: string;
+  /** The reference's rung. */
+  readonly reference?: boolean;
 }
 
-/** Rungs of the ladder on the axis of a current: "12" at the rung's median; the label carries ≤ or ≥ where its thickness is a bound. */
+/** Rungs of the ladder on the axis of a current: "13" at the rung's median, "12 layers" at the reference's; the label carries ≤ or ≥ where its thickness is a bound. */
 export function layerTicks(axis: Axis, ladder: SampleSummary['ladder']): readonly Tick[] {
   return (ladder?.rungs ?? []).flatMap((rung) => {
     const value = 10 ** rung.medianLog10;
     if (!(value > axis.low && value < axis.high)) return [];
     const bound = rung.bound === 'at-most' ? '≤' : rung.bound === 'at-least' ? '≥' : '';
     const count = rung.layers === undefined ? (rung.step > 0 ? `+${rung.step}` : String(rung.step).replace('-', '−')) : String(rung.layers);
-    return [{ share: shareOf(axis, value), value, label: `${bound}${count}` }];
+    return [{ share: shareOf(axis, value), value, label: `${bound}${count}${rung.step === 0 ? ' layers' : ''}`, reference: rung.step === 0 }];
   });
 }
 
-/** Round values on the axis: powers of ten (or 1-2-5 within one decade or two) when logarithmic, else about five even steps. */
-export function roundTicks(axis: Axis): readonly Tick[] {
+/** Round values on the axis: powers of ten (or 1-2-5 within one decade or two) when logarithmic, else about five even steps. `whole`: whole numbers only. */
+export function roundTicks(axis: Axis, whole = false): readonly Tick[] {
   const values: number[] = [];
   if (axis.log) {
     const decades = Math.log10(axis.high / axis.low);
@@ -75,7 +77,7 @@ export function roundTicks(axis: Axis): readonly Tick[] {
       for (const lead of leads) values.push(Number(`${lead}e${power}`));
     }
   } else {
-    const rough = (axis.high - axis.low) / 5;
+    const rough = Math.max(whole ? 1 : 0, (axis.high - axis.low) / 5);
     const power = 10 ** Math.floor(Math.log10(rough));
     const step = (rough / power > 5 ? 10 : rough / power > 2 ? 5 : rough / power > 1 ? 2 : 1) * power;
     for (let i = Math.ceil(axis.low / step); i * step <= axis.high; i++) values.push(Number((i * step).toPrecision(12)));

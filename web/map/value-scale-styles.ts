@@ -11,14 +11,10 @@ export const valueScaleStyles = css`
   .handle::before { content: ''; position: absolute; inset: 0 9px; border-radius: 3px; background: var(--ink, #dfe6ec); box-shadow: 0 0 0 2px var(--background, #0d1216); }
   .handle:hover::before, .handle:focus-visible::before { background: var(--glow-soft, #ffd9a0); }
   .handle:focus-visible { outline: 2px solid var(--focus, var(--glow-soft, #ffd9a0)); border-radius: 4px; }
-  .value { position: absolute; bottom: 27px; padding: 0 4px; border-radius: 3px; background: var(--background, #0d1216); color: var(--ink, #dfe6ec); white-space: nowrap; }
-  .low .value { left: 4px; }
-  .high .value { right: 4px; }
-  .ticks { position: relative; height: 18px; margin-top: 4px; overflow: hidden; }
-  .tick { position: absolute; top: 0; transform: translateX(-50%); white-space: nowrap; }
-  .tick::before { content: ''; display: block; width: 1px; height: 3px; margin: 0 auto; background: currentColor; }
-  .layers { margin-top: 0; color: var(--glow-soft, #ffd9a0); overflow: visible; }
-  .rung { font-weight: 600; }
-  .rung::before { display: none; }
-  .word { position: absolute; right: 0; color: var(--dim, #8fa0af); background: var(--background, #0d1216); padding-left: 6px; }
+  .ticks { position: relative; height: 17px; margin-top: 5px; }
+  .layers { margin-top: 0; }
+  .tick { position: absolute; top: 0; white-space: nowrap; }
+  .limit { color: var(--ink, #dfe6ec); font-weight: 600; }
+  .rung { color: var(--glow-soft, #ffd9a0); }
+  .reference { font-weight: 600; }
 `;

@@ -1,15 +1,27 @@
 /** The colour scale under the map: colours with two handles on them, a histogram above, ticks below (in layers for a current). */
-import { LitElement, html } from 'lit';
+import { LitElement, html, nothing } from 'lit';
 import type { PropertyValues } from 'lit';
 import type { MapInfo, SampleSummary } from '../../workers/api.ts';
-import { mapValue } from '../sample/format.ts';
+import { mapValue, tickText } from '../sample/format.ts';
 import { axisOf, layerTicks, referenceMark, roundTicks, shareOf, valueAt } from './value-axis.ts';
-import type { Axis, Limits, Tick } from './value-axis.ts';
+import type { Axis, Limits } from './value-axis.ts';
 import { paintHistogram, paintScale } from './paint-scale.ts';
+import { placeLabels } from './place-labels.ts';
 import { valueScaleStyles } from './value-scale-styles.ts';
 
 /** Detail of the `limits` event. */
 export type LimitsEvent = CustomEvent<Limits>;
+
+/** Width of a digit at the ticks' size, a little generous. */
+const letterWidth = 7.2;
+
+interface ShownTick {
+  readonly share: number;
+  readonly text: string;
+  readonly title: string;
+  readonly weight: number;
+  readonly look: string;
+}
 
 /** Handles come no closer than this share of the axis. */
 const leastSpan = 0.01;
@@ -55,7 +67,6 @@ export class ValueScale extends LitElement {
 
   override render() {
     const { axis } = this;
-    const layers = this.map.name === 'current' || this.map.name === 'rawCurrent' ? layerTicks(axis, this.summary.ladder) : [];
     const mark = referenceMark(axis, this.map, this.summary, this.bandFactor);
     return html`
       <canvas class="bins" aria-hidden="true"></canvas>
@@ -64,9 +75,33 @@ export class ValueScale extends LitElement {
         ${mark && mark.to > mark.from ? html`<span class="mark" title=${mark.label}></span>` : ''}
         ${(['low', 'high'] as const).map((end) => this.renderHandle(end))}
       </div>
-      <div class="ticks" aria-hidden="true">${this.spaced(roundTicks(axis), 64).map((tick) => html`<span class="tick" data-share=${tick.share}>${mapValue(tick.value, this.map.unit).replace(/([.]\d*?)0+(?=\D|$)/, '$1').replace(/[.](?=\D|$)/, '')}</span>`)}</div>
-      ${layers.length > 0 ? html`<div class="ticks layers">${this.spaced(layers, 26).map((tick) => html`<span class="tick rung" data-share=${tick.share} title="${tick.label ?? ''} layers: ${mapValue(tick.value, this.map.unit)}">${tick.label}</span>`)}<span class="word">layers</span></div>` : ''}
-    `;
+      ${this.renderTicks(this.valueTicks(axis), '')}
+      ${this.isCurrent ? this.renderTicks(this.rungTicks(axis), 'layers') : ''}`;
+  }
+
+  private get isCurrent(): boolean {
+    return (this.map.name === 'current' || this.map.name === 'rawCurrent') && this.summary.ladder !== undefined;
+  }
+
+  /** The two limits, which always show, and round values where there is room. */
+  private valueTicks(axis: Axis): readonly ShownTick[] {
+    const { limits, map } = this;
+    const limit = (value: number): ShownTick => ({ share: shareOf(axis, value), text: mapValue(value, map.unit), title: '', weight: 2, look: 'limit' });
+    const round = roundTicks(axis, map.name === 'layers').map(({ share, value }): ShownTick => ({ share, text: tickText(value, map.unit), title: '', weight: 1, look: 'round' }));
+    return [limit(limits.low), limit(limits.high), ...round];
+  }
+
+  private rungTicks(axis: Axis): readonly ShownTick[] {
+    return layerTicks(axis, this.summary.ladder).map(({ share, value, label = '', reference }): ShownTick => (
+      { share, text: label, title: mapValue(value, this.map.unit), weight: reference ? 2 : 1, look: reference ? 'rung reference' : 'rung' }));
+  }
+
+  private renderTicks(ticks: readonly ShownTick[], kind: string) {
+    const lefts = placeLabels(ticks.map(({ share, text, weight }) => ({ x: share * this.width, width: text.length * letterWidth + 2, weight })), this.width, 6);
+    return html`<div class="ticks ${kind}" aria-hidden=${kind === '' ? 'true' : 'false'}>${ticks.map(({ text, title, look }, index) => {
+      const left = lefts[index];
+      return left === undefined ? nothing : html`<span class="tick ${look}" data-left=${left} title=${title}>${text}</span>`;
+    })}</div>`;
   }
 
   /** Positions go through the style object: the page's policy allows no style attributes. */
@@ -75,7 +110,7 @@ export class ValueScale extends LitElement {
     const place = (element: HTMLElement | null, share: number): void => element?.style.setProperty('left', `${100 * share}%`);
     place(this.renderRoot.querySelector('.handle.low'), shareOf(axis, this.limits.low));
     place(this.renderRoot.querySelector('.handle.high'), shareOf(axis, this.limits.high));
-    this.renderRoot.querySelectorAll<HTMLElement>('.tick').forEach((tick) => { place(tick, Number(tick.dataset['share'])); });
+    this.renderRoot.querySelectorAll<HTMLElement>('.tick').forEach((tick) => { tick.style.setProperty('left', `${tick.dataset['left'] ?? '0'}px`); });
     const mark = referenceMark(axis, this.map, this.summary, this.bandFactor);
     const box = this.renderRoot.querySelector<HTMLElement>('.mark');
     if (mark && box) {
@@ -93,18 +128,7 @@ export class ValueScale extends LitElement {
     return html`<button type="button" role="slider" class="handle ${end}" aria-label="${end === 'low' ? 'Darkest' : 'Brightest'} colour at" aria-orientation="horizontal"
       aria-valuemin="0" aria-valuemax="100" aria-valuenow=${Math.round(100 * shareOf(this.axis, value))} aria-valuetext=${mapValue(value, this.map.unit)}
       @pointerdown=${(event: PointerEvent) => { this.onDrag(event, end); }} @keydown=${(event: KeyboardEvent) => { this.onKey(event, end); }}
-      @dblclick=${() => { this.send({ ...this.limits, [end]: this.map[end] }); }}><span class="value">${mapValue(value, this.map.unit)}</span></button>`;
-  }
-
-  /** Leaves out ticks closer than `apart` pixels to the one before. */
-  private spaced(ticks: readonly Tick[], apart: number): readonly Tick[] {
-    let end = -Infinity;
-    return [...ticks].sort((a, b) => a.share - b.share).filter(({ share }) => {
-      const x = share * this.width;
-      if (x < end + apart || x > this.width - 12) return false;
-      end = x;
-      return true;
-    });
+      @dblclick=${() => { this.send({ ...this.limits, [end]: this.map[end] }); }}></button>`;
   }
 
   private onDrag(event: PointerEvent, end: 'low' | 'high'): void {

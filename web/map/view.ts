@@ -54,10 +54,11 @@ export function panView(view: View, dx: number, dy: number, extent: Extent, stag
   return keepInSight({ ...view, leftUm: view.leftUm - dx / view.scale, topUm: view.topUm - dy / view.scale }, extent, stage);
 }
 
-/** The map's point (µm from the upper left) in the middle, at least at `scale`. */
+/** The map's point (µm from the upper left) as near the middle as the map's edges allow, at `scale` or closer. */
 export function centreView(view: View, xUm: number, topUm: number, scale: number, extent: Extent, stage: Size): View {
   const used = Math.max(view.scale, scale);
-  return keepInSight({ scale: used, leftUm: xUm - stage.width / used / 2, topUm: topUm - stage.height / used / 2 }, extent, stage);
+  const edge = (middle: number, length: number, room: number): number => (room >= length ? (length - room) / 2 : Math.min(length - room, Math.max(0, middle - room / 2)));
+  return { scale: used, leftUm: edge(xUm, extent.widthUm, stage.width / used), topUm: edge(topUm, extent.heightUm, stage.height / used) };
 }
 
 /** The stage's middle never leaves the map. */

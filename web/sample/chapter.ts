@@ -20,7 +20,7 @@ export abstract class Chapter extends LitElement {
 
   static override styles = css`
     :host { display: block; border-bottom: 1px solid var(--line, #25313b); }
-    summary { display: grid; grid-template-columns: 1fr auto; gap: 2px 12px; padding: 12px 20px; cursor: pointer; list-style: none; }
+    summary { display: grid; grid-template-columns: 1fr auto; gap: 2px 12px; padding: 12px 16px; cursor: pointer; list-style: none; }
     summary::-webkit-details-marker { display: none; }
     summary:hover { background: var(--panel, #141b21); }
     summary:focus-visible { outline: 2px solid var(--focus, #7cc0ea); outline-offset: -3px; }
@@ -29,8 +29,8 @@ export abstract class Chapter extends LitElement {
     details[open] h2::before { content: '▾'; }
     .count { color: var(--dim, #8fa0af); font-size: 0.8125rem; align-self: center; }
     .finding { grid-column: 1 / -1; margin: 0; font-size: 0.9375rem; line-height: 1.45; }
-    .body { padding: 0 20px 14px; }
-    .effect { margin: 0; padding: 0 20px 10px; color: var(--good, #7fd6bb); font-size: 0.875rem; }
+    .body { padding: 0 16px 14px; }
+    .effect { grid-column: 1 / -1; margin: 0; color: var(--good, #7fd6bb); font-size: 0.875rem; }
     .note { margin: 6px 0; color: var(--dim, #8fa0af); font-size: 0.8125rem; line-height: 1.45; }
     .caution { margin: 6px 0; padding: 6px 10px; border-left: 3px solid var(--bad, #ff9a76); background: var(--panel, #141b21); font-size: 0.8125rem; line-height: 1.45; }
     h3 { margin: 14px 0 2px; font-size: 0.8125rem; font-weight: 600; color: var(--dim, #8fa0af); }
@@ -65,14 +65,14 @@ export abstract class Chapter extends LitElement {
         <summary>
           <h2>${this.heading}</h2><span class="count">${changed === 0 ? 'all by default' : `${changed} changed`}</span>
           <p class="finding">${this.finding()}</p>
+          <p class="effect" role="status">${this.effect}</p>
         </summary>
         <div class="body">
           ${this.aboveKnobs()}
           ${knobsOf(this.chapter, this.fields).map(({ field, plan }) => html`<eg-knob .field=${field} .slider=${plan.slider} .value=${this.given(field.path)} .found=${this.found(field.path)}></eg-knob>`)}
           ${this.belowKnobs()}
         </div>
-      </details>
-      ${this.effect === '' ? nothing : html`<p class="effect" role="status">${this.effect}</p>`}`;
+      </details>`;
   }
 
   /** From the recipe in force, else the default. */

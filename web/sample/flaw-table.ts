@@ -23,17 +23,18 @@ export class FlawTable extends LitElement {
   declare all: boolean;
 
   static override styles = [controlStyles, css`
-    :host { display: block; font-size: 0.8125rem; }
+    :host { display: block; font-size: 0.78rem; }
     .scroll { max-height: 17rem; overflow: auto; border: 1px solid var(--line, #25313b); border-radius: 6px; }
     table { width: 100%; border-collapse: collapse; font-variant-numeric: tabular-nums; }
     th { position: sticky; top: 0; z-index: 1; padding: 0; background: var(--panel, #141b21); text-align: left; font-weight: 500; }
-    th button { width: 100%; padding: 4px 8px; border: 0; background: none; color: var(--dim, #8fa0af); font-size: inherit; text-align: inherit; }
+    th button { width: 100%; padding: 4px 5px; border: 0; background: none; color: var(--dim, #8fa0af); font-size: inherit; text-align: inherit; }
     th.number button, td.number { text-align: right; }
     th[aria-sort] button { color: var(--ink, #dfe6ec); }
-    td { padding: 2px 8px; border-top: 1px solid var(--line, #25313b); white-space: nowrap; }
+    td { padding: 2px 5px; border-top: 1px solid var(--line, #25313b); white-space: nowrap; }
     tbody tr { cursor: pointer; }
     tbody tr:hover td, tr[aria-current] td { background: var(--raised, #1b252d); }
     tr[aria-current] td:first-child { box-shadow: inset 3px 0 var(--glow, #ffb454); }
+    .sure { white-space: normal; }
     td button { padding: 0 4px; border: 0; background: none; font-size: inherit; }
     .reason td { border-top: 0; padding: 0 8px 6px; white-space: normal; color: var(--dim, #8fa0af); cursor: default; }
     .more { margin-top: 6px; font-size: 0.8125rem; }
@@ -79,7 +80,7 @@ export class FlawTable extends LitElement {
     return html`
       <tr aria-current=${selected ? 'true' : nothing} @click=${() => { this.select(selected ? undefined : flaw.flaw); }}>
         <td><button type="button" aria-label="flaw ${flaw.flaw}, ${flaw.cause}: show on the map" aria-pressed=${selected ? 'true' : 'false'}>${flaw.flaw}</button></td>
-        <td>${flaw.cause}</td><td>${confidenceWord(flaw.confidence)}</td>
+        <td>${flaw.cause}</td><td class="sure">${confidenceWord(flaw.confidence)}</td>
         <td class="number">${figure(flaw.areaUm2)}</td><td class="number">${figure(flaw.peakNm)}</td><td class="number">${figure(flaw.heightToRadius, 2)}</td>
       </tr>
       ${selected ? html`<tr class="reason"><td colspan=${columns.length}>${flaw.reason}</td></tr>` : nothing}`;

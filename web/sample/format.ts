@@ -85,6 +85,11 @@ export function mapValue(value: number | undefined, unit: string): string {
   return unit === 'A' || unit === 'm' ? withPrefix(value, unit) : withUnit(value, unit === 'relative' ? '' : unit);
 }
 
+/** A round value on an axis: as `mapValue`, without trailing zeros. */
+export function tickText(value: number, unit: string): string {
+  return mapValue(value, unit).replace(/(\.\d*?)0+(?=\D|$)/, '$1').replace(/\.(?=\D|$)/, '');
+}
+
 /** How sure a class is, in a word: from 0.5 (as likely another) to 1. */
 export function confidenceWord(confidence: number): 'certain' | 'likely' | 'could be another' {
   return confidence >= 0.9 ? 'certain' : confidence >= 0.7 ? 'likely' : 'could be another';

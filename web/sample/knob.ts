@@ -28,14 +28,14 @@ export class Knob extends LitElement {
 
   static override styles = [controlStyles, css`
     :host { display: block; padding: 5px 0; font-size: 0.875rem; }
-    .row { display: grid; grid-template-columns: minmax(7rem, 10.5rem) minmax(0, 1fr) 1.6rem; gap: 2px 10px; align-items: center; }
+    .row { display: grid; grid-template-columns: minmax(0, 1fr) auto 1.4rem; gap: 2px 8px; align-items: center; }
     label { line-height: 1.3; }
     .control { display: flex; gap: 8px; align-items: center; min-width: 0; }
-    input[type='text'] { width: 5.5rem; padding: 0.1rem 0.4rem; text-align: right; font-size: 0.875rem; }
+    input[type='text'] { width: 4.2rem; padding: 0.1rem 0.4rem; text-align: right; font-size: 0.875rem; }
     select { padding: 0.1rem 0.3rem; font-size: 0.875rem; max-width: 100%; }
-    input[type='range'] { flex: 1; min-width: 3rem; accent-color: var(--glow, #ffb454); padding: 0; margin: 0; background: none; border: 0; }
-    .unit { color: var(--dim, #8fa0af); white-space: nowrap; }
-    .reset { padding: 0; width: 1.6rem; height: 1.6rem; line-height: 1; }
+    input[type='range'] { grid-column: 1 / 3; width: 100%; accent-color: var(--glow, #ffb454); padding: 0; margin: 0; background: none; border: 0; }
+    .unit { min-width: 1.6rem; color: var(--dim, #8fa0af); white-space: nowrap; }
+    .reset { padding: 0; width: 1.4rem; height: 1.6rem; line-height: 1; }
     .changed label { color: var(--glow-soft, #ffd9a0); }
     .hint { margin: 1px 0 0; color: var(--dim, #8fa0af); font-size: 0.78rem; line-height: 1.4; }
     .problem { margin: 2px 0 0; color: var(--bad, #ff9a76); font-size: 0.8125rem; }
@@ -60,7 +60,8 @@ export class Knob extends LitElement {
       <div class="row ${changed ? 'changed' : ''}">
         <label for="control">${field.title}</label>
         <div class="control">${this.renderControl()}</div>
-        ${changed ? html`<button type="button" class="plain reset" title="Back to the default (${this.defaultText()})" aria-label="${field.title} back to the default" @click=${() => { this.send(undefined); }}>↺</button>` : nothing}
+        ${changed ? html`<button type="button" class="plain reset" title="Back to the default (${this.defaultText()})" aria-label="${field.title} back to the default" @click=${() => { this.send(undefined); }}>↺</button>` : html`<span></span>`}
+        ${this.renderSlider()}
       </div>
       ${this.problem === '' ? nothing : html`<p class="problem" role="alert">${this.problem}</p>`}
       <p class="hint" id="hint">${field.description} <span class="default">Default: ${this.defaultText()}.</span></p>`;
@@ -97,13 +98,20 @@ export class Knob extends LitElement {
 
   private renderNumber(now: number | undefined) {
     const shown = this.draft ?? now;
-    const { slider, field } = this;
+    const { field } = this;
     return html`
-      ${slider === undefined ? nothing : html`<input type="range" min="0" max=${sliderSteps} aria-label="${field.title}, slider" aria-valuetext=${this.withUnit(shown)} .value=${String(this.toSlider(shown, slider))}
-        @input=${(event: Event) => { this.draft = this.fromSlider(event, slider); }} @change=${(event: Event) => { this.commit(this.fromSlider(event, slider)); }}>`}
       <input id="control" type="text" inputmode="decimal" autocomplete="off" placeholder=${this.found ?? '–'} aria-describedby="hint" aria-invalid=${this.problem === '' ? 'false' : 'true'}
         .value=${shown === undefined ? '' : plain(shown)} @change=${this.onTyped}>
       ${field.unit === undefined ? nothing : html`<span class="unit">${field.unit}</span>`}`;
+  }
+
+  private renderSlider() {
+    const { slider, field, value } = this;
+    if (slider === undefined) return nothing;
+    const now = value ?? field.fallback;
+    const shown = this.draft ?? (typeof now === 'number' ? now : undefined);
+    return html`<input type="range" min="0" max=${sliderSteps} aria-label="${field.title}, slider" aria-valuetext=${this.withUnit(shown)} .value=${String(this.toSlider(shown, slider))}
+      @input=${(event: Event) => { this.draft = this.fromSlider(event, slider); }} @change=${(event: Event) => { this.commit(this.fromSlider(event, slider)); }}>`;
   }
 
   private withUnit(value: number | undefined): string {

@@ -11,7 +11,7 @@ export const samplePlaceStyles = css`
   .steps button:disabled { opacity: 0.45; cursor: default; }
   eg-progress-line, .error { margin-top: 6px; }
   .error { margin-bottom: 0; color: var(--bad, #ff9a76); font-size: 0.9375rem; }
-  .main { flex: 1; display: grid; grid-template-columns: minmax(0, 1fr) 26rem; min-height: 0; }
+  .main { flex: 1; display: grid; grid-template-columns: minmax(0, 1fr) 25rem; min-height: 0; }
   eg-map-panel { padding: 12px 18px 10px 24px; }
   .chapters { border-left: 1px solid var(--line, #25313b); overflow: auto; scrollbar-gutter: stable; }
   .stale .result { opacity: 0.72; }
@@ -22,6 +22,7 @@ export const samplePlaceStyles = css`
     :host { height: auto; min-height: 0; overflow: visible; }
     .top { padding: 10px 14px; }
     .headline { flex-direction: column; }
+    .steps.none { display: none; }
     .main { display: block; }
     eg-map-panel { padding: 12px 14px; min-height: 0; grid-template-rows: auto min(100vw, 70dvh) auto auto auto; }
     .chapters { border-left: 0; border-top: 1px solid var(--line, #25313b); overflow: visible; }

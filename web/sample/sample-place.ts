@@ -108,7 +108,7 @@ export class SamplePlace extends LitElement {
     const { history, at } = this.sample;
     const back = at > 0 ? history[at]?.label : undefined;
     const forth = history[at + 1]?.label;
-    return html`<div class="steps">
+    return html`<div class="steps ${back === undefined && forth === undefined ? 'none' : ''}">
       <button type="button" ?disabled=${back === undefined} aria-keyshortcuts="Control+Z" title="Ctrl+Z" @click=${() => { this.send('undo'); }}>${back === undefined ? 'Undo' : `Undo: ${back}`}</button>
       <button type="button" ?disabled=${forth === undefined} aria-keyshortcuts="Control+Shift+Z" title="Ctrl+Shift+Z" @click=${() => { this.send('redo'); }}>${forth === undefined ? 'Redo' : `Redo: ${forth}`}</button>
     </div>`;

@@ -34,6 +34,7 @@ export class VerdictLine extends LitElement {
     const rest = verdictRest(verdict);
     const facts = [
       `95 %: ${span(usable.low95Um2, usable.high95Um2)} µm²`, `largest patch ${area(usable.largestPatchUm2)}`,
+      ...(rest.remarks === '' ? [] : [rest.remarks]),
     ];
     return html`
       <h1><span class="area">${area(usable.areaUm2)}</span> ${rest.what}</h1>

@@ -45,11 +45,13 @@ export const rowStyles = css`
     .verdict { text-align: right; justify-items: end; }
   }
   @container (max-width: 40rem) {
-    article { grid-template-columns: auto minmax(0, 1fr); grid-template-areas: "rank middle" "picture area" "picture verdict"; gap: 0.5rem 0.9rem; padding: 0.8rem 0.9rem; align-items: start; }
+    article { grid-template-columns: auto minmax(0, 1fr); grid-template-areas: "title title" "picture area" "picture verdict"; gap: 0.4rem 0.9rem; padding: 0.8rem 0.9rem; align-items: start; }
     article.plain { grid-template-columns: minmax(0, 1fr); grid-template-areas: "middle"; }
-    article.plain .rank { display: none; }
-    .middle { grid-column: 1 / -1; grid-row: 1; }
     .rank { display: none; }
+    /* What was found comes before its particulars. */
+    .opens .middle { display: contents; }
+    .opens .middle > * { grid-column: 1 / -1; }
+    .opens .title { grid-area: title; }
     .title .number { display: inline; }
     .usable, .verdict { text-align: left; justify-items: start; }
   }

@@ -105,8 +105,9 @@ export class TrayRow extends LitElement {
           <button class="plain" @click=${() => { this.send('cancel-run'); }}>Cancel</button>
         </div>`;
       case 'asking': return html`
-        <eg-import-form .sample=${sample} .fields=${this.facts?.fields ?? []} .others=${this.others}></eg-import-form>
-        <div class="buttons">${this.backButton(sample)}<button class="plain" @click=${() => { this.send('remove'); }}>Remove</button></div>`;
+        <eg-import-form .sample=${sample} .fields=${this.facts?.fields ?? []} .others=${this.others}>
+          ${this.backButton(sample)}<button type="button" class="plain" @click=${() => { this.send('remove'); }}>Remove</button>
+        </eg-import-form>`;
       case 'cancelled':
       case 'failed': return html`
         <p class="error">${status === 'cancelled' ? `Cancelled${sample.summary === undefined ? '' : '; what is shown is the last result'}.` : error?.message ?? 'It could not be appraised.'}</p>
@@ -121,7 +122,7 @@ export class TrayRow extends LitElement {
   /** A wrong answer can be taken back where its consequence is seen. */
   private backButton({ history, at }: SampleState) {
     const label = history[at]?.label ?? '';
-    return label === '' ? nothing : html`<button @click=${() => { this.send('undo-answer'); }}>Undo: ${label}</button>`;
+    return label === '' ? nothing : html`<button type="button" @click=${() => { this.send('undo-answer'); }}>Undo: ${label}</button>`;
   }
 
   private readonly clicked = (event: MouseEvent): void => {

@@ -48,7 +48,7 @@ export class Tray extends LitElement {
     return html`
       <div class="top">
         <p class="what">
-          <strong>How much of each barrier can glow evenly, what is in the way, and by how much?</strong>
+          <strong>Evenglow reads conductive-probe scans of thin tunnel barriers and says how much of each can glow evenly, and what is in the way.</strong>
           ${demo > 0 ? html`${demo === this.samples.length ? 'These samples are invented; drop your own scans anywhere on the page.' : html`The samples marked “invented” are for a first look. <button class="plain" @click=${() => { this.send('clear-demo'); }}>Clear them</button>`}` : nothing}
           Nothing leaves this computer.
         </p>
@@ -60,6 +60,14 @@ export class Tray extends LitElement {
       </div>
       ${this.samples.length === 0 ? nothing : html`<p class="keys"><kbd>↑</kbd> <kbd>↓</kbd> move between samples, <kbd>Home</kbd> <kbd>End</kbd> jump, <kbd>Enter</kbd> opens, <kbd>Ctrl</kbd> <kbd>O</kbd> opens files, <kbd>Ctrl</kbd> <kbd>V</kbd> pastes them.</p>`}
     `;
+  }
+
+  /** Puts the keyboard on a sample's row, where there is one. */
+  async focusRow(id: string): Promise<void> {
+    await this.updateComplete;
+    const row = this.rows().find(({ sample }) => sample?.id === id);
+    await row?.updateComplete;
+    row?.focus();
   }
 
   override updated(): void {

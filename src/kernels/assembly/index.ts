@@ -4,3 +4,7 @@ export { squaredDistances } from "./squared-distances";
 export { greyOpening } from "./grey-opening";
 export { rowDifferenceMedians } from "./row-difference-medians";
 export { riseAboveGround } from "./rise-above-ground";
+export { nearestAdmitted } from "./nearest-admitted";
+export { dilate } from "./dilate";
+export { subtractSurface } from "./subtract-surface";
+export { colourMap } from "./colour-map";
