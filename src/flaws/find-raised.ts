@@ -74,7 +74,7 @@ export function findRaised(input: RaisedInput): Raised {
       else conducting[i] = 1;
     }
   }
-  removeTerraces(mask, step, columns, rows);
+  removeTerraces(mask, step, drop, input);
   // What is left of a terrace's border does not reach the starting threshold and goes with it.
   const strong = new Uint8Array(zone.length);
   for (let i = 0; i < strong.length; i++) strong[i] = mask[i] === 1 && rise[i]! > input.startM ? 1 : 0;
@@ -86,15 +86,33 @@ export function findRaised(input: RaisedInput): Raised {
   return { mask: final, drop, conductingPixels };
 }
 
-/** Takes pixels of a mere barrier step out of the mask where they form ground of some width: the rounded edge of a film passes through such values too. */
-function removeTerraces(mask: Uint8Array, step: Uint8Array, columns: number, rows: number): void {
+/**
+ * Takes mere barrier steps out of the mask: ground of some width (the rounded edge of a film passes through such values too) whose mean rise and
+ * mean loss of current, both free of pixel noise, are those of the same whole number of layers.
+ */
+function removeTerraces(mask: Uint8Array, step: Uint8Array, drop: Float32Array, input: RaisedInput): void {
+  const { columns, rows, rise } = input;
   const distance2 = squaredDistance(step, columns, rows);
-  const wide = distance2.some((d) => d > terraceHalfPx ** 2);
-  if (!wide) return;
-  const cores = new Uint8Array(step.length);
-  for (let i = 0; i < cores.length; i++) cores[i] = distance2[i]! > terraceHalfPx ** 2 ? 1 : 0;
-  const terraces = keepTouching(step, cores, columns, rows);
-  for (let i = 0; i < mask.length; i++) if (terraces[i] === 1) mask[i] = 0;
+  if (!distance2.some((d) => d > terraceHalfPx ** 2)) return;
+  const { labels, count, pixels } = labelComponents(step, columns, rows, 8);
+  const widest = new Float64Array(count + 1);
+  const riseSum = new Float64Array(count + 1);
+  const dropSum = new Float64Array(count + 1);
+  for (let i = 0; i < labels.length; i++) {
+    const n = labels[i]!;
+    if (n === 0) continue;
+    widest[n] = Math.max(widest[n]!, distance2[i]!);
+    riseSum[n]! += rise[i]!;
+    dropSum[n]! += drop[i]!;
+  }
+  const terrace = new Uint8Array(count + 1);
+  for (let n = 1; n <= count; n++) {
+    const lost = dropSum[n]! / pixels[n]! / input.layerDecades;
+    const layers = Math.round(lost);
+    const fits = Math.abs(lost - layers) < 0.2 && Math.abs(riseSum[n]! / pixels[n]! - layers * input.layerM) < 0.5 * input.layerM;
+    terrace[n] = widest[n]! > terraceHalfPx ** 2 && fits ? 1 : 0;
+  }
+  for (let i = 0; i < mask.length; i++) if (terrace[labels[i]!] === 1) mask[i] = 0;
 }
 
 /**

@@ -1,17 +1,23 @@
 /** Each kernel against its plain-TypeScript twin: the same to the bit. */
 import assert from 'node:assert/strict';
 import { test } from 'node:test';
-import { riseAboveGround } from '../../src/flaws/local-ground.ts';
+import { dilate, nearestAdmitted, riseAboveGround } from '../../src/flaws/local-ground.ts';
 import { squaredDistance } from '../../src/grid/distance.ts';
 import { labelComponents } from '../../src/grid/label-components.ts';
+import { scalarMap } from '../../src/grid/maps.ts';
 import { greyOpening } from '../../src/grid/opening.ts';
+import { formSurface, subtractForm } from '../../src/ground/form.ts';
 import { lineDifferencesSolved } from '../../src/ground/lines.ts';
+import { dilateByKernel } from '../../src/kernels/dilate.ts';
 import { openedMap } from '../../src/kernels/grey-opening.ts';
 import { labelRuns } from '../../src/kernels/label-runs.ts';
+import { nearestByKernel } from '../../src/kernels/nearest-admitted.ts';
 import { riseOverGround } from '../../src/kernels/rise-above-ground.ts';
 import { rowDifferenceMedians } from '../../src/kernels/row-difference-medians.ts';
 import { squaredDistances } from '../../src/kernels/squared-distances.ts';
 import { seededRandom } from '../../src/stats/random.ts';
+import { drawPicture } from '../../workers/picture.ts';
+import { createAppraisal } from '../fixtures/create-appraisal.ts';
 import { assertSame, bothWays, randomMap, randomMask, shapes, shares } from './both-ways.ts';
 
 test('labels, their count and their sizes', () => {
@@ -116,7 +122,7 @@ test('line differences, through their solution', () => {
       const admitted = randomMask(random, columns * rows, 0.8);
       const use = (i: number): boolean => admitted[i] !== 0;
       for (const limit of [Number.POSITIVE_INFINITY, 0.5]) {
-        // The kernel's wrapper has a different shape from its caller's result, so the caller is what is compared.
+        // The wrapper gives medians, the caller their solution: the caller is what is compared.
         const { plain, kernel } = bothWays(() => lineDifferencesSolved(map, columns, rows, use, limit), () => lineDifferencesSolved(map, columns, rows, use, limit));
         assertSame(kernel, plain, `${columns} × ${rows}, missing ${missing}, limit ${limit}`);
       }
@@ -182,10 +188,12 @@ test('colours, magnified, reduced, beside the map, with equal limits and infinit
   map[6] = Number.NEGATIVE_INFINITY;
   // 255 entries over 255 units: halves fall right between two entries.
   for (let i = 60; i < 90; i++) map[i] = i + 0.5;
-  const appraised = createAppraised(map, columns, rows);
+  const grid = { columns, rows, pitchXM: 1e-8, pitchYM: 1e-8 };
+  const { sample, ledger, ...rest } = createAppraisal();
+  const appraised = { ...rest, sample: { ...sample, grid }, ledger: { ...ledger, glow: scalarMap(grid, map) } };
   for (const [left, top, wide, high, width, height] of [[0, 0, 37, 23, 37, 23], [-5, 3, 20, 40, 64, 50], [0, 0, 37, 23, 9, 5], [100, 100, 10, 10, 8, 8], [3.3, 4.7, 1.5, 1.5, 1, 1]] as const) {
     for (const [low, upper] of [[0, 255], [-1, 1], [0.5, 0.5]] as const) {
-      const request = { id: '', map: 'height', left, top, columns: wide, rows: high, width, height, pixelRatio: 1, low, high: upper, log: false, causes: 'none' } as const;
+      const request = { id: '', map: 'glow', left, top, columns: wide, rows: high, width, height, pixelRatio: 1, low, high: upper, log: false, causes: 'none' } as const;
       const draw = (): Uint8ClampedArray => drawPicture(appraised, request).rgba;
       const { plain, kernel } = bothWays(draw, draw);
       assertSame(kernel, plain, `${left}, ${top}, ${wide} × ${high} on ${width} × ${height}, ${low} to ${upper}`);

@@ -8,9 +8,12 @@ import { mkdtemp, rm } from 'node:fs/promises';
 import { cpus, tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { parseArgs } from 'node:util';
+import { loadKernels } from '../../src/cli/load-kernels.ts';
 import { appraisalPace } from './appraisal-pace.ts';
 import type { AppraisalPace } from './appraisal-pace.ts';
 import { commandPace } from './command-pace.ts';
+import { kernelPace, leastGain } from './kernel-pace.ts';
+import type { KernelPace } from './kernel-pace.ts';
 import { paintedFiles } from './scans.ts';
 import { aligned, shownMs } from './times.ts';
 import type { Times } from './times.ts';
@@ -18,6 +21,7 @@ import type { Times } from './times.ts';
 /** Larger maps are repeated less often; their times scatter less. */
 const sizes = [{ side: 512, repeats: 7 }, { side: 1024, repeats: 5 }, { side: 2048, repeats: 3 }] as const;
 const commandRepeats = 3;
+const kernelRepeats = 15;
 const header = ['', 'min ms', 'median ms', '× reference'] as const;
 
 const { values } = parseArgs({ options: { quick: { type: 'boolean', default: false } } });
@@ -28,6 +32,7 @@ const directory = await mkdtemp(join(tmpdir(), 'evenglow-pace-'));
 try {
   const processors = cpus();
   print(`Node ${process.versions.node}, ${process.platform} ${process.arch}, ${processors.length} × ${processors[0]?.model.trim() || 'unnamed processor'}`);
+  await loadKernels();
   let sink = 0;
   let commandReference: Times | undefined;
   for (const { side, repeats } of chosen) {
@@ -40,6 +45,8 @@ try {
   const command = await commandPace(paintedFiles(commandSide), directory, commandRepeats);
   print(`\nCommand line, a pair of ${commandSide} × ${commandSide} pixels, ${commandRepeats} repeats after a warm-up`);
   print(aligned([header, row('start-up', command.startUp, commandReference), row('appraise, end to end', command.appraise, commandReference)]));
+  print(`\nKernels against plain TypeScript, ${commandSide} × ${commandSide} pixels, copies included, ${kernelRepeats} repeats in turns; kept from ${leastGain} times on`);
+  print(aligned(kernelRows(await kernelPace(paintedFiles(commandSide), kernelRepeats))));
   print(`\nsink ${sink.toPrecision(12)}`);
 } finally {
   await rm(directory, { recursive: true, force: true });
@@ -47,6 +54,10 @@ try {
 
 function appraisalRows({ reference, parts }: AppraisalPace): (readonly string[])[] {
   return [header, row('reference loop', reference, reference), ...[...parts].map(([name, times]) => row(name, times, reference))];
+}
+
+function kernelRows(paces: readonly KernelPace[]): (readonly string[])[] {
+  return [['', 'plain min ms', 'kernel min ms', 'times faster'], ...paces.map(({ name, plain, kernel, gain }) => [name, shownMs(plain.minMs), shownMs(kernel.minMs), gain.toFixed(2)])];
 }
 
 function row(name: string, { minMs, medianMs }: Times, reference: Times | undefined): readonly string[] {
