@@ -5,13 +5,9 @@ import type { Offers, SampleSource } from './local-compute.ts';
 
 /** Names only; painting waits until a sample is appraised, and the painter is loaded when it is first needed. */
 export async function demoOffers(): Promise<Offers> {
-  const { demoScenes } = await import('../src/demo/demo-scenes.ts');
+  const { demoSamples } = await import('../src/demo/demo-samples.ts');
   return {
-    samples: demoScenes.map(({ name, barrierUm }) => ({
-      name,
-      files: [`${name}.height.tif`, `${name}.current.tif`, `${name}.json`, ...(barrierUm ? [`${name}.outlines.geojson`] : [])],
-      source: { kind: 'demo', name },
-    })),
+    samples: demoSamples.map(({ name, files }) => ({ name, files, source: { kind: 'demo', name } })),
     skipped: [], failed: [],
   };
 }

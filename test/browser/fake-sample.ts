@@ -108,7 +108,7 @@ export function unmountAll(): void {
   document.querySelectorAll('.mounted').forEach((box) => { box.remove(); });
 }
 
-/** Size observers, updates, answers and a frame have had their turn. */
+/** Updates and answers have had their turn; frames are not waited for, as a page in the background draws none. */
 export async function settled(): Promise<void> {
-  for (let i = 0; i < 3; i++) await new Promise<void>((resolve) => { requestAnimationFrame(() => { setTimeout(resolve, 10); }); });
+  for (let i = 0; i < 4; i++) await new Promise<void>((resolve) => { setTimeout(resolve, 5); });
 }

@@ -169,7 +169,8 @@ describe('the ledger bar', () => {
 
   it('spells out area and share of the cause that has the focus', async () => {
     const element = await bar(1000);
-    buttons(element)[2]!.focus();
+    // A page in the background gets no focus events of its own.
+    buttons(element)[2]!.dispatchEvent(new FocusEvent('focus'));
     await element.updateComplete;
     assert.match(element.renderRoot.querySelector('.detail')?.textContent ?? '', /thin\s+25\.0\u00a0µm², 25\u00a0% of the footprint/);
   });

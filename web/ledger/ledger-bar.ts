@@ -3,6 +3,7 @@ import { LitElement, html, nothing, svg } from 'lit';
 import type { PropertyValues } from 'lit';
 import type { ComputeFacts, LedgerEntry } from '../../workers/api.ts';
 import { area, figure, percent } from '../sample/format.ts';
+import { SizeWatch } from '../sample/size-watch.ts';
 import { causeFill, hatchDefinitions } from './hatches.ts';
 import { labelRow, leaderRoutes, segmentSpans } from './layout.ts';
 import type { Span } from './layout.ts';
@@ -44,7 +45,7 @@ export class LedgerBar extends LitElement {
   declare shown: number | undefined;
   /** The one button that Tab reaches. */
   declare walked: number;
-  private readonly sizes = new ResizeObserver(() => { this.width = this.clientWidth; });
+  private readonly sizes = new SizeWatch(this, () => { this.width = this.clientWidth; });
   private pen: CanvasRenderingContext2D | null = null;
 
   static override styles = ledgerBarStyles;
@@ -61,12 +62,12 @@ export class LedgerBar extends LitElement {
 
   override connectedCallback(): void {
     super.connectedCallback();
-    this.sizes.observe(this);
+    this.sizes.start();
   }
 
   override disconnectedCallback(): void {
     super.disconnectedCallback();
-    this.sizes.disconnect();
+    this.sizes.stop();
   }
 
   override render() {
@@ -187,11 +188,14 @@ export class LedgerBar extends LitElement {
 
   private readonly onKey = (event: KeyboardEvent): void => {
     const buttons = [...this.renderRoot.querySelectorAll('button')];
-    const steps: Readonly<Record<string, number>> = { ArrowRight: 1, ArrowDown: 1, ArrowLeft: -1, ArrowUp: -1, Home: -this.walked, End: buttons.length - 1 - this.walked };
+    const last = buttons.length - 1;
+    const steps: Readonly<Record<string, number>> = { ArrowRight: 1, ArrowDown: 1, ArrowLeft: -1, ArrowUp: -1, Home: -last, End: last };
     const step = steps[event.key];
     if (event.key === 'Escape' && this.isolated !== undefined) this.isolate(undefined);
-    else if (step !== undefined) buttons[Math.min(buttons.length - 1, Math.max(0, this.walked + step))]?.focus();
-    else return;
+    else if (step !== undefined) {
+      this.walked = Math.min(last, Math.max(0, this.walked + step));
+      buttons[this.walked]?.focus();
+    } else return;
     event.preventDefault();
     event.stopPropagation();
   };

@@ -2,6 +2,7 @@
 import { LitElement, css, html, nothing, svg } from 'lit';
 import type { MapInfo } from '../../workers/api.ts';
 import { mapValue, withUnit } from '../sample/format.ts';
+import { SizeWatch } from '../sample/size-watch.ts';
 import { roundTicks, shareOf } from './value-axis.ts';
 import type { Axis } from './value-axis.ts';
 
@@ -44,7 +45,7 @@ export class CutPlot extends LitElement {
   declare lengthUm: number;
   declare log: boolean;
   declare width: number;
-  private readonly sizes = new ResizeObserver(() => { this.width = this.clientWidth; });
+  private readonly sizes = new SizeWatch(this, () => { this.width = this.clientWidth; });
 
   static override styles = css`
     :host { display: block; position: relative; height: 110px; font-size: 12px; color: var(--dim, #8fa0af); }
@@ -64,12 +65,12 @@ export class CutPlot extends LitElement {
 
   override connectedCallback(): void {
     super.connectedCallback();
-    this.sizes.observe(this);
+    this.sizes.start();
   }
 
   override disconnectedCallback(): void {
     super.disconnectedCallback();
-    this.sizes.disconnect();
+    this.sizes.stop();
   }
 
   override render() {

@@ -2,6 +2,7 @@
 import { LitElement, css, html } from 'lit';
 import type { PropertyValues } from 'lit';
 import type { Compute, FlawEntry, MapName, Picture, PictureRequest, PointValues, SampleSummary } from '../../workers/api.ts';
+import { SizeWatch } from '../sample/size-watch.ts';
 import { drawMap } from './draw-map.ts';
 import type { HeldPicture } from './draw-map.ts';
 import { Gestures } from './gestures.ts';
@@ -52,7 +53,7 @@ export class MapStage extends LitElement implements GestureTarget {
   private frame = 0;
   /** Where the second end of a cut would be. */
   private aimed: readonly [number, number] | undefined;
-  private readonly sizes = new ResizeObserver(() => { this.onSize(); });
+  private readonly sizes = new SizeWatch(this, () => { this.onSize(); });
   private readonly pictures = new Latest<PictureRequest, Picture>((request) => this.compute.picture(request), (request, picture) => { this.hold(request, picture); }, (_, error) => { this.fail(error); });
   private readonly points = new Latest<PointQuestion, PointValues>(
     ({ id, xUm, yUm }) => this.compute.point(id, xUm, yUm),
@@ -77,12 +78,12 @@ export class MapStage extends LitElement implements GestureTarget {
 
   override connectedCallback(): void {
     super.connectedCallback();
-    this.sizes.observe(this);
+    this.sizes.start();
   }
 
   override disconnectedCallback(): void {
     super.disconnectedCallback();
-    this.sizes.disconnect();
+    this.sizes.stop();
     cancelAnimationFrame(this.frame);
     this.pictures.forget();
     this.points.forget();
@@ -90,6 +91,7 @@ export class MapStage extends LitElement implements GestureTarget {
 
   override firstUpdated(): void {
     new Gestures(this.canvas, this);
+    this.onSize();
   }
 
   override willUpdate(changed: PropertyValues<this>): void {

@@ -3,6 +3,7 @@ import { LitElement, html, nothing } from 'lit';
 import type { PropertyValues } from 'lit';
 import type { MapInfo, SampleSummary } from '../../workers/api.ts';
 import { mapValue, tickText } from '../sample/format.ts';
+import { SizeWatch } from '../sample/size-watch.ts';
 import { axisOf, layerTicks, referenceMark, roundTicks, shareOf, valueAt } from './value-axis.ts';
 import type { Axis, Limits } from './value-axis.ts';
 import { paintHistogram, paintScale } from './paint-scale.ts';
@@ -41,7 +42,7 @@ export class ValueScale extends LitElement {
   declare bins: Uint32Array | undefined;
   declare bandFactor: number;
   declare width: number;
-  private readonly sizes = new ResizeObserver(() => { this.width = this.clientWidth; });
+  private readonly sizes = new SizeWatch(this, () => { this.width = this.clientWidth; });
 
   static override styles = valueScaleStyles;
 
@@ -53,12 +54,12 @@ export class ValueScale extends LitElement {
 
   override connectedCallback(): void {
     super.connectedCallback();
-    this.sizes.observe(this);
+    this.sizes.start();
   }
 
   override disconnectedCallback(): void {
     super.disconnectedCallback();
-    this.sizes.disconnect();
+    this.sizes.stop();
   }
 
   get axis(): Axis {
