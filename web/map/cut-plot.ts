@@ -1,7 +1,7 @@
 /** The profile along a cut, from A to B. */
 import { LitElement, css, html, nothing, svg } from 'lit';
 import type { MapInfo } from '../../workers/api.ts';
-import { mapValue, withUnit } from '../sample/format.ts';
+import { tickText, withUnit } from '../sample/format.ts';
 import { SizeWatch } from '../sample/size-watch.ts';
 import { roundTicks, shareOf } from './value-axis.ts';
 import type { Axis } from './value-axis.ts';
@@ -84,7 +84,7 @@ export class CutPlot extends LitElement {
       <g transform="translate(${side} 4)">
         ${ticks.filter((_, index) => index % every === 0).map((tick) => svg`
           <path class="grid" d="M0 ${(1 - tick.share) * tall}H${width}"></path>
-          <text x="-6" y=${(1 - tick.share) * tall + 4} text-anchor="end">${mapValue(tick.value, map.unit)}</text>`)}
+          <text x="-6" y=${(1 - tick.share) * tall + 4} text-anchor="end">${tickText(tick.value, map.unit)}</text>`)}
         ${values && axis ? svg`<path class="profile" d=${profilePath(values, axis, width, tall)}></path>` : nothing}
         <text x="0" y=${tall + 16}>A</text>
         <text x=${width / 2} y=${tall + 16} text-anchor="middle">${values && !axis ? 'no values along this cut' : `cut of ${withUnit(this.lengthUm, 'µm')}`}</text>

@@ -30,6 +30,9 @@ export interface MapScene {
   readonly colours: MapColours;
 }
 
+/** Rings larger than this, in stage pixels, are left out. */
+const ringLimit = 40;
+
 /** Draws onto a canvas of `stage` CSS pixels times `pixelRatio`. */
 export function drawMap(pen: CanvasRenderingContext2D, scene: MapScene): void {
   const { stage, pixelRatio, colours, picture, view, extent } = scene;
@@ -58,7 +61,8 @@ export function drawMap(pen: CanvasRenderingContext2D, scene: MapScene): void {
 function drawFlaw(pen: CanvasRenderingContext2D, { view, extent, colours }: MapScene, flaw: NonNullable<MapScene['flaw']>): void {
   const { x, y } = toStage(view, flaw.xUm, flaw.yUm, extent);
   const radius = Math.max(12, (flaw.diameterUm * view.scale) / 2 + 8);
-  haloed(pen, colours, 1.5, () => { pen.arc(x, y, radius, 0, 2 * Math.PI); });
+  // A large flaw is seen by the outline in the picture; a small one needs the ring.
+  if (radius < ringLimit) haloed(pen, colours, 1.5, () => { pen.arc(x, y, radius, 0, 2 * Math.PI); });
   haloedText(pen, colours, String(flaw.flaw), x + radius * 0.75 + 4, y - radius * 0.75);
 }
 

@@ -29,6 +29,7 @@ export class MapBar extends LitElement {
     .zoom { margin-left: auto; }
     button { padding: 0.15rem 0.6rem; font-size: 0.875rem; border-color: var(--line, #25313b); color: var(--dim, #8fa0af); }
     button[aria-pressed='true'] { background: var(--raised, #1b252d); border-color: var(--edge, #5a6b79); color: var(--glow-soft, #ffd9a0); }
+    button:disabled { opacity: 0.45; cursor: default; }
     kbd { margin-left: 5px; font: inherit; font-size: 0.75rem; color: var(--dim, #8fa0af); }
     @container (max-width: 20rem) {
       .all { display: grid; gap: 8px; }
@@ -47,7 +48,7 @@ export class MapBar extends LitElement {
           <button type="button" aria-pressed=${map === this.map ? 'true' : 'false'} @click=${() => { this.send({ tool: 'map', map }); }}>${mapWords[map]}</button>`)}
       </div>
       <div role="group" aria-label="On the map">
-        ${hasRaw ? this.toggle('raw', 'raw', 'R', this.raw, 'The map as the file has it; hold R for a glance') : ''}
+        ${this.toggle('raw', 'raw', 'R', this.raw && hasRaw, 'The map as the file has it; hold R for a glance', !hasRaw)}
         ${this.toggle('causes', 'causes', 'C', this.causes, 'Causes of loss over the map')}
         ${this.toggle('cut', 'cut', 'X', this.cutting, 'Profile along a line: two clicks, or drag with Shift')}
       </div>
@@ -59,8 +60,8 @@ export class MapBar extends LitElement {
     </div>`;
   }
 
-  private toggle(tool: 'raw' | 'causes' | 'cut', word: string, key: string, on: boolean, hint: string) {
-    return html`<button type="button" aria-pressed=${on ? 'true' : 'false'} aria-keyshortcuts=${key} title="${hint} (${key})" @click=${() => { this.send({ tool }); }}>${word}<kbd aria-hidden="true">${key}</kbd></button>`;
+  private toggle(tool: 'raw' | 'causes' | 'cut', word: string, key: string, on: boolean, hint: string, off = false) {
+    return html`<button type="button" aria-pressed=${on ? 'true' : 'false'} aria-keyshortcuts=${key} ?disabled=${off} title="${hint} (${key})" @click=${() => { this.send({ tool }); }}>${word}<kbd aria-hidden="true">${key}</kbd></button>`;
   }
 
   private send(detail: Tool): void {

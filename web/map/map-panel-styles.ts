@@ -15,8 +15,9 @@ export const mapPanelStyles = css`
   .card h3 { margin: 0 0 4px; font-size: 12px; font-weight: 500; color: var(--dim, #8fa0af); }
   .card p { margin: 0; }
   .say { position: absolute; top: 10px; left: 50%; transform: translateX(-50%); max-width: 90%; padding: 2px 10px; border-radius: 5px; background: rgb(13 18 22 / 0.86); color: #fff; font-size: 13px; pointer-events: none; }
-  @media (max-width: 1180px) {
-    :host { grid-template: 'bar' auto 'stage' minmax(0, 1fr) 'scale' auto 'cut' auto 'side' auto / minmax(0, 1fr); }
+  @media (max-width: 900px) {
+    :host { grid-template: 'bar' auto 'stage' auto 'scale' auto 'cut' auto 'side' auto / minmax(0, 1fr); }
+    .stage { aspect-ratio: var(--map-aspect, 1); min-height: 0; max-height: 70dvh; }
     .side { flex-flow: row wrap; overflow: visible; }
     .card { flex: 1 1 16rem; }
   }

@@ -120,6 +120,7 @@ export class MapPanel extends LitElement {
 
   override updated(): void {
     const { info, limits, cut, summary } = this;
+    this.style.setProperty('--map-aspect', String(summary.widthUm / summary.heightUm));
     const axis = axisOf(info, limits.log);
     const histogram: HistogramRequest = { id: summary.id, map: info.name, low: axis.low, high: axis.high, log: axis.log, bins: binCount };
     const key = JSON.stringify(histogram);

@@ -13,12 +13,13 @@ export class Readout extends LitElement {
   static override styles = css`
     :host { display: block; font-size: 13px; line-height: 1.5; font-variant-numeric: tabular-nums; }
     h3 { margin: 0 0 4px; font-size: 12px; font-weight: 500; color: var(--dim, #8fa0af); }
-    dl { display: grid; grid-template-columns: auto 1fr; gap: 1px 12px; margin: 0; }
+    dl { display: grid; gap: 1px 16px; margin: 0; }
+    div { display: flex; gap: 12px; justify-content: space-between; }
     dt { color: var(--dim, #8fa0af); white-space: nowrap; }
     dd { margin: 0; text-align: right; white-space: nowrap; }
     .booked { color: var(--glow-soft, #ffd9a0); font-weight: 600; }
     .note { margin: 4px 0 0; color: var(--dim, #8fa0af); min-height: 1.5em; }
-    @media (max-width: 1100px) { dl { grid-template-columns: auto 1fr auto 1fr; } }
+    @media (max-width: 900px) { dl { grid-template-columns: repeat(auto-fill, minmax(9.2rem, 1fr)); } .note { min-height: 0; } }
   `;
 
   override render() {
@@ -27,12 +28,16 @@ export class Readout extends LitElement {
     return html`
       <h3>under the cursor</h3>
       <dl>
-        <dt>x</dt><dd>${point ? `${fixed(point.xUm, 2)}\u00a0µm` : '–'}</dd>
-        <dt>y</dt><dd>${point ? `${fixed(point.yUm, 2)}\u00a0µm` : '–'}</dd>
-        ${this.maps.map(({ name, unit }) => html`<dt>${mapWords[name]}</dt><dd>${this.valueText(name, unit)}</dd>`)}
-        <dt>booked as</dt><dd class="booked">${point?.cause ?? '–'}</dd>
+        ${this.pair('x', point ? `${fixed(point.xUm, 2)}\u00a0µm` : '–')}
+        ${this.pair('y', point ? `${fixed(point.yUm, 2)}\u00a0µm` : '–')}
+        ${this.maps.map(({ name, unit }) => this.pair(mapWords[name], this.valueText(name, unit)))}
+        ${this.pair('booked as', point?.cause ?? '–', 'booked')}
       </dl>
       <p class="note">${[...(point?.flaw ? [`flaw ${point.flaw.flaw}: ${point.flaw.cause}, ${confidenceWord(point.flaw.confidence)}`] : []), ...marks].join(' · ')}</p>`;
+  }
+
+  private pair(word: string, value: string, look = '') {
+    return html`<div><dt>${word}</dt><dd class=${look}>${value}</dd></div>`;
   }
 
   private valueText(name: MapName, unit: string): string {

@@ -23,7 +23,7 @@ export function groundFinding({ height, current, repairedUm2 }: SampleSummary): 
   return `${first}; ${wear}.`;
 }
 
-/** "34 bubbles, 9 residue patches, 4 wrinkles; 6 shorts seen, about 25 expected." Expected: seen and those between the scan lines. */
+/** "34 bubbles, 9 residue patches, 4 wrinkles; 6 shorts seen, about 19 more expected." More: those between the scan lines, as in the verdict. */
 export function flawsFinding({ flaws, shorts, current }: SampleSummary): string {
   const count = (cause: string): number => flaws.filter((flaw) => flaw.cause === cause).length;
   const kinds = [
@@ -32,8 +32,8 @@ export function flawsFinding({ flaws, shorts, current }: SampleSummary): string 
   const seen = kinds.filter(([number]) => number > 0).map(([number, one, many]) => counted(number, one, many));
   const first = seen.length > 0 ? seen.join(', ') : 'No bubbles, residue or wrinkles';
   if (!current) return `${first}. Shorts do not show in height.`;
-  const expected = shorts.seen + shorts.expectedMissed;
-  const more = shorts.seen === 0 ? '' : expected < shorts.seen * 1.05 ? ', hardly any missed between the scan lines' : `, about ${expected < 10 ? figure(expected, 2) : String(Math.round(expected))} expected`;
+  const missed = shorts.expectedMissed;
+  const more = shorts.seen === 0 ? '' : missed < 0.05 * shorts.seen ? ', hardly any missed between the scan lines' : `, about ${missed < 10 ? figure(missed, 2) : String(Math.round(missed))} more expected`;
   return `${first}; ${counted(shorts.seen, 'short')} seen${more}.`;
 }
 

@@ -86,7 +86,7 @@ export class Knob extends LitElement {
         return html`<input id="control" type="checkbox" .checked=${now === true} aria-describedby="hint" @change=${(event: Event) => { this.send((event.target as HTMLInputElement).checked); }}>`;
       case 'choice':
         return html`<select id="control" aria-describedby="hint" .value=${String(now ?? '')} @change=${(event: Event) => { this.send((event.target as HTMLSelectElement).value || undefined); }}>
-          ${field.fallback === undefined ? html`<option value="" ?selected=${now === undefined}>not given</option>` : nothing}
+          ${field.fallback === undefined ? html`<option value="" ?selected=${now === undefined}>not set</option>` : nothing}
           ${(field.choices ?? []).map((choice) => html`<option value=${choice} ?selected=${choice === now}>${choice}</option>`)}
         </select>`;
       case 'word':

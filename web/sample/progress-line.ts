@@ -15,7 +15,7 @@ export class ProgressLine extends LitElement {
     progress::-webkit-progress-value { background: var(--glow, #ffb454); transition: width 150ms; }
     progress::-moz-progress-bar { background: var(--glow, #ffb454); }
     .stage { min-width: 8em; color: var(--dim, #8fa0af); }
-    button { padding: 0.1rem 0.7rem; font-size: 0.875rem; }
+    button { padding: 0 0.7rem; font-size: 0.875rem; }
     @media (prefers-reduced-motion: reduce) { progress::-webkit-progress-value { transition: none; } }
   `];
 

@@ -3,13 +3,14 @@ import { css } from 'lit';
 
 export const samplePlaceStyles = css`
   :host { display: flex; flex-direction: column; box-sizing: border-box; height: calc(100dvh - var(--header-height, 3.6rem)); min-height: 620px; overflow: hidden; }
-  .top { padding: 10px 24px 8px; border-bottom: 1px solid var(--line, #25313b); }
+  .top { position: relative; padding: 10px 24px 8px; border-bottom: 1px solid var(--line, #25313b); }
   .headline { display: flex; gap: 8px 24px; align-items: flex-start; justify-content: space-between; margin-bottom: 10px; }
   eg-verdict-line { flex: 1; min-width: 0; }
   .steps { display: flex; gap: 8px; flex: none; padding-top: 4px; }
   .steps button { font-size: 0.875rem; max-width: 18rem; overflow: hidden; text-overflow: ellipsis; }
   .steps button:disabled { opacity: 0.45; cursor: default; }
-  eg-progress-line, .error { margin-top: 6px; }
+  .error { margin-top: 6px; }
+  .top eg-progress-line { position: absolute; right: 24px; bottom: 2px; width: min(27rem, 60%); padding-left: 12px; background: var(--background, #0d1216); }
   .error { margin-bottom: 0; color: var(--bad, #ff9a76); font-size: 0.9375rem; }
   .main { flex: 1; display: grid; grid-template-columns: minmax(0, 1fr) 25rem; min-height: 0; }
   eg-map-panel { padding: 12px 18px 10px 24px; }
@@ -23,8 +24,9 @@ export const samplePlaceStyles = css`
     .top { padding: 10px 14px; }
     .headline { flex-direction: column; }
     .steps.none { display: none; }
+    .top eg-progress-line { position: static; width: auto; padding: 6px 0 0; }
     .main { display: block; }
-    eg-map-panel { padding: 12px 14px; min-height: 0; grid-template-rows: auto min(100vw, 70dvh) auto auto auto; }
+    eg-map-panel { padding: 12px 14px; }
     .chapters { border-left: 0; border-top: 1px solid var(--line, #25313b); overflow: visible; }
   }
   @media (prefers-reduced-motion: reduce) { .result { transition: none; } }

@@ -150,8 +150,9 @@ export class SamplePlace extends LitElement {
     if (event.defaultPrevented || isTyping(event)) return;
     if ((event.ctrlKey || event.metaKey) && !event.altKey && event.key.toLowerCase() === 'z') this.step(event.shiftKey ? 'redo' : 'undo');
     else if (event.key === 'Escape' && this.isolated !== undefined) this.isolated = undefined;
-    else if (event.key === 'Escape' && this.flaw !== undefined && !this.panel?.press(event)) this.flaw = undefined;
-    else if (event.key === 'Escape' || !this.panel?.press(event)) return;
+    else if (this.panel?.press(event)) { /* the map took it */ }
+    else if (event.key === 'Escape' && this.flaw !== undefined) this.flaw = undefined;
+    else return;
     event.preventDefault();
   };
 

@@ -39,7 +39,6 @@ export function colourMap(
 }
 
 /** Nearest entry, halves upwards as Math.round has them; 0 where infinities left no number. */
-// @ts-ignore: decorator
 @inline
 function entryOf(position: f64): i32 {
   const clipped = min<f64>(255, max<f64>(0, position === position ? position : 0));

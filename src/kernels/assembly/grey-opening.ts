@@ -11,7 +11,6 @@ export function greyOpening(values: usize, other: usize, columns: i32, rows: i32
   alongColumns(other, values, columns, rows, halfY, back, ahead, false);
 }
 
-// @ts-ignore: decorator
 @inline
 function pick(a: v128, b: v128, least: boolean): v128 {
   return least ? f32x4.min(a, b) : f32x4.max(a, b);

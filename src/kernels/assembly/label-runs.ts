@@ -1,7 +1,6 @@
 // Connected regions by runs: stretches of mask pixels along a row, joined by union-find on their numbers.
 
 /** Root of a run; the path is halved on the way. */
-// @ts-ignore: decorator
 @inline
 function rootOf(parents: usize, run: u32): u32 {
   let at = run;
@@ -15,7 +14,6 @@ function rootOf(parents: usize, run: u32): u32 {
   return at;
 }
 
-// @ts-ignore: decorator
 @inline
 function join(parents: usize, a: u32, b: u32): void {
   const rootA = rootOf(parents, a);

@@ -47,7 +47,6 @@ export function nearestAdmitted(use: usize, columns: i32, rows: i32, nearest: us
 }
 
 /** Whether sixteen pixels and all their neighbours by edges are admitted. */
-// @ts-ignore: decorator
 @inline
 function allInside(at: usize, columns: i32): bool {
   const one = i8x16.splat(1);
@@ -58,7 +57,6 @@ function allInside(at: usize, columns: i32): bool {
   return i8x16.all_true(equal);
 }
 
-// @ts-ignore: decorator
 @inline
 function fillOwn(at: usize, index: i32): void {
   const four = i32x4.add(i32x4.splat(index), i32x4(0, 1, 2, 3));
@@ -68,7 +66,6 @@ function fillOwn(at: usize, index: i32): void {
   v128.store(at, i32x4.add(four, i32x4.splat(12)), 48);
 }
 
-// @ts-ignore: decorator
 @inline
 function reach(nearest: usize, queue: usize, to: i32, from: i32, tail: i32): i32 {
   const at = nearest + (<usize>to << 2);

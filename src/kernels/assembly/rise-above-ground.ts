@@ -87,7 +87,6 @@ function riseOfRow(values: usize, use: usize, columns: i32, rows: i32, row: i32,
   }
 }
 
-// @ts-ignore: decorator
 @inline
 function load2(counts: usize, index: usize): v128 {
   return v128.load64_zero(counts + (index << 2));

@@ -77,7 +77,6 @@ function median(first: usize, second: usize, length: i32): f64 {
 }
 
 /** Parts `count` numbers into `to`: those below the pivot (or at it, with `equal`) to the left, in place of the rest to the right. Returns how many. */
-// @ts-ignore: decorator
 @inline
 function part(from: usize, to: usize, count: i32, pivot: f64, equal: boolean): i32 {
   let left = to;
@@ -94,7 +93,6 @@ function part(from: usize, to: usize, count: i32, pivot: f64, equal: boolean): i
   return <i32>((left - to) >> 3);
 }
 
-// @ts-ignore: decorator
 @inline
 function middleOf(a: f64, b: f64, c: f64): f64 {
   return max<f64>(min<f64>(a, b), min<f64>(max<f64>(a, b), c));

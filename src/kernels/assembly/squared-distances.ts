@@ -73,7 +73,6 @@ function stepsAlongColumns(mask: usize, columns: i32, rows: i32, outside: i32, s
   }
 }
 
-// @ts-ignore: decorator
 @inline
 function stepDown(mask: usize, columns: i32, outside: i32, steps: usize, k: i32): void {
   let value: u32 = 0;

@@ -1,0 +1,364 @@
+/** The Sample place: its words and numbers, its knobs, and what a person does there. */
+import { assert } from 'chai';
+import { effectOf, flawsFinding, glowAssumption, glowFinding, groundFinding, scanFinding, verdictRest } from '../../web/sample/findings.ts';
+import { area, confidenceWord, counted, density, figure, mapValue, percent, span, tickText, typedNumber, volts, withPrefix } from '../../web/sample/format.ts';
+import type { Chapter } from '../../web/sample/chapter.ts';
+import type { RecipeChange } from '../../web/sample/events.ts';
+import { FlawTable } from '../../web/sample/flaw-table.ts';
+import { Knob } from '../../web/sample/knob.ts';
+import { changedPaths, chapterKnobs, chapterOfChange, knobsOf, refusal, stepLabel } from '../../web/sample/knobs.ts';
+import type { ChapterName } from '../../web/sample/knobs.ts';
+import { SamplePlace } from '../../web/sample/sample-place.ts';
+import { sortFlaws } from '../../web/sample/sort-flaws.ts';
+import type { SampleState } from '../../web/session/state.ts';
+import { facts, fakeCompute, flaws, mount, sampleState, settled, summary, unmountAll } from './fake-sample.ts';
+import type { FakeCompute } from './fake-sample.ts';
+
+const plainSpaces = (text: string | null | undefined): string => (text ?? '').replace(/\s+/g, ' ').trim();
+const fieldAt = (path: string) => facts.fields.find((field) => field.path === path)!;
+const recipe = (more: object) => ({ format: 'evenglow-recipe', version: 1, ...more });
+
+describe('numbers', () => {
+  it('have three significant digits, a true minus and a dash where there is none', () => {
+    assert.deepEqual([0, 1, 40.66, 99.96, 1234, 0.00123, -2.5, 1e-6, 2e7].map((value) => figure(value)), ['0', '1.00', '40.7', '100', '1234', '0.00123', '−2.50', '1.00·10⁻⁶', '2.00·10⁷']);
+    assert.deepEqual([undefined, Number.NaN, Infinity].map((value) => figure(value)), ['–', '–', '–']);
+  });
+
+  it('carry SI prefixes, also where rounding reaches the next', () => {
+    assert.deepEqual([1.18e-10, 9.996e-10, 9.94e-13, -3e-14, 0, 4.6e-6, 2e-20].map((value) => plainSpaces(withPrefix(value, 'A'))), ['118 pA', '1.00 nA', '994 fA', '−30.0 fA', '0 A', '4.60 µA', '0.0200 aA']);
+    assert.equal(withPrefix(Number.NaN, 'A'), '–');
+  });
+
+  it('carry their units', () => {
+    assert.equal(plainSpaces(area(40.66)), '40.7 µm²');
+    assert.deepEqual([6.3, 0.0042, 25000].map((value) => plainSpaces(density(value))), ['6.3 nA/µm²', '4.2 pA/µm²', '25 µA/µm²']);
+    assert.deepEqual([4, 5.9, 6.25, -3.999].map((value) => plainSpaces(volts(value))), ['4.0 V', '5.9 V', '6.25 V', '−4.0 V']);
+    assert.deepEqual([0.276, 0.0123, 0.0002, 0, 1].map((value) => plainSpaces(percent(value))), ['28 %', '1.2 %', '<0.1 %', '0 %', '100 %']);
+    assert.deepEqual([mapValue(3.41, 'nm'), mapValue(2e-12, 'A'), mapValue(0.5, ''), mapValue(7, 'relative')].map(plainSpaces), ['3.41 nm', '2.00 pA', '0.500', '7.00']);
+    assert.deepEqual([tickText(1e-10, 'A'), tickText(0.5, 'nm'), tickText(20, 'nm')].map(plainSpaces), ['100 pA', '0.5 nm', '20 nm']);
+    assert.equal(span(0.9, 40, 2), '0.90–40');
+  });
+
+  it('are read as typed', () => {
+    assert.deepEqual([' 2,5 ', '−3', '1e-12', '10 000'].map(typedNumber), [2.5, -3, 1e-12, 10000]);
+    assert.isNaN(typedNumber('two'));
+    assert.isNaN(typedNumber(''));
+  });
+
+  it('have words for how sure and how many', () => {
+    assert.deepEqual([1, 0.9, 0.8, 0.5].map(confidenceWord), ['certain', 'certain', 'likely', 'could be another']);
+    assert.deepEqual([counted(0, 'short'), counted(1, 'short'), counted(2, 'residue patch', 'residue patches')], ['no shorts', '1 short', '2 residue patches']);
+  });
+});
+
+describe('findings', () => {
+  it('say what was scanned', () => {
+    assert.equal(plainSpaces(scanFinding(summary)), 'Bare barrier, height and current, 5.9 V at the scan; 200 × 200 pixels on 10.0 × 10.0 µm.');
+    const { current: _current, ...heightAlone } = summary;
+    assert.match(scanFinding({ ...heightAlone, surface: 'stack' }), /^Finished stack, height only;/);
+  });
+
+  it('say what was done to the ground', () => {
+    assert.equal(plainSpaces(groundFinding(summary)), '38 nm of tilt removed, 12 broken pixels repaired, noise 0.080 nm; the tip lost 0.08 decades.');
+    const { height: _height, ...currentAlone } = summary;
+    assert.equal(plainSpaces(groundFinding({ ...currentAlone, current: { ...summary.current!, repairedPixels: 0, wearDecades: 0 } })), 'Nothing to repair; no wear of the tip undone.');
+  });
+
+  it('count the flaws, and the shorts that were and were not seen', () => {
+    assert.equal(flawsFinding(summary), '1 bubble, 1 residue patch; 6 shorts seen, about 19 more expected.');
+    assert.equal(flawsFinding({ ...summary, flaws: [], shorts: { seen: 0, expectedMissed: 0, crossedShare: 0.24 } }), 'No bubbles, residue or wrinkles; no shorts seen.');
+  });
+
+  it('say what the reference would carry, or why that is not known', () => {
+    assert.equal(plainSpaces(glowFinding(summary)), 'At 4.0 V the reference (12 layers, 4.00 nm) would carry 6.3 nA/µm² (95 %: 0.90–40).');
+    const { device: _device, ...without } = summary;
+    const { biasV: _biasV, ...noBias } = summary.current!;
+    assert.match(glowFinding({ ...without, current: noBias }), /not known without a scan bias\./);
+    assert.match(glowFinding({ ...without, current: { ...summary.current!, unit: 'relative' } }), /no scale in amperes/);
+    assert.match(plainSpaces(glowAssumption(summary, (path) => ({ 'barrier.tipAreaNm2': 17, 'barrier.heightEv': 2.5, 'barrier.massRatio': 0.5 })[path])), /contact of 17 nm², .*2\.50 eV.*0\.50/);
+    assert.equal(glowAssumption(without, () => undefined), '');
+  });
+
+  it('say what a change returned or cost', () => {
+    assert.deepEqual([effectOf(40, 40.3), effectOf(40, 38.8), effectOf(40, 40), effectOf(undefined, 40)].map(plainSpaces), ['This returned 0.300 µm².', 'This cost 1.20 µm².', 'This changed no usable area.', '']);
+  });
+
+  it('split the verdict’s sentence', () => {
+    assert.deepEqual(verdictRest(summary.verdict), { what: 'of 100 µm² is even barrier, ×/÷3 at 4.0 V', remarks: 'an upper bound, as a bare barrier was scanned' });
+  });
+});
+
+describe('knobs', () => {
+  it('exist as fields of the recipe, all of them, once', () => {
+    const paths = (Object.keys(chapterKnobs) as ChapterName[]).flatMap((chapter) => chapterKnobs[chapter].map(({ path }) => path));
+    assert.deepEqual(paths.filter((path) => !fieldAt(path)), []);
+    assert.equal(new Set(paths).size, paths.length);
+    assert.equal(knobsOf('flaws', facts.fields).length, chapterKnobs.flaws.length);
+  });
+
+  it('have their default on their slider', () => {
+    for (const { path, slider } of Object.values(chapterKnobs).flat()) {
+      const { fallback } = fieldAt(path);
+      if (slider && typeof fallback === 'number') assert.isTrue(fallback >= slider.from && fallback <= slider.to, path);
+    }
+  });
+
+  it('refuse with a sentence', () => {
+    assert.match(plainSpaces(refusal(fieldAt('band.factor'), 0.5)), /Band factor is at least 1\./);
+    assert.match(refusal(fieldAt('ground.order'), 1.5) ?? '', /whole number/);
+    assert.match(refusal(fieldAt('band.factor'), Number.NaN) ?? '', /is a number/);
+    assert.isUndefined(refusal(fieldAt('band.factor'), 5));
+  });
+
+  it('name the step that they make', () => {
+    assert.deepEqual([
+      stepLabel(fieldAt('band.factor'), 5), stepLabel(fieldAt('flaws.heightNm'), 1.5), stepLabel(fieldAt('ground.wear'), false), stepLabel(fieldAt('barrier.model'), 'simmons'), stepLabel(fieldAt('stack.biasV'), undefined),
+    ], ['band factor 5', 'height above ground 1.5 nm', 'tip wear off', 'model simmons', 'device bias back to default']);
+  });
+
+  it('are counted as changed only where they differ from the default', () => {
+    assert.deepEqual(changedPaths('glow', facts.fields, recipe({ band: { factor: 3, minNaPerUm2: 1 }, stack: { biasV: 4 } })), ['stack.biasV', 'band.minNaPerUm2']);
+    assert.equal(chapterOfChange(recipe({}), recipe({ flaws: { heightNm: 2 } })), 'flaws');
+    assert.equal(chapterOfChange(recipe({ band: { shortMaxUm2: 1 } }), recipe({})), 'flaws');
+    assert.isUndefined(chapterOfChange(recipe({}), recipe({ flaws: { heightNm: 2 }, ground: { order: 1 } })));
+  });
+});
+
+describe('a knob', () => {
+  afterEach(unmountAll);
+
+  async function knob(path: string, more: Partial<Knob> = {}): Promise<{ element: Knob; changes: RecipeChange[] }> {
+    const changes: RecipeChange[] = [];
+    const element = Object.assign(new Knob(), { field: fieldAt(path), ...more });
+    element.addEventListener('recipe-change', (event) => { changes.push((event as CustomEvent<RecipeChange>).detail); });
+    return { element: await mount(element, 360), changes };
+  }
+  const enter = async (element: Knob, text: string): Promise<void> => {
+    const input = element.renderRoot.querySelector<HTMLInputElement>('#control')!;
+    input.value = text;
+    input.dispatchEvent(new Event('change'));
+    await element.updateComplete;
+  };
+
+  it('takes a typed number, refuses one out of range, and takes the default for nothing changed', async () => {
+    const { element, changes } = await knob('band.factor');
+    await enter(element, '0,2');
+    assert.match(element.renderRoot.querySelector('[role="alert"]')?.textContent ?? '', /at least 1/);
+    await enter(element, '5');
+    await enter(element, '3');
+    assert.deepEqual(changes, [{ path: 'band.factor', value: 5, label: 'band factor 5' }]);
+  });
+
+  it('shows a changed value with its reset', async () => {
+    const { element, changes } = await knob('band.factor', { value: 5 });
+    element.renderRoot.querySelector<HTMLElement>('.reset')!.click();
+    assert.deepEqual(changes, [{ path: 'band.factor', value: undefined, label: 'band factor back to default' }]);
+    assert.match(plainSpaces(element.renderRoot.querySelector('.hint')?.textContent), /Default: 3\./);
+    element.value = undefined;
+    await element.updateComplete;
+    assert.isNull(element.renderRoot.querySelector('.reset'));
+  });
+
+  it('follows its slider while held and changes the recipe when it is let go', async () => {
+    const { element, changes } = await knob('band.factor', { slider: { from: 1, to: 100, log: true } });
+    const slider = element.renderRoot.querySelector<HTMLInputElement>('input[type="range"]')!;
+    slider.value = '200';
+    slider.dispatchEvent(new Event('input'));
+    await element.updateComplete;
+    assert.equal(element.renderRoot.querySelector<HTMLInputElement>('#control')?.value, '10');
+    assert.deepEqual(changes, []);
+    slider.dispatchEvent(new Event('change'));
+    assert.deepEqual(changes.map(({ value }) => value), [10]);
+  });
+
+  it('switches and chooses', async () => {
+    const flag = await knob('ground.wear');
+    flag.element.renderRoot.querySelector<HTMLElement>('input')!.click();
+    assert.deepEqual(flag.changes, [{ path: 'ground.wear', value: false, label: 'tip wear off' }]);
+    const choice = await knob('barrier.model');
+    await enter(choice.element, 'simmons');
+    assert.deepEqual(choice.changes.map(({ value }) => value), ['simmons']);
+  });
+});
+
+describe('the flaw table', () => {
+  afterEach(unmountAll);
+
+  it('sorts, with absent values last in both directions', () => {
+    const order = (column: Parameters<typeof sortFlaws>[1], up: boolean) => sortFlaws(flaws, column, up).map(({ flaw }) => flaw);
+    assert.deepEqual([order('areaUm2', false), order('peakNm', true), order('peakNm', false), order('cause', true)], [[2, 1, 3], [2, 1, 3], [1, 2, 3], [1, 2, 3]]);
+  });
+
+  it('shows the first 200, and all on demand or when a later one is selected', async () => {
+    const many = Array.from({ length: 250 }, (_, i) => ({ ...flaws[0]!, flaw: i + 1, areaUm2: 250 - i }));
+    const table = await mount(Object.assign(new FlawTable(), { flaws: many }), 400);
+    const rows = () => table.renderRoot.querySelectorAll('tbody tr').length;
+    assert.equal(rows(), 200);
+    table.selected = 240;
+    await table.updateComplete;
+    assert.equal(rows(), 251);
+    table.selected = undefined;
+    await table.updateComplete;
+    table.renderRoot.querySelector<HTMLElement>('.more')!.click();
+    await table.updateComplete;
+    assert.equal(rows(), 250);
+  });
+
+  it('selects a row, says why it is what it is, and sorts by its heads', async () => {
+    const table = await mount(Object.assign(new FlawTable(), { flaws }), 400);
+    const heard: unknown[] = [];
+    table.addEventListener('flaw-select', (event) => { heard.push((event as CustomEvent<{ flaw: number }>).detail.flaw); });
+    table.renderRoot.querySelector<HTMLElement>('tbody td button')!.click();
+    assert.deepEqual(heard, [2]);
+    table.selected = 2;
+    await table.updateComplete;
+    assert.include(table.renderRoot.querySelector('.reason')?.textContent ?? '', 'flat, rough edge');
+    table.renderRoot.querySelector<HTMLElement>('th button')!.click();
+    await table.updateComplete;
+    assert.deepEqual([...table.renderRoot.querySelectorAll('tbody td button')].map((each) => each.textContent), ['1', '2', '3']);
+    assert.equal(table.renderRoot.querySelector('th')?.getAttribute('aria-sort'), 'ascending');
+  });
+});
+
+describe('the sample’s place', () => {
+  afterEach(unmountAll);
+  let compute: FakeCompute;
+
+  async function open(more: Partial<SampleState> = {}): Promise<SamplePlace> {
+    compute = fakeCompute();
+    return mount(Object.assign(new SamplePlace(), { sample: sampleState(more), facts, compute }), 1440, 850);
+  }
+  const inside = (element: SamplePlace, selector: string) => element.renderRoot.querySelector<HTMLElement & { shadowRoot: ShadowRoot }>(selector)!;
+  const textOf = (element: SamplePlace, selector: string) => plainSpaces(inside(element, selector).shadowRoot.textContent);
+  const steps = (element: SamplePlace) => [...element.renderRoot.querySelectorAll<HTMLButtonElement>('.steps button')];
+  const listen = (element: SamplePlace, ...types: string[]): string[] => {
+    const heard: string[] = [];
+    for (const type of types) element.addEventListener(type, () => { heard.push(type); });
+    return heard;
+  };
+  const press = (key: string, more: KeyboardEventInit = {}, on: EventTarget = window) => on.dispatchEvent(new KeyboardEvent('keydown', { key, bubbles: true, composed: true, cancelable: true, ...more }));
+
+  it('says the verdict: area, interval, largest patch, bound, remarks', async () => {
+    const element = await open();
+    const text = textOf(element, 'eg-verdict-line');
+    assert.match(text, /40\.7 µm² of 100 µm² is even barrier, ×\/÷3 at 4\.0 V/);
+    assert.match(text, /95 %: 37\.9–43\.2 µm² · largest patch 22\.4 µm² · an upper bound, as a bare barrier was scanned · 2 remarks/);
+    inside(element, 'eg-verdict-line').shadowRoot.querySelector('button')!.click();
+    await settled();
+    assert.include(textOf(element, 'eg-verdict-line'), 'Second remark.');
+  });
+
+  it('isolates on the map what is chosen in the ledger, and shows all again by Escape', async () => {
+    const element = await open();
+    inside(element, 'eg-ledger-bar').shadowRoot.querySelectorAll('button')[1]!.click();
+    await settled();
+    assert.deepEqual(compute.pictures.at(-1)!.causes, [9]);
+    press('Escape');
+    await settled();
+    assert.equal(compute.pictures.at(-1)!.causes, 'all');
+  });
+
+  it('says per chapter how many settings were changed, and passes a change on', async () => {
+    const element = await open({ history: [{ recipe: recipe({ band: { factor: 5, shortMaxUm2: 0.1 } }), label: '' }] });
+    const count = (name: string) => plainSpaces(inside(element, `eg-chapter-${name}`).shadowRoot.querySelector('.count')?.textContent);
+    assert.deepEqual(['scan', 'ground', 'flaws', 'glow'].map(count), ['all by default', 'all by default', '1 changed', '1 changed']);
+    const changes: RecipeChange[] = [];
+    document.addEventListener('recipe-change', (event) => { changes.push((event as CustomEvent<RecipeChange>).detail); }, { once: true });
+    inside(element, 'eg-chapter-glow').shadowRoot.querySelectorAll<Knob>('eg-knob')[2]!.renderRoot.querySelector<HTMLElement>('.reset')!.click();
+    assert.deepEqual(changes, [{ path: 'band.factor', value: undefined, label: 'band factor back to default' }]);
+  });
+
+  it('warns where a bias is set', async () => {
+    const element = await open();
+    assert.match(textOf(element, 'eg-chapter-glow'), /breaks down near 1\.2 V\/nm.*4\.0 V on the reference is 1\.00 V\/nm.*current limit.*trained staff/);
+    assert.match(textOf(element, 'eg-chapter-scan'), /current limit.*trained staff/);
+  });
+
+  it('names the steps on undo and redo, by button and key, but leaves keys to fields of text', async () => {
+    const history = [{ recipe: recipe({}), label: '' }, { recipe: recipe({ band: { factor: 5 } }), label: 'band factor 5' }, { recipe: recipe({ band: { factor: 7 } }), label: 'band factor 7' }];
+    const element = await open({ history, at: 1 });
+    assert.deepEqual(steps(element).map((button) => button.textContent), ['Undo: band factor 5', 'Redo: band factor 7']);
+    const heard = listen(element, 'undo', 'redo');
+    steps(element)[0]!.click();
+    press('z', { ctrlKey: true });
+    press('Z', { ctrlKey: true, shiftKey: true });
+    press('z', { ctrlKey: true }, inside(element, 'eg-chapter-glow').shadowRoot.querySelector<Knob>('eg-knob')!.renderRoot.querySelector('input[type="text"]')!);
+    assert.deepEqual(heard, ['undo', 'undo', 'redo']);
+  });
+
+  it('has nothing to undo at the first step', async () => {
+    const element = await open();
+    const heard = listen(element, 'undo', 'redo');
+    press('z', { ctrlKey: true });
+    assert.isTrue(steps(element).every((button) => button.disabled));
+    assert.deepEqual(heard, []);
+  });
+
+  it('shows what the last change did, in its chapter', async () => {
+    const element = await open();
+    element.sample = sampleState({ history: [{ recipe: recipe({}), label: '' }, { recipe: recipe({ flaws: { heightNm: 2 } }), label: 'x' }], at: 1, previousUsableUm2: 40.4 });
+    await settled();
+    assert.equal(plainSpaces((inside(element, 'eg-chapter-flaws') as unknown as Chapter).effect), 'This returned 0.300 µm².');
+    assert.include(textOf(element, 'eg-chapter-flaws'), 'This returned 0.300 µm².');
+    assert.notInclude(textOf(element, 'eg-verdict-line'), 'returned');
+  });
+
+  it('keeps the old result on show while working, and cancels', async () => {
+    const element = await open({ status: 'working', progress: { stage: 'flaws', done: 2, total: 7 } });
+    assert.include(textOf(element, 'eg-verdict-line'), '40.7');
+    const line = inside(element, 'eg-progress-line');
+    assert.include(plainSpaces(line.shadowRoot.textContent), 'flaws');
+    assert.equal(line.shadowRoot.querySelector('progress')?.value, 2);
+    assert.isBelow(Number(getComputedStyle(inside(element, 'eg-verdict-line')).opacity), 1);
+    const heard = listen(element, 'cancel');
+    line.shadowRoot.querySelector('button')!.click();
+    assert.deepEqual(heard, ['cancel']);
+  });
+
+  it('says what failed, beside the last result or without one', async () => {
+    const error = { code: 'x', message: 'recipe.band.factor: 0 is below 1.' };
+    const beside = await open({ status: 'failed', error });
+    assert.match(plainSpaces(inside(beside, '.error').textContent), /0 is below 1\. What is shown is the last result\./);
+    const { summary: _summary, ...bare } = sampleState({ status: 'failed', error });
+    beside.sample = bare;
+    await settled();
+    assert.match(plainSpaces(inside(beside, '.error').textContent), /0 is below 1\./);
+    const heard = listen(beside, 'leave', 'retry');
+    beside.renderRoot.querySelectorAll<HTMLElement>('.empty button').forEach((button) => { button.click(); });
+    assert.deepEqual(heard, ['retry', 'leave']);
+  });
+
+  it('links table and map: a row outlines the flaw, a click on the map opens its row', async () => {
+    const element = await open();
+    const chapter = inside(element, 'eg-chapter-flaws');
+    const table = () => chapter.shadowRoot.querySelector<FlawTable>('eg-flaw-table')!;
+    table().renderRoot.querySelector<HTMLElement>('tbody td button')!.click();
+    await settled();
+    assert.equal(compute.pictures.at(-1)!.flaw, 2);
+    inside(element, 'eg-map-panel').dispatchEvent(new CustomEvent('flaw-select', { detail: { flaw: 1 } }));
+    await settled();
+    assert.equal(compute.pictures.at(-1)!.flaw, 1);
+    assert.equal(plainSpaces(table().renderRoot.querySelector('tr[aria-current] td')?.textContent), '1');
+    assert.isTrue((chapter as unknown as Chapter).open);
+  });
+
+  it('finds the selected flaw again after an appraisal that numbers anew', async () => {
+    const element = await open();
+    element.flaw = 2;
+    await settled();
+    element.sample = sampleState({ summary: { ...summary, flaws: [{ ...flaws[1]!, flaw: 9, xUm: 8.1 }, flaws[0]!] } });
+    await settled();
+    assert.equal(element.flaw, 9);
+  });
+
+  it('has keys for the map from anywhere but a field of text', async () => {
+    const element = await open();
+    press('r');
+    await settled();
+    assert.equal(compute.pictures.at(-1)!.map, 'rawCurrent');
+    const count = compute.pictures.length;
+    press('c', {}, inside(element, 'eg-chapter-glow').shadowRoot.querySelector<Knob>('eg-knob')!.renderRoot.querySelector('input[type="text"]')!);
+    await settled();
+    assert.equal(compute.pictures.length, count);
+  });
+});
