@@ -8,6 +8,8 @@ export interface RunRule {
   readonly noise: number;
   /** Shortest run in pixels. */
   readonly minLength: number;
+  /** `below`: only runs that lie below both neighbours count; both ways when absent. */
+  readonly only?: 'below';
 }
 
 /**
@@ -31,7 +33,8 @@ function markRow(values: Float32Array, marks: Uint8Array, columns: number, rows:
   let sign = 0;
   let gaps = 0;
   for (let c = 0; c <= columns; c++) {
-    const s = c < columns ? breakSign(values, columns, rows, r, c, thickness, rule.noise) : 0;
+    let s = c < columns ? breakSign(values, columns, rows, r, c, thickness, rule.noise) : 0;
+    if (s > 0 && rule.only === 'below') s = 0;
     if (start >= 0 && s === sign) {
       gaps = 0;
       continue;

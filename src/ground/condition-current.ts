@@ -36,52 +36,53 @@ export function conditionCurrent(
   const { columns, rows } = grid;
   const count = columns * rows;
   const warnings: Notice[] = [];
-  const sign = signOf(channel);
-  const turned = channel.values.data.map((value) => value * sign);
+  const turned = turnedUp(channel, warnings);
 
   const levelled = height?.levelled.data;
-  const zero = findZeroCurrent(turned, columns, levelled ? (i) => levelled[i]! > blockedAboveM : undefined);
-  if (zero.from === 'assumed') warnings.push(notice('current-offset-assumed', {}));
+  const tall = levelled && ((i: number) => levelled[i]! > blockedAboveM);
   const saturationA = scan.saturationA ?? findSaturation(turned);
+  const zero = findZeroCurrent(turned, columns, { blocked: tall, saturation: saturationA });
+  if (zero.from === 'assumed') warnings.push(notice('current-offset-assumed', {}));
   const saturationNet = saturationA === undefined ? Number.POSITIVE_INFINITY : saturationA * (1 - 1e-4) - zero.offset;
   const offsetFree = turned.map((value) => value - zero.offset);
   const floorA = scan.floorA ?? lowestFloor(floorSigmas * zero.noise, offsetFree);
+  const [floorLog, saturationLog] = [Math.log10(floorA), Math.log10(saturationNet)];
 
-  const saturated = new Uint8Array(count);
-  const floor = new Uint8Array(count);
-  let log10 = new Float32Array(count);
+  const log10 = new Float32Array(count);
   let saturatedPixels = 0;
   for (let i = 0; i < count; i++) {
     const value = offsetFree[i]!;
     log10[i] = Number.isNaN(value) ? Number.NaN : Math.log10(Math.min(Math.max(value, floorA), saturationNet));
-    if (value >= saturationNet) {
-      saturated[i] = 1;
-      saturatedPixels++;
-    }
+    if (value >= saturationNet) saturatedPixels++;
   }
   if (saturatedPixels >= 0.99 * count) throw new Problem('current-saturated', { file: channel.source, share: saturatedPixels / count });
 
   let repaired: Uint8Array = new Uint8Array(count);
   if (section.repair) {
-    const marks = markBrokenRuns(log10, columns, rows, { noise: runNoiseDecades, minLength: 8 });
+    // A broken contact loses current; what gains it along a line may be a short.
+    const marks = markBrokenRuns(log10, columns, rows, { noise: runNoiseDecades, minLength: 8, only: 'below' });
     repaired = fillFromNeighbours(log10, marks, columns, rows, agreeDecades);
-    for (let i = 0; i < count; i++) if (marks[i] === 1 || repaired[i] === 1) saturated[i] = 0;
   }
 
-  const floorLog = Math.log10(floorA);
-  const wear = findWear(log10, columns, rows, (i) => log10[i]! > floorLog && saturated[i] === 0 && !(levelled && levelled[i]! > blockedAboveM), slowUp);
-  const applied = section.wear ? wear.perRow : new Float64Array(rows);
-  const conditioned = new Float32Array(count);
+  // Censored after the repair: a run filled from saturated neighbours is as saturated as they are.
+  const saturated = new Uint8Array(count);
+  const floor = new Uint8Array(count);
   for (let i = 0; i < count; i++) {
     if (log10[i]! <= floorLog + 1e-6) floor[i] = 1;
-    // Censored pixels stay at their bound: a factor on a bound would invent a value.
-    const shift = floor[i] === 1 || saturated[i] === 1 ? 0 : applied[(i / columns) | 0]!;
-    const repairedValue = repaired[i] === 1 ? 10 ** log10[i]! : Number.isNaN(log10[i]!) ? Number.NaN : offsetFree[i]!;
-    conditioned[i] = shift === 0 ? repairedValue : repairedValue * 10 ** shift;
-    if (shift !== 0) log10[i] = log10[i]! + shift;
+    else if (log10[i]! >= saturationLog - 1e-6) saturated[i] = 1;
   }
-  log10 = Float32Array.from(log10);
-  if (section.wear && wear.decades >= leastWearDecades) warnings.push(notice('current-wear', { decades: wear.decades }));
+  const wear = findWear(log10, columns, rows, (i) => floor[i] === 0 && saturated[i] === 0 && log10[i]! > floorLog && !tall?.(i), slowUp);
+  const conditioned = new Float32Array(count);
+  for (let i = 0; i < count; i++) conditioned[i] = repaired[i] === 1 ? 10 ** log10[i]! : Number.isNaN(log10[i]!) ? Number.NaN : offsetFree[i]!;
+  if (section.wear && wear.decades >= leastWearDecades) {
+    // A bound moves with the wear like a value: what an unworn tip would have shown lies as much higher.
+    for (let i = 0; i < count; i++) {
+      const shift = wear.perRow[(i / columns) | 0]!;
+      conditioned[i]! *= 10 ** shift;
+      log10[i]! += shift;
+    }
+    warnings.push(notice('current-wear', { decades: wear.decades }));
+  }
 
   let repairedPixels = 0;
   for (const mark of repaired) repairedPixels += mark;
@@ -107,12 +108,26 @@ export function conditionCurrent(
   };
 }
 
-/** Sign that makes real currents positive: the bias's, or the current's own when no bias is known. */
-function signOf(channel: Channel): 1 | -1 {
-  if (channel.biasV !== undefined && channel.biasV !== 0) return channel.biasV < 0 ? -1 : 1;
-  let sum = 0;
-  for (const value of channel.values.data) if (!Number.isNaN(value)) sum += value;
-  return sum < 0 ? -1 : 1;
+/**
+ * Current times the sign that makes real currents positive: the bias's, or the current's own where no bias is known. Where nearly all readings
+ * of some size oppose the bias, the amplifier inverts, as many do: then the current's own sign is taken and a remark says so.
+ */
+function turnedUp(channel: Channel, warnings: Notice[]): Float32Array {
+  const values = channel.values.data;
+  let largest = 0;
+  for (const value of values) if (Math.abs(value) > largest) largest = Math.abs(value);
+  let up = 0;
+  let down = 0;
+  for (const value of values) {
+    if (value > largest / 100) up++;
+    else if (value < -largest / 100) down++;
+  }
+  const own = down > up ? -1 : 1;
+  const biasSign = channel.biasV === undefined || channel.biasV === 0 ? undefined : Math.sign(channel.biasV);
+  const inverted = biasSign !== undefined && biasSign !== own && (own === 1 ? up : down) >= 0.95 * (up + down) && up + down > 0;
+  if (inverted) warnings.push(notice('current-inverted', { biasV: channel.biasV! }));
+  const sign = inverted || biasSign === undefined ? own : biasSign;
+  return values.map((value) => value * sign);
 }
 
 /** A noiseless map still needs a positive floor for its logs: the smallest positive value. */

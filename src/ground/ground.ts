@@ -23,7 +23,7 @@ export interface CurrentGround {
   readonly offsetFree: ScalarMap;
   /** The same with broken runs repaired and drift undone (this is `conditioned.tif`). */
   readonly conditioned: ScalarMap;
-  /** log10 of `conditioned`; floor pixels at log10(floorA), saturated ones at log10(saturationA), NaN where missing. */
+  /** log10 of `conditioned`; floor pixels at log10(floorA) and saturated ones at log10(saturationA), both plus the wear undone on their line; NaN where missing. */
   readonly log10: ScalarMap;
   /** Censored from above: the current is at least this. */
   readonly saturated: MaskMap;

@@ -2,7 +2,8 @@ import type { Grid, ScalarMap } from '../grid/maps.ts';
 import { maskMap, scalarMap } from '../grid/maps.ts';
 import { fillFromNeighbours, markBrokenRuns, markSpikes } from './broken-runs.ts';
 import { lowerScatter, mostCommon } from './centre.ts';
-import { fitForm, fitGroundForm, formSurface, subSample, subStep, subtractForm } from './form.ts';
+import { fitForm, fitGroundForm, presentCount, sampleStep, subSample } from './fit-form.ts';
+import { formSurface, subtractForm } from './form.ts';
 import type { HeightGround } from './ground.ts';
 import { lineOffsets } from './lines.ts';
 import { pixelNoise } from './noise.ts';
@@ -30,7 +31,7 @@ export function levelHeight(height: ScalarMap, grid: Grid, section: GroundSectio
   // What lies beside the flake has a level of its own and no say in the flake's form.
   const within = (map: Float32Array): Float32Array => (inside ? map.map((value, i) => (inside[i] === 1 ? value : Number.NaN)) : map);
   const first = fitGroundForm(within(raw), columns, rows, section.order);
-  let values = inside ? subtractForm(raw, first.form, columns, rows) : first.residual;
+  let values = subtractForm(raw, first, columns, rows);
   const isGround = groundTest(within(values), columns, rows);
   const offsets = section.lines ? lineOffsets(values, columns, rows, isGround) : new Float64Array(rows);
   values = values.map((value, i) => value - offsets[(i / columns) | 0]!);
@@ -41,7 +42,7 @@ export function levelHeight(height: ScalarMap, grid: Grid, section: GroundSectio
   const groundAgain = groundTest(within(values), columns, rows);
   const again = fitForm(values, columns, rows, section.order, groundAgain);
   values = subtractForm(values, again, columns, rows);
-  const zero = mostCommon(subSample(within(values), columns, rows, subStep(columns, rows)));
+  const zero = mostCommon(sampled(within(values), columns, rows));
   values = values.map((value) => value - zero);
 
   let repairedPixels = 0;
@@ -51,18 +52,23 @@ export function levelHeight(height: ScalarMap, grid: Grid, section: GroundSectio
     repaired: maskMap(grid, repaired),
     repairedPixels,
     noiseM: pixelNoise(values, columns, rows, groundAgain),
-    tiltM: peakToPeak(formSurface(first.form, columns, rows)),
+    tiltM: peakToPeak(formSurface(first, columns, rows)),
   };
 }
 
 /** A pixel is ground when it lies within the scatter around the most common height. */
 function groundTest(values: Float32Array, columns: number, rows: number): (index: number) => boolean {
-  const sample = subSample(values, columns, rows, subStep(columns, rows));
+  const sample = sampled(values, columns, rows);
   const centre = mostCommon(sample);
   const scatter = lowerScatter(sample, centre);
   const low = centre - 4 * scatter;
   const high = centre + 3 * scatter;
   return (i) => values[i]! >= low && values[i]! <= high;
+}
+
+/** Finite values, thinned evenly to what a level needs. */
+function sampled(values: Float32Array, columns: number, rows: number): Float64Array {
+  return subSample(values, columns, rows, sampleStep(presentCount(values)));
 }
 
 function repairHeight(values: Float32Array, columns: number, rows: number, noise: number): Uint8Array {

@@ -10,7 +10,7 @@ import { traceOutline } from '../grid/trace-outline.ts';
 import { solveBand } from '../stats/cholesky.ts';
 import { median } from '../stats/median.ts';
 import { mostCommon } from './centre.ts';
-import { subSample, subStep } from './form.ts';
+import { sampleStep, subSample } from './fit-form.ts';
 import type { BareGround, CurrentGround, FootprintProposal } from './ground.ts';
 import { lineDifferencesSolved } from './lines.ts';
 
@@ -107,7 +107,7 @@ function levelOnDifferences(h: Float32Array, columns: number, rows: number, orde
   }
   const lines = lineDifferencesSolved(h, columns, rows, () => true, lowM);
   for (let i = 0; i < h.length; i++) h[i]! -= lines[(i / columns) | 0]!;
-  const zero = mostCommon(subSample(h, columns, rows, subStep(columns, rows)));
+  const zero = mostCommon(subSample(h, columns, rows, sampleStep(columns * rows)));
   for (let i = 0; i < h.length; i++) h[i]! -= zero;
 }
 

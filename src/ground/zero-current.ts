@@ -14,23 +14,26 @@ export interface ZeroCurrent {
 /** Least number of pixels a noise peak must be read from. */
 const leastPixels = 30;
 /** A reading at zero current is at most this part of the map's larger currents. */
-const largest = 0.05;
+const largestPart = 0.02;
 /** Share of a sample whose shortest interval marks its densest place. */
 const denseShare = 0.01;
 
 /**
  * Finds the reading at zero current.
  *
- * 1. Under tall features (`blocked`) no current flows: the most common reading there is the offset.
- * 2. Without such features, the densest readings on a linear scale are the noise peak, because scatter of a real current grows with
- *    the current. They count only if neighbouring pixels are uncorrelated, as amplifier noise is, and if they are small: either against the map's
- *    larger currents (a twentieth) or against their own scatter (four times). An even terrace is neither.
+ * 1. Under tall features (`blocked`) no current flows: the densest reading there is the offset.
+ * 2. Without such features, the densest readings on a linear scale may be the noise peak, because scatter of a real current grows with
+ *    the current. They count only if neighbouring pixels are uncorrelated, as amplifier noise is, and if either they are small against the map's
+ *    larger unsaturated currents (a fiftieth), or readings of the wrong sign show that zero lies within their scatter. An even terrace, however
+ *    white its scatter, is neither.
  * 3. Otherwise offset 0 is assumed and the noise is what remains between neighbours on the weakest tenth.
  *
  * @param values current times the bias's sign, row-major, NaN missing.
- * @param blocked whether a pixel lies under a feature too tall to carry current; absent without a height map.
+ * @param known `blocked`: whether a pixel lies under a feature too tall to carry current (absent without a height map); `saturation`: the clipping level.
  */
-export function findZeroCurrent(values: Float32Array, columns: number, blocked?: (index: number) => boolean): ZeroCurrent {
+export function findZeroCurrent(values: Float32Array, columns: number, known: { readonly blocked?: ((index: number) => boolean) | undefined; readonly saturation?: number | undefined } = {}): ZeroCurrent {
+  const limit = (known.saturation ?? Number.POSITIVE_INFINITY) * (1 - 1e-4);
+  const { blocked } = known;
   if (blocked) {
     const under = thinned(values, (i) => blocked(i));
     if (under.length >= leastPixels) {
@@ -42,11 +45,11 @@ export function findZeroCurrent(values: Float32Array, columns: number, blocked?:
       }
     }
   }
-  const all = thinned(values, () => true);
+  const all = thinned(values, (i) => values[i]! < limit);
   const peak = peakOf(all);
-  const large = quantile(all, 0.9);
-  const small = Math.abs(peak.centre) < largest * Math.abs(large) || Math.abs(peak.centre) < 4 * peak.width;
-  if (peak.count >= leastPixels && peak.width > 0 && small && isWhite(values, columns, peak, () => true)) {
+  const small = Math.abs(peak.centre) < largestPart * quantile(all, 0.9);
+  const wrongSign = all.filter((value) => value < 0 && value > peak.centre - 6 * peak.width).length >= 3;
+  if (peak.count >= leastPixels && peak.width > 0 && (small || (wrongSign && peak.centre < 4 * peak.width)) && isWhite(values, columns, peak, () => true)) {
     return { offset: peak.centre, noise: peak.width, from: 'noise peak' };
   }
   return { offset: 0, noise: weakNoise(values, columns), from: 'assumed' };

@@ -4,6 +4,8 @@ export const appraisalSentences = {
     `${d.file}: ${(100 * d.share).toFixed(1)} % of the current map sits at the amplifier's limit, so it says nothing about the barrier; scan again at lower gain or bias.`,
   'current-offset-assumed': (_: Record<string, never>) =>
     'The current map shows no spot without current, so its offset could not be measured and zero was assumed.',
+  'current-inverted': (d: { biasV: number }) =>
+    `Nearly all of the current has the sign opposite to the bias of ${d.biasV} V; the amplifier was taken to invert and the current was turned. Correct the bias's sign if that is wrong.`,
   'current-wear': (d: { decades: number }) =>
     `The tip lost ${d.decades.toFixed(2)} decades of conductance from the first line to the last; this was undone as a factor per line.`,
   'footprint-proposed': (d: { sample: string; ground: 'injector' | 'substrate' | 'both' | 'unknown'; areaUm2: number; stepNm: number; flakeUm2: number }) =>

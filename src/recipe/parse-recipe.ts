@@ -58,7 +58,7 @@ export function applySettings(object: Record<string, unknown>, settings: readonl
   for (const setting of settings) {
     const equals = setting.indexOf('=');
     const path = setting.slice(0, Math.max(0, equals)).trim();
-    if (equals < 1 || !/^[A-Za-z]+(\.[A-Za-z]+)*$/.test(path)) throw new Problem('recipe-setting', { setting });
+    if (equals < 1 || !/^[A-Za-z][A-Za-z0-9]*(\.[A-Za-z][A-Za-z0-9]*)*$/.test(path)) throw new Problem('recipe-setting', { setting });
     const keys = path.replace(/^recipe\./, '').split('.');
     const last = keys.pop()!;
     let at = out;

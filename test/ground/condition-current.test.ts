@@ -187,3 +187,54 @@ test('relative units: no remark about a bias, the unit is kept', () => {
   assert.equal(found.unit, 'relative');
   assert.ok(!found.codes.includes('bias-missing'));
 });
+
+test('wear survives a contact that scatters by 0.1 decade from pixel to pixel', () => {
+  const random = seededRandom('scattered wear');
+  const rows = 256;
+  for (const wear of [0.3, 0.8, 1.2]) {
+    const level = terraceCurrentA(10, 5.9);
+    const currentA = Float64Array.from({ length: rows * rows }, (_, i) => level * 10 ** (0.1 * random.normal() - (wear * ((i / rows) | 0)) / (rows - 1)));
+    const found = condition(createSample({ columns: rows, rows, currentA }));
+    assert.ok(Math.abs(found.wearDecades - wear) < 0.1, `${found.wearDecades} for ${wear}`);
+  }
+});
+
+test('a run filled from saturated neighbours is saturated, not one layer thicker', () => {
+  const random = seededRandom('saturated run');
+  const currentA = Float64Array.from({ length: size * size }, (_, i) => {
+    const [r, c] = [Math.floor(i / size), i % size];
+    if (c >= 64) return terraceCurrentA(12, 5.9) * 10 ** (0.02 * random.normal());
+    return r === 50 && c > 10 && c < 40 ? 0 : saturationA;
+  });
+  const found = condition(createSample({ columns: size, rows: size, currentA }));
+  for (let c = 11; c < 40; c++) assert.deepEqual([found.repaired.data[50 * size + c], found.saturated.data[50 * size + c]], [1, 1], `column ${c}`);
+});
+
+test('what gains current along a line is no broken run: it may be a short', () => {
+  const random = seededRandom('bright run');
+  const level = terraceCurrentA(12, 5.9);
+  const currentA = Float64Array.from({ length: size * size }, (_, i) => {
+    const [r, c] = [Math.floor(i / size), i % size];
+    return r === 60 && c >= 30 && c < 50 ? 50 * level : level * 10 ** (0.02 * random.normal());
+  });
+  const found = condition(createSample({ columns: size, rows: size, currentA }));
+  assert.equal(found.repairedPixels, 0);
+});
+
+test('a current opposite to the bias nearly everywhere is an inverting amplifier: turned, and said', () => {
+  const scene = createScene({ seed: 'inverted', size, layersAt: threeTerraces(size), things: typicalThings(size) });
+  const upright = condition(scene.sample);
+  const inverted = condition(createSample({ columns: size, rows: size, currentA: scene.currentA.map((value) => -value), biasV: 5.9 }));
+  assert.ok(inverted.codes.includes('current-inverted') && !upright.codes.includes('current-inverted'));
+  assert.equal(inverted.offsetFree.data.filter((value) => value > 1e-11).length, upright.offsetFree.data.filter((value) => value > 1e-11).length);
+});
+
+test('an even terrace beside saturated ground is not taken for zero current', () => {
+  const random = seededRandom('bare injector');
+  const level = terraceCurrentA(11, 5.9);
+  for (const scatter of [0.05, 0.15, 0.3]) {
+    const currentA = Float64Array.from({ length: size * size }, (_, i) => (i % size < 26 ? saturationA : level * 10 ** (scatter * random.normal())));
+    const found = condition(createSample({ columns: size, rows: size, currentA }));
+    assert.equal(found.offsetA, 0, `scatter ${scatter}: offset ${found.offsetA}`);
+  }
+});

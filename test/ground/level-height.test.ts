@@ -5,6 +5,7 @@ import { scalarMap } from '../../src/grid/maps.ts';
 import { levelHeight } from '../../src/ground/level-height.ts';
 import { groundSection } from '../../src/ground/recipe.ts';
 import { assertClose } from '../fixtures/assert-close.ts';
+import { createRecipe, createSample } from '../fixtures/create-sample.ts';
 import { createScene, flipped, layerNm, threeTerraces, transposed, typicalThings } from '../fixtures/create-scene.ts';
 
 const size = 128;
@@ -166,4 +167,15 @@ test('a single spike is repaired', () => {
   heightM[50 * size + 50]! += 4e-9;
   const found = level(heightM);
   assert.ok(Math.abs(found.levelled.data[50 * size + 50]!) < 1e-9, `${found.levelled.data[50 * size + 50]}`);
+});
+
+test('a footprint of one row is levelled like any other', () => {
+  const size = 256;
+  const height = Float64Array.from({ length: size * size }, (_, i) => 1e-9 * (i % size) * 0.05);
+  for (const row of [100, 101]) {
+    const inside = new Uint8Array(size * size).fill(1, row * size, (row + 1) * size);
+    const sample = createSample({ columns: size, rows: size, heightM: height });
+    const { levelled } = levelHeight(sample.channels[0]!.values, sample.grid, createRecipe({}).ground, inside);
+    for (let c = 0; c < size; c++) assert.ok(Math.abs(levelled.data[row * size + c]!) < 1e-11, `row ${row}, column ${c}: ${levelled.data[row * size + c]}`);
+  }
 });

@@ -9,7 +9,8 @@ import { dilate, nearestAdmitted, riseAboveGround } from '../../src/flaws/local-
 import { squaredDistance } from '../../src/grid/distance.ts';
 import { labelComponents } from '../../src/grid/label-components.ts';
 import { greyOpening } from '../../src/grid/opening.ts';
-import { fitForm, subtractForm } from '../../src/ground/form.ts';
+import { fitForm } from '../../src/ground/fit-form.ts';
+import { subtractForm } from '../../src/ground/form.ts';
 import { lineDifferencesSolved } from '../../src/ground/lines.ts';
 import { compileKernels, installKernels, removeKernels } from '../../src/kernels/installed.ts';
 import { causes } from '../../src/ledger/ledger.ts';

@@ -165,3 +165,12 @@ test('the JSON Schema lists every path of the contract, with defaults and a desc
     for (const [path, field] of Object.entries(properties ?? {})) assert.ok(field.description, `${name}.${path}`);
   }
 });
+
+test('--set reaches every path of every section', () => {
+  for (const [name, section] of Object.entries(sections)) {
+    for (const key of Object.keys(section.shape)) {
+      const set = applySettings(head, [`${name}.${key}=7`]) as Record<string, Record<string, unknown>>;
+      assert.equal(set[name]?.[key], 7, `${name}.${key}`);
+    }
+  }
+});
