@@ -191,7 +191,7 @@ export interface FieldInfo {
   readonly absent?: string;
 }
 
-/** What does not change while the program runs. */
+/** What does not change while the program runs, but for `kernels`. */
 export interface ComputeFacts {
   readonly app: { readonly name: string; readonly version: string };
   readonly causes: readonly { readonly code: number; readonly cause: string; readonly fill: string; readonly ink: string; readonly hatch: string; readonly hatchPath: string; readonly hatchStroke: number }[];
@@ -200,6 +200,8 @@ export interface ComputeFacts {
   readonly defaultRecipe: RecipeData;
   /** Colours of the value scale, `#rrggbb`, low to high. */
   readonly scale: readonly string[];
+  /** Whether compiled kernels compute now; they are loaded beside the first calls. Results are the same without them. */
+  readonly kernels: boolean;
 }
 
 /** Progress of one call: the stage that begins, and how many of all are done. */

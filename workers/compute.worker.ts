@@ -1,11 +1,15 @@
 /** The computation on a thread of its own. */
 import { expose, releaseProxy, transfer } from 'comlink';
+import { installKernels } from '../src/kernels/installed.ts';
 import type { OnStage } from './api.ts';
 import { createCompute } from './compute.ts';
 import { asComputeError } from './errors.ts';
 import type { Reply, WorkerApi } from './wire.ts';
 
 const compute = createCompute();
+
+// Not waited for: a message that came before `expose` would be lost. Until the kernels are there, and where they cannot be, the plain TypeScript computes the same.
+WebAssembly.compileStreaming(fetch(new URL('../src/kernels/kernels.wasm', import.meta.url))).then(installKernels, () => undefined);
 
 /** The answer to a call. What `moves` names is handed over instead of copied; the worker has no more use for it. */
 async function answer<Value>(work: Promise<Value>, moves: (value: Value) => Transferable[] = () => []): Promise<Reply<Value>> {

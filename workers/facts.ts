@@ -1,5 +1,6 @@
 /** What does not change while the program runs: fields of the recipe, looks of the causes, colours of the value scale. */
 import { z } from 'zod';
+import { kernelsInstalled } from '../src/kernels/installed.ts';
 import { causes } from '../src/ledger/ledger.ts';
 import { defaultRecipe } from '../src/recipe/parse-recipe.ts';
 import { sections } from '../src/recipe/recipe.ts';
@@ -17,6 +18,7 @@ export function factsOf(app: App): ComputeFacts {
       return { code, cause, fill, ink, hatch, hatchPath: d, hatchStroke: strokeWidth ?? 0 };
     }),
     hatchPeriod,
+    kernels: kernelsInstalled(),
     fields: Object.entries(sections).flatMap(([name, schema]) => fieldsOf(name, schema)),
     defaultRecipe: JSON.parse(JSON.stringify(defaultRecipe())) as RecipeData,
     scale: Array.from({ length: cividisLength }, (_, index) => `#${cividis(index).map((channel) => channel.toString(16).padStart(2, '0')).join('')}`),

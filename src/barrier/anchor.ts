@@ -1,6 +1,7 @@
 /** The link between a current under the probe, a thickness, and a density in the device. */
 import { chooseModel } from './model/choose-model.ts';
 import { densityInterval } from './model/density-interval.ts';
+import type { DensityInterval } from './model/density-interval.ts';
 import { biasFromDensity, decadesPerLayer, thicknessFromDensity } from './model/inverse.ts';
 import type { BarrierMaterial, TunnelModel } from './model/tunnel-model.ts';
 import type { BarrierSection } from './recipe.ts';
@@ -20,6 +21,13 @@ export interface Anchored {
   readonly layers: number;
 }
 
+/** A/m², with its 95 % interval. */
+export interface DensityWithInterval {
+  readonly median: number;
+  readonly low95: number;
+  readonly high95: number;
+}
+
 export interface Anchor {
   readonly model: TunnelModel;
   readonly material: BarrierMaterial;
@@ -27,17 +35,28 @@ export interface Anchor {
   readonly layerM: number;
   /** Decades per layer at the scan's bias, near the middle of what such barriers are (4 nm), by the model. */
   readonly modelStepDecades: number;
-  /** Thickness and layers of a terrace that carries `currentA` under the probe (or the known count); undefined outside the model. */
+  /** Layers of the reference terrace where the recipe states them. */
+  readonly knownLayers?: number;
+  /** Thickness and layers of a reference that carries `currentA` under the probe (or the known count); undefined outside the model. */
   fix(currentA: number): Anchored | undefined;
-  /** Density at a device bias of a terrace that carries `currentA` under the probe, with its 95 % interval, A/m²; undefined outside the model. */
-  density(currentA: number, deviceBiasV: number): { median: number; low95: number; high95: number } | undefined;
-  /** Bias with the scan's sign at which a thickness carries a density; NaN outside the model. */
-  proposeBias(thicknessM: number, densityAPerM2: number): number;
+  /**
+   * Density at a device bias of a terrace that carries `currentA` under the probe, with its 95 % interval, A/m². Its thickness is that of `layers`
+   * (by default the known count), or follows from the current where no count is known. Undefined outside the model, at a device bias of 0, and
+   * wherever the median is not above 0.
+   */
+  density(currentA: number, deviceBiasV: number, layers?: number): DensityWithInterval | undefined;
+  /** Bias with the scan's sign at which `density(currentA, bias).median` is `densityAPerM2`, looked for up to 50 V across the barrier; NaN where there is none. */
+  proposeBias(currentA: number, densityAPerM2: number): number;
   /** Volts that fall across the barrier at a device bias, as a magnitude. */
   acrossV(deviceBiasV: number): number;
 }
 
 const middleThicknessM = 4e-9;
+
+/** Whole layers of a terrace `step` layers thicker than one of `layers`: at least one, and at most what a byte holds. */
+export function layersAt(layers: number, step: number): number {
+  return Math.max(1, Math.min(255, layers + step));
+}
 
 /**
  * Builds the anchor from the recipe; undefined without a scan bias (or without amperes, which the caller knows), or where the
@@ -54,6 +73,9 @@ export function anchorOf(section: BarrierSection, device: DeviceQuestion, scanBi
   if (!Number.isFinite(modelStepDecades)) return undefined;
   const acrossV = (biasV: number): number => Math.max(0, Math.abs(biasV) - device.offsetV);
   const known = section.referenceLayers;
+  const interval = (currentA: number, deviceV: number, layers: number | undefined): DensityInterval => densityInterval({
+    model, material, deviceBiasV: deviceV, probe: { currentA, biasV: scanV, areaM2 }, ...(layers === undefined ? {} : { thicknessM: layers * layerM }),
+  });
   return {
     model,
     material,
@@ -61,22 +83,23 @@ export function anchorOf(section: BarrierSection, device: DeviceQuestion, scanBi
     layerM,
     modelStepDecades,
     acrossV,
+    ...(known === undefined ? {} : { knownLayers: known }),
     fix(currentA) {
       const thicknessM = known === undefined ? thicknessFromDensity(model, material, scanV, currentA / areaM2) : known * layerM;
       // Layers are whole: the thickness handed on is that of the nearest count, the rest belongs to the contact's area.
       const layers = Math.max(1, Math.round(thicknessM / layerM));
       return Number.isFinite(thicknessM) ? { thicknessM: layers * layerM, layers } : undefined;
     },
-    density(currentA, deviceBiasV) {
-      const found = densityInterval({
-        model, material, deviceBiasV: acrossV(deviceBiasV), probe: { currentA, biasV: scanV, areaM2 },
-        ...(known === undefined ? {} : { thicknessM: known * layerM }),
-      });
-      if (!Number.isFinite(found.medianAPerM2)) return undefined;
-      return { median: found.medianAPerM2, low95: found.low95APerM2, high95: found.high95APerM2 };
+    density(currentA, deviceBiasV, layers = known) {
+      if (deviceBiasV === 0) return undefined;
+      const { medianAPerM2: median, low95APerM2: low95, high95APerM2: high95 } = interval(currentA, acrossV(deviceBiasV), layers);
+      return median > 0 && Number.isFinite(low95) && Number.isFinite(high95) ? { median, low95, high95 } : undefined;
     },
-    proposeBias(thicknessM, densityAPerM2) {
-      return Math.sign(scanBiasV) * (biasFromDensity(model, { ...material, thicknessM }, densityAPerM2) + device.offsetV);
+    proposeBias(currentA, densityAPerM2) {
+      // Thickness and material behind the median do not depend on the device's bias: solved once, they give the median at any bias.
+      const { thicknessM, material: fitted } = interval(currentA, scanV, known);
+      const biasV = biasFromDensity(model, { ...fitted, thicknessM }, densityAPerM2) + device.offsetV;
+      return biasV > 0 ? Math.sign(scanBiasV) * biasV : Number.NaN;
     },
   };
 }

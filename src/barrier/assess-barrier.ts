@@ -5,12 +5,13 @@ import type { CurrentGround } from '../ground/ground.ts';
 import type { Flaws } from '../flaws/flaws.ts';
 import { notice } from '../problems/problem.ts';
 import type { Notice } from '../problems/problem.ts';
-import { anchorOf } from './anchor.ts';
-import type { Anchor, DeviceQuestion } from './anchor.ts';
-import type { Barrier, DeviceDensity, Reference, Rung } from './barrier.ts';
+import { anchorOf, layersAt } from './anchor.ts';
+import type { DeviceQuestion } from './anchor.ts';
+import type { Barrier, Reference, Rung } from './barrier.ts';
 import { ladderNotices, probeFieldNotices, referenceNotices } from './barrier-notices.ts';
+import { chooseAnchored } from './choose-anchored.ts';
+import { deviceDensity } from './device-density.ts';
 import type { BarrierSection } from './recipe.ts';
-import { chooseReference } from './reference.ts';
 import type { Candidate } from './reference.ts';
 import { findTerraces, unknownStep } from './terraces.ts';
 import type { Terraces } from './terraces.ts';
@@ -29,7 +30,9 @@ export interface BandQuestion extends DeviceQuestion {
  * device before any voltage drop.
  *
  * Scatter of the current inside a terrace is not thickness, because layers are whole: with `withinTerrace: contact` it stays out of layers, thickness
- * and density. With `withinTerrace: barrier` thickness and density follow the current pixel by pixel.
+ * and density. With `withinTerrace: barrier` thickness and density follow the current pixel by pixel. No ground is thinner than one layer.
+ *
+ * Where the device's density is not known (`noDensity` says why) the relative density is the ratio of currents at the scan's bias.
  *
  * @param footprint 1 where the device could be; @param surface on a finished stack the emitter spreads the current, so no thickness is given there.
  * @returns maps of the grid's shape; steps −128, layers 0 and thickness NaN where unknown (no current, flaw, outside the footprint).
@@ -49,17 +52,14 @@ export function assessBarrier(
   });
 
   const area = pixelAreaM2(grid);
-  const candidates: Candidate[] = terraces.rungs.map((rung) => {
-    const density = anchor && band.biasV !== undefined && rung.bound === 'exact' ? anchor.density(10 ** rung.medianLog10, band.biasV) : undefined;
-    return { ...rung, areaM2: rung.pixels * area, ...(density ? { density } : {}) };
-  });
-  const choice = chooseReference(candidates, { ...band, floor: current.floorA });
+  const candidates: Candidate[] = terraces.rungs.map((rung) => ({ ...rung, areaM2: rung.pixels * area }));
+  const choice = chooseAnchored(candidates, { ...band, floor: current.floorA }, anchor, band.biasV);
   if (!choice) warnings.push(notice('barrier-no-ground', {}));
   const origin = choice?.chosen.step ?? 0;
   const median = choice ? 10 ** choice.chosen.medianLog10 : Number.NaN;
 
   const anchored = choice && anchor?.fix(median);
-  const device = deviceOf(anchor, anchored?.thicknessM, median, band);
+  const { device, noDensity, notices } = deviceDensity({ current, surface, section, device: band, anchor, reference: choice && { median, anchored } });
   const unflawedM2 = candidates.reduce((sum, candidate) => sum + candidate.areaM2, 0);
   const reference: Reference = {
     step: 0,
@@ -71,17 +71,15 @@ export function assessBarrier(
   };
   const rungs: Rung[] = candidates.map((candidate) => ({
     step: candidate.step - origin,
-    ...(anchored ? { layers: Math.max(0, anchored.layers + candidate.step - origin) } : {}),
+    ...(anchored ? { layers: layersAt(anchored.layers, candidate.step - origin) } : {}),
     areaM2: candidate.areaM2,
     pixels: candidate.pixels,
     medianLog10: candidate.medianLog10,
     scatterDecades: candidate.scatterDecades,
     bound: candidate.bound,
   }));
-  if (choice) warnings.push(...referenceNotices(choice, candidates, origin, device), ...ladderNotices(terraces, anchor?.modelStepDecades));
-  warnings.push(...probeFieldNotices(anchor?.scanBiasV, anchored?.thicknessM));
-  if (!amperes) warnings.push(notice(current.unit === 'A' ? 'bias-missing' : 'current-relative', {}));
-  if (surface === 'stack') warnings.push(notice('barrier-stack-surface', {}));
+  if (choice) warnings.push(...referenceNotices(choice, origin, device, anchored?.layers), ...ladderNotices(terraces, anchor?.modelStepDecades));
+  warnings.push(...probeFieldNotices(anchor?.scanBiasV, anchored?.thicknessM), ...notices);
 
   const maps = thicknessMap(current, terraces, origin, grid, {
     withinTerrace: section.withinTerrace, referenceLog10: choice?.chosen.medianLog10 ?? Number.NaN, rungs,
@@ -101,16 +99,9 @@ export function assessBarrier(
     },
     reference,
     ...(device ? { device } : {}),
+    ...(noDensity ? { noDensity } : {}),
     warnings,
   };
-}
-
-/** Density on the reference at the device's bias, given or proposed. */
-function deviceOf(anchor: Anchor | undefined, thicknessM: number | undefined, median: number, band: BandQuestion): DeviceDensity | undefined {
-  if (!anchor || thicknessM === undefined) return undefined;
-  const biasV = band.biasV ?? anchor.proposeBias(thicknessM, band.targetAPerM2);
-  const density = Number.isNaN(biasV) ? undefined : anchor.density(median, biasV);
-  return density && { biasV, proposed: band.biasV === undefined, ...density };
 }
 
 function rebased(terraces: Terraces, origin: number): Int8Array {

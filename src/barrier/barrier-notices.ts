@@ -4,13 +4,13 @@ import type { Notice } from '../problems/problem.ts';
 import { breakdownVPerNm } from './model/barrier-warnings.ts';
 import { fieldVPerNm } from './model/field.ts';
 import type { DeviceDensity } from './barrier.ts';
-import type { Candidate, ReferenceChoice } from './reference.ts';
+import type { ReferenceChoice } from './reference.ts';
 import type { Terraces } from './terraces.ts';
 
 const naPerUm2 = (aPerM2: number): number => aPerM2 * 1e-3;
 
-/** Remarks about the choice of the reference terrace. */
-export function referenceNotices(choice: ReferenceChoice, candidates: readonly Candidate[], origin: number, device: DeviceDensity | undefined): Notice[] {
+/** Remarks about the choice of the reference terrace. `layers` is its whole count where anything anchors it. */
+export function referenceNotices(choice: ReferenceChoice, origin: number, device: DeviceDensity | undefined, layers: number | undefined): Notice[] {
   const found: Notice[] = [];
   if (choice.runnerUp) {
     found.push(notice('reference-runner-up', { layers: choice.runnerUp.step - origin, areaUm2: choice.runnerUp.areaM2 * 1e12, ownUm2: choice.chosen.areaM2 * 1e12 }));
@@ -22,7 +22,10 @@ export function referenceNotices(choice: ReferenceChoice, candidates: readonly C
   }
   const passed = choice.passedOver[0];
   if (passed) found.push(notice('reference-passed-over', { layers: passed.step - origin, areaUm2: passed.areaM2 * 1e12 }));
-  if (candidates.every((candidate) => candidate.bound !== 'exact' || candidate === choice.chosen) && candidates.length === 1) found.push(notice('ladder-one-terrace', {}));
+  const { outranking } = choice;
+  if (outranking && layers !== undefined) {
+    found.push(notice('reference-layers-disputed', { referenceLayers: layers, layers: outranking.step - origin, areaUm2: outranking.areaM2 * 1e12 }));
+  }
   return found;
 }
 
@@ -33,10 +36,13 @@ export function probeFieldNotices(scanBiasV: number | undefined, thicknessM: num
   return field > breakdownVPerNm ? [notice('probe-field', { fieldVPerNm: field, biasV: Math.abs(scanBiasV) })] : [];
 }
 
-/** Remarks about the step of the ladder: a ladder that contradicts the model is said, not hidden. */
+/** Remarks about the step of the ladder: a ladder that contradicts the model is said, not hidden, and so is a step that was not measured. */
 export function ladderNotices(terraces: Terraces, modelStepDecades: number | undefined): Notice[] {
-  if (modelStepDecades === undefined || terraces.from !== 'map') return [];
-  const ratio = terraces.stepDecades / modelStepDecades;
+  const { stepDecades, from, layersPerGap } = terraces;
+  if (from !== 'map') return [notice('ladder-one-terrace', { from, stepDecades })];
+  if (modelStepDecades === undefined) return [];
+  if (layersPerGap > 1) return [notice('ladder-skips', { layersPerGap, measured: stepDecades * layersPerGap, model: modelStepDecades })];
+  const ratio = stepDecades / modelStepDecades;
   if (ratio > 0.75 && ratio < 1.33) return [];
-  return [notice('ladder-contradicts', { measured: terraces.stepDecades, model: modelStepDecades })];
+  return [notice('ladder-contradicts', { measured: stepDecades, model: modelStepDecades })];
 }

@@ -24,7 +24,7 @@ export interface Ladder {
   /** Decades of current lost per added layer at the scan's bias. */
   readonly stepDecades: number;
   readonly stepSeDecades: number;
-  /** Where the step came from: the map's own terraces, or the model when the map shows fewer than two. */
+  /** Where the step came from: the map's own terraces, or the model when the map shows fewer than two; assumed without either. */
   readonly from: 'map' | 'model' | 'assumed';
   /** The same step by the chosen model, absent without bias. */
   readonly modelStepDecades?: number;
@@ -53,6 +53,12 @@ export interface DeviceDensity {
   readonly high95: number;
 }
 
+/**
+ * Why no density in the device is given: the current has no scale, the scan's bias is not known, the scanned surface spreads the current, no ground to go by,
+ * the model does not hold at the biases or currents asked for, or nothing (or not the target) flows at any device bias asked for.
+ */
+export type NoDensity = 'current-relative' | 'bias-missing' | 'stack-surface' | 'no-ground' | 'model' | 'device-bias';
+
 export interface Barrier {
   /** Layers relative to the reference per pixel (int8), −128 where unknown (no current, flaw). */
   readonly step: NdArray<Int8Array>;
@@ -65,5 +71,7 @@ export interface Barrier {
   readonly ladder: Ladder;
   readonly reference: Reference;
   readonly device?: DeviceDensity;
+  /** The reason where `device` is absent; then `log10Relative` is the ratio of currents at the scan's bias. */
+  readonly noDensity?: NoDensity;
   readonly warnings: readonly Notice[];
 }

@@ -1,4 +1,5 @@
 /** Which terrace the map is measured against. */
+import type { DensityWithInterval } from './anchor.ts';
 import type { MeasuredRung } from './terraces.ts';
 import { quantifiedOverFloor } from './terraces.ts';
 
@@ -6,7 +7,7 @@ import { quantifiedOverFloor } from './terraces.ts';
 export interface Candidate extends MeasuredRung {
   readonly areaM2: number;
   /** Density at the device's bias with its 95 % interval, A/m²; absent when not known in amperes. */
-  readonly density?: { readonly median: number; readonly low95: number; readonly high95: number };
+  readonly density?: DensityWithInterval;
 }
 
 export interface ReferenceRule {
@@ -28,6 +29,8 @@ export interface ReferenceChoice {
   readonly runnerUp?: Candidate;
   /** Terraces in range (and no smaller than the smallest terrace) that were passed over because they are too rare or too near the floor. */
   readonly passedOver: readonly Candidate[];
+  /** Terrace that would be the reference by its density if it were not that the known layer count belongs to the reference. */
+  readonly outranking?: Candidate;
 }
 
 /** A terrace below this share of the flawless ground is a patch, not what the flake is made of. */

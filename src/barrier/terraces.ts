@@ -1,6 +1,7 @@
 /** Every pixel's place on the layer ladder. */
 import type { CurrentGround } from '../ground/ground.ts';
 import { measureLadder } from '../ground/ladder.ts';
+import { layersPerGap } from './layers-per-gap.ts';
 import { median } from '../stats/median.ts';
 import { scaledMad } from '../stats/mad.ts';
 
@@ -13,6 +14,8 @@ export interface Terraces {
   readonly stepDecades: number;
   readonly stepSeDecades: number;
   readonly from: 'map' | 'model' | 'assumed';
+  /** Layers counted per gap of the map's own ladder: 1, or 2 or 3 where the model says that terraces in between are missing. */
+  readonly layersPerGap: number;
   readonly rungs: readonly MeasuredRung[];
 }
 
@@ -29,7 +32,7 @@ export const quantifiedOverFloor = 10 / 3;
 
 /**
  * Places the ground on a ladder of whole layers. Where the map shows two terraces or more, boundaries lie half-way between neighbouring
- * peaks and the step is the map's own; otherwise the step is `fallback`. Saturated ground is placed on the first rung that would
+ * peaks and the step is the map's own (`layersPerGap` decides whether layers in between are missing from the map); otherwise the step is `fallback`. Saturated ground is placed on the first rung that would
  * saturate (a bound: at most this thick), floor ground on the first rung that would vanish (at least this thick).
  *
  * @param ground admits ground of the footprint free of flaws.
@@ -41,8 +44,10 @@ export function findTerraces(current: CurrentGround, ground: (index: number) => 
   const quantified = Math.log10(current.floorA * quantifiedOverFloor);
   const ladder = measureLadder(log10, (i) => ground(i) && saturated[i] === 0 && log10[i]! >= quantified);
   const measured = ladder.stepDecades !== undefined;
-  const stepDecades = ladder.stepDecades ?? fallback.stepDecades;
-  const centres = rungCentres(ladder.peaks, log10, ground);
+  const modelStepDecades = fallback.from === 'model' ? fallback.stepDecades : undefined;
+  const perGap = measured ? layersPerGap(ladder.stepDecades!, ladder.peaks.length, modelStepDecades) : 1;
+  const stepDecades = measured ? ladder.stepDecades! / perGap : fallback.stepDecades;
+  const centres = rungCentres(ladder.peaks.map((peak) => ({ log10: peak.log10, rung: peak.rung * perGap })), log10, ground);
   const place = placer(centres, stepDecades);
   const thinnest = current.saturationA === undefined ? -127 : Math.max(-127, firstBeyond(centres, stepDecades, Math.log10(current.saturationA), -1));
   const thickest = Math.min(127, firstBeyond(centres, stepDecades, Math.log10(current.floorA), 1));
@@ -57,7 +62,8 @@ export function findTerraces(current: CurrentGround, ground: (index: number) => 
   return {
     steps,
     stepDecades,
-    stepSeDecades: ladder.stepSeDecades ?? 0,
+    stepSeDecades: (ladder.stepSeDecades ?? 0) / perGap,
+    layersPerGap: perGap,
     from: measured ? 'map' : fallback.from,
     rungs: summarise(steps, current, thinnest, thickest),
   };

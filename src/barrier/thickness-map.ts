@@ -2,6 +2,7 @@
 import type { Grid } from '../grid/maps.ts';
 import { pixelCount } from '../grid/maps.ts';
 import type { CurrentGround } from '../ground/ground.ts';
+import { layersAt } from './anchor.ts';
 import type { Anchor, Anchored } from './anchor.ts';
 import type { Rung } from './barrier.ts';
 import { densityTable } from './model/table.ts';
@@ -12,6 +13,7 @@ interface MapQuestion {
   readonly withinTerrace: 'contact' | 'barrier';
   /** Log10 current of the reference terrace, NaN without one: then saturated ground is thin and the rest thick. */
   readonly referenceLog10: number;
+  /** All terraces with their whole layers, which are never below one. */
   readonly rungs: readonly Rung[];
   readonly anchor?: Anchor;
   readonly anchored?: Anchored;
@@ -39,6 +41,8 @@ export function thicknessMap(current: CurrentGround, terraces: Terraces, origin:
   const thickness = anchored && new Float32Array(count).fill(Number.NaN);
   const sameBias = !anchor || deviceBiasV === undefined || Math.abs(anchor.acrossV(deviceBiasV) - Math.abs(anchor.scanBiasV)) < 1e-9;
   const byStep = relativeByStep(question, sameBias);
+  const layersOf = new Uint8Array(256);
+  for (const rung of question.rungs) layersOf[rung.step + origin + 128] = rung.layers ?? 0;
   const scanTable = withinTerrace === 'barrier' && anchor && anchored ? densityTable(anchor.model, anchor.material, Math.abs(anchor.scanBiasV)) : undefined;
   const deviceTable = scanTable && !sameBias ? densityTable(anchor!.model, anchor!.material, anchor!.acrossV(deviceBiasV!)) : undefined;
   // With a per-pixel thickness the contact's area is set so that the reference terrace has its own thickness.
@@ -54,19 +58,20 @@ export function thicknessMap(current: CurrentGround, terraces: Terraces, origin:
       relative[i] = current.saturated.data[i] === 1 ? Number.POSITIVE_INFINITY : Number.NEGATIVE_INFINITY;
       continue;
     }
-    if (layers && anchored) layers[i] = Math.max(1, Math.min(255, anchored.layers + k));
+    const whole = layersOf[step + 128]!;
+    if (layers) layers[i] = whole;
     const difference = log10[i]! - question.referenceLog10;
     // Without a ladder there are no whole layers to go by: then every pixel speaks for itself.
     if (withinTerrace === 'contact' && terraces.from !== 'assumed') {
       relative[i] = byStep(k);
-      if (thickness && anchored && anchor) thickness[i] = (anchored.layers + k) * anchor.layerM;
+      if (thickness && anchor) thickness[i] = whole * anchor.layerM;
       continue;
     }
     if (!scanTable) {
       relative[i] = difference;
       continue;
     }
-    const own = scanTable.thicknessM(scanReference + difference);
+    const own = Math.max(anchor!.layerM, scanTable.thicknessM(scanReference + difference));
     if (thickness) thickness[i] = own;
     relative[i] = deviceTable ? deviceTable.log10Density(own) - deviceReference : difference;
   }
@@ -78,12 +83,11 @@ function relativeByStep(question: MapQuestion, sameBias: boolean): (k: number) =
   const { anchor, anchored, deviceBiasV } = question;
   const cache = new Map<number, number>();
   const measured = new Map(question.rungs.map((rung) => [rung.step, rung.medianLog10 - question.referenceLog10]));
-  const lnAt = (layers: number): number =>
-    anchor!.model.lnDensity({ ...anchor!.material, thicknessM: Math.max(layers, 0.5) * anchor!.layerM }, anchor!.acrossV(deviceBiasV!));
+  const lnAt = (layers: number): number => anchor!.model.lnDensity({ ...anchor!.material, thicknessM: layers * anchor!.layerM }, anchor!.acrossV(deviceBiasV!));
   return (k) => {
     const known = cache.get(k);
     if (known !== undefined) return known;
-    const value = sameBias || !anchored ? (k === 0 ? 0 : measured.get(k) ?? Number.NaN) : (lnAt(anchored.layers + k) - lnAt(anchored.layers)) / Math.LN10;
+    const value = sameBias || !anchored ? (k === 0 ? 0 : measured.get(k) ?? Number.NaN) : (lnAt(layersAt(anchored.layers, k)) - lnAt(anchored.layers)) / Math.LN10;
     cache.set(k, value);
     return value;
   };

@@ -15,6 +15,7 @@ import { gatherInputs } from './gather-inputs.ts';
 import { ledgerText } from './ledger-text.ts';
 import type { Output } from './output.ts';
 import { Progress } from './output.ts';
+import { prepareOutput } from './prepare-output.ts';
 import { runTasks } from './run-tasks.ts';
 import { resultKinds, writeTray } from './write-results.ts';
 import type { ResultKind } from './write-results.ts';
@@ -53,6 +54,7 @@ async function runAppraise({ values, positionals }: Parsed, output: Output): Pro
   const shard = shardFrom(values['shard']);
   const only = onlyFrom(values['only']);
 
+  await prepareOutput(resolve(out), out);
   const gathered = await gatherInputs(positionals);
   for (const { name, reason } of gathered.skipped) output.err(`skipped ${name}: ${reason}\n`);
   for (const { problem } of gathered.failed) output.err(`${problem.message}\n`);

@@ -1,5 +1,5 @@
-import { mkdir, readFile, rename, rm, writeFile } from 'node:fs/promises';
-import { join } from 'node:path';
+import { readFile, rename, rm, writeFile } from 'node:fs/promises';
+import { join, resolve } from 'node:path';
 import type { DemoFile } from '../demo/demo-samples.ts';
 import { demoFiles, demoSamples } from '../demo/demo-samples.ts';
 import { Problem } from '../problems/problem.ts';
@@ -7,6 +7,7 @@ import type { Command, Parsed } from './command.ts';
 import { exitCodes } from './command.ts';
 import type { Output } from './output.ts';
 import { Progress } from './output.ts';
+import { prepareOutput } from './prepare-output.ts';
 
 /** `evenglow demo`: the demo samples as files. */
 export const demoCommand: Command = {
@@ -27,6 +28,7 @@ async function runDemo({ values, positionals }: Parsed, output: Output): Promise
   if (directory === undefined || directory === '') throw new Problem('option-absent', { command: 'demo', option: 'a folder to write to' });
   if (surplus !== undefined) throw new Problem('command-surplus', { command: 'demo', surplus });
 
+  await prepareOutput(resolve(directory), directory);
   const progress = new Progress(output, demoSamples.length);
   const samples = demoSamples.map(({ name, title }) => {
     progress.at(name, 'painting');
@@ -38,7 +40,6 @@ async function runDemo({ values, positionals }: Parsed, output: Output): Promise
   const differing = [...states].filter(([, state]) => state === 'differs').map(([file]) => join(directory, file));
   if (differing.length > 0 && values['force'] !== true) throw new Problem('demo-differs', { path: differing[0]!, others: differing.length - 1 });
 
-  await writable(directory, () => mkdir(directory, { recursive: true }));
   for (const { name, title, files } of samples) {
     const pending = files.filter((file) => states.get(file.name) !== 'same');
     for (const file of pending) await writeWhole(directory, file);

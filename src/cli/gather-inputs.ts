@@ -66,7 +66,11 @@ async function gatherFolder(directory: string, whole: boolean, explicit: Readonl
     offered.push(file);
     if (explicit.has(name) && file.bytes && isManifest(file.bytes)) manifests.add(name);
   }
-  const wanted = whole || manifests.size > 0 ? offered : offered.filter((file) => file.explicit === true || isCompanion(file.name, explicit));
+  // Beside a named manifest the folder's maps are on offer, but not its other manifests.
+  const others = whole ? [] : offered.filter((file) => file.bytes && !manifests.has(file.name) && isManifest(file.bytes));
+  const wanted = whole || manifests.size > 0
+    ? offered.filter((file) => !others.includes(file))
+    : offered.filter((file) => file.explicit === true || isCompanion(file.name, explicit) || isDescribed(file.name, explicit));
   const grouping = groupInputs(wanted);
   if (whole || manifests.size === 0) return grouping;
   // Named manifests use the folder's files; what else lies there was not asked for.
@@ -87,6 +91,14 @@ function isCompanion(name: string, explicit: ReadonlySet<string>): boolean {
   const stem = /^(.*?)(\.json|\.outlines\.geojson|\.iv\.csv)$/i.exec(name)?.[1];
   if (stem === undefined || stem === '') return false;
   return [...explicit].some((map) => map.startsWith(stem) && /^[._-]/.test(map.slice(stem.length)));
+}
+
+/** Whether a named sidecar describes the file: naming `S.json` asks for the maps of S. */
+function isDescribed(name: string, explicit: ReadonlySet<string>): boolean {
+  return [...explicit].some((file) => {
+    const stem = /^(.+)\.json$/i.exec(file)?.[1];
+    return stem !== undefined && name.startsWith(stem) && /^[._-]/.test(name.slice(stem.length));
+  });
 }
 
 function add(map: Map<string, Set<string>>, key: string, value: string): void {

@@ -43,7 +43,7 @@ export async function main(argv: readonly string[], output: Output = processOutp
       output.out(helpOf(command));
       return exitCodes.good;
     }
-    const { values, positionals } = parseArgs({ args: [...rest], options: command.options, allowPositionals: true, strict: true });
+    const { values, positionals } = parseArgs({ args: withNegatives(rest, command.options), options: command.options, allowPositionals: true, strict: true });
     await loadKernels();
     return await command.run({ values: values as Record<string, unknown>, positionals }, output);
   } catch (error) {
@@ -52,9 +52,21 @@ export async function main(argv: readonly string[], output: Output = processOutp
       return exitCodes.usage;
     }
     if (isUsageError(error)) {
-      output.err(`evenglow ${name}: ${error.message.replace(/\. To specify[^]*$/, '')}. See "evenglow ${name} --help".\n`);
+      output.err(`evenglow ${name}: ${error.message.split(/[.\n]/)[0]}; see "evenglow ${name} --help".\n`);
       return exitCodes.usage;
     }
     throw error;
   }
+}
+
+/** `--bias-v -4` as a person writes it; the parser takes a value with a dash only as `--bias-v=-4`. */
+function withNegatives(args: readonly string[], options: Command['options']): string[] {
+  const out: string[] = [];
+  for (const arg of args) {
+    const last = out[out.length - 1];
+    const takesValue = last?.startsWith('--') === true && options[last.slice(2)]?.type === 'string';
+    if (takesValue && /^-[.\d]/.test(arg)) out[out.length - 1] = `${last}=${arg}`;
+    else out.push(arg);
+  }
+  return out;
 }

@@ -12,21 +12,36 @@ export interface Classified {
 /** A wrinkle is thin against its own size and its outline is long. */
 const thinRoundness = 0.5;
 const thinInscribed = 0.6;
+/** Up to about this elongation a row of bubbles that touch has the outline of a ridge: n equal ones are n times as long as wide. */
+const rowOfBubbles = 5;
 /**
- * Mean over peak height: 1/2 for a paraboloid (a pressurised membrane is close to one), near 1 for a plateau. The divide lies
- * half-way between a dome and what a rounded patch of material shows (about 0.78).
+ * Bounds of the mean over peak height (`Region.fullness`), which is 0.41 for a cone, 1/2 for a paraboloid (a pressurised membrane is close to one)
+ * and near 1 for a plateau. The upper one lies half-way between a dome and what a rounded patch of material shows (about 0.78), the
+ * lower one half-way between cone and dome.
  */
 const domeToPatch = 0.64;
-/** Above this share of variance explained, a region is a dome whatever else. */
-const surelyDome = 0.93;
+const coneToDome = 0.45;
+/** From so many pixels on a shape can be told from the noise in it. */
+const shapePixels = 12;
+/** Outlines rounder and shorter than this are those of one thing, so that one dome must explain its height; two that touch are not one dome. */
+const compactRoundness = 0.8;
+const compactElongation = 1.3;
+/** Least share of the variance that a dome explains on a compact outline: single domes show 0.6 and more even when a neighbour leans on them, rubble next to nothing. */
+const leastDomeShare = 0.2;
+/** Confidence at which the other class is named. */
+const unsureBelow = 0.65;
 
 /**
  * First classifier for raised regions.
  *
- * - Long and thin: wrinkle.
- * - A smooth dome (mean/peak near 1/2, well explained by a paraboloid over the region's ellipse): bubble. Height over radius is named as evidence
- *   but not used as a rule, because multilayer skins do not hold it (Nat. Commun. 13, 2022, s41467-022-32708-z).
+ * - Long and thin: wrinkle. A short one that is as peaked as domes are could be a row of touching bubbles: it says so, at low confidence.
+ * - A smooth dome: bubble. Its mean over peak height is near 1/2, so neither a plateau nor a cone (a cone must also explain the height
+ *   better than a paraboloid over the region's ellipse does, as bubbles that lean on others are peaked too); and on a compact outline a
+ *   paraboloid must explain part of the height, which rules out rubble. Below 12 pixels noise hides the shape and only the plateau is told.
+ *   Height over radius is named as evidence but not used as a rule, because multilayer skins do not hold it (Nat. Commun. 13, 2022, s41467-022-32708-z).
  * - Otherwise residue: a particle when it blocks the current, a film when it only lowers it.
+ *
+ * Where no height is known the region is residue at confidence 0.5.
  */
 export function classifyRaised(region: Region): Classified {
   const roundness = (4 * Math.PI * region.areaM2) / region.boundaryM ** 2;
@@ -34,19 +49,25 @@ export function classifyRaised(region: Region): Classified {
   const elongation = region.shortM > 0 ? region.longM / region.shortM : Number.POSITIVE_INFINITY;
   const blocks = region.floorShare >= 0.5;
   const current = currentWords(region, blocks);
-  if (region.pixels >= 12 && roundness < thinRoundness && (inscribed < thinInscribed || elongation > 3)) {
-    const confidence = sure(Math.max((thinRoundness - roundness) / 0.3, (elongation - 3) / 5));
-    return { cause: 'wrinkle', confidence, reason: `long thin ridge, ${oneDigit(elongation)} times as long as wide, ${current}: wrinkle` };
-  }
   const { fullness } = region;
-  const isDome = region.domeShare >= surelyDome || fullness < domeToPatch;
-  const margin = Math.max(Math.abs(fullness - domeToPatch) / 0.14, region.domeShare >= surelyDome ? 0.6 : 0);
-  const confidence = sure(region.pixels < 12 ? margin / 2 : margin);
-  const unsure = confidence < 0.65 ? (isDome ? ', could be residue' : ', could be a bubble') : '';
+  if (Number.isNaN(fullness)) return { cause: 'residue', confidence: 0.5, reason: `height not measured here, ${current}: residue, could be a bubble` };
+  if (region.pixels >= shapePixels && roundness < thinRoundness && (inscribed < thinInscribed || elongation > 3)) {
+    const row = elongation < rowOfBubbles && fullness < domeToPatch;
+    const confidence = Math.min(row ? 0.55 : 1, sure(Math.max((thinRoundness - roundness) / 0.3, (elongation - 3) / 5)));
+    return { cause: 'wrinkle', confidence, reason: `long thin ridge, ${oneDigit(elongation)} times as long as wide, ${current}: wrinkle${row ? ', could be touching bubbles' : ''}` };
+  }
+  const shaped = region.pixels >= shapePixels;
+  const pointed = shaped && fullness < coneToDome && region.coneShare > region.domeShare;
+  const compact = roundness > compactRoundness && elongation < compactElongation;
+  const rubble = shaped && compact && region.domeShare < leastDomeShare;
+  const isDome = fullness < domeToPatch && !pointed && !rubble;
+  const margin = (pointed ? (coneToDome - fullness) / 0.09 : rubble ? 1 - region.domeShare / leastDomeShare : Math.abs(fullness - domeToPatch) / 0.14);
+  const confidence = sure(shaped ? margin : margin / 2);
+  const unsure = confidence < unsureBelow ? (isDome ? ', could be residue' : ', could be a bubble') : '';
   if (isDome) {
     return { cause: 'bubble', confidence, reason: `smooth dome, h/R ${twoDigits(region.peakM / (region.diameterM / 2))}, ${current}: bubble${unsure}` };
   }
-  const what = blocks || Number.isNaN(region.floorShare) ? 'uneven or flat-topped lump' : 'flat patch';
+  const what = pointed ? 'pointed lump' : blocks || rubble || Number.isNaN(region.floorShare) ? 'uneven or flat-topped lump' : 'flat patch';
   return { cause: 'residue', confidence, reason: `${what}, ${oneDigit(region.peakM * 1e9)} nm high, ${current}: residue${unsure}` };
 }
 

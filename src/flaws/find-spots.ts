@@ -43,7 +43,8 @@ export function findShorts(input: SpotsInput): Uint8Array {
   const { columns, rows, log10, raised, saturated, floor, rise } = input;
   const count = log10.length;
   const use = new Uint8Array(count);
-  for (let i = 0; i < count; i++) use[i] = raised[i] === 1 || Number.isNaN(log10[i]!) ? 0 : 1;
+  // Without a height nothing says which dead ground is a flaw: none of it may serve as surroundings, or every gap between two bubbles would stand out.
+  for (let i = 0; i < count; i++) use[i] = raised[i] === 1 || Number.isNaN(log10[i]!) || (!rise && floor[i] === 1) ? 0 : 1;
   const nearest = nearestAdmitted(use, columns, rows);
   const filled = new Float32Array(count);
   for (let i = 0; i < count; i++) filled[i] = nearest[i]! < 0 ? 0 : log10[nearest[i]!]!;

@@ -27,6 +27,8 @@ export interface Region {
   readonly floorShare: number;
   /** Share of the height's variance that a paraboloid over the region's ellipse explains (0–1). */
   readonly domeShare: number;
+  /** The same for a cone over that ellipse. */
+  readonly coneShare: number;
   /** Mean over peak height, the peak taken at the 95 % quantile so that noise does not raise it; 1/2 for a paraboloid (0.475/0.95). */
   readonly fullness: number;
   readonly touchesEdge: boolean;
@@ -74,7 +76,7 @@ function membersOf(input: MeasureInput): Int32Array[] {
 }
 
 function measureRegion(input: MeasureInput, label: number, indices: Int32Array): Region {
-  const { columns, rows, pitchXM, pitchYM, labels, rise } = input;
+  const { columns, rows, pitchXM, pitchYM, labels } = input;
   const n = indices.length;
   let sx = 0;
   let sy = 0;
@@ -112,11 +114,10 @@ function measureRegion(input: MeasureInput, label: number, indices: Int32Array):
     angleDeg: ellipse.angleDeg,
     ...heights(input, indices, xM, yM, ellipse),
     inscribedM: Math.sqrt(inscribed2),
-    log10Current: input.log10 ? medianOf(input.log10, indices) : Number.NaN,
-    dropDecades: input.drop ? medianOf(input.drop, indices) : Number.NaN,
+    log10Current: medianOf(input.log10, indices),
+    dropDecades: medianOf(input.drop, indices),
     floorShare: input.floor ? atFloor / n : Number.NaN,
     touchesEdge,
-    ...(rise ? {} : { peakM: Number.NaN, meanM: Number.NaN, volumeM3: Number.NaN }),
   };
 }
 
@@ -153,58 +154,70 @@ function ellipseOf(input: MeasureInput, indices: Int32Array, xM: number, yM: num
   };
 }
 
-function heights(input: MeasureInput, indices: Int32Array, xM: number, yM: number, ellipse: Ellipse): { peakM: number; meanM: number; volumeM3: number; domeShare: number; fullness: number } {
+/** Height's measures; NaN (shares 0) where no height is known. */
+type Heights = Pick<Region, 'peakM' | 'meanM' | 'volumeM3' | 'domeShare' | 'coneShare' | 'fullness'>;
+
+function heights(input: MeasureInput, indices: Int32Array, xM: number, yM: number, ellipse: Ellipse): Heights {
   const { columns, rows, pitchXM, pitchYM, rise } = input;
-  let n = 0;
-  let sum = 0;
-  let sum2 = 0;
+  const { values, count } = presentOf(rise, indices);
+  if (!rise || count === 0) return { peakM: Number.NaN, meanM: Number.NaN, volumeM3: Number.NaN, domeShare: 0, coneShare: 0, fullness: Number.NaN };
+  // Regression of height on a paraboloid 1 − ρ² and on a cone 1 − ρ, ρ² = dᵀ·C⁻¹·d / 4 being 1 on the ellipse.
+  const dome = new Float64Array(count);
+  const cone = new Float64Array(count);
+  const [ixx, ixy, iyy] = ellipse.inverse;
   let peakM = Number.NEGATIVE_INFINITY;
-  // Regression of height on q = 1 − ρ², ρ² = dᵀ·C⁻¹·d / 4 being 1 on the ellipse.
-  let sq = 0;
-  let sqq = 0;
-  let sqh = 0;
-  if (rise) {
-    const [ixx, ixy, iyy] = ellipse.inverse;
-    for (const i of indices) {
-      const h = rise[i]!;
-      if (Number.isNaN(h)) continue;
-      const c = i % columns;
-      const dx = (c + 0.5) * pitchXM - xM;
-      const dy = (rows - (i - c) / columns - 0.5) * pitchYM - yM;
-      const q = 1 - (ixx * dx * dx + 2 * ixy * dx * dy + iyy * dy * dy) / 4;
-      n++;
-      sum += h;
-      sum2 += h * h;
-      if (h > peakM) peakM = h;
-      sq += q;
-      sqq += q * q;
-      sqh += q * h;
-    }
+  let sum = 0;
+  let k = 0;
+  for (const i of indices) {
+    const h = rise[i]!;
+    if (Number.isNaN(h)) continue;
+    const c = i % columns;
+    const dx = (c + 0.5) * pitchXM - xM;
+    const dy = (rows - (i - c) / columns - 0.5) * pitchYM - yM;
+    const rho2 = (ixx * dx * dx + 2 * ixy * dx * dy + iyy * dy * dy) / 4;
+    dome[k] = 1 - rho2;
+    cone[k++] = 1 - Math.sqrt(rho2);
+    sum += h;
+    if (h > peakM) peakM = h;
   }
-  if (n === 0) return { peakM: Number.NaN, meanM: Number.NaN, volumeM3: Number.NaN, domeShare: 0, fullness: Number.NaN };
-  const varH = sum2 / n - (sum / n) ** 2;
-  const varQ = sqq / n - (sq / n) ** 2;
-  const cov = sqh / n - (sum / n) * (sq / n);
-  return {
-    peakM,
-    meanM: sum / n,
-    // A paraboloid's 95 % quantile is 0.95 of its peak, so this is 1/2 for one.
-    fullness: (0.95 * sum) / n / quantileOf(rise!, indices, 0.95),
-    volumeM3: sum * pitchXM * pitchYM,
-    domeShare: varH > 0 && varQ > 0 && cov > 0 ? (cov * cov) / (varH * varQ) : 0,
-  };
+  const meanM = sum / count;
+  const domeShare = explainedShare(dome, values, count);
+  const coneShare = explainedShare(cone, values, count);
+  // A paraboloid's 95 % quantile is 0.95 of its peak, so this is 1/2 for one. Selecting reorders the values, so it comes last.
+  const fullness = (0.95 * meanM) / selectInPlace(values, Math.min(count - 1, Math.floor(0.95 * count)), count);
+  return { peakM, meanM, volumeM3: sum * pitchXM * pitchYM, domeShare, coneShare, fullness };
 }
 
-function quantileOf(values: Float32Array, indices: Int32Array, share: number): number {
-  const buffer = new Float64Array(indices.length);
-  let count = 0;
-  for (const i of indices) if (!Number.isNaN(values[i]!)) buffer[count++] = values[i]!;
-  return count === 0 ? Number.NaN : selectInPlace(buffer, Math.min(count - 1, Math.floor(share * count)), count);
+/** Share of the variance of `values` that grows with `shape`: the squared correlation, 0 where it falls with it. */
+function explainedShare(shape: Float64Array, values: Float64Array, count: number): number {
+  let shapeMean = 0;
+  let valueMean = 0;
+  for (let k = 0; k < count; k++) {
+    shapeMean += shape[k]! / count;
+    valueMean += values[k]! / count;
+  }
+  let both = 0;
+  let shape2 = 0;
+  let value2 = 0;
+  for (let k = 0; k < count; k++) {
+    const s = shape[k]! - shapeMean;
+    const v = values[k]! - valueMean;
+    both += s * v;
+    shape2 += s * s;
+    value2 += v * v;
+  }
+  return shape2 > 0 && value2 > 0 && both > 0 ? (both * both) / (shape2 * value2) : 0;
 }
 
-function medianOf(values: Float32Array, indices: Int32Array): number {
-  const buffer = new Float64Array(indices.length);
+/** What is known of a map on some pixels, in their order; the buffer may be longer than the count. */
+function presentOf(map: Float32Array | undefined, indices: Int32Array): { values: Float64Array; count: number } {
+  const values = new Float64Array(map ? indices.length : 0);
   let count = 0;
-  for (const i of indices) if (!Number.isNaN(values[i]!)) buffer[count++] = values[i]!;
-  return medianInPlace(buffer, count);
+  if (map) for (const i of indices) if (!Number.isNaN(map[i]!)) values[count++] = map[i]!;
+  return { values, count };
+}
+
+function medianOf(map: Float32Array | undefined, indices: Int32Array): number {
+  const { values, count } = presentOf(map, indices);
+  return medianInPlace(values, count);
 }

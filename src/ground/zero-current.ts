@@ -95,17 +95,23 @@ function densest(sample: Float64Array): number {
   return sorted[best + (n >> 1)]!;
 }
 
-/** Whether horizontal neighbours inside the peak, among admitted pixels, are uncorrelated (|r| < 0.3). */
+/**
+ * Whether horizontal neighbours in the lower half of the peak, among admitted pixels, are uncorrelated (|r| < 0.3). A faint terrace just above zero reaches
+ * into the upper half and would correlate it.
+ */
 function isWhite(values: Float32Array, columns: number, peak: Peak, use: (index: number) => boolean): boolean {
   let n = 0;
   let xy = 0;
   let xx = 0;
   const limit = 3 * peak.width;
+  // Deviations from the middle of the lower half: 0.8 standard deviations below the centre for a normal peak.
+  const middle = peak.centre - Math.sqrt(2 / Math.PI) * peak.width;
+  const inHalf = (value: number): boolean => value <= peak.centre && value >= peak.centre - limit;
   for (let i = 1; i < values.length; i++) {
     if (i % columns === 0 || !use(i) || !use(i - 1)) continue;
-    const a = values[i - 1]! - peak.centre;
-    const b = values[i]! - peak.centre;
-    if (!(Math.abs(a) < limit && Math.abs(b) < limit)) continue;
+    if (!inHalf(values[i - 1]!) || !inHalf(values[i]!)) continue;
+    const a = values[i - 1]! - middle;
+    const b = values[i]! - middle;
     n++;
     xy += a * b;
     xx += (a * a + b * b) / 2;

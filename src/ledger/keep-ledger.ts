@@ -4,6 +4,7 @@ import type { Flaws } from '../flaws/flaws.ts';
 import { labelComponents } from '../grid/label-components.ts';
 import { pixelAreaM2, scalarMap } from '../grid/maps.ts';
 import type { Ground } from '../ground/ground.ts';
+import { layerMask } from '../read/footprint.ts';
 import type { Sample } from '../read/sample.ts';
 import type { Sheet } from '../sheet/sheet.ts';
 import { bookCauses, codeOf } from './book-causes.ts';
@@ -68,7 +69,7 @@ export function keepLedger(input: LedgerInput): Ledger {
   const missed = missedShorts(shorts, seenOnM2, grid, input.contactAreaM2);
   return {
     codes: ndarray(codes, [grid.rows, grid.columns]),
-    glow: scalarMap(grid, glowMap(codes, sheet?.relativeDensity.data ?? relativeOf(barrier))),
+    glow: scalarMap(grid, glowMap(codes, sheet?.relativeDensity.data ?? relativeOf(barrier), metalOf(sample))),
     rows,
     footprintM2: footprintPixels * areaM2,
     footprintPixels,
@@ -140,6 +141,14 @@ function insideFootprint(input: LedgerInput, xM: number, yM: number): boolean {
   const c = Math.min(columns - 1, Math.max(0, Math.floor(xM / pitchXM)));
   const r = Math.min(rows - 1, Math.max(0, rows - 1 - Math.floor(yM / pitchYM)));
   return input.sample.footprint.data[r * columns + c] === 1;
+}
+
+/** 1 under the drawn metal of either contact; undefined without any. */
+function metalOf({ grid, outlines }: Sample): Uint8Array | undefined {
+  if (!outlines.some(({ layer }) => layer === 'contact-emitter' || layer === 'contact-injector')) return undefined;
+  const emitter = layerMask(grid, outlines, 'contact-emitter').data;
+  const injector = layerMask(grid, outlines, 'contact-injector').data;
+  return Uint8Array.from(emitter, (value, i) => value | injector[i]!);
 }
 
 /** Without a sheet stage the density is that of the barrier alone. */

@@ -1,3 +1,15 @@
+const volts = (value: number): string => String(Number(value.toPrecision(4)));
+
+/** The way out for each reason why no density is known. */
+const noDensityWords = {
+  'current-relative': 'state the current’s unit (scan.currentUnit)',
+  'bias-missing': 'state the scan’s bias (scan.biasV)',
+  'stack-surface': 'a finished stack’s surface does not give it; scan the bare barrier',
+  'no-ground': 'all flawless ground lies at the amplifier’s floor or limit; scan again at another gain or bias',
+  model: 'the model does not hold at these biases or currents; set barrier.model to wkb or check the barrier’s values',
+  'device-bias': 'nothing, or not the target, flows at the device’s bias; check stack.biasV, stack.offsetV and stack.targetNaPerUm2',
+} as const;
+
 /** Sentences about outlines, contacts and voltage drop. */
 export const sheetSentences = {
   'sheet-not-converged': (d: { residual: string; iterations: number }) =>
@@ -6,8 +18,10 @@ export const sheetSentences = {
     `No contact-${d.sheet} outline is drawn: the ${d.sheet} is taken as fed along its whole outer edge; draw its contact for the true voltage drop.`,
   'sheet-contact-apart': (d: { sheet: string }) =>
     `The contact-${d.sheet} outline touches no ${d.sheet} ground on the map, so nothing is connected to it; check the outlines' position and size.`,
-  'sheet-no-density': () =>
-    'Sheet resistances are given, but the density at the device bias is not known in amperes: the voltage drop is not assessed; state the scan bias and the current unit.',
+  'sheet-no-density': (d: { reason: keyof typeof noDensityWords | undefined }) =>
+    `Sheet resistances are given, but no density is known at the device's bias, so the voltage drop is not assessed; ${d.reason === undefined ? 'state the scan bias and the current unit' : noDensityWords[d.reason]}.`,
+  'shorts-ohmic': (d: { scanBiasV: number; deviceBiasV: number; saturated: boolean }) =>
+    `Shorts are assumed ohmic between the scan's ${volts(d.scanBiasV)} V and the device's ${volts(d.deviceBiasV)} V: their share of the device's current rests on that${d.saturated ? ', and is a lower bound, because shorts saturated the amplifier' : ''}.`,
   'sheet-density': (d: { biasV: string; value: string; reason: string }) =>
     `The tunnel density at ${d.biasV} V is ${d.value} A/m², which ${d.reason}; check barrier.model, barrier.heightEv and stack.biasV.`,
 };

@@ -25,7 +25,9 @@ const delimiters = [',', ';', '\t'] as const;
 
 /** Whether a text file is a manifest: its first cell is the word `sample`. */
 export function isManifest(bytes: Uint8Array): boolean {
-  return /^\uFEFF?\s*"?sample"?\s*(?:[,;\t\r\n]|$)/.test(textOf(bytes.subarray(0, 256)));
+  const start = textOf(bytes.subarray(0, 256));
+  // A tray's own table of results begins alike.
+  return /^\uFEFF?\s*"?sample"?\s*(?:[,;\t\r\n]|$)/.test(start) && !start.startsWith('sample,group,rank,');
 }
 
 /**

@@ -3,6 +3,7 @@ import { maskMap, pixelAreaM2, scalarMap } from '../grid/maps.ts';
 import type { MaskMap } from '../grid/maps.ts';
 import { notice } from '../problems/problem.ts';
 import type { Notice } from '../problems/problem.ts';
+import { bandEdgeLog10 } from './band-edge.ts';
 import { elementsOf } from './elements.ts';
 import type { Elements } from './elements.ts';
 import { groundOfStack } from './ground-of-stack.ts';
@@ -25,6 +26,7 @@ import { solveDrop } from './solve-drop.ts';
  * - Off the footprint everything is NaN or 0. The map's border is an edge of the sheets.
  * - Ground that no sheet path joins to its drawn contact carries nothing: density 0, local bias 0, `unconnected` 1, never starved.
  * - Starved: |log10Relative| within the band, but the density with voltage drop below the reference's over `bandFactor`.
+ * - Shorts follow a straight line of current over bias where `shorts.ohmic` is given, and a remark says that this is assumed.
  * - Not settled: a warning `sheet-not-converged`; density as without drop, no local bias, no starved, no totals.
  *
  * @param input Maps of shape [rows, columns] on `input.grid`; Ω/sq, Ω·µm, V, A/m². Time and memory grow with the pixel count.
@@ -37,8 +39,9 @@ export function assessSheet(input: SheetInput): Sheet {
   const base = { relativeDensity: scalarMap(input.grid, Float32Array.from(elements.ratio)), ...(stack.unconnected && { unconnected: stack.unconnected }) };
   const resistive = (input.emitterSheetOhm ?? 0) > 0 || (input.injectorSheetOhm ?? 0) > 0;
   const { device } = input;
+  if (device && input.shorts?.ohmic && elements.inShorts > 0) warnings.push(notice('shorts-ohmic', { ...input.shorts.ohmic, deviceBiasV: device.biasV }));
   if (!resistive || !device || device.biasV === 0) {
-    if (resistive) warnings.push(notice('sheet-no-density', undefined));
+    if (resistive) warnings.push(notice('sheet-no-density', { reason: input.noDensity }));
     return { ...base, totals: totalsWithoutDrop(input, elements), warnings };
   }
   return { ...base, ...withDrop(input, stack, elements, device, warnings), warnings };
@@ -81,12 +84,12 @@ function withDrop(
 
 function starvedGround(input: SheetInput, live: Uint8Array, relative: Float32Array): MaskMap {
   const starved = maskMap(input.grid);
-  const limit = Math.log10(input.bandFactor);
+  const limit = bandEdgeLog10(input.bandFactor);
   const before = input.log10Relative.data;
   for (let p = 0; p < relative.length; p++) {
     // Shorts keep their own cause; a comparison with NaN is false, so unknown ground is not starved.
     const short = input.shorts !== undefined && input.shorts.mask.data[p] === 1;
-    if (live[p] === 1 && !short && Math.abs(before[p]!) <= limit && relative[p]! * input.bandFactor < 1) starved.data[p] = 1;
+    if (live[p] === 1 && !short && Math.abs(before[p]!) <= limit && Math.log10(relative[p]!) < -limit) starved.data[p] = 1;
   }
   return starved;
 }

@@ -1,6 +1,6 @@
 /** Tunnel elements: how much each pixel would carry without voltage drop, and along which curve. */
 import { pixelCount } from '../grid/maps.ts';
-import type { SheetInput } from './sheet-input.ts';
+import type { SheetInput, StepDensities } from './sheet-input.ts';
 import { TunnelCurve } from './tunnel-curve.ts';
 
 export interface Elements {
@@ -34,13 +34,21 @@ export function elementsOf(input: SheetInput, live: Uint8Array): Elements {
 
 /**
  * The tunnel curves and, per pixel, the number of the curve it follows. Curve 0 is the reference's;
- * it also serves steps that carry nothing at all at the device bias.
+ * it also serves steps that carry nothing at all at the device bias. Ohmic shorts share the last one.
  */
 export function curvesOf(input: SheetInput, biasV: number, reference: (biasV: number) => number): { curves: readonly TunnelCurve[]; numbers: Uint8Array } {
   const curves = [new TunnelCurve(reference, biasV)];
   const numbers = new Uint8Array(pixelCount(input.grid));
-  const { steps } = input;
-  if (!steps) return { curves, numbers };
+  const { steps, shorts } = input;
+  if (steps) followSteps(steps, biasV, curves, numbers);
+  if (shorts?.ohmic && shorts.mask.data.includes(1)) {
+    const ohmic = curves.push(new TunnelCurve((v) => v, biasV)) - 1;
+    for (let p = 0; p < numbers.length; p++) if (shorts.mask.data[p] === 1) numbers[p] = ohmic;
+  }
+  return { curves, numbers };
+}
+
+function followSteps(steps: StepDensities, biasV: number, curves: TunnelCurve[], numbers: Uint8Array): void {
   const known = new Map<number, number>([[-128, 0], [0, 0]]);
   for (let p = 0; p < numbers.length; p++) {
     const step = steps.map.data[p]!;
@@ -51,5 +59,4 @@ export function curvesOf(input: SheetInput, biasV: number, reference: (biasV: nu
     }
     numbers[p] = number;
   }
-  return { curves, numbers };
 }

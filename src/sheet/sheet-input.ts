@@ -1,5 +1,6 @@
 /** What the sheet stage needs to know about one device. */
 import type { NdArray } from 'ndarray';
+import type { NoDensity } from '../barrier/barrier.ts';
 import type { Grid, MaskMap, ScalarMap } from '../grid/maps.ts';
 import type { Outline } from '../read/sample.ts';
 
@@ -11,6 +12,14 @@ export interface StepDensities {
   /** Layers relative to the reference per pixel, −128 where unknown (the reference's shape is used). */
   readonly map: NdArray<Int8Array>;
   readonly densityAPerM2: (step: number, biasV: number) => number;
+}
+
+export interface Shorts {
+  readonly mask: MaskMap;
+  /** At the device's bias, over the reference's no-drop density there. */
+  readonly log10Relative: ScalarMap;
+  /** Given where the ratio was carried from the scan's bias as an ohmic current's: then their elements are ohmic, too. */
+  readonly ohmic?: { readonly scanBiasV: number; /** Some saturated, so that their ratio is a lower bound. */ readonly saturated: boolean };
 }
 
 export interface SheetInput {
@@ -36,5 +45,7 @@ export interface SheetInput {
    */
   readonly steps?: StepDensities | undefined;
   /** Shorts carry current too: where the mask is 1, this log10 ratio replaces `log10Relative`. */
-  readonly shorts?: { readonly mask: MaskMap; readonly log10Relative: ScalarMap } | undefined;
+  readonly shorts?: Shorts | undefined;
+  /** Why `device` is absent. */
+  readonly noDensity?: NoDensity | undefined;
 }

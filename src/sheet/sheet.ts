@@ -6,7 +6,7 @@ import type { Notice } from '../problems/problem.ts';
 export interface SheetTotals {
   /** Current of the device in A; absent where the reference's density is not known in amperes. */
   readonly deviceCurrentA?: number;
-  /** Share of the device's current that flows through shorts; absent where their density is not given. */
+  /** Share of the device's current that flows through shorts, taken as ohmic from the scan's bias to the device's; a lower bound where they saturated. Absent where their density is not given. */
   readonly shortShareOfCurrent?: number;
   /** Largest relative difference between current in, current through the barrier and current out; absent without voltage drop. */
   readonly imbalance?: number;

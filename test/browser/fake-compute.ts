@@ -77,7 +77,7 @@ export function settle(): Promise<void> {
 
 export function createFacts(): ComputeFacts {
   return {
-    app: { name: 'evenglow', version: '0.0.0' }, defaultRecipe: {}, scale: ['#000000', '#ffffff'], hatchPeriod: 8,
+    app: { name: 'evenglow', version: '0.0.0' }, defaultRecipe: {}, scale: ['#000000', '#ffffff'], hatchPeriod: 8, kernels: false,
     causes: [{ code: 1, cause: 'usable', fill: '#ffb454', ink: '#ffb454', hatch: 'none', hatchPath: '', hatchStroke: 0 }, { code: 9, cause: 'thick', fill: '#0072b2', ink: '#7cc0ea', hatch: 'diagonal', hatchPath: 'M0 0L8 8', hatchStroke: 1.5 }],
     fields: [
       { path: 'scan.channel', kind: 'choice', title: 'Channel', description: 'Role.', choices: ['height', 'current'] },

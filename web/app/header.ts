@@ -28,7 +28,7 @@ export class Header extends LitElement {
   static override styles = [controlStyles, css`
     :host { display: block; background: var(--panel); border-bottom: 1px solid var(--line); }
     header { display: flex; flex-wrap: wrap; align-items: center; gap: 0.5rem 1.25rem; padding: 0.5rem clamp(0.9rem, 2vw, 1.5rem); }
-    .name { display: flex; align-items: center; gap: 0.6rem; font-weight: 600; letter-spacing: 0.02em; }
+    .name { display: flex; align-items: center; gap: 0.6rem; margin: 0; font-size: 1rem; font-weight: 600; letter-spacing: 0.02em; }
     .dot { width: 0.6rem; height: 0.6rem; border-radius: 50%; background: #ffb454; box-shadow: 0 0 0.35rem 0.1rem rgb(255 180 84 / 60%), 0 0 1rem 0.3rem rgb(255 180 84 / 30%); }
     nav { flex: 1; min-width: 0; }
     ol { display: flex; gap: 0.5rem; margin: 0; padding: 0; list-style: none; color: var(--dim); }
@@ -50,10 +50,12 @@ export class Header extends LitElement {
   }
 
   override render() {
+    // In a sample the verdict is the page's heading.
+    const name = html`<span class="dot"></span>Evenglow`;
     const tray = `Tray${this.count > 0 ? ` · ${this.count}` : ''}`;
     return html`
       <header>
-        <span class="name"><span class="dot"></span>Evenglow</span>
+        ${this.sampleName === undefined ? html`<h1 class="name">${name}</h1>` : html`<span class="name">${name}</span>`}
         <nav class=${this.sampleName === undefined ? 'tray' : ''} aria-label="Place">
           <ol>
             ${this.sampleName === undefined

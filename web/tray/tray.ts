@@ -20,8 +20,6 @@ export class Tray extends LitElement {
   declare requiredUm2: number | undefined;
   declare facts: ComputeFacts | undefined;
   declare compute: Compute | undefined;
-  /** Sample whose row the keyboard is on: rows move while others finish. */
-  private focused: string | undefined;
 
   static override styles = [controlStyles, css`
     :host { display: block; max-width: 84rem; margin: 0 auto; padding: 1.25rem clamp(0.6rem, 2vw, 1.5rem) 2rem; }
@@ -40,7 +38,6 @@ export class Tray extends LitElement {
   constructor() {
     super();
     this.samples = [];
-    this.addEventListener('focusin', (event) => { this.focused = rowOf(event)?.sample?.id; });
   }
 
   override render() {
@@ -70,11 +67,16 @@ export class Tray extends LitElement {
     row?.focus();
   }
 
-  override updated(): void {
-    // A row that moved, or changed its group, has lost the keyboard.
-    if (this.focused !== undefined && this.shadowRoot?.activeElement === null && (document.activeElement === document.body || document.activeElement === null)) {
-      this.rows().find((row) => row.sample?.id === this.focused)?.focus();
-    }
+  override willUpdate(): void {
+    const { activeElement } = this.renderRoot as ShadowRoot;
+    if (activeElement instanceof TrayRow && activeElement.sample !== undefined) void this.keepFocus(activeElement.sample.id);
+  }
+
+  /** A row that moved or changed its group, or a button that went with its run, takes the keyboard away: the row gets it back. */
+  private async keepFocus(id: string): Promise<void> {
+    await this.updateComplete;
+    await this.rows().find(({ sample }) => sample?.id === id)?.updateComplete;
+    if (document.activeElement === document.body || document.activeElement === null) await this.focusRow(id);
   }
 
   private group(group: Group) {

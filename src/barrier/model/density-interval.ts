@@ -143,7 +143,7 @@ function fromThickness(question: DensityQuestion, thicknessM: number): DensityIn
   if (probe !== undefined) {
     areaSd = Math.log(spread.areaFactor95) / z95;
     const seen = Math.log(probe.currentA / probe.areaM2);
-    // Gauss–Newton: most likely height and mass given the current; four steps settle it to rounding.
+    // Gauss–Newton: most likely height and mass given the current; six steps settle it to rounding.
     for (let step = 0; step < 6; step++) {
       const [byHeight, byMass] = slopes(height, mass, probe.biasV);
       const variance = byHeight ** 2 + byMass ** 2 + areaSd ** 2;
