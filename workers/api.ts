@@ -97,6 +97,8 @@ export interface SampleSummary {
     /** `A`, or `relative`: then the values ending in A are in the file's own unit. */
     readonly unit: string; readonly biasV?: number; readonly offsetA: number; readonly noiseA: number; readonly floorA: number; readonly saturationA?: number;
     readonly saturatedPixels: number; readonly repairedPixels: number; readonly wearDecades: number;
+    /** Whether the wear is a loss large enough to be told from the barrier; smaller ones, and gains, are not. */
+    readonly wearTold: boolean;
   };
   readonly ladder?: {
     readonly stepDecades: number; readonly stepSeDecades: number; readonly modelStepDecades?: number; readonly from: string;
@@ -104,7 +106,8 @@ export interface SampleSummary {
   };
   readonly reference?: { readonly layers?: number; readonly thicknessNm?: number; readonly medianA: number; readonly areaUm2: number; readonly shareOfUnflawed: number };
   readonly device?: { readonly biasV: number; readonly proposed: boolean; readonly medianNaPerUm2: number; readonly low95NaPerUm2: number; readonly high95NaPerUm2: number };
-  readonly shorts: { readonly seen: number; readonly expectedMissed: number; readonly crossedShare: number };
+  /** Absent without a current: shorts do not show in height. */
+  readonly shorts?: { readonly seen: number; readonly expectedMissed: number; readonly crossedShare: number };
   readonly flaws: readonly FlawEntry[];
   readonly maps: readonly MapInfo[];
   readonly remarks: readonly Remark[];

@@ -1,5 +1,6 @@
 /** Everything about an appraised sample except its maps, rounded as in the result files. */
 import type { Flaw } from '../src/flaws/flaws.ts';
+import { leastWearDecades } from '../src/ground/wear.ts';
 import type { Appraised } from '../src/report/appraised.ts';
 import { rounded, toNaPerUm2, toNm, toUm, toUm2 } from '../src/report/units.ts';
 import type { FlawEntry, RecipeData, SampleSummary } from './api.ts';
@@ -23,7 +24,7 @@ export function summaryOf(id: string, appraised: Appraised): SampleSummary {
     repairedUm2: toUm2(ledger.repairedM2),
     ...groundParts(appraised),
     ...barrierParts(appraised),
-    shorts: { seen: missedShorts.seen, expectedMissed: rounded(missedShorts.expectedMissed), crossedShare: rounded(missedShorts.crossedShare) },
+    ...(missedShorts ? { shorts: { seen: missedShorts.seen, expectedMissed: rounded(missedShorts.expectedMissed), crossedShare: rounded(missedShorts.crossedShare) } } : {}),
     flaws: flaws.list.map(flawEntry),
     maps: mapInfos(appraised),
     remarks: warnings.map(({ code, message }) => ({ code, message })),
@@ -51,6 +52,7 @@ function groundParts({ ground: { height, current } }: Appraised): Pick<SampleSum
         offsetA: rounded(current.offsetA), noiseA: rounded(current.noiseA), floorA: rounded(current.floorA),
         ...(current.saturationA === undefined ? {} : { saturationA: rounded(current.saturationA) }),
         saturatedPixels: current.saturatedPixels, repairedPixels: current.repairedPixels, wearDecades: rounded(current.wearDecades),
+        wearTold: current.wearDecades >= leastWearDecades,
       },
     } : {}),
   };

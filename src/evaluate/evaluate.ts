@@ -26,7 +26,7 @@ export interface EvaluateOptions {
 }
 
 /**
- * Folds the chain over one sample: ground → flaws → barrier → sheet → ledger. Each stage is cached by (source hashes, the parts of the recipe that
+ * Folds the chain over one sample: ground → flaws → barrier → sheet → ledger. Each stage is cached by (the sources' names and hashes, the parts of the recipe that
  * it and the stages before it read), so that moving a threshold recomputes from that stage on and never reads a file again.
  *
  * The same sample and recipe give the same result to the bit, with or without a cache; only `timings` differ.
@@ -47,7 +47,7 @@ export function* evaluateInSteps(sample: Sample, recipe: Recipe, options: Evalua
   const cache = options.cache ?? new StageCache(0);
   const now = options.now ?? Date.now;
   const timings: Record<string, number> = {};
-  let key = JSON.stringify([sample.name, sample.sources.map((source) => source.sha256), recipe.scan]);
+  let key = JSON.stringify([sample.name, sample.sources, recipe.scan]);
   const run = function* <T>(stage: StageName, read: unknown, compute: () => T): Generator<StageName, T, void> {
     key += JSON.stringify([stage, read]);
     yield stage;
@@ -64,8 +64,7 @@ export function* evaluateInSteps(sample: Sample, recipe: Recipe, options: Evalua
   const barrier = yield* run('barrier', [stack, band], () => barrierOf(sample, ground, flaws, recipe));
   const sheet: Sheet | undefined = yield* run('sheet', [], () => barrier && assessSheet(sheetInput(sample, ground, flaws, barrier, recipe)));
   const ledger = yield* run('ledger', [], () => keepLedger({
-    sample, ground, flaws, barrier, sheet, band, contactAreaM2: barrierSection.tipAreaNm2 * 1e-18,
-    sheetAsked: stack.emitterSheetOhm !== undefined || stack.injectorSheetOhm !== undefined,
+    sample, ground, flaws, barrier, sheet, band, barrierSection, offsetV: stack.offsetV,
   }));
   return {
     sample, recipe, ground, flaws,

@@ -21,6 +21,8 @@ const rowOfBubbles = 5;
  */
 const domeToPatch = 0.64;
 const coneToDome = 0.45;
+/** A cone must explain this share of the height to be one; bubbles that lean on others are as peaked but explained by no single shape. */
+const surelyCone = 0.9;
 /** From so many pixels on a shape can be told from the noise in it. */
 const shapePixels = 12;
 /** Outlines rounder and shorter than this are those of one thing, so that one dome must explain its height; two that touch are not one dome. */
@@ -35,9 +37,9 @@ const unsureBelow = 0.65;
  * First classifier for raised regions.
  *
  * - Long and thin: wrinkle. A short one that is as peaked as domes are could be a row of touching bubbles: it says so, at low confidence.
- * - A smooth dome: bubble. Its mean over peak height is near 1/2, so neither a plateau nor a cone (a cone must also explain the height
- *   better than a paraboloid over the region's ellipse does, as bubbles that lean on others are peaked too); and on a compact outline a
- *   paraboloid must explain part of the height, which rules out rubble. Below 12 pixels noise hides the shape and only the plateau is told.
+ * - A smooth dome: bubble. Its mean over peak height is near 1/2, so neither a plateau nor a cone (which must also explain the height
+ *   well, and better than a paraboloid over the region's ellipse does); and on a compact outline a paraboloid must explain part
+ *   of the height, which rules out rubble. Below 12 pixels noise hides the shape and only the plateau is told.
  *   Height over radius is named as evidence but not used as a rule, because multilayer skins do not hold it (Nat. Commun. 13, 2022, s41467-022-32708-z).
  * - Otherwise residue: a particle when it blocks the current, a film when it only lowers it.
  *
@@ -57,7 +59,7 @@ export function classifyRaised(region: Region): Classified {
     return { cause: 'wrinkle', confidence, reason: `long thin ridge, ${oneDigit(elongation)} times as long as wide, ${current}: wrinkle${row ? ', could be touching bubbles' : ''}` };
   }
   const shaped = region.pixels >= shapePixels;
-  const pointed = shaped && fullness < coneToDome && region.coneShare > region.domeShare;
+  const pointed = shaped && fullness < coneToDome && region.coneShare > Math.max(surelyCone, region.domeShare);
   const compact = roundness > compactRoundness && elongation < compactElongation;
   const rubble = shaped && compact && region.domeShare < leastDomeShare;
   const isDome = fullness < domeToPatch && !pointed && !rubble;

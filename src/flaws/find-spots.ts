@@ -28,6 +28,8 @@ export interface SpotsInput {
   readonly pitM: number;
 }
 
+/** Decades above the floor from which ground is bright enough that noise does not make a dead pixel of it. */
+const brightDecades = 0.5;
 /** Part of a layer's worth of current by which a spot must stand out to be a spot at all. */
 const standOut = 0.3;
 
@@ -83,9 +85,13 @@ function openingWidth(input: SpotsInput): number {
 }
 
 /**
- * Opens: patches at the floor, smaller than a terrace and of at least `minPixels`, that no raised flaw explains and whose surroundings carry
- * at least 0.8 of a layer (and half a decade) more than the floor. Floor pixels that touch a raised flaw belong to it and are
- * returned apart.
+ * Opens: patches at the floor, smaller than a terrace, that no raised flaw explains and whose surroundings carry at least 0.8 of a layer (and half
+ * a decade) more than the floor. Floor pixels that touch a raised flaw belong to it and are returned apart.
+ *
+ * Patches of fewer than `minPixels` could be noise of dim ground: they are open only where all of the up to eight neighbours of each of their
+ * pixels that are not of the patch are measured and carry half a decade more than the floor. The floor lies three standard
+ * deviations of the noise above zero, so noise would have to take 6.5 of them off (√10 − 1 times three) to make such a pixel. On
+ * dimmer ground it stays with its surroundings.
  */
 export function findOpens(input: SpotsInput): { opens: Uint8Array; belongToRaised: Uint8Array } {
   const { columns, rows, log10, raised, floor } = input;
@@ -105,6 +111,9 @@ export function findOpens(input: SpotsInput): { opens: Uint8Array; belongToRaise
     if (nearest[i]! >= 0) sum[label]! += log10[nearest[i]!]! - log10[i]!;
     if (touchesMask(raised, columns, rows, i)) touches[label] = 1;
   }
+  const small = (label: number): boolean => pixels[label]! < input.minPixels;
+  const dim = new Uint8Array(count + 1);
+  for (let i = 0; i < labels.length; i++) if (labels[i]! > 0 && small(labels[i]!) && !brightAround(log10, labels, columns, rows, i)) dim[labels[i]!] = 1;
   const opens = new Uint8Array(log10.length);
   const belongToRaised = new Uint8Array(log10.length);
   const least = Math.max(0.5, 0.8 * input.layerDecades);
@@ -112,7 +121,7 @@ export function findOpens(input: SpotsInput): { opens: Uint8Array; belongToRaise
     const label = labels[i]!;
     if (label === 0 || pixels[label]! * input.pixelAreaM2 >= input.terraceMinM2 || sum[label]! / pixels[label]! < least) continue;
     if (touches[label] === 1) belongToRaised[i] = 1;
-    else if (pixels[label]! >= input.minPixels) opens[i] = 1;
+    else if (dim[label] === 0) opens[i] = 1;
   }
   return { opens, belongToRaised };
 }
@@ -121,4 +130,17 @@ function touchesMask(mask: Uint8Array, columns: number, rows: number, i: number)
   const c = i % columns;
   const r = (i - c) / columns;
   return (c > 0 && mask[i - 1] === 1) || (c + 1 < columns && mask[i + 1] === 1) || (r > 0 && mask[i - columns] === 1) || (r + 1 < rows && mask[i + columns] === 1);
+}
+
+/** Whether all neighbours (8) of a pixel that are not of its own patch are measured and a decade above it. */
+function brightAround(log10: Float32Array, labels: Uint32Array, columns: number, rows: number, i: number): boolean {
+  const c = i % columns;
+  const r = (i - c) / columns;
+  for (let y = Math.max(0, r - 1); y <= Math.min(rows - 1, r + 1); y++) {
+    for (let x = Math.max(0, c - 1); x <= Math.min(columns - 1, c + 1); x++) {
+      const k = y * columns + x;
+      if (labels[k] !== labels[i] && !(log10[k]! - log10[i]! >= brightDecades)) return false;
+    }
+  }
+  return true;
 }

@@ -1,4 +1,5 @@
 /** Location and width of the ground in a mixture of ground and features that stand above it. */
+import { madScale } from '../stats/mad.ts';
 
 /**
  * Most common value: half-sample mode (Bickel & Frühwirth, Comput. Stat. Data Anal. 50, 3500, 2006), which
@@ -29,5 +30,5 @@ export function mostCommon(sample: Float64Array): number {
 /** Robust standard deviation from the values below `centre` only: 1.4826 × their median distance. 0 for none. */
 export function lowerScatter(sample: Float64Array, centre: number): number {
   const below = sample.filter((value) => value < centre).map((value) => centre - value).sort();
-  return below.length === 0 ? 0 : 1.482602218505602 * below[below.length >> 1]!;
+  return below.length === 0 ? 0 : madScale * below[below.length >> 1]!;
 }

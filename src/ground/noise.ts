@@ -1,3 +1,4 @@
+import { madScale } from '../stats/mad.ts';
 import { medianInPlace } from '../stats/median.ts';
 
 /**
@@ -14,5 +15,5 @@ export function pixelNoise(values: Float32Array, columns: number, rows: number, 
     const d = Math.abs(values[i]! - values[i - 1]!);
     if (!Number.isNaN(d)) differences[count++] = d;
   }
-  return (1.482602218505602 * medianInPlace(differences, count)) / Math.SQRT2;
+  return (madScale * medianInPlace(differences, count)) / Math.SQRT2;
 }

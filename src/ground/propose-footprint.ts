@@ -8,6 +8,7 @@ import { pixelAreaM2 } from '../grid/maps.ts';
 import type { Grid, MaskMap, ScalarMap } from '../grid/maps.ts';
 import { traceOutline } from '../grid/trace-outline.ts';
 import { solveBand } from '../stats/cholesky.ts';
+import { madScale } from '../stats/mad.ts';
 import { median } from '../stats/median.ts';
 import { mostCommon } from './centre.ts';
 import { sampleStep, subSample } from './fit-form.ts';
@@ -159,7 +160,7 @@ function slopeForm(values: Float32Array, columns: number, rows: number, powers: 
       for (let i = 0; i < n; i++) fit += form[i]! * basis[e * n + i]!;
       residual[e] = differences[e]! - fit;
     }
-    const reach = 4.685 * Math.max(1e-12, 1.482602218505602 * median(residual.map(Math.abs)));
+    const reach = 4.685 * Math.max(1e-12, madScale * median(residual.map(Math.abs)));
     weights = residual.map((d) => (Math.abs(d) < reach ? (1 - (d / reach) ** 2) ** 2 : 0));
   }
   return form;

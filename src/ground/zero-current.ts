@@ -1,4 +1,5 @@
 /** Offset and noise of a current amplifier, read from pixels that carry no current. */
+import { madScale } from '../stats/mad.ts';
 import { medianInPlace } from '../stats/median.ts';
 import { quantile } from '../stats/quantile.ts';
 
@@ -78,7 +79,7 @@ function peakOf(sample: Float64Array): Peak {
   for (let round = 0; round < 6; round++) {
     const below = sample.filter((v) => v <= centre).map((v) => centre - v).sort();
     const near = below.filter((d) => width === 0 || d < 4 * width);
-    width = near.length === 0 ? 0 : 1.482602218505602 * near[near.length >> 1]!;
+    width = near.length === 0 ? 0 : madScale * near[near.length >> 1]!;
     const around = sample.filter((v) => Math.abs(v - centre) < 3 * width);
     count = around.length;
     if (count === 0) break;
@@ -128,6 +129,6 @@ function weakNoise(values: Float32Array, columns: number): number {
     if (i % columns !== 0 && Math.abs(values[i]!) <= limit && Math.abs(values[i - 1]!) <= limit) differences.push(Math.abs(values[i]! - values[i - 1]!));
   }
   const buffer = Float64Array.from(differences);
-  const noise = (1.482602218505602 * medianInPlace(buffer, buffer.length)) / Math.SQRT2;
+  const noise = (madScale * medianInPlace(buffer, buffer.length)) / Math.SQRT2;
   return Number.isNaN(noise) ? 0 : noise;
 }

@@ -1,5 +1,6 @@
 /** Books every pixel of the footprint to one cause. */
 import type { FlawCause } from '../flaws/flaws.ts';
+import { squaredDistance } from '../grid/distance.ts';
 import type { Grid } from '../grid/maps.ts';
 import { pixelAreaM2 } from '../grid/maps.ts';
 import { labelComponents } from '../grid/label-components.ts';
@@ -9,6 +10,11 @@ import { causes } from './ledger.ts';
 /** Code of a cause. */
 export function codeOf(cause: Cause): number {
   return causes.indexOf(cause);
+}
+
+/** Half-width of the band in decades, with a hair of tolerance, so that a density exactly at its edge is in band whatever the rounding. */
+export function bandDecades(factor: number): number {
+  return Math.log10(factor) + 1e-6;
 }
 
 export interface BookingInput {
@@ -44,8 +50,7 @@ export function bookCauses(input: BookingInput): Uint8Array {
   const flawCodes = Uint8Array.from(flawCauses, (cause) => (cause ? codeOf(cause) : 0));
   const [usable, unmeasured, thin, thick, starved] = [codeOf('usable'), codeOf('unmeasured'), codeOf('thin'), codeOf('thick'), codeOf('starved')];
   const open = codeOf('open');
-  // A hair of tolerance, so that a density exactly at the band's edge is in band whatever the rounding.
-  const band = Math.log10(input.bandFactor) + 1e-6;
+  const band = bandDecades(input.bandFactor);
   for (let i = 0; i < count; i++) {
     if (footprint[i] === 0) continue;
     const flaw = flawCodes[flawLabels[i]!]!;
@@ -75,32 +80,49 @@ export function bookCauses(input: BookingInput): Uint8Array {
 
 /**
  * Books usable pixels whose centre lies closer than `reachM` to a pixel where `mask` is 0 (to its nearest edge, not its centre) as rim. Exact for
- * unequal pitches: first the distance up and down to the nearest such pixel's edge, then the nearest over the columns within reach.
+ * unequal pitches. The distance between centres decides nearly all: the nearest edge is closer than the nearest centre by at most half
+ * a pixel's diagonal, so only pixels within that of the limit are measured to the edges themselves.
  */
 function bookNear(codes: Uint8Array, mask: Uint8Array, grid: Grid, reachM: number, outsideIsBackground: boolean): void {
   const { columns, rows, pitchXM, pitchYM } = grid;
-  const vertical = new Float32Array(codes.length);
-  for (let c = 0; c < columns; c++) {
-    let run = outsideIsBackground ? 0 : Number.POSITIVE_INFINITY;
-    for (let r = 0; r < rows; r++) vertical[r * columns + c] = run = mask[r * columns + c] === 0 ? 0 : run + 1;
-    run = outsideIsBackground ? 0 : Number.POSITIVE_INFINITY;
-    for (let r = rows - 1; r >= 0; r--) {
-      const i = r * columns + c;
-      run = mask[i] === 0 ? 0 : run + 1;
-      vertical[i] = Math.max(0, Math.min(vertical[i]!, run) - 0.5) * pitchYM;
-    }
-  }
   const [usable, rim] = [codeOf('usable'), codeOf('rim')];
-  const reachPx = Math.ceil(reachM / pitchXM + 0.5);
-  for (let r = 0, i = 0; r < rows; r++) {
-    for (let c = 0; c < columns; c++, i++) {
-      if (codes[i] !== usable) continue;
-      if (outsideIsBackground && (Math.min(c, columns - 1 - c) + 0.5) * pitchXM < reachM) codes[i] = rim;
-      for (let d = -Math.min(reachPx, c); codes[i] === usable && d <= Math.min(reachPx, columns - 1 - c); d++) {
-        if (Math.hypot(Math.max(0, Math.abs(d) - 0.5) * pitchXM, vertical[i + d]!) < reachM) codes[i] = rim;
+  if (outsideIsBackground) {
+    for (let r = 0, i = 0; r < rows; r++) {
+      const nearRow = (Math.min(r, rows - 1 - r) + 0.5) * pitchYM < reachM;
+      for (let c = 0; c < columns; c++, i++) {
+        if (codes[i] === usable && (nearRow || (Math.min(c, columns - 1 - c) + 0.5) * pitchXM < reachM)) codes[i] = rim;
       }
     }
   }
+  if (!mask.includes(0)) return;
+  const between = squaredDistance(mask, columns, rows, { pitchX: pitchXM, pitchY: pitchYM });
+  // Widened by more than the rounding of the distances to single precision.
+  const certain = (reachM * (1 - 1e-6)) ** 2;
+  const possible = ((reachM + Math.hypot(pitchXM, pitchYM) / 2) * (1 + 1e-6)) ** 2;
+  let vertical: Float32Array | undefined;
+  for (let i = 0; i < codes.length; i++) {
+    if (codes[i] !== usable || between[i]! >= possible) continue;
+    if (between[i]! < certain || edgeWithin(i, grid, reachM, (vertical ??= verticalEdges(mask, grid)))) codes[i] = rim;
+  }
+}
+
+/** Whether the edge of a pixel of the mask's background lies closer than `reachM` to a pixel's centre: looks at the columns within reach. */
+function edgeWithin(i: number, { columns, pitchXM }: Grid, reachM: number, vertical: Float32Array): boolean {
+  const c = i % columns;
+  const reachPx = Math.ceil(reachM / pitchXM + 0.5);
+  for (let d = -Math.min(reachPx, c); d <= Math.min(reachPx, columns - 1 - c); d++) {
+    if (Math.hypot(Math.max(0, Math.abs(d) - 0.5) * pitchXM, vertical[i + d]!) < reachM) return true;
+  }
+  return false;
+}
+
+/** Distance from each pixel's centre up or down to the nearest edge of a background pixel of its column, Infinity where there is none. */
+function verticalEdges(mask: Uint8Array, { columns, pitchYM }: Grid): Float32Array {
+  const steps = new Float32Array(mask.length);
+  for (let i = 0; i < steps.length; i++) steps[i] = mask[i] === 0 ? 0 : i < columns ? Number.POSITIVE_INFINITY : steps[i - columns]! + 1;
+  for (let i = steps.length - columns - 1; i >= 0; i--) steps[i] = Math.min(steps[i]!, steps[i + columns]! + 1);
+  for (let i = 0; i < steps.length; i++) steps[i] = Math.max(0, steps[i]! - 0.5) * pitchYM;
+  return steps;
 }
 
 function bookStray(codes: Uint8Array, input: BookingInput, areaM2: number): void {

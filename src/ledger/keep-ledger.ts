@@ -1,19 +1,22 @@
 import ndarray from 'ndarray';
 import type { Barrier } from '../barrier/barrier.ts';
+import type { BarrierSection } from '../barrier/recipe.ts';
 import type { Flaws } from '../flaws/flaws.ts';
 import { labelComponents } from '../grid/label-components.ts';
 import { pixelAreaM2, scalarMap } from '../grid/maps.ts';
-import type { Ground } from '../ground/ground.ts';
+import type { CurrentGround, Ground } from '../ground/ground.ts';
 import { layerMask } from '../read/footprint.ts';
 import type { Sample } from '../read/sample.ts';
 import type { Sheet } from '../sheet/sheet.ts';
 import { bookCauses, codeOf } from './book-causes.ts';
 import { glowMap } from './glow-map.ts';
+import { layerCostSpread } from './layer-cost-spread.ts';
 import type { Cause, Ledger, LedgerRow, Usable } from './ledger.ts';
 import { causes } from './ledger.ts';
 import { missedShorts } from './missed-shorts.ts';
 import type { BandSection } from './recipe.ts';
-import { usableHalfWidth } from './usable-interval.ts';
+import { usableInterval } from './usable-interval.ts';
+import type { IntervalInput } from './usable-interval.ts';
 import { verdictSentence } from './verdict.ts';
 
 export interface LedgerInput {
@@ -23,10 +26,9 @@ export interface LedgerInput {
   readonly barrier?: Barrier | undefined;
   readonly sheet?: Sheet | undefined;
   readonly band: BandSection;
-  /** Area of the probe's contact, m². */
-  readonly contactAreaM2: number;
-  /** True when the emitter's or injector's voltage drop was asked for. */
-  readonly sheetAsked: boolean;
+  /** Recipe of the barrier, and the part of the device's bias that does not fall across it, volts. */
+  readonly barrierSection: BarrierSection;
+  readonly offsetV: number;
 }
 
 /**
@@ -65,8 +67,10 @@ export function keepLedger(input: LedgerInput): Ledger {
   let repairedPixels = 0;
   for (let i = 0; i < count; i++) if (repaired[i] === 1 && footprint.data[i] === 1) repairedPixels++;
   const shorts = flaws.list.filter((flaw) => flaw.cause === 'short' && insideFootprint(input, flaw.xM, flaw.yM)).length;
-  const seenOnM2 = (footprintPixels - pixels[codeOf('unmeasured')]! - pixels[codeOf('bubble')]! - pixels[codeOf('residue')]! - pixels[codeOf('wrinkle')]!) * areaM2;
-  const missed = missedShorts(shorts, seenOnM2, grid, input.contactAreaM2);
+  const areaOf = (...named: Cause[]): number => named.reduce((sum, cause) => sum + pixels[codeOf(cause)]!, 0) * areaM2;
+  const seenOnM2 = footprintPixels * areaM2 - areaOf('unmeasured', 'bubble', 'residue', 'wrinkle');
+  // Shorts do not show in height.
+  const missed = current && missedShorts(shorts, seenOnM2, grid, input.barrierSection.tipAreaNm2 * 1e-18);
   return {
     codes: ndarray(codes, [grid.rows, grid.columns]),
     glow: scalarMap(grid, glowMap(codes, sheet?.relativeDensity.data ?? relativeOf(barrier), metalOf(sample))),
@@ -75,10 +79,11 @@ export function keepLedger(input: LedgerInput): Ledger {
     footprintPixels,
     repairedM2: repairedPixels * areaM2,
     usable,
-    missedShorts: missed,
+    ...(missed ? { missedShorts: missed } : {}),
     verdict: verdictSentence({
       usable, footprintM2: footprintPixels * areaM2, surface: sample.surface, bandFactor: band.factor, hasCurrent: current !== undefined,
       biasV: barrier?.device?.biasV, proposed: barrier?.device?.proposed, shorts: missed,
+      unmeasuredM2: areaOf('unmeasured'), setAsideM2: areaOf('starved', 'rim', 'stray'),
       mayGlow: barrier?.device !== undefined && barrier.device.high95 >= band.minNaPerUm2 * 1e3 && barrier.device.low95 <= band.maxNaPerUm2 * 1e3,
     }),
     warnings: [],
@@ -92,20 +97,22 @@ function usableOf(input: LedgerInput, codes: Uint8Array, pixels: number, footpri
   const patches = labelComponents(codes.map((code) => (code === usableCode ? 1 : 0)), columns, rows, 4);
   let largest = 0;
   for (let n = 1; n <= patches.count; n++) largest = Math.max(largest, patches.pixels[n]!);
-  const half = usableHalfWidth({
-    grid: sample.grid, codes, pixelAreaM2: areaM2,
-    ...(barrier && ground.current
-      ? { log10: ground.current.log10.data, referenceLog10: Math.log10(barrier.reference.median), stepDecades: barrier.ladder.stepDecades, stepSeDecades: barrier.ladder.stepSeDecades }
-      : {}),
-  });
+  const interval = usableInterval({ grid: sample.grid, codes, usablePixels: pixels, footprintPixels, ...(barrier && ground.current ? { density: densityOf(input, barrier, ground.current) } : {}) });
   return {
     areaM2: pixels * areaM2,
     share: footprintPixels > 0 ? pixels / footprintPixels : 0,
-    low95M2: Math.max(0, pixels * areaM2 - half),
-    high95M2: Math.min(footprintPixels * areaM2, pixels * areaM2 + half),
+    ...interval,
     largestPatchM2: largest * areaM2,
     knownToGlow: barrier?.reference.inRange === true,
     meaning: ground.current ? 'usable' : 'flaw-free',
+  };
+}
+
+function densityOf({ barrierSection, band, offsetV }: LedgerInput, barrier: Barrier, current: CurrentGround): NonNullable<IntervalInput['density']> {
+  return {
+    barrier, log10: current.log10.data, bandFactor: band.factor,
+    byPixel: barrierSection.withinTerrace === 'barrier' || barrier.ladder.from === 'assumed',
+    layerCostSpread: layerCostSpread({ barrier, section: barrierSection, offsetV, scanBiasV: current.biasV }),
   };
 }
 

@@ -28,7 +28,7 @@ export interface LedgerRow {
 export interface Usable {
   readonly areaM2: number;
   readonly share: number;
-  /** This map's 95 % interval (noise, thresholds, anchor, band edges). */
+  /** This map's 95 % interval: outlines, borders of terraces and band edges (`usableInterval`). */
   readonly low95M2: number;
   readonly high95M2: number;
   readonly largestPatchM2: number;
@@ -60,7 +60,8 @@ export interface Ledger {
   readonly footprintPixels: number;
   readonly repairedM2: number;
   readonly usable: Usable;
-  readonly missedShorts: MissedShorts;
+  /** Absent without a current: shorts do not show in height. */
+  readonly missedShorts?: MissedShorts;
   readonly verdict: string;
   readonly warnings: readonly Notice[];
 }

@@ -56,6 +56,8 @@ export const readSentences = {
   'page-absent': (d: { sample: string; file: string; page: number; pages: number }) =>
     `${d.sample}: ${d.file}#${d.page} is asked for, but the file has ${d.pages === 1 ? 'one map' : `${d.pages} maps`}; pages count from 1.`,
   'channel-ignored': (d: { source: string; file: string }) => `${d.source} is neither a height nor a current by its name and was left out; name the page in ${d.file} if it is one.`,
+  'bias-disagreement': (d: { file: string; first: string; firstV: number; second: string; secondV: number }) =>
+    `${d.file}: ${d.first} gives ${d.firstV} V but ${d.second} gives ${d.secondV} V; correct the wrong one, or decide with --set scan.biasV.`,
   'bias-overridden': (d: { file: string; statedV: number; usedV: number; by: string }) => `${d.file}: ${d.by} gives ${d.statedV} V; scan.biasV = ${d.usedV} V was used instead.`,
   'sample-no-map': (d: { sample: string }) => `${d.sample} names no map; give its height or its current.`,
   'sidecar-ignored': (d: { file: string }) => `${d.file} holds none of Evenglow's keys and was ignored; widthUm, heightUnit, currentUnit and biasV are the usual ones.`,

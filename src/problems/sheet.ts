@@ -1,13 +1,17 @@
-const volts = (value: number): string => String(Number(value.toPrecision(4)));
+/** A bias as it was given; one that was proposed has endless digits and is rounded. */
+const volts = (value: number): string => {
+  const given = String(Number(value.toPrecision(12)));
+  return given.length <= 8 ? given : String(Number(value.toPrecision(3)));
+};
 
 /** The way out for each reason why no density is known. */
 const noDensityWords = {
   'current-relative': 'state the current’s unit (scan.currentUnit)',
   'bias-missing': 'state the scan’s bias (scan.biasV)',
-  'stack-surface': 'a finished stack’s surface does not give it; scan the bare barrier',
-  'no-ground': 'all flawless ground lies at the amplifier’s floor or limit; scan again at another gain or bias',
-  model: 'the model does not hold at these biases or currents; set barrier.model to wkb or check the barrier’s values',
-  'device-bias': 'nothing, or not the target, flows at the device’s bias; check stack.biasV, stack.offsetV and stack.targetNaPerUm2',
+  'stack-surface': 'scan the bare barrier, as a finished stack’s surface does not give it',
+  'no-ground': 'scan again at another gain or bias, as all flawless ground lies at the amplifier’s floor or limit',
+  model: 'set barrier.model to wkb or check the barrier’s values, as the model does not hold at these biases or currents',
+  'device-bias': 'check stack.biasV, stack.offsetV and stack.targetNaPerUm2',
 } as const;
 
 /** Sentences about outlines, contacts and voltage drop. */

@@ -8,16 +8,16 @@ import { footprintOf } from './footprint.ts';
 import type { InputFile } from './input.ts';
 import { mirrorMap } from './mirror.ts';
 import { readOutlines } from './outlines.ts';
-import { filesOf } from './pairing.ts';
 import type { SampleGroup } from './pairing.ts';
 import type { ScanSection } from './recipe.ts';
 import { assignRoles, candidatesOf } from './roles.ts';
 import type { Candidate } from './roles.ts';
-import type { Channel, Quantity, Sample, SourceRecord } from './sample.ts';
+import type { Channel, Quantity, Sample } from './sample.ts';
 import { settleStatements } from './settle-statements.ts';
 import type { Settled } from './settle-statements.ts';
 import { mergeStated, readSidecar } from './sidecar.ts';
 import type { Stated } from './sidecar.ts';
+import { sourceRecords } from './sources.ts';
 import { toSi } from './to-si.ts';
 
 /**
@@ -54,11 +54,7 @@ export async function readSample(group: SampleGroup, files: readonly InputFile[]
   const footprint = footprintOf(grid, outlines);
   if (!footprint.data.includes(1)) throw new Problem('footprint-empty', { sample: group.name, file: group.outlines ?? '' });
 
-  const sources: SourceRecord[] = [];
-  for (const name of filesOf(group)) {
-    const { bytes } = find(name);
-    sources.push({ name, sha256: await sha256(bytes), bytes: bytes.length });
-  }
+  const sources = await sourceRecords(group, (name) => find(name).bytes, sha256);
   return {
     name: group.name, grid, channels: inOrder(channels, scan),
     surface: scan.surface === 'stack' ? 'stack' : stated.surface ?? scan.surface,

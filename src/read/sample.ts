@@ -19,7 +19,10 @@ export interface Channel {
   readonly values: ScalarMap;
 }
 
-/** A file that went into the sample, so that another lab can check it has the same bytes. */
+/**
+ * A file that went into the sample, so that another lab can check it has the same bytes; or its row of a manifest, called by its place, of which the
+ * hash is that of what it states. Together with the recipe the records determine the sample.
+ */
 export interface SourceRecord {
   readonly name: string;
   readonly sha256: string;

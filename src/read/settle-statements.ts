@@ -28,7 +28,7 @@ type Pitch = { readonly xM: number; readonly yM: number };
 
 /**
  * Settles all maps of a sample. Throws `grid-mismatch` when shapes differ or pitches differ by more than 1 %,
- * `statements-missing` naming every role, unit and size that nothing states with the options that supply them,
+ * `bias-disagreement`, `statements-missing` naming every role, unit and size that nothing states with the options that supply them,
  * and what `resolveUnit` and `resolvePitch` throw.
  */
 export function settleStatements(sample: string, maps: readonly RoledMap[], statements: Statements, scan: ScanSection): { maps: Settled[]; grid: Grid; warnings: Notice[] } {
@@ -92,16 +92,24 @@ function givenUnits(quantity: Quantity, { stated, by }: Statements, scan: ScanSe
 }
 
 /**
- * The bias of a current map. With several forward currents their names (or tags) tell them apart and
- * `scan.biasV` only says which comes first; otherwise the recipe wins over name, tag and sidecar.
+ * The bias of a current map. With several forward currents their names (or tags) tell them apart, a sidecar speaks for those that say nothing, and
+ * `scan.biasV` only says which comes first. A single one's name, its tag and sidecar or manifest must agree within 1 %, as sizes must;
+ * the recipe wins over all of them, with a remark. Throws `bias-disagreement`.
  */
 function withBias(map: RoledMap, currents: number, { stated, by }: Statements, scan: ScanSection, warnings: Notice[]): RoledMap {
-  if (map.quantity !== 'current' || (currents > 1 && map.biasV !== undefined)) return map;
-  const said = map.biasV ?? stated.biasV;
-  const biasV = scan.biasV ?? said;
-  if (biasV === undefined) return map;
-  if (said !== undefined && said !== biasV) {
-    warnings.push(notice('bias-overridden', { file: map.source, statedV: said, usedV: biasV, by: map.biasV === undefined ? by : 'its name or tag' }));
+  if (map.quantity !== 'current') return map;
+  const toldApart = currents > 1 && map.biasV !== undefined;
+  const said = [
+    { by: 'its name', biasV: map.named.biasV }, { by: 'its own description', biasV: map.decoded.biasV }, ...(toldApart ? [] : [{ by, biasV: stated.biasV }]),
+  ].filter((statement): statement is { by: string; biasV: number } => statement.biasV !== undefined);
+  const [first] = said;
+  const asked = toldApart ? undefined : scan.biasV;
+  const biasV = asked ?? first?.biasV;
+  if (biasV === undefined || first === undefined) return biasV === undefined ? map : { ...map, biasV };
+  const other = said.find((statement) => !agree(statement.biasV, biasV));
+  if (other !== undefined) {
+    if (asked === undefined) throw new Problem('bias-disagreement', { file: map.source, first: first.by, firstV: first.biasV, second: other.by, secondV: other.biasV });
+    warnings.push(notice('bias-overridden', { file: map.source, statedV: other.biasV, usedV: biasV, by: other.by }));
   }
   return { ...map, biasV };
 }

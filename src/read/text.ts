@@ -2,11 +2,17 @@
 
 // Module-scoped because the science is compiled without DOM and Node types; every realm has it.
 declare const TextDecoder: new (encoding: string) => { decode(bytes: Uint8Array): string };
+declare const TextEncoder: new () => { encode(text: string): Uint8Array };
 
 /** Text of a file: UTF-16 where a byte order mark says so, else UTF-8 (bad bytes become U+FFFD); the mark is removed. */
 export function textOf(bytes: Uint8Array): string {
   const encoding = bytes[0] === 0xff && bytes[1] === 0xfe ? 'utf-16le' : bytes[0] === 0xfe && bytes[1] === 0xff ? 'utf-16be' : 'utf-8';
   return new TextDecoder(encoding).decode(bytes);
+}
+
+/** A text as UTF-8. */
+export function bytesOfText(text: string): Uint8Array {
+  return new TextEncoder().encode(text);
 }
 
 /** Whether the first kilobytes look like text: no zero bytes (save in UTF-16) and hardly any control characters. */

@@ -43,7 +43,7 @@ function stepSize(ladder: NonNullable<Verdict['ladder']>): string {
 function devicePart({ device, reference }: Verdict): Markup {
   if (device === undefined) return markup`<dt>Device</dt><dd>not assessed: needs a current in amperes and the scan’s bias</dd>`;
   const glow = reference?.inRange === undefined ? '' : reference.inRange ? ' Within the range that glows.' : ' Outside the range that glows.';
-  return markup`<dt>Device bias</dt><dd>${plain(device.biasV)}\u00a0V, ${device.proposed ? 'proposed: there the reference carries the target density' : 'given'}</dd>
+  return markup`<dt>Device bias</dt><dd>${device.proposed ? withUnit(device.biasV, 'V') : `${plain(device.biasV)}\u00a0V`}, ${device.proposed ? 'proposed: there the reference carries the target density' : 'given'}</dd>
 <dt>Density there</dt><dd>${withUnit(device.medianNaPerUm2, 'nA/µm²')} on the reference before any voltage drop (95 %: ${interval(device.low95NaPerUm2, device.high95NaPerUm2, 'nA/µm²', 2)}, from contact area, barrier height and mass).${glow}</dd>${currentPart(device)}`;
 }
 

@@ -10,14 +10,14 @@ import type { Verdict } from './verdict.ts';
 
 const shown = 100;
 
-export function flawsPart({ flaws }: Appraised, verdict: Verdict): Markup {
+export function flawsPart({ flaws, ground }: Appraised, verdict: Verdict): Markup {
   const { count, densityPerUm2: density, shorts, expectedMissedShorts } = verdict.flaws;
+  // What the input does not show is not counted as none.
   const counts = [
-    counted(count.bubble, 'bubble'), counted(count.residue, 'patch of residue', 'patches of residue'), counted(count.wrinkle, 'wrinkle'),
-    counted(count.short, 'short'), counted(count.open, 'open spot'),
+    ...(ground.height ? [counted(count.bubble, 'bubble'), counted(count.residue, 'patch of residue', 'patches of residue'), counted(count.wrinkle, 'wrinkle')] : []),
+    ...(ground.current ? [counted(count.short, 'short'), counted(count.open, 'open spot')] : []),
   ].join(', ');
-  // Without current no short can be seen, and the number missed is not a number either.
-  const shortsLine = Number.isFinite(shorts.crossedShare)
+  const shortsLine = shorts
     ? markup`<p>Scan lines cross about ${percent(shorts.crossedShare)} of point shorts: ${shorts.seen} seen, about ${figure(expectedMissedShorts, 2)} more expected. Density of shorts ${withUnit(shorts.densityPerUm2.estimate, '/µm²', 2)} (95 %: ${interval(shorts.densityPerUm2.low95, shorts.densityPerUm2.high95, '/µm²', 2)}).</p>`
     : markup`<p>Shorts cannot be seen without a current map.</p>`;
   return markup`<section><h2>Flaws</h2>

@@ -1,4 +1,6 @@
 /** The report's first part: the verdict, the ledger as bar and table, and what the interval contains. */
+import { leastWearDecades } from '../ground/wear.ts';
+import { orderOfTest } from '../ledger/ledger.ts';
 import type { Appraised } from './appraised.ts';
 import { ledgerBar, swatch } from './ledger-figure.ts';
 import { markup, named } from './markup.ts';
@@ -22,15 +24,17 @@ ${ledgerBar(ledger.causes, { width: 1000, height: 40, labels: true })}`;
 export function ledgerPart(verdict: Verdict): Markup {
   const { ledger, usable } = verdict;
   const flawFree = usable.meaning === 'flaw-free';
-  const contents = flawFree ? 'measuring noise and the thresholds' : 'measuring noise, the thresholds, the anchor of the layer count and the band’s edges';
+  const contents = flawFree ? outlinesText : `${outlinesText}; ground whose current lies near the border between a terrace in band and one out of it; and terraces that the error of the measured ladder, or barrier height (±0.2 eV), mass (×/÷1.2) and contact area (×/÷3.2) where the device’s bias is not the scan’s, would take into the band or out of it`;
   const decimals = decimalsFor(ledger.footprintUm2);
   const rows = ledger.causes.map((row) => markup`<tr${row.areaUm2 > 0 ? '' : markup` class="none"`}><td>${swatch(row.cause)}${row.cause}</td><td>${flawFree && row.cause === 'usable' ? 'no flaw seen in height; whether it conducts is not known' : meaningOf[row.cause] ?? ''}</td><td class="n">${row.assessed || row.areaUm2 > 0 ? fixed(row.areaUm2, decimals) : '–'}</td><td class="n">${row.assessed || row.areaUm2 > 0 ? percent(row.share) : '–'}</td><td class="n">${row.pixels}</td><td>${row.assessed ? 'yes' : 'not assessed'}</td></tr>`);
   const repaired = ledger.repairedUm2 > 0 ? markup` ${withUnit(ledger.repairedUm2, 'µm²')} of broken runs were repaired from their neighbours and booked by the repaired values.` : undefined;
   return markup`<section><h2>Ledger</h2>
 <table><thead><tr><th>cause</th><th>meaning</th><th class="n">area, µm²</th><th class="n">share</th><th class="n">pixels</th><th>assessed</th></tr></thead><tbody>${rows}</tbody>
 <tfoot><tr><td>footprint</td><td></td><td class="n">${fixed(ledger.footprintUm2, decimals)}</td><td class="n">100 %</td><td class="n">${ledger.footprintPixels}</td><td></td></tr></tfoot></table>
-<p class="note">The causes add up to the footprint, pixel by pixel.${repaired} The 95 % interval of ${usable.meaning} ground, ${interval(usable.low95Um2, usable.high95Um2, 'µm²')}, is this map’s: it holds ${contents}. A map is a census of its footprint; the interval does not forecast another place or another flake.</p></section>`;
+<p class="note">The causes add up to the footprint, pixel by pixel.${repaired} The 95 % interval of ${usable.meaning} ground, ${interval(usable.low95Um2, usable.high95Um2, 'µm²')}, is this map’s: it holds ${contents}. It does not hold another choice of the reference terrace. Position and border errors (a third of a pixel, 0.06 of a layer’s step) are this program’s judgement, not measured. Causes are tested in this order: ${orderOfTest.join(', ')}; what none claims is ${usable.meaning}. A map is a census of its footprint; the interval does not forecast another place or another flake.</p></section>`;
 }
+
+const outlinesText = 'where the outlines of flaws and of other ground lie';
 
 const meaningOf: Readonly<Partial<Record<string, string>>> = {
   usable: 'even barrier in band',
@@ -68,6 +72,6 @@ ${current ? currentLine(current) : markup`<dt>Current</dt><dd>not measured: shor
 
 function currentLine(current: NonNullable<Appraised['ground']['current']>): Markup {
   const value = (amount: number): string => (current.unit === 'A' ? withPrefix(amount, 'A') : withUnit(amount, 'of the file’s unit'));
-  const wear = Math.abs(current.wearDecades) < 0.2 ? 'no tip wear told from the barrier' : `the tip ${current.wearDecades > 0 ? 'lost' : 'gained'} ${withUnit(Math.abs(current.wearDecades), 'decades', 2)} of conductance`;
+  const wear = current.wearDecades < leastWearDecades ? 'no loss of the tip’s conductance told from the barrier' : `the tip lost ${withUnit(current.wearDecades, 'decades', 2)} of conductance`;
   return markup`<dt>Current</dt><dd>offset ${value(current.offsetA)} removed, noise ${value(current.noiseA)}, floor ${value(current.floorA)}, ${counted(current.saturatedPixels, 'pixel')} saturated, ${current.repairedPixels} repaired; ${wear}</dd>`;
 }

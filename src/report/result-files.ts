@@ -2,12 +2,13 @@
 import type { App, Appraised } from './appraised.ts';
 import { writeReport } from './report.ts';
 import { resultMaps } from './result-maps.ts';
+import { fixedNames, kindOfResult } from './result-names.ts';
+import type { ResultKind } from './result-names.ts';
 import { writeFlawsCsv, writeLedgerCsv } from './tables.ts';
 import { writeVerdict } from './verdict.ts';
 
-/** Kinds of files that `--only` names. */
-export const resultKinds = ['json', 'csv', 'tif', 'html', 'gds', 'dxf', 'svg'] as const;
-export type ResultKind = (typeof resultKinds)[number];
+export { resultKinds } from './result-names.ts';
+export type { ResultKind } from './result-names.ts';
 
 export interface ResultFile {
   /** Name inside the sample's folder. */
@@ -21,9 +22,13 @@ export interface ResultFile {
 export function resultFiles(appraised: Appraised, app: App): ResultFile[] {
   return [
     ...resultMaps(appraised).map(({ file, bytes }): ResultFile => ({ name: file, kind: 'tif', content: bytes })),
-    { name: 'ledger.csv', kind: 'csv', content: () => writeLedgerCsv(appraised.ledger) },
-    { name: 'flaws.csv', kind: 'csv', content: () => writeFlawsCsv(appraised.flaws) },
-    { name: 'report.html', kind: 'html', content: () => writeReport(appraised, app) },
-    { name: 'verdict.json', kind: 'json', content: () => writeVerdict(appraised, app) },
+    ...fixedNames.map((name): ResultFile => ({ name, kind: kindOfResult(name)!, content: () => writers[name](appraised, app) })),
   ];
 }
+
+const writers: Readonly<Record<(typeof fixedNames)[number], (appraised: Appraised, app: App) => string>> = {
+  'ledger.csv': ({ ledger }) => writeLedgerCsv(ledger),
+  'flaws.csv': ({ flaws }) => writeFlawsCsv(flaws),
+  'report.html': writeReport,
+  'verdict.json': writeVerdict,
+};

@@ -3,14 +3,14 @@ import type { App } from './appraised.ts';
 import { ledgerBar, swatch } from './ledger-figure.ts';
 import { markup, named } from './markup.ts';
 import type { Markup } from './markup.ts';
-import { figure, interval, withUnit } from './numbers.ts';
+import { figure, interval, plain, withUnit } from './numbers.ts';
 import { htmlPage } from './page.ts';
 import { isFailed, rankRows, trayGroups } from './tray.ts';
 import type { FailedRow, GoodRow, RankedRow, TrayRow } from './tray.ts';
 
 const headings = {
   glows: ['Known to glow', 'The reference terrace carries a density in the range that glows. These samples compare with each other.'],
-  even: ['Even, but not known to glow', 'Each of these is even about a reference of its own, so their areas are only a hint at an order.'],
+  even: ['Even, but not known to glow', 'Each of these is even about a reference of its own, so their areas do not compare: they are not ranked by area, but listed by name, those that meet their required area first.'],
   'flaw-free': ['From height alone', 'No current was measured: the area is free of visible flaws, which does not say that it conducts evenly.'],
 } as const;
 
@@ -52,9 +52,9 @@ function requirementText({ requirementMet }: GoodRow): Markup | undefined {
   return markup`<br><span class="note">${requirementMet ? 'meets the requirement' : 'misses the requirement'}</span>`;
 }
 
-function densityText({ medianNaPerUm2, low95NaPerUm2, high95NaPerUm2, deviceBiasV }: GoodRow): Markup {
+function densityText({ medianNaPerUm2, low95NaPerUm2, high95NaPerUm2, deviceBiasV, biasProposed }: GoodRow): Markup {
   if (medianNaPerUm2 === undefined) return markup`–`;
-  return markup`${withUnit(medianNaPerUm2, 'nA/µm²', 2)} <br><span class="note">${interval(low95NaPerUm2, high95NaPerUm2, '', 2)}<br>at ${withUnit(deviceBiasV, 'V')}</span>`;
+  return markup`${withUnit(medianNaPerUm2, 'nA/µm²', 2)} <br><span class="note">${interval(low95NaPerUm2, high95NaPerUm2, '', 2)}<br>at ${biasProposed ? withUnit(deviceBiasV, 'V') : `${plain(deviceBiasV)}\u00a0V`}</span>`;
 }
 
 function failedPart(rows: readonly FailedRow[]): Markup | undefined {

@@ -1,10 +1,8 @@
 /** The tray: one row per sample, ranked, and the files tray.csv and tray.jsonl. */
 import { z } from 'zod';
 import { causes } from '../ledger/ledger.ts';
-import type { App, Appraised } from './appraised.ts';
 import { writeCsv } from './csv.ts';
 import type { Cell } from './csv.ts';
-import { verdictOf } from './verdict.ts';
 import type { Verdict } from './verdict.ts';
 
 /**
@@ -29,6 +27,8 @@ const goodRow = z.object({
   largestPatchUm2: z.number(),
   referenceLayers: z.number().optional(),
   deviceBiasV: z.number().optional(),
+  /** True when the bias is the program's proposal, not given. */
+  biasProposed: z.boolean().optional(),
   medianNaPerUm2: z.number().optional(),
   low95NaPerUm2: z.number().optional(),
   high95NaPerUm2: z.number().optional(),
@@ -49,12 +49,7 @@ export function isFailed(row: TrayRow): row is FailedRow {
   return 'error' in row;
 }
 
-/** The row of an appraised sample; `folder` is where its results lie, relative to the tray's files. */
-export function trayRow(appraised: Appraised, app: App, folder?: string): GoodRow {
-  return rowFromVerdict(verdictOf(appraised, app), folder);
-}
-
-/** The same from a verdict that was written before. */
+/** The row of an appraised sample from its verdict; `folder` is where its results lie, relative to the tray's files. */
 export function rowFromVerdict({ sample, verdict, usable, ledger, reference, device, flaws, warnings, recipe }: Verdict, folder?: string): GoodRow {
   const required = recipe.plan.requiredUm2;
   return {
@@ -71,7 +66,7 @@ export function rowFromVerdict({ sample, verdict, usable, ledger, reference, dev
     largestPatchUm2: usable.largestPatchUm2,
     ...(reference?.layers === undefined ? {} : { referenceLayers: reference.layers }),
     ...(device === undefined ? {} : {
-      deviceBiasV: device.biasV, medianNaPerUm2: device.medianNaPerUm2, low95NaPerUm2: device.low95NaPerUm2, high95NaPerUm2: device.high95NaPerUm2,
+      deviceBiasV: device.biasV, biasProposed: device.proposed, medianNaPerUm2: device.medianNaPerUm2, low95NaPerUm2: device.low95NaPerUm2, high95NaPerUm2: device.high95NaPerUm2,
     }),
     flaws: Object.values(flaws.count).reduce((sum, count) => sum + count, 0),
     warnings: warnings.length,
@@ -87,13 +82,14 @@ export function failedTrayRow(sample: string, error: { readonly code: string; re
 /**
  * Rows in the order of the groups, failures last. Within a group: those that meet their requirement, then
  * those without one, then those that miss it; of these the larger usable area first, or, where no area
- * is asked for, the larger patch; ties by name. `rank` counts within the group; failures have none.
+ * is asked for, the larger patch; ties by name. Even ground that is not known to glow is ordered by requirement and name alone: each
+ * sample's reference is its own, so their areas do not compare. `rank` counts within the group; failures and even ground have none.
  */
 export function rankRows(rows: readonly TrayRow[]): RankedRow[] {
   const sorted = [...rows].sort(compare);
   const counts = new Map<string, number>();
   return sorted.map((row) => {
-    if (isFailed(row)) return row;
+    if (isFailed(row) || row.group === 'even') return row;
     const rank = (counts.get(row.group) ?? 0) + 1;
     counts.set(row.group, rank);
     return { ...row, rank };
@@ -107,7 +103,7 @@ function compare(a: TrayRow, b: TrayRow): number {
 }
 
 const requirementOrder = ({ requirementMet }: GoodRow): number => (requirementMet === undefined ? 1 : requirementMet ? 0 : 2);
-const rankedArea = (row: GoodRow): number => (row.requirementMet === undefined ? row.largestPatchUm2 : row.usableUm2);
+const rankedArea = (row: GoodRow): number => (row.group === 'even' ? 0 : row.requirementMet === undefined ? row.largestPatchUm2 : row.usableUm2);
 
 const bookedCauses = causes.filter((cause) => cause !== 'outside' && cause !== 'usable');
 

@@ -7,6 +7,7 @@ import type { Sample } from '../read/sample.ts';
 import type { SheetTotals } from '../sheet/sheet.ts';
 import { poissonInterval } from '../stats/poisson.ts';
 import type { App, Appraised } from './appraised.ts';
+import { resultNames } from './result-names.ts';
 import { rounded, toNaPerUm2, toNm, toPerUm2, toUm, toUm2 } from './units.ts';
 import { withoutMissing } from './without-missing.ts';
 
@@ -19,7 +20,7 @@ export type Verdict = ReturnType<typeof verdictOf>;
 
 /**
  * The verdict as a plain object: SI converted to the units in the field names, nothing missing,
- * infinite or undefined in it. The same appraisal gives the same object; only `timings` differs between runs.
+ * infinite or undefined in it. `files` names the result files that this sample has; fewer lie beside it when fewer were asked for. The same appraisal gives the same object; only `timings` differs between runs.
  */
 export function verdictOf(appraised: Appraised, app: App) {
   const { sample, recipe, ground, flaws, barrier, sheet, ledger, warnings } = appraised;
@@ -31,6 +32,7 @@ export function verdictOf(appraised: Appraised, app: App) {
     verdict: ledger.verdict,
     sources: sample.sources.map(({ name, sha256, bytes }) => ({ name, sha256, bytes })),
     recipe,
+    files: resultNames(appraised),
     map: mapPart(sample),
     ground: groundPart(ground),
     footprintProposal: ground.footprintProposal && footprintPart(ground.footprintProposal),
@@ -38,7 +40,7 @@ export function verdictOf(appraised: Appraised, app: App) {
     usable: usablePart(ledger),
     reference: barrier && referencePart(barrier, ground.current),
     ladder: barrier && ladderPart(barrier),
-    device: barrier?.device && devicePart(barrier.device, ground.current, sheet?.totals),
+    device: barrier?.device && devicePart(barrier.device, sample, ground.current, sheet?.totals),
     flaws: flawsPart(flaws, ledger),
     warnings: warnings.map(({ code, message }) => ({ code, message })),
     timings: Object.fromEntries(Object.entries(appraised.timings).map(([stage, ms]) => [stage, Number(ms.toFixed(1))])),
@@ -135,9 +137,9 @@ function ladderPart({ ladder }: Barrier) {
 
 /**
  * The device's whole current takes its interval from the reference's density, in proportion. It is `censored`
- * (only a lower bound) where pixels saturated, because what flows there was not measured.
+ * (only a lower bound) where pixels of the footprint saturated, because what flows there was not measured.
  */
-function devicePart(device: NonNullable<Barrier['device']>, current: CurrentGround | undefined, totals: SheetTotals | undefined) {
+function devicePart(device: NonNullable<Barrier['device']>, { footprint }: Sample, current: CurrentGround | undefined, totals: SheetTotals | undefined) {
   const whole = totals?.deviceCurrentA;
   const scaled = (density: number): number | undefined => (whole === undefined ? undefined : rounded((whole * density) / device.median));
   return {
@@ -150,7 +152,7 @@ function devicePart(device: NonNullable<Barrier['device']>, current: CurrentGrou
     currentLow95A: scaled(device.low95),
     currentHigh95A: scaled(device.high95),
     shortShareOfCurrent: totals?.shortShareOfCurrent === undefined ? undefined : rounded(totals.shortShareOfCurrent),
-    censored: whole === undefined || current === undefined ? undefined : current.saturatedPixels > 0,
+    censored: whole === undefined || current === undefined ? undefined : current.saturated.data.some((mark, i) => mark === 1 && footprint.data[i] === 1),
   };
 }
 
@@ -164,8 +166,8 @@ function flawsPart(flaws: Flaws, ledger: Ledger) {
     densityPerUm2: {
       estimate: rounded(seen / footprintUm2), low95: rounded(interval.low / footprintUm2), high95: rounded(interval.high / footprintUm2),
     },
-    expectedMissedShorts: rounded(shorts.expectedMissed),
-    shorts: {
+    expectedMissedShorts: shorts && rounded(shorts.expectedMissed),
+    shorts: shorts && {
       seen: shorts.seen,
       crossedShare: rounded(shorts.crossedShare),
       densityPerUm2: { estimate: toPerUm2(shorts.densityPerM2), low95: toPerUm2(shorts.low95PerM2), high95: toPerUm2(shorts.high95PerM2) },

@@ -141,12 +141,37 @@ test('one terrace: the step is the model’s, and said', () => {
   assert.ok(codes(found).includes('ladder-one-terrace'));
 });
 
+test('one terrace without a model: the step is assumed, and said', () => {
+  const { sample } = createScene({ seed: 'single', size, things: typicalThings(size) });
+  const [height, current] = sample.channels;
+  const relative = createSample({ columns: size, rows: size, heightM: height!.values.data, currentA: current!.values.data, unit: 'relative', biasV: 'none' });
+  const { barrier } = evaluate(relative, createRecipe());
+  assert.equal(barrier!.ladder.from, 'assumed');
+  const said = barrier!.warnings.find(({ code }) => code === 'ladder-one-terrace')!.message;
+  assert.match(said, /assumed/);
+  assert.doesNotMatch(said, /from the model/);
+  assert.equal(barrier!.noDensity, 'current-relative');
+});
+
 test('a ladder that contradicts the model is said', () => {
-  // Terraces two layers apart look like single ones: twice the model's step.
-  const found = assess(createScene({ seed: 'jump', size, layersAt: (c) => (c < 60 ? 10 : 12), things: typicalThings(size) }));
+  // A barrier of 8 eV would lose far more per layer than this map does.
+  const found = assess(scene, { heightEv: 8 });
   assert.ok(codes(found).includes('ladder-contradicts'));
+  assert.equal(found.ladder.rungs.length, 3);
   assert.ok(!codes(assess(scene)).includes('ladder-contradicts'));
 });
+
+for (const [thick, between] of [[12, 2], [13, 3]] as const) {
+  test(`terraces of 10 and ${thick} layers are told ${between} layers apart, and the assumption is said`, () => {
+    const made = createScene({ seed: 'jump', size, layersAt: (c) => (c < 60 ? 10 : thick), things: typicalThings(size) });
+    const found = assess(made);
+    assert.deepEqual(codes(found).filter((code) => code.startsWith('ladder-')), ['ladder-skips']);
+    assertClose(found.ladder.stepDecades, found.ladder.modelStepDecades!, 0.06);
+    let wrong = 0;
+    for (let i = 0; i < size * size; i++) if (made.things[i] === '' && found.layers!.data[i] !== made.layers[i]) wrong++;
+    assert.ok(wrong < 0.001 * size ** 2, `${wrong} pixels with a wrong count`);
+  });
+}
 
 test('a runner-up within 10 % is a remark', () => {
   const halves = assess(createScene({ seed: 'halves', size, layersAt: (c) => (c < 62 ? 11 : 12), things: typicalThings(size).slice(0, 1) }));
@@ -176,4 +201,67 @@ test('a model that does not hold at the scan’s bias: terraces, but no layers',
   const appraisal = evaluate(createSample({ columns: size, rows: size, heightM: scene.heightM, currentA: scene.currentA, biasV: scanV }), createRecipe({ barrier: { model: 'simmons' }, stack: { biasV: 4 } }));
   assert.deepEqual([appraisal.barrier!.layers, appraisal.barrier!.device], [undefined, undefined]);
   assert.ok(appraisal.barrier!.ladder.from === 'map');
+  const said = appraisal.warnings.find(({ code }) => code === 'model-out-of-range')!.message;
+  for (const part of ['simmons', '5.9 V', 'wkb', 'ratio of currents']) assert.ok(said.includes(part), said);
+  assert.equal(appraisal.barrier!.noDensity, 'model');
+});
+
+test('a model that does not hold at the device’s bias, or knows no such current: said', () => {
+  const at2 = createScene({ seed: 'low', size, biasV: 2, layersAt: () => 6 });
+  const device = assess(at2, { model: 'simmons', referenceLayers: 6 }, { ...wide, biasV: 4 });
+  assert.deepEqual([device.device, device.noDensity, codes(device).includes('model-out-of-range')], [undefined, 'model', true]);
+  assert.match(device.warnings.find(({ code }) => code === 'model-out-of-range')!.message, /device’s bias of 4 V/);
+  const bright = assess(scene, { tipAreaNm2: 0.01, heightEv: 0.2 });
+  assert.deepEqual([bright.layers === undefined, bright.noDensity], [true, 'model']);
+  const said = bright.warnings.find(({ code }) => code === 'model-no-thickness')!.message;
+  for (const part of ['wkb', '5.9 V', 'barrier.tipAreaNm2', 'ratio of currents']) assert.ok(said.includes(part), said);
+});
+
+for (const [biasV, offsetV, named] of [[0, 0, ['stack.biasV = 0 V']], [1, 2, ['stack.biasV = 1 V', 'stack.offsetV = 2 V']], [-1.5, 1.5, ['stack.biasV = -1.5 V']]] as const) {
+  test(`nothing flows at ${biasV} V with an offset of ${offsetV} V: the ratio of currents judges, and it is said`, () => {
+    const appraisal = evaluate(scene.sample, createRecipe({ stack: { biasV, offsetV, emitterSheetOhm: 1e4 } }));
+    const { barrier, ledger, warnings } = appraisal;
+    assert.deepEqual([barrier!.device, barrier!.noDensity, barrier!.reference.inRange, barrier!.reference.layers], [undefined, 'device-bias', undefined, 11]);
+    const atScan = evaluate(scene.sample, createRecipe({ stack: { biasV: scanV } }));
+    assert.deepEqual(ledger.rows.map(({ pixels }) => pixels), atScan.ledger.rows.map(({ pixels }) => pixels));
+    assert.ok(ledger.usable.areaM2 > 0);
+    const said = warnings.find(({ code }) => code === 'device-bias-no-density')!.message;
+    for (const part of [...named, 'ratio of currents', '5.9 V']) assert.ok(said.includes(part), said);
+    const drop = warnings.find(({ code }) => code === 'sheet-no-density')!.message;
+    assert.ok(drop.includes('stack.biasV') && !drop.includes('current unit'), drop);
+    for (const { message } of warnings) assert.ok(!/NaN|undefined/.test(message), message);
+  });
+}
+
+test('no bias is proposed where none gives the target: said', () => {
+  const found = assess(scene, {}, { ...wide, biasV: undefined, offsetV: -10 });
+  assert.deepEqual([found.device, found.noDensity], [undefined, 'device-bias']);
+  assert.match(found.warnings.find(({ code }) => code === 'device-bias-not-found')!.message, /stack\.targetNaPerUm2 = 1 nA/);
+});
+
+test('the proposed bias gives the reference the target density', () => {
+  for (const barrier of [{}, { tipAreaNm2: 30 }, { referenceLayers: 9 }, { referenceLayers: 13 }]) {
+    const { device } = assess(scene, barrier, { ...wide, biasV: undefined });
+    assert.equal(device!.proposed, true);
+    assertClose(device!.median, band.targetAPerM2, 1e-6, JSON.stringify(barrier));
+  }
+});
+
+test('thin ground has at least one layer, in the ladder and in both maps', () => {
+  for (const withinTerrace of ['contact', 'barrier'] as const) {
+    const found = assess(scene, { referenceLayers: 1, withinTerrace });
+    assert.deepEqual(found.ladder.rungs.map(({ step, layers }) => [step, layers]), [[-1, 1], [0, 1], [1, 2]]);
+    let thinnest = Number.POSITIVE_INFINITY;
+    for (const value of found.thickness!.data) if (value < thinnest) thinnest = value;
+    assertClose(thinnest, layerNm * 1e-9, 1e-6);
+    assert.ok(found.layers!.data.every((layers, i) => layers >= 1 || scene.things[i] !== ''));
+  }
+});
+
+test('a bias is printed as it was given', () => {
+  for (const [biasV, printed] of [[3.25, '3.25 V'], [12.5, '12.5 V']] as const) {
+    const found = assess(scene, {}, { minAPerM2: 1e20, maxAPerM2: 1e21, biasV });
+    assert.match(found.warnings.find(({ code }) => code === 'reference-not-known-to-glow')!.message, new RegExp(` ${printed.replace('.', '\\.')},`));
+  }
+  assert.match(assess(scene).warnings.find(({ code }) => code === 'probe-field')!.message, / 5\.9 V/);
 });

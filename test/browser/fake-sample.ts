@@ -25,7 +25,7 @@ export const summary: SampleSummary = {
   surface: 'barrier', columns: 200, rows: 200, widthUm: 10, heightUm: 10, footprintUm2: 100, ledger,
   usable: { areaUm2: 40.7, share: 0.407, low95Um2: 37.9, high95Um2: 43.2, largestPatchUm2: 22.4, knownToGlow: true, meaning: 'usable' },
   repairedUm2: 0, height: { noiseNm: 0.08, tiltNm: 38, repairedPixels: 7 },
-  current: { unit: 'A', biasV: 5.9, offsetA: 0, noiseA: 3e-14, floorA: 9e-14, saturatedPixels: 4, repairedPixels: 5, wearDecades: 0.08 },
+  current: { unit: 'A', biasV: 5.9, offsetA: 0, noiseA: 3e-14, floorA: 9e-14, saturatedPixels: 4, repairedPixels: 5, wearDecades: 0.28, wearTold: true },
   ladder: { stepDecades: 0.8, stepSeDecades: 0.02, from: 'map', rungs: [
     { step: -1, layers: 11, areaUm2: 25, medianLog10: -9.2, bound: 'exact' }, { step: 0, layers: 12, areaUm2: 41, medianLog10: -10, bound: 'exact' },
     { step: 1, layers: 13, areaUm2: 20, medianLog10: -10.8, bound: 'exact' }, { step: 3, layers: 15, areaUm2: 7, medianLog10: -12.9, bound: 'at-least' } ] },

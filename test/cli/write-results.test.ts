@@ -5,7 +5,8 @@ import { join } from 'node:path';
 import { afterEach, beforeEach, describe, it } from 'node:test';
 import { folderName, folderNames } from '../../src/cli/folder-names.ts';
 import { writeResults, writeTray } from '../../src/cli/write-results.ts';
-import { failedTrayRow, trayRow } from '../../src/report/tray.ts';
+import { failedTrayRow, rowFromVerdict } from '../../src/report/tray.ts';
+import { verdictOf } from '../../src/report/verdict.ts';
 import { createAppraisal, createHeightOnlyAppraisal } from '../fixtures/create-appraisal.ts';
 
 const app = { name: 'Evenglow', version: '0.1.0' };
@@ -82,7 +83,7 @@ describe('writing results', () => {
   });
 
   it('writes the tray files beside the folders', async () => {
-    const rows = [trayRow(createAppraisal(), app, 'flake 04'), failedTrayRow('bad', { code: 'file-unrecognised', message: 'bad is not a format Evenglow reads.' })];
+    const rows = [rowFromVerdict(verdictOf(createAppraisal(), app), 'flake 04'), failedTrayRow('bad', { code: 'file-unrecognised', message: 'bad is not a format Evenglow reads.' })];
     await writeTray(directory, rows, app);
     assert.deepEqual((await readdir(directory)).sort(), ['tray.csv', 'tray.html', 'tray.jsonl']);
     assert.equal((await readFile(join(directory, 'tray.jsonl'), 'utf8')).trimEnd().split('\n').length, 2);

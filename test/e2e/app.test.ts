@@ -7,7 +7,7 @@ import type { Locator, Page } from 'playwright-core';
 import { demoSamples } from '../../src/demo/demo-samples.ts';
 import { expectedOf } from './expected.ts';
 import { scanPair, silentPair } from './scan-files.ts';
-import { ServedApp, areaOf, drop, plainText, rowOf, skip } from './served-app.ts';
+import { ServedApp, areaOf, drop, plainText, rowOf, skip, until } from './served-app.ts';
 import type { Visit } from './served-app.ts';
 
 describe('the app', { skip, timeout: 240_000 }, () => {
@@ -19,7 +19,6 @@ describe('the app', { skip, timeout: 240_000 }, () => {
     app = await ServedApp.start();
     visit = await app.open();
     page = visit.page;
-    page.setDefaultTimeout(30_000);
   });
   after(async () => { await app?.stop(); });
 
@@ -32,7 +31,7 @@ describe('the app', { skip, timeout: 240_000 }, () => {
     for (const { name } of demoSamples) {
       const row = rowOf(page, name);
       assert.match(await areaOf(row), /^\d[\d.]* µm²$/, name);
-      assert.match(plainText(await row.textContent()), /invented.*95 %: [\d.]+–[\d.]+ µm².*µm² is usable/, name);
+      assert.match(plainText(await row.locator('article').textContent()), /invented.*95 %: [\d.]+–[\d.]+ µm².*µm² is usable/, name);
     }
     assert.equal(await page.locator('eg-tray-row').count(), 6);
   });
@@ -42,7 +41,7 @@ describe('the app', { skip, timeout: 240_000 }, () => {
     assert.ok(kernels.length >= 1 && kernels.every((url) => url.startsWith(app.address)), kernels.join());
     const answer = await page.request.get(kernels[0]!);
     assert.equal(answer.headers()['content-type'], 'application/wasm');
-    await page.waitForFunction(`document.querySelector('eg-app').session.compute.facts().then((facts) => facts.kernels)`);
+    await until(page, `document.querySelector('eg-app').session.compute.facts().then((facts) => facts.kernels)`);
   });
 
   test('appraises a height and a current map that are dropped on it', async () => {

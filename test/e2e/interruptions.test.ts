@@ -4,7 +4,7 @@ import { after, before, describe, test } from 'node:test';
 import type { Page } from 'playwright-core';
 import { expectedOf } from './expected.ts';
 import { scanPair } from './scan-files.ts';
-import { ServedApp, areaOf, drop, rowOf, skip } from './served-app.ts';
+import { ServedApp, areaOf, drop, rowOf, skip, until } from './served-app.ts';
 import type { Visit } from './served-app.ts';
 
 /** Large enough for a run to be met in its middle. */
@@ -21,7 +21,6 @@ describe('interruptions', { skip, timeout: 240_000 }, () => {
     app = await ServedApp.start();
     visit = await app.open();
     page = visit.page;
-    page.setDefaultTimeout(60_000);
     paths = scanPair(app.folder, 'long', side);
   });
   after(async () => { await app?.stop(); });
@@ -39,14 +38,18 @@ describe('interruptions', { skip, timeout: 240_000 }, () => {
     const row = rowOf(page, 'long');
     await row.getByRole('button', { name: 'Appraise' }).click();
     await row.getByRole('button', { name: 'Cancel' }).waitFor();
-    // All of them: which one has the sample is the pool's affair.
-    await Promise.all(page.workers().map((worker) => worker.evaluate(`setTimeout(() => { throw new Error(${JSON.stringify(lost)}); })`).catch(() => {})));
-    await page.getByText('The computation stopped unexpectedly and was started again.').first().waitFor();
+    const notice = page.getByText('The computation stopped unexpectedly and was started again.').first();
+    // All of them: which one has the sample is the pool's affair. Once more where the pool was just replacing the one that had not heard of the abort.
+    for (let tries = 0; tries < 4 && !(await notice.isVisible()); tries++) {
+      await Promise.all(page.workers().map((worker) => worker.evaluate(`setTimeout(() => { throw new Error(${JSON.stringify(lost)}); })`).catch(() => {})));
+      await notice.waitFor({ timeout: 8000 }).catch(() => {});
+    }
+    await notice.waitFor();
     assert.equal(await areaOf(row), (await expectedOf(paths)).area);
   });
 
   test('all else goes on: the invented samples come, and what was open is still looked at', async () => {
-    await page.waitForFunction(`document.querySelector('eg-app').session.state.samples.every((sample) => sample.status === 'ready')`);
+    await until(page, `document.querySelector('eg-app').session.state.samples.every((sample) => sample.status === 'ready')`);
     assert.equal(await page.locator('eg-tray-row .big').count(), 7);
     await rowOf(page, 'long').getByRole('button', { name: /long$/ }).click();
     await page.getByRole('heading', { level: 1 }).waitFor();

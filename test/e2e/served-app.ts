@@ -10,6 +10,9 @@ import { listenFrom, pageServer } from '../../src/cli/serve/serve.ts';
 import { findBrowser } from '../../src/cli/setup/browser.mjs';
 import { projectRoot } from '../../src/cli/setup/set-up.mjs';
 
+/** A busy machine with one worker takes its time over the invented samples. */
+const patienceMs = 45_000;
+
 const executablePath = findBrowser(process.env, process.platform);
 
 /** For the options of a suite: what there is to say where no browser is. */
@@ -50,8 +53,26 @@ export class ServedApp {
     return new ServedApp(top, server, address, await chromium.launch({ executablePath: executablePath ?? '', args }));
   }
 
-  async open(): Promise<Visit> {
+  /** @param before script that runs in the page before its own. */
+  async open(before?: string): Promise<Visit> {
+    const page = await this.newPage();
+    return this.goTo(page, before);
+  }
+
+  /** The same with the browser's record of the given categories, which `stopTrace` ends and gives as JSON. */
+  async trace(categories: readonly string[], before?: string): Promise<Visit & { readonly stopTrace: () => Promise<string> }> {
+    const page = await this.newPage();
+    await this.browser.startTracing(page, { categories: [...categories] });
+    return { ...await this.goTo(page, before), stopTrace: async () => (await this.browser.stopTracing()).toString() };
+  }
+
+  private async newPage(): Promise<Page> {
     const page = await this.browser.newPage({ viewport: { width: 1440, height: 900 }, colorScheme: 'dark' });
+    page.setDefaultTimeout(patienceMs);
+    return page;
+  }
+
+  private async goTo(page: Page, before: string | undefined): Promise<Visit> {
     const troubles: string[] = [];
     const asked: string[] = [];
     page.on('console', (message) => { if (['error', 'warning'].includes(message.type())) troubles.push(message.text()); });
@@ -59,6 +80,7 @@ export class ServedApp {
     page.on('requestfailed', (failed) => troubles.push(`${failed.url()} failed`));
     page.on('response', (response) => { if (response.status() >= 400) troubles.push(`${response.url()} ${response.status()}`); });
     page.on('request', (request) => asked.push(request.url()));
+    if (before !== undefined) await page.addInitScript(before);
     await page.goto(this.address);
     return { page, troubles, asked };
   }
@@ -70,12 +92,25 @@ export class ServedApp {
   }
 }
 
-/** Drops files and folders of the disk on the page as the system's file manager does. */
+/** Drops files and folders of the disk on the page as the system's file manager does: once the page has said that it would take them. */
 export async function drop(page: Page, paths: readonly string[]): Promise<void> {
   const devTools = await page.context().newCDPSession(page);
   const data = { items: [], files: [...paths], dragOperationsMask: 1 };
-  for (const type of ['dragEnter', 'dragOver', 'drop'] as const) await devTools.send('Input.dispatchDragEvent', { type, x: 700, y: 500, data });
+  const drag = (type: 'dragEnter' | 'dragOver' | 'drop'): Promise<unknown> => devTools.send('Input.dispatchDragEvent', { type, x: 700, y: 500, data });
+  const cover = page.getByText('Drop to appraise');
+  await drag('dragEnter');
+  for (const end = Date.now() + patienceMs; !(await cover.isVisible()) && Date.now() < end; await page.waitForTimeout(50)) await drag('dragOver');
+  await drag('dragOver');
+  await drag('drop');
+  await cover.waitFor({ state: 'hidden' });
   await devTools.detach();
+}
+
+/** When an expression is true in the page. The browser tool's own way repeats it inside the page, where the policy forbids to evaluate text. */
+export async function until(page: Page, expression: string): Promise<void> {
+  for (const end = Date.now() + patienceMs; !(await page.evaluate<boolean>(expression)); await page.waitForTimeout(50)) {
+    if (Date.now() > end) throw new Error(`it did not come true: ${expression}`);
+  }
 }
 
 /** The row of a sample in the tray. */
@@ -90,5 +125,5 @@ export function plainText(text: string | null): string {
 
 /** The area that a sample's row shows, once there is one. */
 export async function areaOf(row: Locator): Promise<string> {
-  return plainText(await row.locator('.big').textContent({ timeout: 60_000 }));
+  return plainText(await row.locator('.big').textContent());
 }

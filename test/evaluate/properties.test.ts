@@ -57,7 +57,7 @@ function assertLedger({ ledger, sample }: Appraisal): void {
   assert.ok(usable.low95M2 >= 0 && usable.low95M2 <= usable.areaM2 && usable.areaM2 <= usable.high95M2 * (1 + 1e-12) && usable.high95M2 <= ledger.footprintM2 * (1 + 1e-12));
   assert.ok(usable.largestPatchM2 <= usable.areaM2 * (1 + 1e-12));
   assert.ok(ledger.repairedM2 <= ledger.footprintM2 * (1 + 1e-12));
-  for (const value of Object.values(ledger.missedShorts)) assert.ok(Number.isFinite(value));
+  for (const value of Object.values(ledger.missedShorts ?? {})) assert.ok(Number.isFinite(value));
   assert.ok(!/NaN|undefined|Infinity/.test(ledger.verdict), ledger.verdict);
 }
 

@@ -221,3 +221,13 @@ test('a patch of residue stays one flaw', () => {
   const things: Thing[] = [...plain.slice(0, 1), { kind: 'residue', c: 90, r: 90, radiusPx: 9, peakNm: 2.2, decades: 2.1 }];
   for (const seed of ['a', 'b', 'c']) assert.deepEqual(counts(find(createScene({ seed, size, things }).sample)), { bubble: 1, residue: 1, wrinkle: 0, short: 0, open: 0 }, seed);
 });
+
+test('a dead spot of one pixel on bright ground is open; at the foot of ground that is dim itself it is not', () => {
+  const dead: Thing[] = [{ kind: 'dead', c: 40, r: 40, radiusPx: 0.5 }, { kind: 'dead', c: 80, r: 20, radiusPx: 1.05 }];
+  const bubble: Thing = { kind: 'bubble', c: 100, r: 90, radiusPx: 10, peakNm: 26 };
+  const bright = find(createScene({ seed: 'dead', size, things: [bubble, ...dead] }).sample);
+  assert.deepEqual([counts(bright).open, flawAt(bright, 40, 40)?.cause, flawAt(bright, 40, 40)?.pixels, flawAt(bright, 80, 20)?.pixels], [2, 'open', 1, 5]);
+  // Ground a few standard deviations of the amplifier's noise above zero: pixels fall to the floor by noise.
+  const dim = find(createScene({ seed: 'dim', size, things: [bubble], biasV: 3.55 }).sample);
+  assert.equal(dim.list.filter((flaw) => flaw.cause === 'open' && flaw.pixels < 4).length, 0);
+});

@@ -4,6 +4,7 @@ import type { FlawCause } from '../../src/flaws/flaws.ts';
 import type { BookingInput } from '../../src/ledger/book-causes.ts';
 import { bookCauses, codeOf } from '../../src/ledger/book-causes.ts';
 import { causes, orderOfTest } from '../../src/ledger/ledger.ts';
+import { seededRandom } from '../../src/stats/random.ts';
 
 const um = 1e-6;
 
@@ -130,4 +131,39 @@ test('stray is judged on what the rim leaves', () => {
 
 test('unconnected ground in band is stray, other ground keeps its cause', () => {
   assert.deepEqual(book(['.+-B?S.'], { unconnected: new Uint8Array(7).fill(1) }), ['y+-B?Sy']);
+});
+
+test('rim on random footprints and pitches is that of the distance from each centre to each pixel’s edges', () => {
+  const random = seededRandom('rim');
+  for (const [pitchXUm, pitchYUm] of [[0.1, 0.1], [0.1, 0.37], [0.23, 0.05]] as const) {
+    const [columns, rows] = [19, 23];
+    for (const rimUm of [0.12, 0.31, 0.6]) {
+      const ground = Array.from({ length: columns * rows }, () => (random.uniform() < 0.03 ? ' ' : random.uniform() < 0.02 ? 'S' : '.'));
+      const drawing = Array.from({ length: rows }, (_, r) => ground.slice(r * columns, (r + 1) * columns).join(''));
+      const near = (c: number, r: number, other: string): boolean => ground.some((mark, k) => mark === other && Math.hypot(
+        Math.max(0, Math.abs(c - (k % columns)) - 0.5) * pitchXUm, Math.max(0, Math.abs(r - Math.floor(k / columns)) - 0.5) * pitchYUm) < rimUm);
+      const atBorder = (c: number, r: number): boolean => (Math.min(c, columns - 1 - c) + 0.5) * pitchXUm < rimUm || (Math.min(r, rows - 1 - r) + 0.5) * pitchYUm < rimUm;
+      const expected = (other: string, border: boolean) => drawing.map((line, r) => [...line].map((mark, c) => (mark === '.' && (near(c, r, other) || (border && atBorder(c, r))) ? 'r' : mark)).join(''));
+      assert.deepEqual(book(drawing, { rimM: rimUm * um, pitchXUm, pitchYUm }), expected(' ', true));
+      assert.deepEqual(book(drawing, { shortRimM: rimUm * um, pitchXUm, pitchYUm }), expected('S', false));
+    }
+  }
+});
+
+test('a wide rim costs about what a narrow one does', () => {
+  const side = 640;
+  const count = side * side;
+  const footprint = new Uint8Array(count).fill(1);
+  footprint.fill(0, 0, side * 3 + 40);
+  const ms = (rimM: number): number => Math.min(...[1, 2, 3].map(() => {
+    const start = performance.now();
+    bookCauses({
+      grid: { columns: side, rows: side, pitchXM: 5e-9, pitchYM: 5e-9 }, footprint, flawLabels: new Uint32Array(count), flawCauses: [undefined], unmeasured: new Uint8Array(count),
+      log10Relative: new Float32Array(count), bandFactor: 3, rimM, shortRimM: 0, strayMinM2: 0,
+    });
+    return performance.now() - start;
+  }));
+  const narrow = ms(10e-9);
+  const wide = ms(0.5e-6);
+  assert.ok(wide < 4 * narrow, `${wide} ms for ${narrow} ms`);
 });

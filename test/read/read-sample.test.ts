@@ -174,3 +174,28 @@ test('a manifest row states what a sidecar would, and must not contradict it', a
   const both = await refused(() => read({ 'tray.csv': manifest, 'a.tif': height(), 'flake.json': sidecar({ widthUm: 0.2 }) }));
   assert.match(both.message, /flake: tray\.csv line 2 says widthUm 0\.1, flake\.json says 0\.2/);
 });
+
+test('a bias in the file, its name and sidecar or manifest must agree within 1 %; the recipe decides with a remark', async () => {
+  const tagged = current(ours({ quantity: 'current', unit: 'pA', biasV: 5.9 }));
+  const scan = { widthUm: 0.1 };
+  const found = await read({ 'S.current.tif': tagged, 'S.json': sidecar({ biasV: 5.92 }) }, scan);
+  assert.deepEqual([found.channels[0]!.biasV, codes(found)], [5.9, []]);
+  const bySidecar = await refused(() => read({ 'S.current.tif': tagged, 'S.json': sidecar({ biasV: 4 }) }, scan));
+  assert.equal(bySidecar.message, 'S.current.tif: its own description gives 5.9 V but the sidecar S.json gives 4 V; correct the wrong one, or decide with --set scan.biasV.');
+  const manifest = textBytes('sample,current,biasV\nS,S.current.tif,4\n');
+  assert.match((await refused(() => read({ 'tray.csv': manifest, 'S.current.tif': tagged }, scan))).message, /5\.9 V but tray\.csv line 2 gives 4 V/);
+  assert.equal((await refused(() => read({ 'S.current.4V.tif': tagged }, scan))).code, 'bias-disagreement');
+  assert.equal((await refused(() => read({ 'S.current.4V.tif': tagged, 'S.current.5V.tif': current() }, { ...scan, currentUnit: 'pA' }))).code, 'bias-disagreement');
+  const decided = await read({ 'S.current.tif': tagged, 'S.json': sidecar({ biasV: 4 }) }, { ...scan, biasV: 4 });
+  assert.deepEqual([decided.channels[0]!.biasV, codes(decided)], [4, ['bias-overridden']]);
+});
+
+test('a manifest row is among the sources: by what it states, not by how, nor by other rows', async () => {
+  const files = (manifest: string) => ({ 'tray.csv': textBytes(manifest), 'a.tif': height() });
+  const first = (await read(files('sample,height,widthUm,heightUnit,surface\nflake,a.tif,0.1,nm,stack\n'))).sources;
+  assert.deepEqual(first.map(({ name }) => name), ['a.tif', 'tray.csv line 2']);
+  const said = (await read(files('sample;surface;widthUm;heightUnit;height\n"flake";stack;0,10;nm;a.tif\n'))).sources;
+  assert.deepEqual(said, first, 'the same statements');
+  const bare = (await read(files('sample,height,widthUm,heightUnit,surface\nflake,a.tif,0.1,nm,barrier\n'))).sources;
+  assert.deepEqual([bare[0], bare[1]!.sha256 === first[1]!.sha256], [first[0], false]);
+});

@@ -45,9 +45,9 @@ test('sidecars: known keys, unknown keys, wrong types', async () => {
   assert.deepEqual([some.stated, some.warnings[0]?.code], [{ widthUm: 10 }, 'sidecar-unknown-key']);
   assert.match(some.warnings[0]!.message, /"operator"/);
   for (const other of [{ material: 'x' }, [1, 2], 'text', {}]) assert.deepEqual(sidecar(other).warnings.map((warning) => warning.code), ['sidecar-ignored']);
-  assert.match((await refused(() => sidecar({ widthUm: 'ten' }))).message, /^S\.json, widthUm: "ten" does not fit/);
-  assert.match((await refused(() => sidecar({ widthUm: -1 }))).message, /widthUm: -1 does not fit/);
-  assert.match((await refused(() => sidecar({ heightUnit: 'A' }))).message, /heightUnit: "A" does not fit .*"nm"/);
+  assert.match((await refused(() => sidecar({ widthUm: 'ten' }))).message, /^S\.json, widthUm: "ten" is not a number\.$/);
+  assert.match((await refused(() => sidecar({ widthUm: -1 }))).message, /widthUm: -1 is not above 0/);
+  assert.match((await refused(() => sidecar({ heightUnit: 'A' }))).message, /heightUnit: "A" is not one of m, mm, .*nm/);
   assert.equal((await refused(() => readSidecar({ name: 'S.json', bytes: textBytes('{') }))).code, 'sidecar-not-json');
 });
 
@@ -58,7 +58,7 @@ test('manifests: quotes, decimal commas, bad rows spoil only themselves', async 
   const [first, ...others] = read.rows;
   assert.deepEqual([first!.sample, first!.stated], ['a, left', { sample: 'a, left', height: 'h 1.tif', widthUm: 10, biasV: -4.5 }]);
   assert.deepEqual(others.map((row) => (row.stated instanceof Problem ? row.stated.message.slice(0, 40) : 'read')), [
-    'm.csv, line 3, widthUm: "ten" does not f', 'm.csv, line 4: the row names no sample; ', 'm.csv, line 5: the row has 8 cells under', 'm.csv, line 6: sample b is named twice; ',
+    'm.csv, line 3, widthUm: "ten" is not a number.', 'm.csv, line 4: the row names no sample; ', 'm.csv, line 5: the row has 8 cells under', 'm.csv, line 6: sample b is named twice; ',
   ].map((text) => text.slice(0, 40)));
   assert.match(read.warnings[0]!.message, /"note"/);
   const [german] = manifest('sample;height;widthUm\r\na;h.tif;9,5\r\n').rows;

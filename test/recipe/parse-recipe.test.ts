@@ -1,4 +1,5 @@
 import assert from 'node:assert/strict';
+import { readFileSync } from 'node:fs';
 import { test } from 'node:test';
 import { Problem } from '../../src/problems/problem.ts';
 import { applySettings, checkRecipe, defaultRecipe, parseRecipe, recipeJsonSchema } from '../../src/recipe/parse-recipe.ts';
@@ -172,5 +173,14 @@ test('--set reaches every path of every section', () => {
       const set = applySettings(head, [`${name}.${key}=7`]) as Record<string, Record<string, unknown>>;
       assert.equal(set[name]?.[key], 7, `${name}.${key}`);
     }
+  }
+});
+
+test('a recipe saved by version 1 still opens and says what it said', () => {
+  const text = readFileSync(new URL('../fixtures/recipes/version-1.json', import.meta.url), 'utf8');
+  const { version: _, ...saved } = JSON.parse(text) as Record<string, unknown>;
+  const opened = parseRecipe(text, 'version-1.json') as unknown as Record<string, Record<string, unknown>>;
+  for (const name of Object.keys(sections)) {
+    for (const [key, value] of Object.entries(saved[name] as Record<string, unknown>)) assert.deepEqual(opened[name]?.[key], value, `${name}.${key}`);
   }
 });

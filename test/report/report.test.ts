@@ -6,7 +6,8 @@ import { ledgerBar } from '../../src/report/ledger-figure.ts';
 import { escaped, markup, named } from '../../src/report/markup.ts';
 import { changedValues } from '../../src/report/report-origin.ts';
 import { writeReport } from '../../src/report/report.ts';
-import { createAppraisal, createFlaw, createFlaws, createHeightOnlyAppraisal, createLedger, createRelativeAppraisal, createSample, grid } from '../fixtures/create-appraisal.ts';
+import { leastWearDecades } from '../../src/ground/wear.ts';
+import { createAppraisal, createBarrier, createCurrentGround, createFlaw, createFlaws, createHeightGround, createHeightOnlyAppraisal, createLedger, createRelativeAppraisal, createSample, grid } from '../fixtures/create-appraisal.ts';
 
 const app = { name: 'Evenglow', version: '0.1.0' };
 const report = (appraisal: Appraisal): string => writeReport(appraisal, app).replaceAll('\u00a0', ' ');
@@ -56,12 +57,24 @@ describe('report.html', () => {
     const text = textOf(report(createAppraisal()));
     for (const words of [
       '2.0 of 5.6 µm² is even barrier, within a factor 3, at 3.6 V on the device.', '95 %: 1.70 – 2.20 µm²', 'largest patch 1.63 µm²',
-      'holds measuring noise, the thresholds, the anchor of the layer count and the band’s edges', 'Bare barrier.', 'upper bound', '4 V',
+      'it holds where the outlines of flaws and of other ground lie; ground whose current lies near the border', 'It does not hold another choice of the reference terrace.', 'tested in this order: short, bubble, residue', 'Bare barrier.', 'upper bound', '4 V',
       '12 (4.00 nm)', '0.980 ± 0.020 decades of current, measured on this map’s terraces; the model gives 0.780 decades',
       '1.00 nA/µm² on the reference before any voltage drop (95 %: 0.15 – 6.4 nA/µm²', '3.62 V, proposed',
       'Scan lines cross about 24 % of point shorts: 1 seen, about 3.2 more expected', 'notes.txt is not a format Evenglow reads.',
       '1.2 V/nm', 'rules of your laboratory', '1.00 V/nm during the scan', 'a'.repeat(64), 'npx evenglow appraise scans --recipe recipe.json --out results', 'Evenglow 0.1.0',
     ]) assert.ok(text.includes(words), words);
+  });
+
+  it('names a loss of the tip only where it is told from the barrier, and a given bias as given', () => {
+    const withWear = (wearDecades: number): string => textOf(report(createAppraisal({ ground: { height: createHeightGround(), current: createCurrentGround({ wearDecades }), warnings: [] } })));
+    assert.ok(withWear(leastWearDecades).includes('the tip lost 0.20 decades of conductance'));
+    for (const decades of [0.9 * leastWearDecades, -0.5]) {
+      assert.ok(withWear(decades).includes('no loss of the tip’s conductance told from the barrier'));
+      assert.ok(!withWear(decades).includes('the tip lost') && !withWear(decades).includes('gained'));
+    }
+    const barrier = createBarrier();
+    const given = createAppraisal({ barrier: { ...barrier, device: { ...barrier.device!, biasV: 3.2517, proposed: false } } });
+    assert.ok(textOf(report(given)).includes('3.2517 V, given'));
   });
 
   it('gives the whole device’s current where the sheet knows it', () => {
@@ -86,8 +99,9 @@ describe('report.html', () => {
     assert.equal(html.match(/<img /g)?.length, 2);
     const text = textOf(html);
     assert.ok(text.includes('flaw-free') && text.includes('Shorts cannot be seen without a current map') && text.includes('not measured: shorts'));
-    assert.ok(text.includes('no flaw seen in height') && text.includes('it holds measuring noise and the thresholds.'));
+    assert.ok(text.includes('no flaw seen in height') && text.includes('it holds where the outlines of flaws and of other ground lie. It does not hold'));
     assert.ok(!text.includes('Reference, ladder'));
+    assert.ok(text.includes('1 wrinkle: ') && !text.includes('1 short,') && !text.includes('open spot,'), 'what height does not show is not counted');
     assert.doesNotMatch(text, /NaN|Infinity|undefined/);
   });
 

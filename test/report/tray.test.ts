@@ -1,12 +1,15 @@
 import assert from 'node:assert/strict';
 import { describe, it } from 'node:test';
+import type { Appraisal } from '../../src/evaluate/appraisal.ts';
 import { writeTrayPage } from '../../src/report/tray-page.ts';
-import { failedTrayRow, rankRows, trayHeader, trayRow, trayRowSchema, writeTrayCsv, writeTrayLines } from '../../src/report/tray.ts';
+import { failedTrayRow, rankRows, rowFromVerdict, trayHeader, trayRowSchema, writeTrayCsv, writeTrayLines } from '../../src/report/tray.ts';
 import type { GoodRow } from '../../src/report/tray.ts';
+import { verdictOf } from '../../src/report/verdict.ts';
 import { createAppraisal, createHeightOnlyAppraisal, createRelativeAppraisal } from '../fixtures/create-appraisal.ts';
 
 const app = { name: 'Evenglow', version: '0.1.0' };
-const base = trayRow(createAppraisal(), app, 'flake 04');
+const trayRow = (appraisal: Appraisal, folder?: string): GoodRow => rowFromVerdict(verdictOf(appraisal, app), folder);
+const base = trayRow(createAppraisal(), 'flake 04');
 const row = (sample: string, change: Partial<GoodRow> = {}): GoodRow => ({ ...base, sample, ...change });
 const failed = failedTrayRow('=broken', { code: 'map-all-missing', message: 'x.tif: every <height> value is missing; export the channel again.' });
 
@@ -16,11 +19,11 @@ describe('tray rows', () => {
     assert.deepEqual([base.usableUm2, base.largestPatchUm2, base.footprintUm2, base.referenceLayers, base.medianNaPerUm2, base.flaws, base.warnings], [2, 1.625, 5.625, 12, 1, 5, 1]);
     assert.ok(!('requirementMet' in base));
     const { recipe } = createAppraisal();
-    const asked = (requiredUm2: number) => trayRow(createAppraisal({ recipe: { ...recipe, plan: { ...recipe.plan, requiredUm2 } } }), app);
+    const asked = (requiredUm2: number) => trayRow(createAppraisal({ recipe: { ...recipe, plan: { ...recipe.plan, requiredUm2 } } }));
     assert.equal(asked(2).requirementMet, true);
     assert.equal(asked(2.01).requirementMet, false);
-    assert.equal(trayRow(createHeightOnlyAppraisal(), app).group, 'flaw-free');
-    assert.equal(trayRow(createRelativeAppraisal(), app).group, 'even');
+    assert.equal(trayRow(createHeightOnlyAppraisal()).group, 'flaw-free');
+    assert.equal(trayRow(createRelativeAppraisal()).group, 'even');
   });
 
   it('ranks by the largest patch where no area is asked for, groups apart, failures last', () => {
@@ -28,7 +31,16 @@ describe('tray rows', () => {
       failed, row('h', { group: 'flaw-free', largestPatchUm2: 99 }), row('b', { largestPatchUm2: 3, usableUm2: 3 }),
       row('a', { largestPatchUm2: 2, usableUm2: 9 }), row('e', { group: 'even', largestPatchUm2: 50 }), row('c', { largestPatchUm2: 3, usableUm2: 1 }),
     ]);
-    assert.deepEqual(ranked.map(({ sample, rank }) => [sample, rank]), [['b', 1], ['c', 2], ['a', 3], ['e', 1], ['h', 1], ['=broken', undefined]]);
+    assert.deepEqual(ranked.map(({ sample, rank }) => [sample, rank]), [['b', 1], ['c', 2], ['a', 3], ['e', undefined], ['h', 1], ['=broken', undefined]]);
+  });
+
+  it('orders even ground by requirement and name, never by area across private references, and gives it no rank', () => {
+    const even = (sample: string, change: Partial<GoodRow>) => row(sample, { group: 'even', ...change });
+    const plainly = rankRows([even('c', { largestPatchUm2: 9, usableUm2: 9 }), even('a', { largestPatchUm2: 1 }), even('b', { largestPatchUm2: 5 })]);
+    assert.deepEqual(plainly.map(({ sample, rank }) => [sample, rank]), [['a', undefined], ['b', undefined], ['c', undefined]]);
+    const asked = rankRows([even('a', { requirementMet: false, usableUm2: 4 }), even('d', { requirementMet: true, usableUm2: 5 }), even('c', { requirementMet: true, usableUm2: 1 })]);
+    assert.deepEqual(asked.map(({ sample }) => sample), ['c', 'd', 'a']);
+    assert.match(writeTrayPage(plainly, app), /not ranked by area/);
   });
 
   it('ranks by requirement, then usable area', () => {

@@ -1,8 +1,10 @@
 import assert from 'node:assert/strict';
 import { describe, it } from 'node:test';
+import { maskMap } from '../../src/grid/maps.ts';
+import { resultFiles } from '../../src/report/result-files.ts';
 import { verdictOf, writeVerdict } from '../../src/report/verdict.ts';
 import { withoutMissing } from '../../src/report/without-missing.ts';
-import { createAppraisal, createBarrier, createHeightOnlyAppraisal, createLedger, createRelativeAppraisal } from '../fixtures/create-appraisal.ts';
+import { createAppraisal, createBarrier, createCurrentGround, createHeightOnlyAppraisal, createLedger, createRelativeAppraisal, createSample, grid } from '../fixtures/create-appraisal.ts';
 
 const app = { name: 'Evenglow', version: '0.1.0' };
 
@@ -21,9 +23,10 @@ describe('verdict.json', () => {
   it('has the frozen layout in the units of its names', () => {
     const verdict = verdictOf(createAppraisal(), app);
     assert.deepEqual(Object.keys(verdict), [
-      'format', 'version', 'app', 'sample', 'verdict', 'sources', 'recipe', 'map', 'ground', 'ledger', 'usable', 'reference', 'ladder', 'device', 'flaws', 'warnings', 'timings',
+      'format', 'version', 'app', 'sample', 'verdict', 'sources', 'recipe', 'files', 'map', 'ground', 'ledger', 'usable', 'reference', 'ladder', 'device', 'flaws', 'warnings', 'timings',
     ]);
     assert.equal(verdict.format, 'evenglow-verdict');
+    assert.deepEqual(verdict.files, resultFiles(createAppraisal(), app).map(({ name }) => name));
     assert.equal(verdict.version, 1);
     assert.deepEqual(verdict.app, app);
     assert.deepEqual(verdict.map, { columns: 6, rows: 8, pitchXUm: 0.5, pitchYUm: 0.25 });
@@ -51,6 +54,11 @@ describe('verdict.json', () => {
       biasV: 3.62, proposed: true, medianNaPerUm2: 1, low95NaPerUm2: 0.15, high95NaPerUm2: 6.4,
       currentA: 4e-9, currentLow95A: 6e-10, currentHigh95A: 2.56e-8, shortShareOfCurrent: 0.25, censored: true,
     });
+    // The same saturated pixel beyond the footprint carries nothing in the device.
+    const sample = createSample();
+    const footprint = maskMap(grid, sample.footprint.data.map((mark, i) => (createCurrentGround().saturated.data[i] === 1 ? 0 : mark)));
+    const beyond = verdictOf(createAppraisal({ sample: { ...sample, footprint }, sheet: { relativeDensity, totals, warnings: [] } }), app);
+    assert.equal(beyond.device?.censored, false);
   });
 
   it('books causes that add up to the footprint, pixel by pixel', () => {
@@ -77,6 +85,7 @@ describe('verdict.json', () => {
     const verdict = verdictOf(createHeightOnlyAppraisal(), app);
     for (const section of ['reference', 'ladder', 'device']) assert.ok(!(section in verdict), section);
     assert.deepEqual(Object.keys(verdict.ground), ['height']);
+    assert.deepEqual(Object.keys(verdict.flaws), ['count', 'densityPerUm2'], 'nothing is known of shorts');
     assert.equal(verdict.usable.meaning, 'flaw-free');
     assert.ok(!('expectedMissedShorts' in verdict.flaws));
   });
@@ -89,7 +98,7 @@ describe('verdict.json', () => {
   });
 
   it('is plain JSON without NaN or null, whatever is missing', () => {
-    const { missedShorts } = createLedger();
+    const missedShorts = createLedger().missedShorts!;
     const barrier = createBarrier();
     const text = writeVerdict(createAppraisal({
       ledger: createLedger({ missedShorts: { ...missedShorts, expectedMissed: Infinity, high95PerM2: Infinity } }),

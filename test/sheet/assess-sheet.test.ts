@@ -178,6 +178,27 @@ test('shorts take their share of the current', () => {
   assert.equal(dropped.starved!.get(0, 3), 0);
 });
 
+test('ohmic shorts follow a straight line under a voltage drop, and the assumption is said', () => {
+  const grid = createGrid(4, 1);
+  const shorts = { mask: maskMap(grid, createMask(['...#'])), log10Relative: evenRatio(grid, 1), ohmic: { scanBiasV: 5.9, saturated: true } };
+  const outlines = [createBox(grid, 'contact-emitter', 0, 0, 1, 1)];
+  const sheet = assessSheet(createInput(grid, { shorts, device, outlines, emitterSheetOhm: 1e7 }));
+  const local = sheet.localBiasV!.get(0, 3);
+  assert.ok(local < 3.9, `${local} V left`);
+  assert.ok(Math.abs(sheet.relativeDensity.get(0, 3) / (10 * (local / 4)) - 1) < 1e-5);
+  assert.ok(sheet.relativeDensity.get(0, 2) < 0.99 * (sheet.localBiasV!.get(0, 2) / 4), 'the barrier beside it is not ohmic');
+  const said = sheet.warnings.find(({ code }) => code === 'shorts-ohmic')!.message;
+  for (const part of ['ohmic', '5.9 V', '4 V', 'lower bound']) assert.ok(said.includes(part), said);
+  assert.deepEqual(codes(createInput(grid, { device })), [], 'no shorts, nothing to say');
+});
+
+test('ground exactly at the band’s edge is in band whatever the rounding: it can be starved', () => {
+  const grid = createGrid(4, 1);
+  const outlines = [createBox(grid, 'contact-emitter', 0, 0, 1, 1)];
+  const starvedAt = (log10: number) => assessSheet(createInput(grid, { log10Relative: evenRatio(grid, log10), device, outlines, emitterSheetOhm: 1e11 })).starved!.get(0, 3);
+  assert.deepEqual([starvedAt(-Math.log10(3) - 5e-7), starvedAt(-Math.log10(3) - 5e-6)], [1, 0]);
+});
+
 test('a curve that is dead below an offset settles', () => {
   const offset = { biasV: 4, densityAPerM2: (v: number) => 5000 * (Math.max(0, v - 1.5) / 2.5) ** 2 };
   const sheet = assessSheet({ ...createRough(), emitterSheetOhm: 1e9, injectorSheetOhm: 1e7, device: offset });
@@ -190,6 +211,9 @@ test('without amperes the drop is not assessed and a warning says so', () => {
   const grid = createGrid(2, 1);
   const sheet = assessSheet(createInput(grid, { emitterSheetOhm: 1e6 }));
   assert.deepEqual(sheet.warnings.map((warning) => warning.code), ['sheet-fed-all-round', 'sheet-no-density']);
+  const asked = (noDensity: NonNullable<SheetInput['noDensity']>) => assessSheet(createInput(grid, { emitterSheetOhm: 1e6, noDensity })).warnings[1]!.message;
+  assert.match(asked('bias-missing'), /scan\.biasV/);
+  for (const reason of ['model', 'device-bias', 'stack-surface'] as const) assert.doesNotMatch(asked(reason), /scan\.biasV|unit/);
   assert.deepEqual([...sheet.relativeDensity.data], [1, 1]);
   assert.equal(sheet.starved, undefined);
 });

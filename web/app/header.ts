@@ -31,11 +31,12 @@ export class Header extends LitElement {
     .name { display: flex; align-items: center; gap: 0.6rem; margin: 0; font-size: 1rem; font-weight: 600; letter-spacing: 0.02em; }
     .dot { width: 0.6rem; height: 0.6rem; border-radius: 50%; background: #ffb454; box-shadow: 0 0 0.35rem 0.1rem rgb(255 180 84 / 60%), 0 0 1rem 0.3rem rgb(255 180 84 / 30%); }
     nav { flex: 1; min-width: 0; }
-    ol { display: flex; gap: 0.5rem; margin: 0; padding: 0; list-style: none; color: var(--dim); }
+    ol { display: flex; gap: 0.5rem; align-items: baseline; margin: 0; padding: 0; list-style: none; color: var(--dim); }
     li { min-width: 0; overflow: hidden; text-overflow: ellipsis; white-space: nowrap; }
     li:first-child { flex: none; overflow: visible; }
     li + li::before { content: '/'; margin-right: 0.5rem; color: var(--edge); }
     [aria-current] { color: var(--ink); }
+    ol button { font-size: inherit; }
     .ways { display: flex; gap: 0.5rem; align-items: center; }
     .theme { display: grid; place-items: center; padding: 0.4rem; color: var(--dim); }
     svg { display: block; width: 1.2rem; height: 1.2rem; fill: none; stroke: currentColor; stroke-width: 1.5; }

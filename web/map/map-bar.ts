@@ -33,7 +33,10 @@ export class MapBar extends LitElement {
     kbd { margin-left: 5px; font: inherit; font-size: 0.75rem; color: var(--dim, #8fa0af); }
     @container (max-width: 20rem) {
       .all { display: grid; gap: 8px; }
-      [role='group'] { display: grid; grid-template-columns: repeat(3, 1fr); gap: 4px; }
+      [role='group'] { display: grid; grid-template-columns: repeat(6, 1fr); gap: 4px; }
+      [role='group'] button { grid-column: span 2; }
+      /* Five maps: three over two. */
+      [role='group'].maps button:nth-child(4):nth-last-child(2), [role='group'].maps button:nth-child(5):last-child { grid-column: span 3; }
       .zoom { margin: 0; }
       button { padding: 0.1rem 0.2rem; }
     }
@@ -43,7 +46,7 @@ export class MapBar extends LitElement {
     const twin = rawTwin[this.map];
     const hasRaw = twin !== undefined && this.maps.includes(twin);
     return html`<div class="all">
-      <div role="group" aria-label="Map">
+      <div role="group" class="maps" aria-label="Map">
         ${switchMaps.filter((map) => this.maps.includes(map)).map((map) => html`
           <button type="button" aria-pressed=${map === this.map ? 'true' : 'false'} @click=${() => { this.send({ tool: 'map', map }); }}>${mapWords[map]}</button>`)}
       </div>

@@ -2,7 +2,11 @@
 import { css } from 'lit';
 
 export const mapPanelStyles = css`
-  :host { display: grid; grid-template: 'stage bar' auto 'stage side' minmax(0, 1fr) 'scale side' auto 'cut side' auto / minmax(0, 1fr) 14rem; gap: 10px 18px; min-height: 0; }
+  :host {
+    display: grid; grid-template: 'stage bar' auto 'stage side' minmax(0, 1fr) 'scale side' auto 'cut side' auto / minmax(0, var(--stage-width)) 16.5rem; gap: 10px 18px; min-height: 0;
+    /* What the map can use beside the scale under it, which is 100 pixels high with its gaps; never too narrow for the scale's words. */
+    --stage-width: max(24rem, calc((100cqh - 116px) * var(--map-aspect, 1)));
+  }
   eg-map-bar { grid-area: bar; }
   .stage { grid-area: stage; position: relative; min-height: 240px; }
   eg-map-stage { position: absolute; inset: 0; transition: opacity 200ms; }

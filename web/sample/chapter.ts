@@ -29,7 +29,8 @@ export abstract class Chapter extends LitElement {
     details[open] h2::before { content: '▾'; }
     .count { color: var(--dim, #8fa0af); font-size: 0.8125rem; align-self: center; }
     .finding { grid-column: 1 / -1; margin: 0; font-size: 0.9375rem; line-height: 1.45; }
-    .body { padding: 0 16px 14px; }
+    .body { padding: 0 16px 14px; max-width: 38rem; }
+    .finding { max-width: 62ch; }
     .effect { grid-column: 1 / -1; margin: 0; color: var(--good, #7fd6bb); font-size: 0.875rem; }
     .note { margin: 6px 0; color: var(--dim, #8fa0af); font-size: 0.8125rem; line-height: 1.45; }
     .caution { margin: 6px 0; padding: 6px 10px; border-left: 3px solid var(--bad, #ff9a76); background: var(--panel, #141b21); font-size: 0.8125rem; line-height: 1.45; }
@@ -67,12 +68,18 @@ export abstract class Chapter extends LitElement {
           <p class="finding">${this.finding()}</p>
           <p class="effect" role="status">${this.effect}</p>
         </summary>
-        <div class="body">
-          ${this.aboveKnobs()}
-          ${knobsOf(this.chapter, this.fields).map(({ field, plan }) => html`<eg-knob .field=${field} .slider=${plan.slider} .value=${this.given(field.path)} .found=${this.found(field.path)}></eg-knob>`)}
-          ${this.belowKnobs()}
-        </div>
+        ${this.open ? this.renderBody() : nothing}
       </details>`;
+  }
+
+  /** Made only while it is looked into: all knobs of all chapters at once would hold up the page. */
+  private renderBody() {
+    return html`
+      <div class="body">
+        ${this.aboveKnobs()}
+        ${knobsOf(this.chapter, this.fields).map(({ field, plan }) => html`<eg-knob .field=${field} .slider=${plan.slider} .value=${this.given(field.path)} .found=${this.found(field.path)}></eg-knob>`)}
+        ${this.belowKnobs()}
+      </div>`;
   }
 
   /** From the recipe in force, else the default. */

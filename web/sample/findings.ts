@@ -10,16 +10,16 @@ export function scanFinding(summary: SampleSummary): string {
   return `${surface}, ${channels}${bias}; ${summary.columns} × ${summary.rows} pixels on ${figure(summary.widthUm)} × ${withUnit(summary.heightUm, 'µm')}.`;
 }
 
-/** "38 nm of tilt removed, 12 broken pixels repaired, noise 0.08 nm; the tip lost 0.08 decades." */
+/** "38 nm of tilt removed, 12 broken pixels repaired, noise 0.08 nm; the tip lost 0.28 decades." */
 export function groundFinding({ height, current, repairedUm2 }: SampleSummary): string {
   const parts: string[] = [];
   const repaired = (height?.repairedPixels ?? 0) + (current?.repairedPixels ?? 0);
   if (height) parts.push(`${withUnit(height.tiltNm, 'nm', 2)} of tilt removed`);
-  parts.push(repaired === 0 ? 'nothing to repair' : `${counted(repaired, 'broken pixel')} repaired${repairedUm2 > 0 ? ` (${area(repairedUm2)})` : ''}`);
+  parts.push(repaired === 0 ? 'nothing to repair' : `${counted(repaired, 'broken pixel')} repaired${repairedUm2 > 0 ? ` (${area(repairedUm2)}${height && current ? ' in the current' : ''})` : ''}`);
   if (height) parts.push(`noise ${withUnit(height.noiseNm, 'nm', 2)}`);
   const first = capital(parts.join(', '));
   if (!current) return `${first}.`;
-  const wear = Math.abs(current.wearDecades) < 0.005 ? 'no wear of the tip undone' : current.wearDecades > 0 ? `the tip lost ${fixed(current.wearDecades, 2)} decades` : `the tip gained ${fixed(-current.wearDecades, 2)} decades`;
+  const wear = current.wearTold ? `the tip lost ${fixed(current.wearDecades, 2)} decades` : 'no wear of the tip told from the barrier';
   return `${first}; ${wear}.`;
 }
 
@@ -31,7 +31,7 @@ export function flawsFinding({ flaws, shorts, current }: SampleSummary): string 
   ] as const;
   const seen = kinds.filter(([number]) => number > 0).map(([number, one, many]) => counted(number, one, many));
   const first = seen.length > 0 ? seen.join(', ') : 'No bubbles, residue or wrinkles';
-  if (!current) return `${first}. Shorts do not show in height.`;
+  if (!current || !shorts) return `${first}. Shorts do not show in height.`;
   const missed = shorts.expectedMissed;
   const more = shorts.seen === 0 ? '' : missed < 0.05 * shorts.seen ? ', hardly any missed between the scan lines' : `, about ${missed < 10 ? figure(missed, 2) : String(Math.round(missed))} more expected`;
   return `${first}; ${counted(shorts.seen, 'short')} seen${more}.`;

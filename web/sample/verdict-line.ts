@@ -17,6 +17,7 @@ export class VerdictLine extends LitElement {
     h1 { margin: 0; font-size: 1.1875rem; font-weight: 400; line-height: 1.3; text-wrap: pretty; }
     .area { margin-right: 0.25em; color: var(--glow, #ffb454); font-size: 2.125rem; font-weight: 600; line-height: 1.1; white-space: nowrap; text-shadow: 0 0 22px rgb(255 180 84 / 0.35); }
     .more { margin: 2px 0 0; color: var(--dim, #8fa0af); font-size: 0.875rem; }
+    .more button { font-size: inherit; }
     .effect { color: var(--good, #7fd6bb); }
     ul { margin: 6px 0 0; padding: 8px 12px 8px 28px; background: var(--panel, #141b21); border: 1px solid var(--line, #25313b); border-radius: 7px; font-size: 0.875rem; max-height: 11rem; overflow: auto; }
     li { margin: 2px 0; }

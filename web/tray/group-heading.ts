@@ -12,6 +12,7 @@ const titles: Readonly<Record<GroupName, string>> = {
 };
 
 export function groupHeading({ name, rows }: Group, requiredUm2: number | undefined): { readonly title: string; readonly how: string } {
+  if (name === 'even' && rows.length > 1) return { title: titles[name], how: `${rows.length}, not ranked by area: each against a reference of its own` };
   if (!isRanked(name)) return { title: titles[name], how: String(rows.length) };
   const by = requiredUm2 === undefined ? 'by largest patch' : 'by the required area, then by usable area';
   return { title: titles[name], how: rows.length === 1 ? '1' : `${rows.length}, ranked ${by}` };

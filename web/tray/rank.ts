@@ -19,12 +19,14 @@ export interface Group {
 
 /**
  * Groups that are not empty. Within a ranked group, as in the command line's tray: with a required area those that have it
- * first, then by usable area; without one by the largest patch; ties by name. Others keep the order they came in.
+ * first, then by usable area; without one by the largest patch; ties by name. Even ground that is not known to glow is ordered by requirement and
+ * name alone and has no ranks: each sample's reference is its own, so their areas do not compare. Others keep the order they came in.
  */
 export function rankSamples(samples: readonly SampleState[], requiredUm2: number | undefined): Group[] {
   return groupNames.flatMap((name): Group[] => {
     const members = samples.filter((sample) => groupOf(sample) === name);
     if (members.length === 0) return [];
+    if (name === 'even') return [{ name, rows: [...members].sort((a, b) => metOrder(a, b, requiredUm2) || nameOrder(a, b)).map((sample) => ({ sample })) }];
     if (!isRanked(name)) return [{ name, rows: members.map((sample) => ({ sample })) }];
     const sorted = [...members].sort((a, b) => order(a, b, requiredUm2));
     return [{ name, rows: sorted.map((sample, i) => ({ sample, rank: i + 1 })) }];
@@ -32,7 +34,7 @@ export function rankSamples(samples: readonly SampleState[], requiredUm2: number
 }
 
 export function isRanked(name: GroupName): boolean {
-  return name === 'glows' || name === 'even' || name === 'flaw-free';
+  return name === 'glows' || name === 'flaw-free';
 }
 
 /** A sample with a result keeps its place while it is computed anew. */
@@ -51,7 +53,13 @@ function groupOfSummary({ usable }: SampleSummary): GroupName {
 function order(a: SampleState, b: SampleState, requiredUm2: number | undefined): number {
   const first = a.summary!.usable;
   const second = b.summary!.usable;
-  const byName = a.name < b.name ? -1 : a.name > b.name ? 1 : 0;
-  if (requiredUm2 === undefined) return second.largestPatchUm2 - first.largestPatchUm2 || byName;
-  return Number(second.areaUm2 >= requiredUm2) - Number(first.areaUm2 >= requiredUm2) || second.areaUm2 - first.areaUm2 || byName;
+  if (requiredUm2 === undefined) return second.largestPatchUm2 - first.largestPatchUm2 || nameOrder(a, b);
+  return metOrder(a, b, requiredUm2) || second.areaUm2 - first.areaUm2 || nameOrder(a, b);
 }
+
+function metOrder(a: SampleState, b: SampleState, requiredUm2: number | undefined): number {
+  if (requiredUm2 === undefined) return 0;
+  return Number(b.summary!.usable.areaUm2 >= requiredUm2) - Number(a.summary!.usable.areaUm2 >= requiredUm2);
+}
+
+const nameOrder = (a: SampleState, b: SampleState): number => (a.name < b.name ? -1 : a.name > b.name ? 1 : 0);

@@ -1,0 +1,60 @@
+/** Runs that are cancelled, and a computation that is lost in the middle of one. */
+import assert from 'node:assert/strict';
+import { after, before, describe, test } from 'node:test';
+import type { Page } from 'playwright-core';
+import { expectedOf } from './expected.ts';
+import { scanPair } from './scan-files.ts';
+import { ServedApp, areaOf, drop, rowOf, skip, until } from './served-app.ts';
+import type { Visit } from './served-app.ts';
+
+/** Large enough for a run to be met in its middle. */
+const side = 512;
+const lost = 'lost on purpose';
+
+describe('interruptions', { skip, timeout: 240_000 }, () => {
+  let app: ServedApp;
+  let visit: Visit;
+  let page: Page;
+  let paths: readonly string[];
+
+  before(async () => {
+    app = await ServedApp.start();
+    visit = await app.open();
+    page = visit.page;
+    paths = scanPair(app.folder, 'long', side);
+  });
+  after(async () => { await app?.stop(); });
+
+  test('a run is cancelled, says so, and can be started again', async () => {
+    await drop(page, paths);
+    const row = rowOf(page, 'long');
+    await row.getByRole('button', { name: 'Cancel' }).click();
+    await row.getByText('Cancelled.').waitFor();
+    assert.equal(await row.locator('.big').count(), 0);
+    assert.deepEqual(visit.troubles, []);
+  });
+
+  test('a worker that dies in the middle of a run is replaced, and the run repeated', async () => {
+    const row = rowOf(page, 'long');
+    await row.getByRole('button', { name: 'Appraise' }).click();
+    await row.getByRole('button', { name: 'Cancel' }).waitFor();
+    const notice = page.getByText('The computation stopped unexpectedly and was started again.').first();
+    // All of them: which one has the sample is the pool's affair. Once more where the pool was just replacing the one that had not heard of the abort.
+    for (let tries = 0; tries < 4 && !(await notice.isVisible()); tries++) {
+      await Promise.all(page.workers().map((worker) => worker.evaluate(`setTimeout(() => { throw new Error(${JSON.stringify(lost)}); })`).then(() => console.log("ok", worker.url()), (e) => console.log("rejected", String(e)))));console.log("workers", page.workers().length, await page.evaluate("JSON.stringify(document.querySelector(\"eg-app\").session.state.samples.map((s)=>[s.name,s.status,s.run,s.restarted]))"), JSON.stringify(visit.troubles));
+      await notice.waitFor({ timeout: 8000 }).catch(() => {});
+    }
+    await notice.waitFor();
+    assert.equal(await areaOf(row), (await expectedOf(paths)).area);
+  });
+
+  test('all else goes on: the invented samples come, and what was open is still looked at', async () => {
+    await until(page, `document.querySelector('eg-app').session.state.samples.every((sample) => sample.status === 'ready')`);
+    assert.equal(await page.locator('eg-tray-row .big').count(), 7);
+    await rowOf(page, 'long').getByRole('button', { name: /long$/ }).click();
+    await page.getByRole('heading', { level: 1 }).waitFor();
+    await page.locator('eg-map-stage canvas').hover();
+    await page.locator('eg-readout').getByText(/^(usable|bubble|residue|wrinkle|short|open|thin|thick)$/).waitFor();
+    assert.deepEqual(visit.troubles.filter((trouble) => !trouble.includes(lost)), []);
+  });
+});
