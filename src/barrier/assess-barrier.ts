@@ -35,11 +35,13 @@ export interface BandQuestion extends DeviceQuestion {
  * Where the device's density is not known (`noDensity` says why) the relative density is the ratio of currents at the scan's bias.
  *
  * @param footprint 1 where the device could be; @param surface on a finished stack the emitter spreads the current, so no thickness is given there.
+ * @param levelled levelled height, metres: a witness for layers that are missing between terraces; absent without a height map.
  * @returns maps of the grid's shape; steps −128, layers 0 and thickness NaN where unknown (no current, flaw, outside the footprint).
  * @throws nothing for a valid recipe; a map without any usable ground yields unknown everywhere and a remark.
  */
 export function assessBarrier(
   current: CurrentGround, flaws: Flaws, footprint: MaskMap, grid: Grid, surface: 'barrier' | 'stack', section: BarrierSection, band: BandQuestion,
+  levelled?: Float32Array,
 ): Barrier {
   const warnings: Notice[] = [];
   const labels = flaws.labels.data;
@@ -49,7 +51,7 @@ export function assessBarrier(
   const fallbackStep = anchor?.modelStepDecades;
   const terraces = findTerraces(current, (i) => inside[i] === 1 && labels[i] === 0, {
     stepDecades: fallbackStep ?? 1, from: fallbackStep === undefined ? 'assumed' : 'model',
-  });
+  }, levelled && { levelled, layerM: section.layerNm * 1e-9 });
 
   const area = pixelAreaM2(grid);
   const candidates: Candidate[] = terraces.rungs.map((rung) => ({ ...rung, areaM2: rung.pixels * area }));

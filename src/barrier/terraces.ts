@@ -1,7 +1,7 @@
 /** Every pixel's place on the layer ladder. */
 import type { CurrentGround } from '../ground/ground.ts';
 import { measureLadder } from '../ground/ladder.ts';
-import { layersPerGap } from './layers-per-gap.ts';
+import { heightPerGap, layersPerGap } from './layers-per-gap.ts';
 import { median } from '../stats/median.ts';
 import { scaledMad } from '../stats/mad.ts';
 
@@ -27,6 +27,13 @@ export interface MeasuredRung {
   readonly bound: 'exact' | 'at-most' | 'at-least';
 }
 
+/** What the height says about the terraces. */
+export interface TerraceHeight {
+  /** Metres, NaN missing. */
+  readonly levelled: Float32Array;
+  readonly layerM: number;
+}
+
 /** Currents below this many times the detection limit (10σ against 3σ; Currie, Anal. Chem. 40, 586, 1968) are seen but not measured well enough for a ladder. */
 export const quantifiedOverFloor = 10 / 3;
 
@@ -37,7 +44,7 @@ export const quantifiedOverFloor = 10 / 3;
  *
  * @param ground admits ground of the footprint free of flaws.
  */
-export function findTerraces(current: CurrentGround, ground: (index: number) => boolean, fallback: { stepDecades: number; from: 'model' | 'assumed' }): Terraces {
+export function findTerraces(current: CurrentGround, ground: (index: number) => boolean, fallback: { stepDecades: number; from: 'model' | 'assumed' }, height?: TerraceHeight): Terraces {
   const log10 = current.log10.data;
   const saturated = current.saturated.data;
   const floor = current.floor.data;
@@ -45,7 +52,8 @@ export function findTerraces(current: CurrentGround, ground: (index: number) => 
   const ladder = measureLadder(log10, (i) => ground(i) && saturated[i] === 0 && log10[i]! >= quantified);
   const measured = ladder.stepDecades !== undefined;
   const modelStepDecades = fallback.from === 'model' ? fallback.stepDecades : undefined;
-  const perGap = measured ? layersPerGap(ladder.stepDecades!, ladder.peaks.length, modelStepDecades) : 1;
+  const heightLayers = measured && height ? heightPerGap(height.levelled, log10, ladder.peaks, ladder.stepDecades!, ground) / height.layerM : undefined;
+  const perGap = measured ? layersPerGap({ stepDecades: ladder.stepDecades!, modelStepDecades, heightLayers }) : 1;
   const stepDecades = measured ? ladder.stepDecades! / perGap : fallback.stepDecades;
   const centres = rungCentres(ladder.peaks.map((peak) => ({ log10: peak.log10, rung: peak.rung * perGap })), log10, ground);
   const place = placer(centres, stepDecades);

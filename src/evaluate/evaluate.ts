@@ -82,5 +82,5 @@ function barrierOf(sample: Sample, ground: Ground, flaws: ReturnType<typeof find
     biasV: stack.biasV, offsetV: stack.offsetV, targetAPerM2: stack.targetNaPerUm2 * 1e3,
     minAPerM2: band.minNaPerUm2 * 1e3, maxAPerM2: band.maxNaPerUm2 * 1e3,
     bandFactor: band.factor, terraceMinM2: band.terraceMinUm2 * 1e-12,
-  });
+  }, ground.height?.levelled.data);
 }

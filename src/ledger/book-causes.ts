@@ -4,17 +4,13 @@ import { squaredDistance } from '../grid/distance.ts';
 import type { Grid } from '../grid/maps.ts';
 import { pixelAreaM2 } from '../grid/maps.ts';
 import { labelComponents } from '../grid/label-components.ts';
+import { bandEdgeLog10 } from '../sheet/band-edge.ts';
 import type { Cause } from './ledger.ts';
 import { causes } from './ledger.ts';
 
 /** Code of a cause. */
 export function codeOf(cause: Cause): number {
   return causes.indexOf(cause);
-}
-
-/** Half-width of the band in decades, with a hair of tolerance, so that a density exactly at its edge is in band whatever the rounding. */
-export function bandDecades(factor: number): number {
-  return Math.log10(factor) + 1e-6;
 }
 
 export interface BookingInput {
@@ -50,7 +46,7 @@ export function bookCauses(input: BookingInput): Uint8Array {
   const flawCodes = Uint8Array.from(flawCauses, (cause) => (cause ? codeOf(cause) : 0));
   const [usable, unmeasured, thin, thick, starved] = [codeOf('usable'), codeOf('unmeasured'), codeOf('thin'), codeOf('thick'), codeOf('starved')];
   const open = codeOf('open');
-  const band = bandDecades(input.bandFactor);
+  const band = bandEdgeLog10(input.bandFactor);
   for (let i = 0; i < count; i++) {
     if (footprint[i] === 0) continue;
     const flaw = flawCodes[flawLabels[i]!]!;

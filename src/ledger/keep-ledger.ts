@@ -14,6 +14,7 @@ import { layerCostSpread } from './layer-cost-spread.ts';
 import type { Cause, Ledger, LedgerRow, Usable } from './ledger.ts';
 import { causes } from './ledger.ts';
 import { missedShorts } from './missed-shorts.ts';
+import type { SeenShorts } from './missed-shorts.ts';
 import type { BandSection } from './recipe.ts';
 import { usableInterval } from './usable-interval.ts';
 import type { IntervalInput } from './usable-interval.ts';
@@ -66,7 +67,7 @@ export function keepLedger(input: LedgerInput): Ledger {
   const repaired = current ? current.repaired.data : ground.height!.repaired.data;
   let repairedPixels = 0;
   for (let i = 0; i < count; i++) if (repaired[i] === 1 && footprint.data[i] === 1) repairedPixels++;
-  const shorts = flaws.list.filter((flaw) => flaw.cause === 'short' && insideFootprint(input, flaw.xM, flaw.yM)).length;
+  const shorts = shortsByLines(input, codes);
   const areaOf = (...named: Cause[]): number => named.reduce((sum, cause) => sum + pixels[codeOf(cause)]!, 0) * areaM2;
   const seenOnM2 = footprintPixels * areaM2 - areaOf('unmeasured', 'bubble', 'residue', 'wrinkle');
   // Shorts do not show in height.
@@ -143,11 +144,26 @@ function isAssessed(cause: Cause, input: LedgerInput): boolean {
   }
 }
 
-function insideFootprint(input: LedgerInput, xM: number, yM: number): boolean {
-  const { columns, rows, pitchXM, pitchYM } = input.sample.grid;
-  const c = Math.min(columns - 1, Math.max(0, Math.floor(xM / pitchXM)));
-  const r = Math.min(rows - 1, Math.max(0, rows - 1 - Math.floor(yM / pitchYM)));
-  return input.sample.footprint.data[r * columns + c] === 1;
+/** Shorts of the footprint by the number of scan lines they were met on. */
+function shortsByLines({ flaws, sample }: LedgerInput, codes: Uint8Array): SeenShorts {
+  const { columns } = sample.grid;
+  const short = codeOf('short');
+  const labels = flaws.labels.data;
+  const first = new Int32Array(flaws.list.length + 1).fill(-1);
+  const several = new Uint8Array(flaws.list.length + 1);
+  for (let i = 0; i < labels.length; i++) {
+    if (codes[i] !== short) continue;
+    const [label, row] = [labels[i]!, (i / columns) | 0];
+    if (first[label]! < 0) first[label] = row;
+    else if (first[label] !== row) several[label] = 1;
+  }
+  let [onOneLine, onMoreLines] = [0, 0];
+  for (let label = 1; label < first.length; label++) {
+    if (first[label]! < 0) continue;
+    if (several[label] === 1) onMoreLines++;
+    else onOneLine++;
+  }
+  return { onOneLine, onMoreLines };
 }
 
 /** 1 under the drawn metal of either contact; undefined without any. */

@@ -2,7 +2,8 @@
 import type { Barrier } from '../barrier/barrier.ts';
 import type { Grid } from '../grid/maps.ts';
 import { pixelAreaM2 } from '../grid/maps.ts';
-import { bandDecades, codeOf } from './book-causes.ts';
+import { bandEdgeLog10 } from '../sheet/band-edge.ts';
+import { codeOf } from './book-causes.ts';
 
 export interface IntervalInput {
   readonly grid: Grid;
@@ -86,7 +87,7 @@ function atTheEdges(codes: Uint8Array, density: NonNullable<IntervalInput['densi
   const { barrier, log10, byPixel, layerCostSpread } = density;
   const { stepDecades, stepSeDecades } = barrier.ladder;
   const relative = barrier.log10Relative.data;
-  const band = bandDecades(density.bandFactor);
+  const band = bandEdgeLog10(density.bandFactor);
   const { thin: thinBorder, thick: thickBorder } = byPixel ? { thin: Number.NaN, thick: Number.NaN } : terraceBorders(barrier, band);
   const reach = Math.hypot(borderPart * stepDecades, stepSeDecades);
   const [usable, thin, thick] = [codeOf('usable'), codeOf('thin'), codeOf('thick')];

@@ -29,7 +29,7 @@ export function verdictSentence(input: VerdictInput): string {
   const what = surface === 'stack' ? 'carries an even current' : 'is even barrier';
   const glow = input.biasV === undefined ? '; not known to glow, as no density is known' : usable.knownToGlow ? '' : input.mayGlow ? '; it may glow: the density’s interval reaches the range' : '; even, but not known to glow';
   const { seen, expectedMissed } = input.shorts ?? { seen: 0, expectedMissed: 0 };
-  const shorts = seen === 0 ? '' : `; ${seen} ${seen === 1 ? 'short' : 'shorts'} seen${expectedMissed >= 1 ? `, about ${Math.round(expectedMissed)} more expected` : ''}`;
+  const shorts = seen === 0 ? '' : `; ${seen} ${seen === 1 ? 'short' : 'shorts'} seen${expectedMissed >= 1 ? ` (about ${Math.round(expectedMissed)} more expected between the lines)` : ''}`;
   const bound = surface === 'barrier' ? '; an upper bound, as a bare barrier was scanned' : '';
   return `${area} ${what}, ×/÷${Number(input.bandFactor.toPrecision(3))} ${bias}${glow}${shorts}${bound}.`;
 }

@@ -33,7 +33,7 @@ export const appraisalSentences = {
     ? `The map shows one terrace only, so the step per layer (${d.stepDecades.toFixed(2)} decades) is taken from the model.`
     : `The map shows one terrace only and no model can be asked, so a step of ${asGiven(d.stepDecades)} ${d.stepDecades === 1 ? 'decade' : 'decades'} per layer is assumed, and every pixel is judged by its own current.`,
   'ladder-skips': (d: { layersPerGap: number; measured: number; model: number }) =>
-    `Neighbouring terraces differ by ${d.measured.toFixed(2)} decades, about ${d.layersPerGap} times what the model expects of one layer (${d.model.toFixed(2)}), so ${d.layersPerGap} layers are counted between them. This is an assumption: if they are one layer apart, correct barrier.heightEv or barrier.massRatio.`,
+    `Neighbouring terraces differ by ${d.measured.toFixed(2)} decades, about ${d.layersPerGap} times what the model expects of one layer (${d.model.toFixed(2)}), and their heights agree, so ${d.layersPerGap} layers are counted between them.`,
   'ladder-contradicts': (d: { measured: number; model: number }) =>
     `The current falls by ${d.measured.toFixed(2)} decades per layer, the model expects ${d.model.toFixed(2)}; thickness and density from this model are in doubt.`,
   'model-out-of-range': (d: { model: string; heightEv: number; biasV: number; scanBiasV: number; where: 'scan' | 'device' }) =>

@@ -41,7 +41,7 @@ function stepSize(ladder: NonNullable<Verdict['ladder']>): string {
 
 /** No absolute density without its interval. */
 function devicePart({ device, reference }: Verdict): Markup {
-  if (device === undefined) return markup`<dt>Device</dt><dd>not assessed: needs a current in amperes and the scan’s bias</dd>`;
+  if (device === undefined) return markup`<dt>Device</dt><dd>not assessed; the remarks say why</dd>`;
   const glow = reference?.inRange === undefined ? '' : reference.inRange ? ' Within the range that glows.' : ' Outside the range that glows.';
   return markup`<dt>Device bias</dt><dd>${device.proposed ? withUnit(device.biasV, 'V') : `${plain(device.biasV)}\u00a0V`}, ${device.proposed ? 'proposed: there the reference carries the target density' : 'given'}</dd>
 <dt>Density there</dt><dd>${withUnit(device.medianNaPerUm2, 'nA/µm²')} on the reference before any voltage drop (95 %: ${interval(device.low95NaPerUm2, device.high95NaPerUm2, 'nA/µm²', 2)}, from contact area, barrier height and mass).${glow}</dd>${currentPart(device)}`;
@@ -49,7 +49,7 @@ function devicePart({ device, reference }: Verdict): Markup {
 
 function currentPart({ currentA, currentLow95A, currentHigh95A, shortShareOfCurrent, censored }: NonNullable<Verdict['device']>): Markup | undefined {
   if (currentA === undefined) return undefined;
-  const shorts = shortShareOfCurrent === undefined ? '' : `; ${percent(shortShareOfCurrent)} of it through shorts`;
+  const shorts = shortShareOfCurrent === undefined ? '' : `; ${percent(shortShareOfCurrent)} of it through shorts, taken as ohmic`;
   const bound = censored ? ' Pixels saturated in the scan, so this is a lower bound.' : '';
   return markup`<dt>Whole device</dt><dd>${withPrefix(currentA, 'A')} (95 %: ${withPrefix(currentLow95A, 'A', 2)} – ${withPrefix(currentHigh95A, 'A', 2)})${shorts}.${bound}</dd>`;
 }

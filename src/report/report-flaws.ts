@@ -18,7 +18,7 @@ export function flawsPart({ flaws, ground }: Appraised, verdict: Verdict): Marku
     ...(ground.current ? [counted(count.short, 'short'), counted(count.open, 'open spot')] : []),
   ].join(', ');
   const shortsLine = shorts
-    ? markup`<p>Scan lines cross about ${percent(shorts.crossedShare)} of point shorts: ${shorts.seen} seen, about ${figure(expectedMissedShorts, 2)} more expected. Density of shorts ${withUnit(shorts.densityPerUm2.estimate, '/µm²', 2)} (95 %: ${interval(shorts.densityPerUm2.low95, shorts.densityPerUm2.high95, '/µm²', 2)}).</p>`
+    ? markup`<p>${shorts.seen} ${shorts.seen === 1 ? 'short' : 'shorts'} seen. Scan lines cross about ${percent(shorts.crossedShare)} of shorts that are points; for those met on one line only, about ${figure(expectedMissedShorts, 2)} more are expected. Density of shorts ${withUnit(shorts.densityPerUm2.estimate, '/µm²', 2)} (95 %: ${interval(shorts.densityPerUm2.low95, shorts.densityPerUm2.high95, '/µm²', 2)}).</p>`
     : markup`<p>Shorts cannot be seen without a current map.</p>`;
   return markup`<section><h2>Flaws</h2>
 <p>${counts}: ${withUnit(density.estimate, '/µm²')} (95 %: ${interval(density.low95, density.high95, '/µm²')}, exact Poisson).</p>

@@ -11,7 +11,7 @@ import type { Verdict } from './verdict.ts';
 /** Head of the page with verdict sentence, bar and the line of the most important numbers. */
 export function verdictPart(verdict: Verdict): Markup {
   const { usable, ledger } = verdict;
-  const glows = usable.meaning === 'flaw-free' ? 'from height alone' : usable.knownToGlow ? 'the reference is in the range that glows' : 'even, but not known to glow';
+  const glows = usable.meaning === 'flaw-free' ? 'from height alone' : usable.knownToGlow ? 'the reference is in the range that glows' : 'the reference is not known to glow';
   return markup`<header>
 <p class="over">${named(verdict.sample)}</p>
 <h1>${verdict.verdict}</h1>

@@ -39,7 +39,7 @@ export function assessSheet(input: SheetInput): Sheet {
   const base = { relativeDensity: scalarMap(input.grid, Float32Array.from(elements.ratio)), ...(stack.unconnected && { unconnected: stack.unconnected }) };
   const resistive = (input.emitterSheetOhm ?? 0) > 0 || (input.injectorSheetOhm ?? 0) > 0;
   const { device } = input;
-  if (device && input.shorts?.ohmic && elements.inShorts > 0) warnings.push(notice('shorts-ohmic', { ...input.shorts.ohmic, deviceBiasV: device.biasV }));
+  if (device && input.shorts?.ohmic && elements.inShorts > 0 && Math.abs(device.biasV) !== Math.abs(input.shorts.ohmic.scanBiasV)) warnings.push(notice('shorts-ohmic', { ...input.shorts.ohmic, deviceBiasV: device.biasV }));
   if (!resistive || !device || device.biasV === 0) {
     if (resistive) warnings.push(notice('sheet-no-density', { reason: input.noDensity }));
     return { ...base, totals: totalsWithoutDrop(input, elements), warnings };

@@ -60,7 +60,7 @@ describe('report.html', () => {
       'it holds where the outlines of flaws and of other ground lie; ground whose current lies near the border', 'It does not hold another choice of the reference terrace.', 'tested in this order: short, bubble, residue', 'Bare barrier.', 'upper bound', '4 V',
       '12 (4.00 nm)', '0.980 ± 0.020 decades of current, measured on this map’s terraces; the model gives 0.780 decades',
       '1.00 nA/µm² on the reference before any voltage drop (95 %: 0.15 – 6.4 nA/µm²', '3.62 V, proposed',
-      'Scan lines cross about 24 % of point shorts: 1 seen, about 3.2 more expected', 'notes.txt is not a format Evenglow reads.',
+      '1 short seen. Scan lines cross about 24 % of shorts that are points; for those met on one line only, about 3.2 more are expected', 'notes.txt is not a format Evenglow reads.',
       '1.2 V/nm', 'rules of your laboratory', '1.00 V/nm during the scan', 'a'.repeat(64), 'npx evenglow appraise scans --recipe recipe.json --out results', 'Evenglow 0.1.0',
     ]) assert.ok(text.includes(words), words);
   });
