@@ -51,7 +51,7 @@ export function assessBarrier(
   const fallbackStep = anchor?.modelStepDecades;
   const terraces = findTerraces(current, (i) => inside[i] === 1 && labels[i] === 0, {
     stepDecades: fallbackStep ?? 1, from: fallbackStep === undefined ? 'assumed' : 'model',
-  }, levelled && { levelled, layerM: section.layerNm * 1e-9 });
+  }, levelled && { levelled, columns: grid.columns, layerM: section.layerNm * 1e-9 });
 
   const area = pixelAreaM2(grid);
   const candidates: Candidate[] = terraces.rungs.map((rung) => ({ ...rung, areaM2: rung.pixels * area }));

@@ -6,6 +6,9 @@ import { median } from '../stats/median.ts';
 const nearness = 0.12;
 /** Part of the step within which a pixel counts to a terrace's height. */
 const peakPart = 0.25;
+/** Distance between the pixels of a pair: beyond the width of a border, within reach of any drift. */
+const apartPx = 6;
+const leastPairs = 30;
 
 export interface GapEvidence {
   /** Measured step, decades. */
@@ -26,18 +29,26 @@ export function layersPerGap({ stepDecades, modelStepDecades, heightLayers }: Ga
 }
 
 /**
- * Height that one gap of the ladder adds, metres: weighted least-squares slope of the terraces' median heights over their place on the ladder.
+ * Height that one gap of the ladder adds, metres: median over pairs of pixels a few columns apart on one line that stand on different terraces. Near
+ * the border and on one line, so that neither the form nor the lines' offsets, which both lean on steps, come into it.
  *
- * @param levelled metres, NaN missing; @param log10 log10 current; @param use admits flawless ground. NaN with fewer than two terraces.
+ * @param levelled metres, NaN missing; @param log10 log10 current; @param use admits flawless ground. NaN with fewer than `leastPairs` pairs.
  */
-export function heightPerGap(levelled: Float32Array, log10: Float32Array, peaks: readonly LadderPeak[], stepDecades: number, use: (index: number) => boolean): number {
-  const points = peaks.map((peak) => {
-    const heights = levelled.filter((value, i) => Math.abs(log10[i]! - peak.log10) < peakPart * stepDecades && use(i) && !Number.isNaN(value));
-    return { rung: peak.rung, weight: heights.length, height: median(heights) };
-  }).filter(({ weight }) => weight > 0);
-  const total = points.reduce((sum, { weight }) => sum + weight, 0);
-  const meanRung = points.reduce((sum, { weight, rung }) => sum + weight * rung, 0) / total;
-  const meanHeight = points.reduce((sum, { weight, height }) => sum + weight * height, 0) / total;
-  const spread = points.reduce((sum, { weight, rung }) => sum + weight * (rung - meanRung) ** 2, 0);
-  return points.reduce((sum, { weight, rung, height }) => sum + weight * (rung - meanRung) * (height - meanHeight), 0) / spread;
+export function heightPerGap(
+  levelled: Float32Array, log10: Float32Array, columns: number, peaks: readonly LadderPeak[], stepDecades: number, use: (index: number) => boolean,
+): number {
+  const place = (i: number): number => {
+    for (const peak of peaks) if (Math.abs(log10[i]! - peak.log10) < peakPart * stepDecades) return use(i) ? peak.rung : Number.NaN;
+    return Number.NaN;
+  };
+  const steps: number[] = [];
+  for (let i = 0; i + apartPx < levelled.length; i++) {
+    if (i % columns >= columns - apartPx) continue;
+    // Cheap test first: most pairs stand on one terrace.
+    if (!(Math.abs(log10[i + apartPx]! - log10[i]!) > 0.5 * stepDecades)) continue;
+    const gaps = place(i + apartPx) - place(i);
+    const step = (levelled[i + apartPx]! - levelled[i]!) / gaps;
+    if (Number.isFinite(step)) steps.push(step);
+  }
+  return steps.length < leastPairs ? Number.NaN : median(steps);
 }

@@ -31,6 +31,7 @@ export interface MeasuredRung {
 export interface TerraceHeight {
   /** Metres, NaN missing. */
   readonly levelled: Float32Array;
+  readonly columns: number;
   readonly layerM: number;
 }
 
@@ -52,7 +53,7 @@ export function findTerraces(current: CurrentGround, ground: (index: number) => 
   const ladder = measureLadder(log10, (i) => ground(i) && saturated[i] === 0 && log10[i]! >= quantified);
   const measured = ladder.stepDecades !== undefined;
   const modelStepDecades = fallback.from === 'model' ? fallback.stepDecades : undefined;
-  const heightLayers = measured && height ? heightPerGap(height.levelled, log10, ladder.peaks, ladder.stepDecades!, ground) / height.layerM : undefined;
+  const heightLayers = measured && height ? heightPerGap(height.levelled, log10, height.columns, ladder.peaks, ladder.stepDecades!, ground) / height.layerM : undefined;
   const perGap = measured ? layersPerGap({ stepDecades: ladder.stepDecades!, modelStepDecades, heightLayers }) : 1;
   const stepDecades = measured ? ladder.stepDecades! / perGap : fallback.stepDecades;
   const centres = rungCentres(ladder.peaks.map((peak) => ({ log10: peak.log10, rung: peak.rung * perGap })), log10, ground);

@@ -24,9 +24,9 @@ const materials = { heightEv: 2.5, massRatio: 0.5 };
 function assess(scene: Scene, barrier: RecipeChanges[string] = {}, more: Partial<BandQuestion> = wide, surface: 'barrier' | 'stack' = 'barrier'): Barrier {
   const { sample } = scene;
   const recipe = createRecipe({ barrier });
-  const current = levelGround(sample, recipe.ground, recipe.scan).current!;
+  const { current, height } = levelGround(sample, recipe.ground, recipe.scan);
   const flaws: Flaws = { labels: labelMap(sample.grid, Uint32Array.from(scene.things, (thing) => (thing === '' ? 0 : 1))), list: [], warnings: [] };
-  return assessBarrier(current, flaws, sample.footprint, sample.grid, surface, recipe.barrier, { ...band, ...more });
+  return assessBarrier(current!, flaws, sample.footprint, sample.grid, surface, recipe.barrier, { ...band, ...more }, height?.levelled.data);
 }
 const codes = (barrier: Barrier) => barrier.warnings.map(({ code }) => code);
 
@@ -162,7 +162,7 @@ test('a ladder that contradicts the model is said', () => {
 });
 
 for (const [thick, between] of [[12, 2], [13, 3]] as const) {
-  test(`terraces of 10 and ${thick} layers are told ${between} layers apart, and the assumption is said`, () => {
+  test(`terraces of 10 and ${thick} layers are told ${between} layers apart by current and height, and that is said`, () => {
     const made = createScene({ seed: 'jump', size, layersAt: (c) => (c < 60 ? 10 : thick), things: typicalThings(size) });
     const found = assess(made);
     assert.deepEqual(codes(found).filter((code) => code.startsWith('ladder-')), ['ladder-skips']);

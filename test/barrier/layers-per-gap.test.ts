@@ -14,9 +14,12 @@ test('one layer where the height says one, where there is none, and without a mo
   assert.equal(layersPerGap({ stepDecades: 1, heightLayers: 2 }), 1);
 });
 
-test('the height of a gap is the slope of the terraces\u2019 medians', () => {
-  const log10 = Float32Array.from({ length: 300 }, (_, i) => -9 - Math.floor(i / 100));
-  const levelled = Float32Array.from({ length: 300 }, (_, i) => 1e-9 * 0.666 * Math.floor(i / 100) + (i % 7 === 0 ? 5e-9 : 0));
-  const peaks = [0, 1, 2].map((rung) => ({ rung, log10: -9 - rung, share: 1 / 3 }));
-  assert.ok(Math.abs(heightPerGap(levelled, log10, peaks, 1, () => true) - 0.666e-9) < 1e-12);
+test('the height of a gap is the median step across borders, whatever the tilt and the lines do', () => {
+  const columns = 90;
+  const rung = (i: number): number => Math.floor((i % columns) / 30);
+  const log10 = Float32Array.from({ length: columns * 20 }, (_, i) => -9 - rung(i));
+  const levelled = Float32Array.from({ length: log10.length }, (_, i) => 1e-9 * (0.666 * rung(i) + 0.001 * (i % columns) + 3 * Math.sin(Math.floor(i / columns))));
+  const peaks = [0, 1, 2].map((k) => ({ rung: k, log10: -9 - k, share: 1 / 3 }));
+  assert.ok(Math.abs(heightPerGap(levelled, log10, columns, peaks, 1, () => true) - 0.672e-9) < 1e-12);
+  assert.ok(Number.isNaN(heightPerGap(levelled, log10, columns, peaks, 1, () => false)));
 });

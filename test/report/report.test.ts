@@ -80,7 +80,7 @@ describe('report.html', () => {
   it('gives the whole device’s current where the sheet knows it', () => {
     const base = createAppraisal();
     const sheet = { relativeDensity: base.ledger.glow, totals: { deviceCurrentA: 4e-9, shortShareOfCurrent: 0.25 }, warnings: [] };
-    assert.ok(textOf(report({ ...base, sheet })).includes('4.00 nA (95 %: 600 pA – 26 nA); 25 % of it through shorts. Pixels saturated in the scan, so this is a lower bound.'));
+    assert.ok(textOf(report({ ...base, sheet })).includes('4.00 nA (95 %: 600 pA – 26 nA); 25 % of it through shorts, taken as ohmic. Pixels saturated in the scan, so this is a lower bound.'));
     assert.ok(!textOf(report(base)).includes('Whole device'));
   });
 
