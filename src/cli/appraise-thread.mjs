@@ -1,14 +1,9 @@
-/** Entry of a worker thread: lets it read TypeScript, then appraises what it is sent, one sample at a time. */
-import { fileURLToPath } from 'node:url';
+/** Entry of a worker thread: loads the work, bundled where that is possible, and passes on what it is sent. */
 import { parentPort } from 'node:worker_threads';
-import { register } from 'tsx/esm/api';
+import { entryOf } from './setup/bundle.mjs';
+import { projectRoot } from './setup/set-up.mjs';
 
-register({ tsconfig: fileURLToPath(new URL('../../tsconfig.json', import.meta.url)) });
-// The import is part of the promise, so that a task posted before it settles waits instead of being lost.
-const ready = import('./load-kernels.ts').then(({ loadKernels }) => loadKernels()).then(() => import('./appraise-one.ts'));
-
-parentPort?.on('message', async (task) => {
-  const { appraiseOne } = await ready;
-  const result = await appraiseOne(task, { onStage: (stage) => parentPort?.postMessage({ stage }) });
-  parentPort?.postMessage({ result });
-});
+process.env['EVENGLOW_ROOT'] = projectRoot;
+// The listener is there before the work is loaded, so that no task is lost.
+const ready = entryOf(projectRoot, 'thread').then((address) => import(address));
+parentPort?.on('message', async (task) => (await ready).workOn(task));

@@ -1,12 +1,11 @@
 #!/usr/bin/env node
-/** The command `evenglow`: sets a fresh clone up, lets Node read TypeScript, and hands over to main.ts. */
+/** The command `evenglow`: sets a fresh clone up, loads the command line, bundled where that is possible, and hands over to it. */
 import { projectRoot, setUp } from './setup/set-up.mjs';
 
 setUp().then(async () => {
-  const { register } = await import('tsx/esm/api');
-  // Named, or the tsconfig.json of the folder it is called from would be read.
-  register({ tsconfig: `${projectRoot}tsconfig.json` });
-  const { main } = await import('./main.ts');
+  process.env['EVENGLOW_ROOT'] = projectRoot;
+  const { entryOf } = await import('./setup/bundle.mjs');
+  const { main } = await import(await entryOf(projectRoot, 'main'));
   process.exitCode = await main(process.argv.slice(2));
 }).catch((error) => {
   // main() turns every foreseen problem into a sentence itself; what arrives here is a bug.

@@ -3,6 +3,7 @@ import { rm } from 'node:fs/promises';
 import { join } from 'node:path';
 import { Worker } from 'node:worker_threads';
 import { appraiseOne } from './appraise-one.ts';
+import { root } from './root.ts';
 import type { AppraiseResult, AppraiseTask } from './appraise-task.ts';
 
 export interface RunOptions {
@@ -61,7 +62,7 @@ class Thread {
 
   work(task: AppraiseTask, onStage: (stage: string) => void): Promise<AppraiseResult> {
     // A library in the thread reads workerData as soon as it loads, so it must be there.
-    this.worker ??= new Worker(new URL('./appraise-thread.mjs', import.meta.url), { workerData: {} });
+    this.worker ??= new Worker(join(root, 'src/cli/appraise-thread.mjs'), { workerData: {} });
     const worker = this.worker;
     return new Promise((resolve, reject) => {
       const settle = (): void => {

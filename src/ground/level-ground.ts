@@ -14,7 +14,7 @@ import type { GroundSection } from './recipe.ts';
 import { thin, thinGrid } from './thin.ts';
 
 /** Bare ground is sought on at most about this many pixels a side: an outline needs no more. */
-const searchPixels = 512;
+const searchPixels = 320;
 
 /**
  * Ground stage: levels the height and conditions the current of one sample (forward direction). For a sample without

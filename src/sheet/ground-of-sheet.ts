@@ -34,9 +34,12 @@ export function ringed(grid: Grid, mask: Uint8Array): Uint8Array {
  * @param grid The map's grid.
  * @param ground Shape rows·columns, 1 where the sheet conducts.
  * @param metal Shape rows·columns, 1 under contact metal; absent when no contact is drawn.
+ * @param resistive False for a perfect conductor: then without metal the terminal's place is left empty.
  */
-export function groundOfSheet(grid: Grid, ground: Uint8Array, metal: Uint8Array | undefined): SheetGround {
+export function groundOfSheet(grid: Grid, ground: Uint8Array, metal: Uint8Array | undefined, resistive = true): SheetGround {
   const sheet = ringed(grid, ground);
+  // Where nothing is drawn and nothing drops, all of the sheet is at the terminal's potential and nobody asks where that is.
+  if (!metal && !resistive) return { ground: sheet, terminal: new Uint8Array(sheet.length), reached: sheet, drawn: false };
   if (metal) {
     const terminal = ringed(grid, metal);
     return { ground: sheet, terminal, reached: reachedFrom(grid, sheet, terminal), drawn: true };

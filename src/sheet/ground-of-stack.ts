@@ -49,6 +49,7 @@ function sheetGround(input: SheetInput, sheet: 'emitter' | 'injector', warnings:
     grid,
     has(sheet) ? layerMask(grid, outlines, sheet).data : footprint.data,
     has(contact) ? layerMask(grid, outlines, contact).data : undefined,
+    (sheetOhm ?? 0) > 0,
   );
   if (!ground.drawn && (sheetOhm ?? 0) > 0) warnings.push(notice('sheet-fed-all-round', { sheet }));
   if (ground.drawn && !ground.reached.includes(1)) warnings.push(notice('sheet-contact-apart', { sheet }));
