@@ -16,14 +16,22 @@ const holdWorkers = `
   const Original = Worker;
   globalThis.Worker = class extends Original { constructor(...given) { super(...given); workersHeld.push(this); } };
 `;
-/** Ends all that run and tells the page as the browser tells of one that failed. Gives the status of the sample at that moment. */
-const killWorkers = `(() => {
-  const { status } = document.querySelector('eg-app').session.state.samples.find(({ name }) => name === 'long');
-  for (const worker of workersHeld.splice(0)) {
-    worker.terminate();
-    worker.dispatchEvent(new ErrorEvent('error', { message: 'lost on purpose', cancelable: true }));
-  }
-  return status;
+/**
+ * When the sample "late" has come to its third stage: ends all workers, and tells the page as the browser tells of one that failed. Asked for in the
+ * page, because stages pass faster than one can ask from outside.
+ */
+const killInTime = `(() => {
+  const { session } = document.querySelector('eg-app');
+  session.addEventListener('change', function look() {
+    const late = session.state.samples.find(({ name }) => name === 'late');
+    if (late?.status !== 'working' || !(late.progress?.done >= 2)) return;
+    session.removeEventListener('change', look);
+    globalThis.killedAt = late.progress.stage;
+    for (const worker of workersHeld.splice(0)) {
+      worker.terminate();
+      worker.dispatchEvent(new ErrorEvent('error', { message: 'lost on purpose', cancelable: true }));
+    }
+  });
 })()`;
 
 describe('interruptions', { skip, timeout: 240_000 }, () => {
@@ -50,17 +58,19 @@ describe('interruptions', { skip, timeout: 240_000 }, () => {
   });
 
   test('a worker that dies in the middle of a run is replaced, and the run repeated', async () => {
-    const row = rowOf(page, 'long');
-    await row.getByRole('button', { name: 'Appraise' }).click();
-    await row.getByText('flaws').or(row.getByText('ground')).first().waitFor();
-    assert.equal(await page.evaluate(killWorkers), 'working');
+    await page.evaluate(killInTime);
+    await rowOf(page, 'long').getByRole('button', { name: 'Appraise' }).click();
+    const late = scanPair(app.folder, 'late', side, 'quarry-16');
+    await drop(page, late);
     await page.getByText('The computation stopped unexpectedly and was started again.').first().waitFor();
-    assert.equal(await areaOf(row), (await expectedOf(paths)).area);
+    assert.match(await page.evaluate<string>('killedAt'), /^(flaws|barrier|sheet|ledger)$/);
+    assert.equal(await areaOf(rowOf(page, 'late')), (await expectedOf(late)).area);
+    assert.equal(await areaOf(rowOf(page, 'long')), (await expectedOf(paths)).area);
   });
 
   test('all else goes on: the invented samples come, and what was open is still looked at', async () => {
     await until(page, `document.querySelector('eg-app').session.state.samples.every((sample) => sample.status === 'ready')`);
-    assert.equal(await page.locator('eg-tray-row .big').count(), 7);
+    assert.equal(await page.locator('eg-tray-row .big').count(), 8);
     await rowOf(page, 'long').getByRole('button', { name: /long$/ }).click();
     await page.getByRole('heading', { level: 1 }).waitFor();
     await page.locator('eg-map-stage canvas').hover();
