@@ -45,7 +45,7 @@ export class LedgerBar extends LitElement {
   declare shown: number | undefined;
   /** The one button that Tab reaches. */
   declare walked: number;
-  private readonly sizes = new SizeWatch(this, () => { this.width = this.clientWidth; });
+  protected readonly sizes = new SizeWatch(this, () => { this.width = this.clientWidth; });
   private pen: CanvasRenderingContext2D | null = null;
 
   static override styles = ledgerBarStyles;
@@ -60,15 +60,6 @@ export class LedgerBar extends LitElement {
     this.walked = 0;
   }
 
-  override connectedCallback(): void {
-    super.connectedCallback();
-    this.sizes.start();
-  }
-
-  override disconnectedCallback(): void {
-    super.disconnectedCallback();
-    this.sizes.stop();
-  }
 
   override render() {
     const ordered = orderEntries(this.entries);

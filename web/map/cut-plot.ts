@@ -45,7 +45,7 @@ export class CutPlot extends LitElement {
   declare lengthUm: number;
   declare log: boolean;
   declare width: number;
-  private readonly sizes = new SizeWatch(this, () => { this.width = this.clientWidth; });
+  protected readonly sizes = new SizeWatch(this, () => { this.width = this.clientWidth; });
 
   static override styles = css`
     :host { display: block; position: relative; height: 110px; font-size: 12px; color: var(--dim, #8fa0af); }
@@ -63,15 +63,6 @@ export class CutPlot extends LitElement {
     this.log = false;
   }
 
-  override connectedCallback(): void {
-    super.connectedCallback();
-    this.sizes.start();
-  }
-
-  override disconnectedCallback(): void {
-    super.disconnectedCallback();
-    this.sizes.stop();
-  }
 
   override render() {
     const { values, map } = this;

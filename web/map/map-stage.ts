@@ -53,7 +53,7 @@ export class MapStage extends LitElement implements GestureTarget {
   private frame = 0;
   /** Where the second end of a cut would be. */
   private aimed: readonly [number, number] | undefined;
-  private readonly sizes = new SizeWatch(this, () => { this.onSize(); });
+  protected readonly sizes = new SizeWatch(this, () => { this.onSize(); });
   private readonly pictures = new Latest<PictureRequest, Picture>((request) => this.compute.picture(request), (request, picture) => { this.hold(request, picture); }, (_, error) => { this.fail(error); });
   private readonly points = new Latest<PointQuestion, PointValues>(
     ({ id, xUm, yUm }) => this.compute.point(id, xUm, yUm),
@@ -76,14 +76,8 @@ export class MapStage extends LitElement implements GestureTarget {
     return html`<canvas tabindex="0" role="application" aria-roledescription="map" aria-label="Map: ${this.map}. Plus and minus zoom, arrows move, 0 shows all of it." @keydown=${this.onKey}></canvas>`;
   }
 
-  override connectedCallback(): void {
-    super.connectedCallback();
-    this.sizes.start();
-  }
-
   override disconnectedCallback(): void {
     super.disconnectedCallback();
-    this.sizes.stop();
     cancelAnimationFrame(this.frame);
     this.pictures.forget();
     this.points.forget();

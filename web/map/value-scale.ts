@@ -42,7 +42,7 @@ export class ValueScale extends LitElement {
   declare bins: Uint32Array | undefined;
   declare bandFactor: number;
   declare width: number;
-  private readonly sizes = new SizeWatch(this, () => { this.width = this.clientWidth; });
+  protected readonly sizes = new SizeWatch(this, () => { this.width = this.clientWidth; });
 
   static override styles = valueScaleStyles;
 
@@ -52,15 +52,6 @@ export class ValueScale extends LitElement {
     this.bandFactor = 3;
   }
 
-  override connectedCallback(): void {
-    super.connectedCallback();
-    this.sizes.start();
-  }
-
-  override disconnectedCallback(): void {
-    super.disconnectedCallback();
-    this.sizes.stop();
-  }
 
   get axis(): Axis {
     return axisOf(this.map, this.limits.log);

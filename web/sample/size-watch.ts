@@ -1,7 +1,8 @@
-/** Tells an element its own size: at once, and whenever it changes. */
+import type { LitElement, ReactiveController } from 'lit';
 
-export class SizeWatch {
-  private readonly element: HTMLElement;
+/** Tells an element its own size: when it is connected, and whenever the size changes. */
+export class SizeWatch implements ReactiveController {
+  private readonly element: LitElement;
   private readonly tell: () => void;
   private timer: ReturnType<typeof setTimeout> | undefined;
   // A reply inside the observer's own turn that changes a height would be an error of the observer; it waits for the next turn.
@@ -11,17 +12,18 @@ export class SizeWatch {
   });
 
   /** @param tell reads the size it needs from the element. */
-  constructor(element: HTMLElement, tell: () => void) {
+  constructor(element: LitElement, tell: () => void) {
     this.element = element;
     this.tell = tell;
+    element.addController(this);
   }
 
-  start(): void {
+  hostConnected(): void {
     this.tell();
     this.observer.observe(this.element);
   }
 
-  stop(): void {
+  hostDisconnected(): void {
     clearTimeout(this.timer);
     this.observer.disconnect();
   }
