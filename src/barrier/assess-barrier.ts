@@ -8,7 +8,7 @@ import type { Notice } from '../problems/problem.ts';
 import { anchorOf, layersAt } from './anchor.ts';
 import type { DeviceQuestion } from './anchor.ts';
 import type { Barrier, Reference, Rung } from './barrier.ts';
-import { ladderNotices, probeFieldNotices, referenceNotices } from './barrier-notices.ts';
+import { deviceFieldNotices, ladderNotices, probeFieldNotices, referenceNotices } from './barrier-notices.ts';
 import { chooseAnchored } from './choose-anchored.ts';
 import { deviceDensity } from './device-density.ts';
 import type { BarrierSection } from './recipe.ts';
@@ -82,6 +82,7 @@ export function assessBarrier(
   }));
   if (choice) warnings.push(...referenceNotices(choice, origin, device, anchored?.layers), ...ladderNotices(terraces, anchor?.modelStepDecades));
   warnings.push(...probeFieldNotices(anchor?.scanBiasV, anchored?.thicknessM), ...notices);
+  warnings.push(...deviceFieldNotices(device && anchor?.acrossV(device.biasV), anchored?.thicknessM));
 
   const maps = thicknessMap(current, terraces, origin, grid, {
     withinTerrace: section.withinTerrace, referenceLog10: choice?.chosen.medianLog10 ?? Number.NaN, rungs,

@@ -36,6 +36,13 @@ export function probeFieldNotices(scanBiasV: number | undefined, thicknessM: num
   return field > breakdownVPerNm ? [notice('probe-field', { fieldVPerNm: field, biasV: Math.abs(scanBiasV) })] : [];
 }
 
+/** A device bias that would put more than the published breakdown field on the reference terrace is said. */
+export function deviceFieldNotices(acrossV: number | undefined, thicknessM: number | undefined): Notice[] {
+  if (acrossV === undefined || thicknessM === undefined) return [];
+  const field = fieldVPerNm(acrossV, thicknessM);
+  return field > breakdownVPerNm ? [notice('device-field', { fieldVPerNm: field, acrossV })] : [];
+}
+
 /** Remarks about the step of the ladder: a ladder that contradicts the model is said, not hidden, and so is a step that was not measured. */
 export function ladderNotices(terraces: Terraces, modelStepDecades: number | undefined): Notice[] {
   const { stepDecades, from, layersPerGap } = terraces;

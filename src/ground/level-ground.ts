@@ -14,7 +14,7 @@ import type { GroundSection } from './recipe.ts';
 import { thin, thinGrid } from './thin.ts';
 
 /** Bare ground is sought on at most about this many pixels a side: an outline needs no more. */
-const searchPixels = 320;
+const searchPixels = 400;
 
 /**
  * Ground stage: levels the height and conditions the current of one sample (forward direction). For a sample without
@@ -47,7 +47,7 @@ export function levelGround(sample: Sample, section: GroundSection, scan: ScanSe
 
 /** The proposal, sought on every n-th pixel of large maps and given in the map's own coordinates. */
 function propose(height: ScalarMap, levelled: HeightGround, current: CurrentGround | undefined, grid: Grid, section: GroundSection): FootprintProposal | undefined {
-  const step = Math.max(1, Math.floor(Math.max(grid.columns, grid.rows) / searchPixels));
+  const step = Math.max(1, Math.ceil(Math.max(grid.columns, grid.rows) / searchPixels));
   if (step === 1) return proposeFootprint(height, levelled.repaired, current, grid, section.order);
   const coarse = thinGrid(grid, step);
   const mask = (data: Uint8Array) => maskMap(coarse, thin(data, grid, step));

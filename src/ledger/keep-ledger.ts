@@ -83,7 +83,7 @@ export function keepLedger(input: LedgerInput): Ledger {
     ...(missed ? { missedShorts: missed } : {}),
     verdict: verdictSentence({
       usable, footprintM2: footprintPixels * areaM2, surface: sample.surface, bandFactor: band.factor, hasCurrent: current !== undefined,
-      biasV: barrier?.device?.biasV, proposed: barrier?.device?.proposed, shorts: missed,
+      biasV: barrier?.device?.biasV, proposed: barrier?.device?.proposed, shorts: missed, breaksDown: barrier?.warnings.some(({ code }) => code === 'device-field') === true,
       unmeasuredM2: areaOf('unmeasured'), setAsideM2: areaOf('starved', 'rim', 'stray'),
       mayGlow: barrier?.device !== undefined && barrier.device.high95 >= band.minNaPerUm2 * 1e3 && barrier.device.low95 <= band.maxNaPerUm2 * 1e3,
     }),

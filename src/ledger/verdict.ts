@@ -14,6 +14,8 @@ export interface VerdictInput {
   /** Ground that could not be measured, and ground in band (or free of flaws) that is starved, rim or stray. */
   readonly unmeasuredM2: number;
   readonly setAsideM2: number;
+  /** Whether the device's bias would break the barrier down, by the published field. */
+  readonly breaksDown: boolean;
   /** Whether only the interval of the reference's density reaches the range that glows. */
   readonly mayGlow: boolean;
 }
@@ -30,8 +32,9 @@ export function verdictSentence(input: VerdictInput): string {
   const glow = input.biasV === undefined ? '; not known to glow, as no density is known' : usable.knownToGlow ? '' : input.mayGlow ? '; it may glow: the density’s interval reaches the range' : '; even, but not known to glow';
   const { seen, expectedMissed } = input.shorts ?? { seen: 0, expectedMissed: 0 };
   const shorts = seen === 0 ? '' : `; ${seen} ${seen === 1 ? 'short' : 'shorts'} seen${expectedMissed >= 1 ? ` (about ${Math.round(expectedMissed)} more expected between the lines)` : ''}`;
+  const caution = input.breaksDown ? '; caution: this bias puts more than hBN’s breakdown field on it' : '';
   const bound = surface === 'barrier' ? '; an upper bound, as a bare barrier was scanned' : '';
-  return `${area} ${what}, ×/÷${Number(input.bandFactor.toPrecision(3))} ${bias}${glow}${shorts}${bound}.`;
+  return `${area} ${what}, ×/÷${Number(input.bandFactor.toPrecision(3))} ${bias}${caution}${glow}${shorts}${bound}.`;
 }
 
 /** Nothing usable: that the ground is bad is said only where none is good, or could be. */

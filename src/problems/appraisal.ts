@@ -25,6 +25,8 @@ export const appraisalSentences = {
     `Even, but not known to glow: the reference would carry ${short(d.naPerUm2)} nA/µm² (95 %: ${short(d.lowNaPerUm2)}–${short(d.highNaPerUm2)}) at ${asGiven(d.biasV)} V, outside the recipe's range.`,
   'reference-passed-over': (d: { layers: number; areaUm2: number }) =>
     `A terrace ${layersApart(d.layers)} (${d.areaUm2.toFixed(2)} µm²) would carry a density in range, but it is too rare or too near the floor to measure a map against.`,
+  'device-field': (d: { fieldVPerNm: number; acrossV: number }) =>
+    `The device's bias would put ${short(d.fieldVPerNm)} V/nm on the reference terrace; hBN was found to break down near 1.2 V/nm (Hattori et al., ACS Nano 9, 916, 2015). Do not apply it; lower stack.biasV.`,
   'probe-field': (d: { fieldVPerNm: number; biasV: number }) =>
     `The scan put ${short(d.fieldVPerNm)} V/nm on the reference terrace at ${asGiven(d.biasV)} V; hBN was found to break down near 1.2 V/nm (Hattori et al., ACS Nano 9, 916, 2015), so some shorts may be the scan's own.`,
   'reference-layers-disputed': (d: { referenceLayers: number; layers: number; areaUm2: number }) =>

@@ -265,3 +265,9 @@ test('a bias is printed as it was given', () => {
   }
   assert.match(assess(scene).warnings.find(({ code }) => code === 'probe-field')!.message, / 5\.9 V/);
 });
+
+test('outside: above 1.2 V/nm on the reference the device’s bias is warned of [P, Hattori et al., ACS Nano 9, 916, 2015]', () => {
+  // 11 layers are 3.663 nm: 4.39 V is 1.198, 4.41 V 1.204 V/nm.
+  const said = (biasV: number) => codes(assess(scene, { referenceLayers: 11 }, { ...wide, biasV })).includes('device-field');
+  assert.deepEqual([said(4.39), said(4.41)], [false, true]);
+});

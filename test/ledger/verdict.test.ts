@@ -7,7 +7,7 @@ import { verdictSentence } from '../../src/ledger/verdict.ts';
 function sentence(usableUm2: number, change: Partial<VerdictInput> = {}): string {
   const usable = { areaM2: usableUm2 * 1e-12, share: usableUm2 / 10, low95M2: usableUm2 * 0.9e-12, high95M2: usableUm2 * 1.1e-12, largestPatchM2: usableUm2 * 1e-12, knownToGlow: true, meaning: 'usable' as const };
   return verdictSentence({
-    usable, footprintM2: 10e-12, surface: 'barrier', bandFactor: 3, hasCurrent: true, biasV: 3.25, proposed: false, shorts: { seen: 2, expectedMissed: 6 }, mayGlow: false, unmeasuredM2: 0, setAsideM2: 0, ...change,
+    usable, footprintM2: 10e-12, surface: 'barrier', bandFactor: 3, hasCurrent: true, biasV: 3.25, proposed: false, shorts: { seen: 2, expectedMissed: 6 }, breaksDown: false, mayGlow: false, unmeasuredM2: 0, setAsideM2: 0, ...change,
   });
 }
 
@@ -24,4 +24,9 @@ test('nothing usable: why, and what good or unknown ground there is', () => {
   assert.equal(sentence(0, { unmeasuredM2: 10e-12 }), 'Nothing of 10.0 µm² is known to be even barrier; 10.0 µm² could not be measured.');
   assert.equal(sentence(0, { hasCurrent: false, setAsideM2: 9e-12 }), 'Nothing of 10.0 µm² is usable: 9.00 µm² is free of flaws in height but starved, in the rim or too small a patch.');
   assert.equal(sentence(0, { setAsideM2: 2e-12, unmeasuredM2: 1e-12 }), 'Nothing of 10.0 µm² is usable: 2.00 µm² is even barrier but starved, in the rim or too small a patch; 1.00 µm² could not be measured.');
+});
+
+test('a bias above the breakdown field is cautioned against right behind it', () => {
+  assert.match(sentence(4, { breaksDown: true }), /at 3\.25 V; caution: this bias puts more than hBN’s breakdown field on it/);
+  assert.doesNotMatch(sentence(4), /caution/);
 });

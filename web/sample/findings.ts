@@ -1,6 +1,6 @@
 /** What each chapter found, in one or two plain sentences composed from the summary. */
 import type { SampleSummary } from '../../workers/api.ts';
-import { area, counted, density, figure, fixed, percent, span, volts, withUnit } from './format.ts';
+import { area, counted, density, densitySpan, figure, fixed, percent, volts, withUnit } from './format.ts';
 
 /** "Bare barrier, height and current, 5.9 V between tip and sample; 512 × 512 pixels on 10.0 × 10.0 µm." */
 export function scanFinding(summary: SampleSummary): string {
@@ -43,7 +43,7 @@ export function glowFinding(summary: SampleSummary): string {
   if (!current) return 'Nothing is known of the barrier without a current map.';
   if (device) {
     const known = [reference?.layers === undefined ? '' : counted(reference.layers, 'layer'), reference?.thicknessNm === undefined ? '' : withUnit(reference.thicknessNm, 'nm')].filter((part) => part !== '');
-    return `At ${device.proposed ? `${fixed(device.biasV, 1)}\u00a0V (proposed)` : volts(device.biasV)} the reference${known.length > 0 ? ` (${known.join(', ')})` : ''} would carry ${density(device.medianNaPerUm2)} (95 %: ${span(device.low95NaPerUm2, device.high95NaPerUm2, 2)}).`;
+    return `At ${device.proposed ? `${fixed(device.biasV, 1)}\u00a0V (proposed)` : volts(device.biasV)} the reference${known.length > 0 ? ` (${known.join(', ')})` : ''} would carry ${density(device.medianNaPerUm2)} (95 %: ${densitySpan(device.medianNaPerUm2, device.low95NaPerUm2, device.high95NaPerUm2)}).`;
   }
   const share = reference ? ` The reference is ${percent(reference.shareOfUnflawed)} of the unflawed ground.` : '';
   if (current.unit !== 'A') return `Density is not known: the current has no scale in amperes.${share}`;

@@ -48,10 +48,21 @@ export function area(um2: number | undefined): string {
   return withUnit(um2, 'µm²');
 }
 
+/** Densities that nA/µm² would make hard to read. */
+function asksForPrefix(naPerUm2: number): boolean {
+  return naPerUm2 !== 0 && (Math.abs(naPerUm2) < 0.01 || Math.abs(naPerUm2) >= 1e4);
+}
+
 /** A current density given in nA/µm²; prefixes other than nano when they read better. */
 export function density(naPerUm2: number | undefined): string {
   if (naPerUm2 === undefined || !Number.isFinite(naPerUm2)) return missing;
-  return naPerUm2 !== 0 && (Math.abs(naPerUm2) < 0.01 || Math.abs(naPerUm2) >= 1e4) ? withPrefix(naPerUm2 * 1e-9, 'A/µm²', 2) : withUnit(naPerUm2, 'nA/µm²', 2);
+  return asksForPrefix(naPerUm2) ? withPrefix(naPerUm2 * 1e-9, 'A/µm²', 2) : withUnit(naPerUm2, 'nA/µm²', 2);
+}
+
+/** The interval of a density beside it: bare numbers in the density's own unit, or both ends with theirs where that is not nA/µm². */
+export function densitySpan(naPerUm2: number, low: number, high: number): string {
+  if (!asksForPrefix(naPerUm2)) return span(low, high, 2);
+  return `${withPrefix(low * 1e-9, 'A/µm²', 2)} – ${withPrefix(high * 1e-9, 'A/µm²', 2)}`;
 }
 
 /** A bias: one decimal, more when it was given with more. */

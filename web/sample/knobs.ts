@@ -75,7 +75,7 @@ export function stepLabel(field: FieldInfo, value: number | string | boolean | u
 /** Why a number is refused, as a sentence; undefined when it is fine. */
 export function refusal(field: FieldInfo, value: number): string | undefined {
   const unit = field.unit === undefined ? '' : `\u00a0${field.unit}`;
-  if (Number.isNaN(value)) return `${field.title} is a number.`;
+  if (Number.isNaN(value)) return `Type a number for ${field.title.toLowerCase()}, such as ${String(field.fallback ?? 1)}.`;
   if (field.integer && !Number.isInteger(value)) return `${field.title} is a whole number.`;
   if (field.min !== undefined && value < field.min) return `${field.title} is at least ${plain(field.min)}${unit}.`;
   if (field.max !== undefined && value > field.max) return `${field.title} is at most ${plain(field.max)}${unit}.`;

@@ -1,5 +1,6 @@
 /** The tray: all samples, ranked. Sends `require` {value}, `clear-demo`, `open-demo` and what its rows send; `answer` and `answer-pages` gain {ids} and {id, file}. */
 import { LitElement, css, html, nothing } from 'lit';
+import type { PropertyValues } from 'lit';
 import { repeat } from 'lit/directives/repeat.js';
 import type { Compute, ComputeFacts } from '../../workers/api.ts';
 import { controlStyles } from '../app/controls.ts';
@@ -65,6 +66,15 @@ export class Tray extends LitElement {
     const row = this.rows().find(({ sample }) => sample?.id === id);
     await row?.updateComplete;
     row?.focus();
+  }
+
+  override updated(changed: PropertyValues<this>): void {
+    const before = changed.get('samples');
+    if (!changed.has('samples') || before === undefined || before.length === 0) return;
+    const known = new Set(before.map(({ id }) => id));
+    const arrived = this.samples.find(({ id, demo }) => demo !== true && !known.has(id));
+    // What somebody has just brought should not have to be looked for.
+    if (arrived) this.rows().find(({ sample }) => sample?.id === arrived.id)?.scrollIntoView({ block: 'nearest' });
   }
 
   override willUpdate(): void {
