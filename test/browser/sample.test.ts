@@ -102,7 +102,7 @@ describe('knobs', () => {
   it('refuse with a sentence', () => {
     assert.match(plainSpaces(refusal(fieldAt('band.factor'), 0.5)), /Band factor is at least 1\./);
     assert.match(refusal(fieldAt('ground.order'), 1.5) ?? '', /whole number/);
-    assert.match(refusal(fieldAt('band.factor'), Number.NaN) ?? '', /is a number/);
+    assert.match(refusal(fieldAt('band.factor'), Number.NaN) ?? '', /^Type a number for /);
     assert.isUndefined(refusal(fieldAt('band.factor'), 5));
   });
 
