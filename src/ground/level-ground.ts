@@ -30,11 +30,11 @@ export function levelGround(sample: Sample, section: GroundSection, scan: ScanSe
   const heightChannel = channelOf(sample, 'height');
   const currentChannel = channelOf(sample, 'current');
   const drawn = sample.outlines.length > 0 ? sample.footprint.data : undefined;
-  let height = heightChannel && levelHeight(heightChannel.values, grid, section, drawn);
+  let height = heightChannel && levelHeight(heightChannel.values, grid, section, drawn, currentChannel !== undefined);
   let conditioned = currentChannel && conditionCurrent(currentChannel, grid, height, section, scan, sample.frame.slowUp);
   const proposal = heightChannel && height && !drawn ? propose(heightChannel.values, height, conditioned?.current, grid, section) : undefined;
   if (heightChannel && proposal) {
-    height = levelHeight(heightChannel.values, grid, section, layerMask(grid, [proposal.outline], 'barrier').data);
+    height = levelHeight(heightChannel.values, grid, section, layerMask(grid, [proposal.outline], 'barrier').data, currentChannel !== undefined);
     conditioned = currentChannel && conditionCurrent(currentChannel, grid, height, section, scan, sample.frame.slowUp);
     const { ground, bareM2, stepM, flakeM2 } = proposal;
     warnings.push(notice('footprint-proposed', { sample: sample.name, ground, areaUm2: bareM2 * 1e12, stepNm: stepM * 1e9, flakeUm2: flakeM2 * 1e12 }));

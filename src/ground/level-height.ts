@@ -22,10 +22,11 @@ const deepestPitM = 6e-9;
  * the result (to float32 rounding). Missing pixels stay missing unless `repair` can fill them from agreeing neighbours.
  *
  * @param height shape [rows, columns], metres, NaN missing.
+ * @param fillMissing false where the height is all there is: then a missing point must stay one, because nothing else was measured there.
  * @param inside 1 on the ground that the form and the line offsets follow; all of the map when absent.
  * @throws never for finite or missing values; a map without any finite value must be refused before.
  */
-export function levelHeight(height: ScalarMap, grid: Grid, section: GroundSection, inside?: Uint8Array): HeightGround {
+export function levelHeight(height: ScalarMap, grid: Grid, section: GroundSection, inside?: Uint8Array, fillMissing = true): HeightGround {
   const { columns, rows } = grid;
   const raw = height.data;
   // What lies beside the flake has a level of its own and no say in the flake's form.
@@ -38,6 +39,13 @@ export function levelHeight(height: ScalarMap, grid: Grid, section: GroundSectio
 
   const noiseM = pixelNoise(values, columns, rows);
   const repaired = section.repair ? repairHeight(values, columns, rows, noiseM) : new Uint8Array(values.length);
+  if (!fillMissing) {
+    for (let i = 0; i < values.length; i++) {
+      if (!Number.isNaN(raw[i]!)) continue;
+      values[i] = Number.NaN;
+      repaired[i] = 0;
+    }
+  }
 
   const groundAgain = groundTest(within(values), columns, rows);
   const again = fitForm(values, columns, rows, section.order, groundAgain);
@@ -74,7 +82,11 @@ function sampled(values: Float32Array, columns: number, rows: number): Float64Ar
 function repairHeight(values: Float32Array, columns: number, rows: number, noise: number): Uint8Array {
   const marks = markBrokenRuns(values, columns, rows, { noise, minLength: runLength });
   markSpikes(values, marks, columns, rows, noise, deepestPitM);
-  return fillFromNeighbours(values, marks, columns, rows, Math.max(1e-9, 12 * noise));
+  const before = values.slice();
+  const filled = fillFromNeighbours(values, marks, columns, rows, Math.max(1e-9, 12 * noise));
+  // Neighbours that disagree do not show that the run was broken: then what was measured stands.
+  for (let i = 0; i < values.length; i++) if (Number.isNaN(values[i]!)) values[i] = before[i]!;
+  return filled;
 }
 
 function peakToPeak(surface: Float64Array): number {
