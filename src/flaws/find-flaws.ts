@@ -28,7 +28,7 @@ export interface FlawScale {
 
 /** A rise of fewer standard deviations of the height's noise starts no flaw. */
 const noiseFactor = 6;
-/** A conducting pit this much deeper than the thinnest barrier worth building (3 nm) less the tip's own rounding goes through it, metres. */
+/** A conducting pit of this depth counts as through the barrier, metres: the thinnest barrier worth building is 3 nm, and the probe's rounding keeps it from the bottom (our judgement). */
 const pitM = 2.6e-9;
 
 /**

@@ -79,7 +79,7 @@ function breakSign(values: Float32Array, columns: number, rows: number, r: numbe
 
 /**
  * Marks spikes: single pixels that stand off all eight neighbours by more than twelve times the noise while these agree among themselves to within
- * four. A pit of up to `pitDepth` is left alone, because it may be a pinhole.
+ * eight. A pit of up to `pitDepth` is left alone, because it may be a pinhole.
  */
 export function markSpikes(values: Float32Array, marks: Uint8Array, columns: number, rows: number, noise: number, pitDepth: number): void {
   for (let r = 1; r + 1 < rows; r++) {
@@ -103,7 +103,7 @@ export function markSpikes(values: Float32Array, marks: Uint8Array, columns: num
 
 /**
  * Fills marked or missing pixels from the nearest unmarked pixels above and below in the same column, when these are at
- * most three lines apart and agree within `tolerance`; otherwise, for single missing pixels, from left and right.
+ * most three lines apart and agree within `tolerance`; otherwise from left and right, for gaps of one or two pixels.
  *
  * @returns 1 where a pixel was filled. Pixels that could not be filled become NaN (they were marked) or stay NaN.
  */

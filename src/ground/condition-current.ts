@@ -14,7 +14,7 @@ import { findZeroCurrent } from './zero-current.ts';
 
 /** Above this height over the ground nothing of a thin barrier's current is left, metres. */
 const blockedAboveM = 4e-9;
-/** Detection limit in standard deviations of the noise (Currie, Anal. Chem. 40, 586, 1968, one-sided 99.9 %). */
+/** Detection limit in standard deviations of the noise (three: one reading in 700 of pure noise lies above, common practice). */
 const floorSigmas = 3;
 /** A break of log current this large in decades, in units of the run rule's six sigmas. */
 const runNoiseDecades = 0.05;

@@ -139,7 +139,7 @@ function fitStep(found: readonly { log10: number; share: number }[]): LadderFit 
   const slope = sxy / sxx;
   let rss = 0;
   for (const p of peaks) rss += p.share * (p.log10 - my - slope * (p.rung - mx)) ** 2;
-  // Two peaks leave no residual: then a histogram bin's width stands for the error of each.
+  // Two peaks leave no residual: then half the smoothing kernel's width stands for the error of each.
   const variance = peaks.length > 2 ? (rss / w) * (peaks.length / (peaks.length - 2)) : (smoothDecades / 2) ** 2;
   return { peaks, stepDecades: -slope, stepSeDecades: Math.sqrt((variance * w) / (sxx * peaks.length)) };
 }

@@ -44,12 +44,6 @@ export function numbersFrom(bytes: Uint8Array, kind: NumberKind, size: number): 
   }
 }
 
-/** An array that holds what `numbersFrom` gives for the same type, filled with NaN. */
-export function emptyValues(kind: NumberKind, size: number, count: number): Values {
-  const narrow = size <= 2 || (kind === 'float' && size === 4);
-  return (narrow ? new Float32Array(count) : new Float64Array(count)).fill(Number.NaN);
-}
-
 function wide(source: BigInt64Array | BigUint64Array): Float64Array {
   const out = new Float64Array(source.length);
   for (let i = 0; i < out.length; i++) out[i] = Number(source[i]);
