@@ -1,8 +1,10 @@
 import type { Barrier } from '../barrier/barrier.ts';
 import { assessBarrier } from '../barrier/assess-barrier.ts';
+import { applyCorrections } from '../flaws/apply-corrections.ts';
 import { findFlaws } from '../flaws/find-flaws.ts';
 import { levelGround } from '../ground/level-ground.ts';
 import type { Ground } from '../ground/ground.ts';
+import { measureTexture } from '../ground/measure-texture.ts';
 import { keepLedger } from '../ledger/keep-ledger.ts';
 import type { Sample } from '../read/sample.ts';
 import type { Recipe } from '../recipe/recipe.ts';
@@ -58,18 +60,26 @@ export function* evaluateInSteps(sample: Sample, recipe: Recipe, options: Evalua
   };
 
   const { band, barrier: barrierSection, stack } = recipe;
-  const ground = yield* run('ground', recipe.ground, () => levelGround(sample, recipe.ground, recipe.scan));
-  const flaws = yield* run('flaws', [recipe.flaws, barrierSection, band.shortMaxUm2, band.terraceMinUm2], () =>
+  const ground = yield* run('ground', [recipe.ground, barrierSection.layerNm], () => levelGround(sample, recipe.ground, recipe.scan, barrierSection.layerNm * 1e-9));
+  const found = yield* run('flaws', [recipe.flaws, barrierSection, band.shortMaxUm2, band.terraceMinUm2], () =>
     findFlaws(ground, sample.grid, sample.footprint, recipe.flaws, flawScale(ground, recipe)));
+  // Part of the same stage, with a key of its own: a correction by hand must not have flaws sought again.
+  key += JSON.stringify(['corrections', recipe.corrections]);
+  const flaws = recipe.corrections.length === 0 ? found : { ...found, ...cache.take(key, () => {
+    // The maps that flaws are measured by are kept once, with what was found.
+    const { rise: _rise, drop: _drop, ...corrected } = applyCorrections(found, recipe.corrections, ground, sample.grid, sample.footprint);
+    return corrected;
+  }) };
   const barrier = yield* run('barrier', [stack, band], () => barrierOf(sample, ground, flaws, recipe));
   const sheet: Sheet | undefined = yield* run('sheet', [], () => barrier && assessSheet(sheetInput(sample, ground, flaws, barrier, recipe)));
-  const ledger = yield* run('ledger', [], () => keepLedger({
-    sample, ground, flaws, barrier, sheet, band, barrierSection, offsetV: stack.offsetV,
+  const { ledger, texture } = yield* run('ledger', [], () => ({
+    ledger: keepLedger({ sample, ground, flaws, barrier, sheet, band, barrierSection, offsetV: stack.offsetV }),
+    texture: ground.height && measureTexture(ground.height, sample.grid, sample.footprint.data, flaws.labels.data, recipe.ground, barrier?.step.data),
   }));
   return {
     sample, recipe, ground, flaws,
     ...(barrier ? { barrier } : {}), ...(sheet ? { sheet } : {}),
-    ledger,
+    ledger, ...(texture ? { texture } : {}),
     warnings: [...sample.warnings, ...ground.warnings, ...flaws.warnings, ...(barrier?.warnings ?? []), ...(sheet?.warnings ?? []), ...ledger.warnings],
     timings,
   };

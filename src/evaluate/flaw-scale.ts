@@ -1,5 +1,5 @@
 import { anchorOf } from '../barrier/anchor.ts';
-import { quantifiedOverFloor } from '../barrier/terraces.ts';
+import { quantifiedOverFloor } from '../ground/current-limits.ts';
 import type { FlawScale } from '../flaws/find-flaws.ts';
 import type { Ground } from '../ground/ground.ts';
 import { measureLadder } from '../ground/ladder.ts';

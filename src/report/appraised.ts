@@ -5,8 +5,9 @@
 import type { Barrier } from '../barrier/barrier.ts';
 import type { BarrierSection } from '../barrier/recipe.ts';
 import type { Flaws } from '../flaws/flaws.ts';
-import type { FlawsSection } from '../flaws/recipe.ts';
+import type { CorrectionEntry, FlawsSection } from '../flaws/recipe.ts';
 import type { Ground } from '../ground/ground.ts';
+import type { Texture } from '../ground/measure-texture.ts';
 import type { GroundSection } from '../ground/recipe.ts';
 import type { Ledger } from '../ledger/ledger.ts';
 import type { BandSection } from '../ledger/recipe.ts';
@@ -34,7 +35,7 @@ export interface AppliedRecipe {
   readonly stack: StackSection;
   readonly band: BandSection;
   readonly plan: PlanSection;
-  readonly corrections: readonly unknown[];
+  readonly corrections: readonly CorrectionEntry[];
 }
 
 /** One sample carried through the chain, as far as a result file can tell. */
@@ -46,6 +47,8 @@ export interface Appraised {
   readonly barrier?: Barrier;
   readonly sheet?: Sheet;
   readonly ledger: Ledger;
+  /** Absent without a height, and where no flawless ground was measured. */
+  readonly texture?: Texture;
   readonly warnings: readonly Notice[];
   /** Milliseconds per stage. */
   readonly timings: Readonly<Record<string, number>>;

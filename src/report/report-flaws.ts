@@ -1,5 +1,7 @@
 /** The report's part on flaws: how many, how dense, what the scan lines may have missed, and the largest ones. */
+import { correctionWords } from '../flaws/correction-words.ts';
 import type { Flaw } from '../flaws/flaws.ts';
+import type { CorrectionEntry } from '../flaws/recipe.ts';
 import type { Appraised } from './appraised.ts';
 import { swatch } from './ledger-figure.ts';
 import { markup } from './markup.ts';
@@ -10,7 +12,7 @@ import type { Verdict } from './verdict.ts';
 
 const shown = 100;
 
-export function flawsPart({ flaws, ground }: Appraised, verdict: Verdict): Markup {
+export function flawsPart({ flaws, ground, recipe }: Appraised, verdict: Verdict): Markup {
   const { count, densityPerUm2: density, shorts, expectedMissedShorts } = verdict.flaws;
   // What the input does not show is not counted as none.
   const counts = [
@@ -23,7 +25,17 @@ export function flawsPart({ flaws, ground }: Appraised, verdict: Verdict): Marku
   return markup`<section><h2>Flaws</h2>
 <p>${counts}: ${withUnit(density.estimate, '/µm²')} (95 %: ${interval(density.low95, density.high95, '/µm²')}, exact Poisson).</p>
 ${shortsLine}
+${verdict.corrections ? correctionsList(recipe.corrections, verdict.corrections.applied) : undefined}
 ${flaws.list.length > 0 ? flawTable(flaws.list) : undefined}</section>`;
+}
+
+/** In the order in which they are applied. */
+function correctionsList(corrections: readonly CorrectionEntry[], applied: number): Markup {
+  const more = corrections.length - shown;
+  return markup`<h3>Corrections by hand</h3>
+<p>${applied} of ${corrections.length} met something and were applied, in this order.</p>
+<ol>${corrections.slice(0, shown).map((entry) => markup`<li>${correctionWords(entry)}</li>`)}</ol>
+${more > 0 ? markup`<p class="note">The first ${shown}; ${more} more are in the recipe below.</p>` : undefined}`;
 }
 
 /** Largest first; equal areas in the order of their numbers. */

@@ -1,11 +1,12 @@
 /** The report's first part: the verdict, the ledger as bar and table, and what the interval contains. */
-import { leastWearDecades } from '../ground/wear.ts';
 import { orderOfTest } from '../ledger/ledger.ts';
 import type { Appraised } from './appraised.ts';
 import { ledgerBar, swatch } from './ledger-figure.ts';
 import { markup, named } from './markup.ts';
 import type { Markup } from './markup.ts';
-import { counted, decimalsFor, fixed, interval, percent, plain, withPrefix, withUnit } from './numbers.ts';
+import { counted, decimalsFor, fixed, interval, percent, plain, withUnit } from './numbers.ts';
+import { currentLines } from './report-current.ts';
+import { textureLine } from './report-texture.ts';
 import type { Verdict } from './verdict.ts';
 
 /** Head of the page with verdict sentence, bar and the line of the most important numbers. */
@@ -66,12 +67,7 @@ export function scanPart({ sample, ground }: Appraised, verdict: Verdict): Marku
 <dt>Map</dt><dd>${map.columns} × ${map.rows} pixels of ${withUnit(map.pitchXUm * 1000, 'nm')} × ${withUnit(map.pitchYUm * 1000, 'nm')}; ${withUnit(map.columns * map.pitchXUm, 'µm')} × ${withUnit(map.rows * map.pitchYUm, 'µm')}</dd>
 <dt>Channels</dt><dd><ul>${channels}</ul></dd>
 ${height ? markup`<dt>Height</dt><dd>${withUnit(height.tiltM * 1e9, 'nm')} of tilt and bow removed, noise ${withUnit(height.noiseM * 1e9, 'nm')}, ${counted(height.repairedPixels, 'pixel')} repaired</dd>` : markup`<dt>Height</dt><dd>not measured: bubbles, residue and wrinkles cannot be seen</dd>`}
-${current ? currentLine(current) : markup`<dt>Current</dt><dd>not measured: shorts, thin and thick ground cannot be seen</dd>`}
+${textureLine(verdict)}
+${current ? currentLines(current, ground.returned) : markup`<dt>Current</dt><dd>not measured: shorts, thin and thick ground cannot be seen</dd>`}
 </dl></section>`;
-}
-
-function currentLine(current: NonNullable<Appraised['ground']['current']>): Markup {
-  const value = (amount: number): string => (current.unit === 'A' ? withPrefix(amount, 'A') : withUnit(amount, 'of the file’s unit'));
-  const wear = current.wearDecades < leastWearDecades ? 'no loss of the tip’s conductance told from the barrier' : `the tip lost ${withUnit(current.wearDecades, 'decades', 2)} of conductance`;
-  return markup`<dt>Current</dt><dd>offset ${value(current.offsetA)} removed, noise ${value(current.noiseA)}, floor ${value(current.floorA)}, ${counted(current.saturatedPixels, 'pixel')} saturated, ${current.repairedPixels} repaired; ${wear}</dd>`;
 }

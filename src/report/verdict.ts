@@ -9,6 +9,8 @@ import { poissonInterval } from '../stats/poisson.ts';
 import type { App, Appraised } from './appraised.ts';
 import { resultNames } from './result-names.ts';
 import { rounded, toNaPerUm2, toNm, toPerUm2, toUm, toUm2 } from './units.ts';
+import { currentPart, returnPart } from './verdict-current.ts';
+import { texturePart } from './verdict-texture.ts';
 import { withoutMissing } from './without-missing.ts';
 
 export const verdictFormat = 'evenglow-verdict';
@@ -23,7 +25,7 @@ export type Verdict = ReturnType<typeof verdictOf>;
  * infinite or undefined in it. `files` names the result files that this sample has; fewer lie beside it when fewer were asked for. The same appraisal gives the same object; only `timings` differs between runs.
  */
 export function verdictOf(appraised: Appraised, app: App) {
-  const { sample, recipe, ground, flaws, barrier, sheet, ledger, warnings } = appraised;
+  const { sample, recipe, ground, flaws, barrier, sheet, ledger, texture, warnings } = appraised;
   return withoutMissing({
     format: verdictFormat,
     version: verdictVersion,
@@ -41,7 +43,9 @@ export function verdictOf(appraised: Appraised, app: App) {
     reference: barrier && referencePart(barrier, ground.current),
     ladder: barrier && ladderPart(barrier),
     device: barrier?.device && devicePart(barrier.device, sample, ground.current, sheet?.totals),
+    texture: texture && texturePart(texture),
     flaws: flawsPart(flaws, ledger),
+    corrections: flaws.corrections && { given: flaws.corrections.given, applied: flaws.corrections.applied },
     warnings: warnings.map(({ code, message }) => ({ code, message })),
     timings: Object.fromEntries(Object.entries(appraised.timings).map(([stage, ms]) => [stage, Number(ms.toFixed(1))])),
   });
@@ -56,10 +60,11 @@ function mapPart({ grid }: Sample) {
   return { columns: grid.columns, rows: grid.rows, pitchXUm: toUm(grid.pitchXM), pitchYUm: toUm(grid.pitchYM) };
 }
 
-function groundPart({ height, current }: Ground) {
+function groundPart({ height, current, returned }: Ground) {
   return {
     height: height && { noiseNm: toNm(height.noiseM), repairedPixels: height.repairedPixels, tiltNm: toNm(height.tiltM) },
     current: current && currentPart(current),
+    returnScan: returned && returnPart(returned, current?.unit),
   };
 }
 
@@ -67,23 +72,6 @@ function groundPart({ height, current }: Ground) {
 function footprintPart({ outline }: FootprintProposal) {
   const coordinates = outline.rings.map((ring) => ring.map(([xM, yM]) => [toUm(xM), toUm(yM)]));
   return { type: 'FeatureCollection', features: [{ type: 'Feature', properties: { layer: outline.layer }, geometry: { type: 'Polygon', coordinates } }] };
-}
-
-/** Without amperes the fields that end in A are absent; the same numbers are given as `…Relative`. */
-function currentPart(current: CurrentGround) {
-  const amperes = current.unit === 'A';
-  return {
-    offsetA: amperes ? rounded(current.offsetA) : undefined,
-    noiseA: amperes ? rounded(current.noiseA) : undefined,
-    floorA: amperes ? rounded(current.floorA) : undefined,
-    offsetRelative: amperes ? undefined : rounded(current.offsetA),
-    noiseRelative: amperes ? undefined : rounded(current.noiseA),
-    floorRelative: amperes ? undefined : rounded(current.floorA),
-    saturatedPixels: current.saturatedPixels,
-    repairedPixels: current.repairedPixels,
-    wearDecades: rounded(current.wearDecades),
-    biasV: current.biasV,
-  };
 }
 
 function ledgerPart(ledger: Ledger) {
