@@ -55,7 +55,26 @@ export interface FlawEntry {
   /** Absent without a height map. */
   readonly peakNm?: number;
   readonly heightToRadius?: number;
+  /** A person said what it is. */
+  readonly byHand?: true;
+  /** A point well inside it, by which corrections name it. In the lists of summaries only. */
+  readonly insideUm?: readonly [x: number, y: number];
 }
+
+/** What a flaw can be. */
+export const flawCauses = ['bubble', 'residue', 'wrinkle', 'short', 'open'] as const;
+export type FlawCause = (typeof flawCauses)[number];
+
+type PointUm = readonly [x: number, y: number];
+
+/** One correction by hand, as the list `corrections` of a recipe holds it: places in µm from the map's lower-left corner, never numbers of flaws. */
+export type Correction =
+  | { readonly kind: 'reclassify'; readonly xUm: number; readonly yUm: number; readonly cause: FlawCause }
+  | { readonly kind: 'dismiss'; readonly xUm: number; readonly yUm: number }
+  | { readonly kind: 'merge' | 'split'; readonly pointsUm: readonly PointUm[] }
+  | { readonly kind: 'paint'; readonly pointsUm: readonly PointUm[]; readonly widthUm: number; readonly cause: FlawCause }
+  | { readonly kind: 'erase'; readonly pointsUm: readonly PointUm[]; readonly widthUm: number }
+  | { readonly kind: 'polygon'; readonly pointsUm: readonly PointUm[]; readonly cause: FlawCause | 'none' };
 
 /** Maps that a picture, a point or a cut can be asked of. `raw…` are as the file has them. */
 export const mapNames = ['height', 'current', 'layers', 'thickness', 'glow', 'rawHeight', 'rawCurrent'] as const;
@@ -109,6 +128,8 @@ export interface SampleSummary {
   /** Absent without a current: shorts do not show in height. */
   readonly shorts?: { readonly seen: number; readonly expectedMissed: number; readonly crossedShare: number };
   readonly flaws: readonly FlawEntry[];
+  /** The recipe's corrections by hand in words, in their order. */
+  readonly corrections: readonly string[];
   readonly maps: readonly MapInfo[];
   readonly remarks: readonly Remark[];
   /** Complete recipe as applied. */

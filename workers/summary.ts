@@ -1,5 +1,7 @@
 /** Everything about an appraised sample except its maps, rounded as in the result files. */
+import { correctionWords } from '../src/flaws/correction-words.ts';
 import type { Flaw } from '../src/flaws/flaws.ts';
+import { innerPoints } from '../src/flaws/inner-points.ts';
 import { leastWearDecades } from '../src/ground/wear.ts';
 import type { Appraised } from '../src/report/appraised.ts';
 import { rounded, toNaPerUm2, toNm, toUm, toUm2 } from '../src/report/units.ts';
@@ -7,7 +9,7 @@ import type { FlawEntry, RecipeData, SampleSummary } from './api.ts';
 import { mapInfos } from './map-view.ts';
 
 export function summaryOf(id: string, appraised: Appraised): SampleSummary {
-  const { sample, recipe, ledger, flaws, warnings } = appraised;
+  const { sample, recipe, ledger, warnings } = appraised;
   const { grid } = sample;
   const { usable, missedShorts } = ledger;
   return {
@@ -25,7 +27,8 @@ export function summaryOf(id: string, appraised: Appraised): SampleSummary {
     ...groundParts(appraised),
     ...barrierParts(appraised),
     ...(missedShorts ? { shorts: { seen: missedShorts.seen, expectedMissed: rounded(missedShorts.expectedMissed), crossedShare: rounded(missedShorts.crossedShare) } } : {}),
-    flaws: flaws.list.map(flawEntry),
+    flaws: flawList(appraised),
+    corrections: recipe.corrections.map(correctionWords),
     maps: mapInfos(appraised),
     remarks: warnings.map(({ code, message }) => ({ code, message })),
     recipe: plainJson({ ...recipe }),
@@ -34,12 +37,18 @@ export function summaryOf(id: string, appraised: Appraised): SampleSummary {
   };
 }
 
+function flawList({ flaws, sample }: Appraised): FlawEntry[] {
+  const inner = innerPoints(flaws, sample.grid);
+  return flaws.list.map((flaw, k) => ({ ...flawEntry(flaw), insideUm: [toUm(inner[k]!.xM), toUm(inner[k]!.yM)] as const }));
+}
+
 export function flawEntry(flaw: Flaw): FlawEntry {
   return {
     flaw: flaw.flaw, cause: flaw.cause, confidence: rounded(flaw.confidence), reason: flaw.reason,
     xUm: toUm(flaw.xM), yUm: toUm(flaw.yM), areaUm2: toUm2(flaw.areaM2), diameterUm: toUm(flaw.diameterM),
     ...(Number.isFinite(flaw.peakM) ? { peakNm: toNm(flaw.peakM) } : {}),
     ...(Number.isFinite(flaw.heightToRadius) ? { heightToRadius: rounded(flaw.heightToRadius) } : {}),
+    ...(flaw.byHand ? { byHand: flaw.byHand } : {}),
   };
 }
 

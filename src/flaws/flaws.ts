@@ -2,7 +2,8 @@
 import type { LabelMap } from '../grid/maps.ts';
 import type { Notice } from '../problems/problem.ts';
 
-export type FlawCause = 'bubble' | 'residue' | 'wrinkle' | 'short' | 'open';
+export const flawCauses = ['bubble', 'residue', 'wrinkle', 'short', 'open'] as const;
+export type FlawCause = (typeof flawCauses)[number];
 
 /** One flaw, measured. Lengths in metres, areas in m², volume in m³; NaN where a quantity does not apply. */
 export interface Flaw {
@@ -34,6 +35,8 @@ export interface Flaw {
   /** Median log10 of the current inside (A, or the file's unit), NaN where no current. */
   readonly log10Current: number;
   readonly touchesEdge: boolean;
+  /** A person said what it is. */
+  readonly byHand?: true;
 }
 
 export interface Flaws {
@@ -41,4 +44,10 @@ export interface Flaws {
   readonly labels: LabelMap;
   readonly list: readonly Flaw[];
   readonly warnings: readonly Notice[];
+  /** Height above the local ground, metres, pixel by pixel; absent without a height. With `drop` it lets a corrected region be measured again. */
+  readonly rise?: Float32Array;
+  /** Decades of current lost against the surrounding ground, pixel by pixel; absent where height and current were not both there. */
+  readonly drop?: Float32Array;
+  /** Only where there are corrections by hand: how many there are, and how many of them met something. */
+  readonly corrections?: { readonly given: number; readonly applied: number };
 }

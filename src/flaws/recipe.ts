@@ -2,6 +2,9 @@
 import type { z } from 'zod';
 import { numberField, section } from '../schema/fields.ts';
 
+export { correctionList } from './correction-recipe.ts';
+export type { CorrectionEntry } from './correction-recipe.ts';
+
 export const flawsSection = section({
   heightNm: numberField(0.8, { above: 0, max: 1000 }, {
     title: 'Height above ground', unit: 'nm', description: 'A rise of at least this much over its surroundings starts a flaw.',

@@ -60,7 +60,7 @@ export function keepLedger(input: LedgerInput): Ledger {
   const footprintPixels = count - pixels[0]!;
   const rows: LedgerRow[] = causes.slice(1).map((cause, k) => ({
     code: k + 1, cause, pixels: pixels[k + 1]!, areaM2: pixels[k + 1]! * areaM2,
-    share: footprintPixels > 0 ? pixels[k + 1]! / footprintPixels : 0, assessed: isAssessed(cause, input),
+    share: footprintPixels > 0 ? pixels[k + 1]! / footprintPixels : 0, assessed: pixels[k + 1]! > 0 || isAssessed(cause, input),
   }));
 
   const usable = usableOf(input, codes, pixels[codeOf('usable')]!, footprintPixels, areaM2);
@@ -117,7 +117,7 @@ function densityOf({ barrierSection, band, offsetV }: LedgerInput, barrier: Barr
   };
 }
 
-/** Whether the input allows a cause to be told at all. */
+/** Whether the input allows a cause to be told at all; a cause that a person painted is told whatever the input. */
 function isAssessed(cause: Cause, input: LedgerInput): boolean {
   const hasHeight = input.ground.height !== undefined;
   const hasCurrent = input.ground.current !== undefined;

@@ -1,6 +1,8 @@
 import { appraisalSentences } from './appraisal.ts';
 import { barrierSentences } from './barrier.ts';
 import { commandSentences } from './command.ts';
+import { correctionSentences } from './corrections.ts';
+import { groundSentences } from './ground.ts';
 import { readSentences } from './read.ts';
 import { recipeSentences } from './recipe.ts';
 import { sheetSentences } from './sheet.ts';
@@ -10,6 +12,8 @@ export const catalogue = {
   ...readSentences,
   ...recipeSentences,
   ...appraisalSentences,
+  ...groundSentences,
+  ...correctionSentences,
   ...barrierSentences,
   ...sheetSentences,
   ...commandSentences,

@@ -33,8 +33,8 @@ export function footprintOf(grid: Grid, outlines: readonly Outline[]): MaskMap {
   return maskMap(grid, data);
 }
 
-/** Sets the pixels of one polygon to 1, line by line between the crossings of its rings. */
-function fillPolygon(grid: Grid, outline: Outline, data: Uint8Array): void {
+/** Sets the pixels of one polygon (closed rings, even-odd) to 1, line by line between the crossings of its rings. */
+export function fillPolygon(grid: Grid, outline: Pick<Outline, 'rings'>, data: Uint8Array): void {
   const { columns, rows, pitchXM, pitchYM } = grid;
   const crossings: number[][] = Array.from({ length: rows }, () => []);
   for (const ring of outline.rings) {

@@ -4,7 +4,7 @@
  */
 import { z } from 'zod';
 import { barrierSection } from '../barrier/recipe.ts';
-import { flawsSection } from '../flaws/recipe.ts';
+import { correctionList, flawsSection } from '../flaws/recipe.ts';
 import { groundSection } from '../ground/recipe.ts';
 import { bandSection } from '../ledger/recipe.ts';
 import { planSection } from '../plan/recipe.ts';
@@ -35,7 +35,7 @@ export const recipeSchema = z.strictObject({
   stack: stackSection.prefault({}),
   band: bandSection.prefault({}),
   plan: planSection.prefault({}),
-  corrections: z.array(z.never()).max(0, 'hand corrections are not known to this version').default([]),
+  corrections: correctionList.default([]),
 });
 
 export type Recipe = z.output<typeof recipeSchema>;

@@ -96,7 +96,7 @@ export function createSummary(id: string, usable: Partial<SampleSummary['usable'
     id, name: id, verdict: '', surface: 'barrier', columns: 64, rows: 32, widthUm: 10, heightUm: 5, footprintUm2: 50, repairedUm2: 0,
     ledger: [{ code: 1, cause: 'usable', areaUm2, pixels: 10, share: areaUm2 / 50, assessed: true }, { code: 9, cause: 'thick', areaUm2: 50 - areaUm2, pixels: 10, share: 1 - areaUm2 / 50, assessed: true }],
     usable: { areaUm2, share: areaUm2 / 50, low95Um2: areaUm2 - 1, high95Um2: areaUm2 + 1, largestPatchUm2: areaUm2 / 2, knownToGlow: true, meaning: 'usable', ...usable },
-    shorts: { seen: 0, expectedMissed: 0, crossedShare: 0.2 }, flaws: [], recipe: {}, sources: [], timings: {},
+    shorts: { seen: 0, expectedMissed: 0, crossedShare: 0.2 }, flaws: [], corrections: [], recipe: {}, sources: [], timings: {},
     maps: [{ name: 'height', unit: 'nm', low: 0, high: 5, least: -1, most: 9, log: false }, { name: 'current', unit: 'A', low: 1e-12, high: 1e-9, least: 0, most: 1e-8, log: true }],
     remarks: [{ code: 'a', message: 'A runner-up is close.' }],
   };

@@ -31,7 +31,7 @@ export const summary: SampleSummary = {
     { step: 1, layers: 13, areaUm2: 20, medianLog10: -10.8, bound: 'exact' }, { step: 3, layers: 15, areaUm2: 7, medianLog10: -12.9, bound: 'at-least' } ] },
   reference: { layers: 12, thicknessNm: 4, medianA: 1e-10, areaUm2: 41, shareOfUnflawed: 0.45 },
   device: { biasV: 4, proposed: false, medianNaPerUm2: 6.3, low95NaPerUm2: 0.9, high95NaPerUm2: 40 },
-  shorts: { seen: 6, expectedMissed: 19, crossedShare: 0.24 }, flaws,
+  shorts: { seen: 6, expectedMissed: 19, crossedShare: 0.24 }, flaws, corrections: [],
   maps: [map('height', 'nm', -1, 20), map('current', 'A', 1e-12, 1e-9, true), { ...map('layers', '', 11, 15), least: 11, most: 15 }, map('thickness', 'nm', 3.7, 5), map('glow', '', 0, 2), map('rawHeight', 'nm', 300, 340), map('rawCurrent', 'A', 1e-12, 1e-9, true)],
   remarks: [{ code: 'a', message: 'First remark.' }, { code: 'b', message: 'Second remark.' }],
   recipe: { format: 'evenglow-recipe', version: 1, band: { factor: 3 } }, sources: [{ name: 'flake04.height.tif', sha256: '', bytes: 1 }], timings: {},

@@ -37,6 +37,23 @@ for (const [changes, sentence] of [
   [{ bands: {} }, 'recipe.bands: is not a setting this version knows; "evenglow recipe" lists them.'],
   [{ plan: { marks: [{ mapXUm: 1, mapYUm: 2, chipXUm: 3 }] } }, 'recipe.plan.marks.0.chipYUm: nothing is not a number.'],
   [{ version: 0 }, 'recipe.version: 0 is not one of 1.'],
+  [{ corrections: {} }, 'recipe.corrections: {} is not an array.'],
+  [{ corrections: [1] }, 'recipe.corrections.0: 1 is not an object.'],
+  [{ corrections: [{ kind: 'smear' }] }, 'recipe.corrections.0.kind: "smear" is not one of reclassify, dismiss, merge, split, paint, erase, polygon.'],
+  [{ corrections: [{ xUm: 1, yUm: 1 }] }, 'recipe.corrections.0.kind: nothing is not one of reclassify, dismiss, merge, split, paint, erase, polygon.'],
+  [{ corrections: [{ kind: 'dismiss', xUm: 1, yUm: 1 }, { kind: 'dismiss', xUm: 1 }] }, 'recipe.corrections.1.yUm: nothing is not a number.'],
+  [{ corrections: [{ kind: 'dismiss', xUm: 1, yUm: 1, flaw: 3 }] }, 'recipe.corrections.0.flaw: is not a setting this version knows; "evenglow recipe" lists them.'],
+  [{ corrections: [{ kind: 'dismiss', xUm: 1, yUm: 1, radiusUm: 0 }] }, 'recipe.corrections.0.radiusUm: 0 is not above 0.'],
+  [{ corrections: [{ kind: 'reclassify', xUm: 1, yUm: 1, cause: 'none' }] }, 'recipe.corrections.0.cause: "none" is not one of bubble, residue, wrinkle, short, open.'],
+  [{ corrections: [{ kind: 'reclassify', xUm: 2e6, yUm: 1, cause: 'open' }] }, 'recipe.corrections.0.xUm: 2000000 is above 1000000.'],
+  [{ corrections: [{ kind: 'merge', pointsUm: [[1, 2]] }] }, 'recipe.corrections.0.pointsUm: has fewer than 2 entries.'],
+  [{ corrections: [{ kind: 'split', pointsUm: [[1, 2], [3]] }] }, 'recipe.corrections.0.pointsUm.1: has fewer than 2 entries.'],
+  [{ corrections: [{ kind: 'split', pointsUm: [[1, 2], [3, 4, 5]] }] }, 'recipe.corrections.0.pointsUm.1: has more than 2 entries.'],
+  [{ corrections: [{ kind: 'paint', pointsUm: [], widthUm: 1, cause: 'bubble' }] }, 'recipe.corrections.0.pointsUm: has fewer than 1 entries.'],
+  [{ corrections: [{ kind: 'paint', pointsUm: [[1, 2]], cause: 'bubble' }] }, 'recipe.corrections.0.widthUm: nothing is not a number.'],
+  [{ corrections: [{ kind: 'erase', pointsUm: [['1', 2]], widthUm: 1 }] }, 'recipe.corrections.0.pointsUm.0.0: "1" is not a number.'],
+  [{ corrections: [{ kind: 'polygon', pointsUm: [[1, 2], [3, 4]], cause: 'none' }] }, 'recipe.corrections.0.pointsUm: has fewer than 3 entries.'],
+  [{ corrections: [{ kind: 'polygon', pointsUm: [[1, 2], [3, 4], [5, 6]] }] }, 'recipe.corrections.0.cause: nothing is not one of bubble, residue, wrinkle, short, open, none.'],
 ] as const) {
   test(`refused: ${sentence}`, () => {
     const problem = refusal(() => checkRecipe({ ...head, ...changes }));
@@ -45,10 +62,9 @@ for (const [changes, sentence] of [
   });
 }
 
-test('a section that is no object, a list of corrections that holds one', () => {
+test('a section that is no object', () => {
   assert.match(refusal(() => checkRecipe({ ...head, band: 3 })).message, /^recipe\.band: 3 is not a[n]? object\.$/);
   assert.match(refusal(() => checkRecipe({ ...head, band: [] })).message, /^recipe\.band: \[\] is not a[n]? object\.$/);
-  assert.match(refusal(() => checkRecipe({ ...head, corrections: [1] })).message, /^recipe\.corrections/);
   assert.match(refusal(() => checkRecipe(undefined)).message, /^recipe: /);
 });
 
@@ -136,6 +152,29 @@ test('names of the prototype are refused and change nothing', () => {
   assert.equal((Object as unknown as Record<string, unknown>)['polluted'], undefined);
   assert.deepEqual(Object.getOwnPropertyNames(Object.prototype).sort(), before);
   assert.equal(typeof {}.toString, 'function');
+});
+
+test('corrections of every kind are taken as they are, in order, also through --set', () => {
+  const corrections = [
+    { kind: 'reclassify', xUm: 1, yUm: 2, cause: 'residue' }, { kind: 'dismiss', xUm: -1, yUm: 2, radiusUm: 0.1 }, { kind: 'merge', pointsUm: [[1, 2], [3, 4], [5, 6]] },
+    { kind: 'split', pointsUm: [[1, 2], [3, 4]] }, { kind: 'paint', pointsUm: [[1, 2]], widthUm: 0.2, cause: 'short' }, { kind: 'erase', pointsUm: [[1, 2], [3, 4]], widthUm: 0.2 },
+    { kind: 'polygon', pointsUm: [[0, 0], [1, 0], [0, 1]], cause: 'none' },
+  ];
+  assert.deepEqual(checkRecipe({ ...head, corrections }).corrections, corrections);
+  assert.deepEqual(checkRecipe(applySettings(head, [`corrections=${JSON.stringify(corrections)}`])).corrections, corrections);
+  assert.deepEqual(checkRecipe(applySettings({ ...head, corrections }, ['corrections=none'])).corrections, []);
+});
+
+test('the JSON Schema describes every kind of correction and each of its fields', () => {
+  type Field = { const?: string; title?: string; description?: string };
+  const schema = recipeJsonSchema() as unknown as { properties: { corrections: { items: { oneOf: { description?: string; additionalProperties?: boolean; properties: Record<string, Field> }[] } } } };
+  const kinds = schema.properties.corrections.items.oneOf;
+  assert.deepEqual(kinds.map(({ properties }) => properties['kind']?.const), ['reclassify', 'dismiss', 'merge', 'split', 'paint', 'erase', 'polygon']);
+  for (const { description, additionalProperties, properties } of kinds) {
+    assert.ok(description);
+    assert.equal(additionalProperties, false);
+    for (const [name, field] of Object.entries(properties)) assert.ok(name === 'kind' || field.description, name);
+  }
 });
 
 /** The paths of the contract, section by section. */

@@ -152,8 +152,24 @@ describe('an appraisal', () => {
   it('names a flaw at the centre of its bubble', async () => {
     const flaw = summary.flaws.find(({ cause }) => cause === 'bubble')!;
     const point = await compute.point(id, flaw.xUm, flaw.yUm);
-    assert.deepEqual(point.flaw, flaw);
+    const { insideUm, ...listed } = flaw;
+    assert.deepEqual(point.flaw, listed);
     assert.equal(point.cause, 'bubble');
+    assert.equal((await compute.point(id, ...insideUm!)).flaw?.flaw, flaw.flaw, 'the point inside it lies on it');
+  });
+
+  it('corrects flaws by the recipe, says so in words, and gives the former result without', async () => {
+    const flaw = summary.flaws.find(({ cause }) => cause === 'bubble')!;
+    const [xUm, yUm] = flaw.insideUm!;
+    const corrected = await compute.appraise(90, id, { ...summary.recipe, corrections: [{ kind: 'reclassify', xUm, yUm, cause: 'residue' }] });
+    const { insideUm: _inside, ...now } = corrected.flaws.find((entry) => entry.flaw === flaw.flaw)!;
+    const { insideUm: _was, ...before } = flaw;
+    assert.deepEqual(now, { ...before, cause: 'residue', confidence: 1, reason: 'set by hand: residue', byHand: true });
+    assert.deepEqual(corrected.corrections, [`flaw at x ${xUm.toFixed(2)}, y ${yUm.toFixed(2)} µm set to residue`]);
+    assert.equal((await compute.point(id, xUm, yUm)).cause, 'residue');
+    const refused = await compute.appraise(91, id, { ...summary.recipe, corrections: [{ kind: 'reclassify', xUm, yUm }] }).catch((error: unknown) => error);
+    assert.match(String(refused), /recipe\.corrections\.0\.cause: nothing is not one of bubble/);
+    assert.deepEqual((await compute.appraise(92, id, summary.recipe)).ledger, summary.ledger);
   });
 });
 

@@ -6,6 +6,7 @@ import type { AnswerDetail } from '../import/import-form.ts';
 import '../import/import-form.ts';
 import type { PagesDetail } from '../import/pages-form.ts';
 import { questionsOf } from '../import/questions.ts';
+import type { CorrectionEvent, CorrectionOutEvent } from '../sample/events.ts';
 import '../sample/sample-place.ts';
 import { answer } from '../session/actions/answer.ts';
 import { answerPages } from '../session/actions/answer-pages.ts';
@@ -13,6 +14,7 @@ import { cancel } from '../session/actions/cancel.ts';
 import { changeRecipe } from '../session/actions/change-recipe.ts';
 import { clearDemo } from '../session/actions/clear-demo.ts';
 import { close } from '../session/actions/close.ts';
+import { correct, takeOutCorrection } from '../session/actions/correct.ts';
 import { redo, undo } from '../session/actions/move-in-history.ts';
 import { openDemo } from '../session/actions/open-demo.ts';
 import { openFiles } from '../session/actions/open-files.ts';
@@ -122,6 +124,8 @@ export class App extends LitElement {
       ${sample.status === 'asking' ? this.questions(sample) : nothing}
       <eg-sample-place .sample=${sample} .facts=${this.facts} .compute=${session.compute}
         @recipe-change=${({ detail }: Change) => { void session.do(changeRecipe, id, detail.path, detail.value, detail.label); }}
+        @correction=${({ detail }: CorrectionEvent) => { void session.do(correct, id, detail.correction, detail.label); }}
+        @correction-out=${({ detail }: CorrectionOutEvent) => { void session.do(takeOutCorrection, id, detail.index, detail.label); }}
         @undo=${() => { void session.do(undo, id); }}
         @redo=${() => { void session.do(redo, id); }}
         @cancel=${() => { session.do(cancel, id); }}

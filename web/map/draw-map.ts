@@ -1,4 +1,7 @@
 /** Draws the stage: the picture at hand, moved and scaled to the present view, and what lies over it. */
+import type { Picture } from '../../workers/api.ts';
+import { drawHand } from '../hand/draw-hand.ts';
+import type { HandScene } from '../hand/draw-hand.ts';
 import { withUnit, figure } from '../sample/format.ts';
 import { boxOnStage, roundLength, toStage } from './view.ts';
 import type { Extent, Part, Size, View } from './view.ts';
@@ -27,11 +30,32 @@ export interface MapScene {
   readonly cut: { readonly fromUm: readonly [number, number]; readonly toUm: readonly [number, number] | undefined } | undefined;
   /** Place whose values are read out by keyboard. */
   readonly cross: { readonly xUm: number; readonly yUm: number } | undefined;
+  /** What is being drawn by hand. */
+  readonly hand?: HandScene | undefined;
   readonly colours: MapColours;
 }
 
 /** Rings larger than this, in stage pixels, are left out. */
 const ringLimit = 40;
+
+/** The canvas has so many pixels of the screen as the stage covers. */
+export function sizeCanvas(canvas: HTMLCanvasElement, stage: Size, pixelRatio: number): void {
+  const width = Math.round(stage.width * pixelRatio);
+  const height = Math.round(stage.height * pixelRatio);
+  // Setting a size clears the canvas, even to the size that it has.
+  if (canvas.width === width && canvas.height === height) return;
+  canvas.width = width;
+  canvas.height = height;
+}
+
+/** A picture of the computation as something that can be drawn. */
+export function imageOf({ width, height, rgba }: Picture): HTMLCanvasElement {
+  const image = document.createElement('canvas');
+  image.width = width;
+  image.height = height;
+  image.getContext('2d')?.putImageData(new ImageData(rgba, width, height), 0, 0);
+  return image;
+}
 
 /** Draws onto a canvas of `stage` CSS pixels times `pixelRatio`. */
 export function drawMap(pen: CanvasRenderingContext2D, scene: MapScene): void {
@@ -54,6 +78,7 @@ export function drawMap(pen: CanvasRenderingContext2D, scene: MapScene): void {
   pen.strokeRect(Math.round(whole.left) - 0.5, Math.round(whole.top) - 0.5, Math.round(whole.width) + 1, Math.round(whole.height) + 1);
   if (scene.flaw) drawFlaw(pen, scene, scene.flaw);
   if (scene.cut) drawCut(pen, scene, scene.cut);
+  if (scene.hand) drawHand(pen, view, extent, colours, scene.hand, (width, path) => { haloed(pen, colours, width, path); });
   if (scene.cross) drawCross(pen, scene, scene.cross);
   drawScaleBar(pen, scene, Math.max(whole.left, 0), Math.min(whole.top + whole.height, stage.height));
 }

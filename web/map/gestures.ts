@@ -1,14 +1,20 @@
 /** What fingers, mouse and wheel mean on the map. Stage points are CSS pixels from the stage's upper left corner. */
+import type { StrokePhase } from '../hand/drawing.ts';
 
 export interface GestureTarget {
   pan(dx: number, dy: number): void;
   zoom(factor: number, x: number, y: number): void;
-  fit(): void;
+  /** A double click. */
+  twice(): void;
   clicked(x: number, y: number): void;
   hover(x: number, y: number): void;
   leave(): void;
   /** A straight line dragged with Shift held; `done` with the last point. */
   line(fromX: number, fromY: number, toX: number, toY: number, done: boolean): void;
+  /** Whether one pointer draws now instead of moving the map. */
+  draws(): boolean;
+  /** What that pointer does; `moved` once it is no mere click. A second finger cancels: then both move the map. */
+  stroke(phase: StrokePhase, x: number, y: number, moved: boolean): void;
 }
 
 interface Held {
@@ -23,6 +29,7 @@ export class Gestures {
   private readonly held = new Map<number, Held>();
   private start: (Held & { readonly line: boolean }) | undefined;
   private moved = false;
+  private drawing = false;
   private readonly element: HTMLElement;
   private readonly target: GestureTarget;
 
@@ -34,18 +41,23 @@ export class Gestures {
     element.addEventListener('pointerup', this.onUp);
     element.addEventListener('pointercancel', this.onCancel);
     element.addEventListener('pointerleave', () => { target.leave(); });
-    element.addEventListener('dblclick', () => { target.fit(); });
+    element.addEventListener('dblclick', () => { target.twice(); });
     element.addEventListener('wheel', this.onWheel, { passive: false });
   }
 
   private readonly onDown = (event: PointerEvent): void => {
-    if (event.button !== 0) return;
+    // The wheel's own button moves the map whatever tool is in hand.
+    if (event.button !== 0 && event.button !== 1) return;
+    if (event.button === 1) event.preventDefault();
     const at = this.place(event);
     // A pointer that the browser does not know (a synthetic one) cannot be captured; the gesture works without.
     try { this.element.setPointerCapture(event.pointerId); } catch { /* not captured */ }
     this.held.set(event.pointerId, at);
     this.moved = this.held.size > 1;
     this.start = { ...at, line: event.shiftKey && this.held.size === 1 };
+    if (this.drawing) this.target.stroke('cancel', at.x, at.y, false);
+    this.drawing = this.held.size === 1 && event.button === 0 && !event.shiftKey && this.target.draws();
+    if (this.drawing) this.target.stroke('start', at.x, at.y, false);
   };
 
   private readonly onMove = (event: PointerEvent): void => {
@@ -60,6 +72,15 @@ export class Gestures {
       this.moved = true;
       before.x = this.start.x;
       before.y = this.start.y;
+    }
+    if (this.drawing) {
+      // All places since the last frame, so that a quick stroke stays round.
+      const every = event.getCoalescedEvents?.() ?? [];
+      for (const one of every.length > 0 ? every : [event]) {
+        const { x, y } = this.place(one);
+        this.target.stroke('move', x, y, true);
+      }
+      return;
     }
     const other = [...this.held].find(([id]) => id !== event.pointerId)?.[1];
     if (other) {
@@ -78,13 +99,18 @@ export class Gestures {
     const { start, moved } = this;
     this.start = undefined;
     if (!start) return;
-    if (!moved) this.target.clicked(at.x, at.y);
+    if (this.drawing) {
+      this.drawing = false;
+      this.target.stroke('end', at.x, at.y, moved);
+    } else if (event.button === 1) { /* It only moves. */ } else if (!moved) this.target.clicked(at.x, at.y);
     else if (start.line) this.target.line(start.x, start.y, at.x, at.y, true);
   };
 
   private readonly onCancel = (event: PointerEvent): void => {
     this.held.delete(event.pointerId);
     this.start = undefined;
+    if (this.drawing) this.target.stroke('cancel', 0, 0, false);
+    this.drawing = false;
   };
 
   private readonly onWheel = (event: WheelEvent): void => {

@@ -9,6 +9,9 @@ export const mapPanelStyles = css`
   }
   eg-map-bar { grid-area: bar; }
   .stage { grid-area: stage; position: relative; min-height: 240px; }
+  /* Beside the map and never over it, so that all of the map can be drawn on. */
+  eg-hand-strip { grid-area: hand; }
+  :host([inhand]) { grid-template: 'stage bar' auto 'stage hand' auto 'stage side' minmax(0, 1fr) 'scale side' auto 'cut side' auto / minmax(0, var(--stage-width)) 16.5rem; }
   eg-map-stage { position: absolute; inset: 0; transition: opacity 200ms; }
   .foot { grid-area: scale; display: grid; grid-template-columns: minmax(0, 1fr) auto; gap: 0 12px; align-items: start; }
   .log { margin-top: 28px; }
@@ -21,6 +24,7 @@ export const mapPanelStyles = css`
   .say { position: absolute; top: 10px; left: 50%; transform: translateX(-50%); max-width: 90%; padding: 2px 10px; border-radius: 5px; background: rgb(13 18 22 / 0.86); color: #fff; font-size: 13px; pointer-events: none; }
   @media (max-width: 900px) {
     :host { grid-template: 'bar' auto 'stage' auto 'scale' auto 'cut' auto 'side' auto / minmax(0, 1fr); }
+    :host([inhand]) { grid-template: 'bar' auto 'hand' auto 'stage' auto 'scale' auto 'cut' auto 'side' auto / minmax(0, 1fr); }
     .stage { aspect-ratio: var(--map-aspect, 1); min-height: 0; max-height: 70dvh; }
     .side { flex-flow: row wrap; overflow: visible; }
     .card { flex: 1 1 16rem; }

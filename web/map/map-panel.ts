@@ -3,7 +3,11 @@ import { LitElement, html, nothing } from 'lit';
 import type { PropertyValues } from 'lit';
 import type { Compute, ComputeFacts, CutRequest, FlawEntry, HistogramRequest, MapInfo, MapName, PointValues, SampleSummary } from '../../workers/api.ts';
 import { controlStyles } from '../app/controls.ts';
-import { area, confidenceWord } from '../sample/format.ts';
+import type { Hand } from '../hand/hand.ts';
+import '../hand/hand-strip.ts';
+import type { HandEdit } from '../hand/hand-strip.ts';
+import type { HandDraft, HandPath } from '../hand/stage-drawing.ts';
+import { area, sureness } from '../sample/format.ts';
 import './cut-plot.ts';
 import { Latest } from './latest.ts';
 import './map-bar.ts';
@@ -25,9 +29,9 @@ const holdMs = 350;
 
 export class MapPanel extends LitElement {
   static override properties = {
-    summary: { attribute: false }, facts: { attribute: false }, compute: { attribute: false }, isolated: { attribute: false }, flaw: { attribute: false }, bandFactor: { attribute: false },
+    summary: { attribute: false }, facts: { attribute: false }, compute: { attribute: false }, isolated: { attribute: false }, flaw: { attribute: false }, bandFactor: { attribute: false }, hand: { attribute: false },
     map: { state: true }, raw: { state: true }, overlay: { state: true }, chosen: { state: true }, cut: { state: true }, cutting: { state: true },
-    point: { state: true }, bins: { state: true }, profile: { state: true }, problem: { state: true },
+    point: { state: true }, bins: { state: true }, profile: { state: true }, problem: { state: true }, draft: { state: true },
   };
 
   declare summary: SampleSummary;
@@ -36,6 +40,8 @@ export class MapPanel extends LitElement {
   declare isolated: number | undefined;
   declare flaw: FlawEntry | undefined;
   declare bandFactor: number;
+  /** The tool for correcting flaws that is in hand. */
+  declare hand: Hand | undefined;
   declare map: SwitchMap;
   declare raw: boolean;
   declare overlay: boolean;
@@ -47,6 +53,7 @@ export class MapPanel extends LitElement {
   declare bins: Uint32Array | undefined;
   declare profile: Float32Array | undefined;
   declare problem: string;
+  declare draft: HandDraft;
 
   private rawSince = 0;
   private readonly histograms = new Latest<HistogramRequest, Uint32Array>((request) => this.compute.histogram(request), (request, bins) => { if (request.map === this.info.name) this.bins = bins; }, () => { this.bins = undefined; });
@@ -65,6 +72,7 @@ export class MapPanel extends LitElement {
     this.cutting = false;
     this.problem = '';
     this.bandFactor = 3;
+    this.draft = { points: 0, enough: false };
   }
 
   /** The map on show; the first there is when the wanted one is not. */
@@ -79,6 +87,8 @@ export class MapPanel extends LitElement {
   }
 
   override willUpdate(changed: PropertyValues<this>): void {
+    if (changed.has('hand')) this.toggleAttribute('inhand', this.hand !== undefined);
+    if (this.hand) this.cutting = false;
     if (!changed.has('summary')) return;
     if (changed.get('summary')?.id !== this.summary.id) {
       this.chosen = {};
@@ -98,15 +108,18 @@ export class MapPanel extends LitElement {
     return html`
       <eg-map-bar .maps=${summary.maps.map(({ name }) => name)} .map=${this.map} .raw=${this.raw} .causes=${this.overlay} .cutting=${this.cutting} @tool=${(event: CustomEvent<Tool>) => { this.use(event.detail); }}></eg-map-bar>
       <div class="stage">
-        <eg-map-stage .summary=${summary} .compute=${this.compute} .map=${info.name} .limits=${limits} .causes=${causes} .flaw=${this.flaw} .cut=${cut} .cutting=${this.cutting}
+        <eg-map-stage .summary=${summary} .compute=${this.compute} .map=${info.name} .limits=${limits} .causes=${causes} .flaw=${this.flaw} .cut=${cut} .cutting=${this.cutting} .hand=${this.hand} .handFill=${this.handFill}
+          @hand-draft=${(event: CustomEvent<HandDraft>) => { this.draft = event.detail; }}
+          @hand-path=${(event: CustomEvent<HandPath>) => { this.tell('hand-path', event.detail); }}
           @point=${(event: CustomEvent<PointValues | undefined>) => { this.point = event.detail ?? this.point; }}
-          @flaw-select=${(event: CustomEvent) => { this.dispatchEvent(new CustomEvent('flaw-select', { detail: event.detail })); }}
+          @flaw-select=${(event: CustomEvent) => { this.tell('flaw-select', event.detail); }}
           @picture=${() => { this.problem = ''; }}
           @map-problem=${(event: CustomEvent<{ message: string }>) => { this.problem = event.detail.message; }}
           @cut-point=${(event: CustomEvent<{ xUm: number; yUm: number }>) => { this.addCutPoint(event.detail.xUm, event.detail.yUm); }}
           @cut-line=${(event: CustomEvent<{ fromUm: readonly [number, number]; toUm: readonly [number, number] }>) => { this.cut = { fromUm: event.detail.fromUm, toUm: event.detail.toUm }; }}></eg-map-stage>
         ${this.overText(info)}
       </div>
+      ${this.hand ? html`<eg-hand-strip .hand=${this.hand} .draft=${this.draft} @hand-edit=${(event: CustomEvent<HandEdit>) => { this.editHand(event.detail); }}></eg-hand-strip>` : nothing}
       <div class="foot">
         <eg-value-scale .map=${info} .summary=${summary} .limits=${limits} .colours=${this.facts.scale} .bins=${this.bins} .bandFactor=${this.bandFactor} @limits=${(event: CustomEvent<Limits>) => { this.setLimits(event.detail); }}></eg-value-scale>
         <div class="log"><button type="button" aria-label="Logarithmic scale" aria-pressed=${limits.log ? 'true' : 'false'} ?disabled=${!canBeLog(info)} title="Linear or logarithmic colours" @click=${() => { this.setLimits(firstLimits({ ...info, log: !limits.log })); }}>${limits.log ? 'log' : 'lin'}</button></div>
@@ -141,6 +154,12 @@ export class MapPanel extends LitElement {
     this.stage?.centreOn(flaw);
   }
 
+  /** The map comes into sight, and the keyboard to it. */
+  focusMap(): void {
+    if (matchMedia('(max-width: 900px)').matches) this.scrollIntoView({ block: 'start' });
+    this.stage?.focus();
+  }
+
   /** A key pressed anywhere in the sample's place; true when it meant something here. */
   press(event: KeyboardEvent): boolean {
     if (event.ctrlKey || event.metaKey || event.altKey) return false;
@@ -151,7 +170,9 @@ export class MapPanel extends LitElement {
       this.use({ tool: 'raw' });
     } else if (key === 'c') this.use({ tool: 'causes' });
     else if (key === 'x') this.use({ tool: 'cut' });
-    else if (key === 'escape' && (this.cutting || this.cut)) {
+    else if (key === 'escape' && this.hand) {
+      if (!this.stage?.edit('cancel')) this.editHand('leave');
+    } else if (key === 'escape' && (this.cutting || this.cut)) {
       this.cutting = false;
       this.cut = undefined;
     } else return ['+', '=', '-', '0'].includes(key) && (this.stage?.press(key) ?? false);
@@ -171,12 +192,29 @@ export class MapPanel extends LitElement {
       case 'causes': this.overlay = !this.overlay; break;
       case 'cut':
         this.cutting = !this.cutting;
+        if (this.hand) this.editHand('leave');
         if (this.cutting || !this.cut?.toUm) this.cut = undefined;
         break;
       case 'fit': this.stage?.fit(); break;
       case 'in': this.stage?.zoom(1.4); break;
       case 'out': this.stage?.zoom(1 / 1.4); break;
     }
+  }
+
+  private editHand(what: HandEdit): void {
+    if (what === 'leave') this.tell('hand-leave', undefined);
+    else this.stage?.edit(what);
+  }
+
+  /** Colour of what the tool draws. */
+  private get handFill(): string | undefined {
+    const { hand } = this;
+    const as = hand && 'as' in hand ? hand.as : undefined;
+    return this.facts.causes.find(({ cause }) => cause === as)?.fill;
+  }
+
+  private tell(type: string, detail: unknown): void {
+    this.dispatchEvent(new CustomEvent(type, { detail }));
   }
 
   private addCutPoint(xUm: number, yUm: number): void {
@@ -199,7 +237,7 @@ export class MapPanel extends LitElement {
   }
 
   private flawCard(flaw: FlawEntry) {
-    return html`<div class="card"><h3>selected flaw ${flaw.flaw} · ${flaw.cause}, ${confidenceWord(flaw.confidence)}</h3><p>${flaw.reason}</p><p>${area(flaw.areaUm2)} at x ${flaw.xUm.toFixed(2)}, y ${flaw.yUm.toFixed(2)}\u00a0µm</p></div>`;
+    return html`<div class="card"><h3>selected flaw ${flaw.flaw} · ${flaw.cause}, ${sureness(flaw)}</h3><p>${flaw.reason}</p><p>${area(flaw.areaUm2)} at x ${flaw.xUm.toFixed(2)}, y ${flaw.yUm.toFixed(2)}\u00a0µm</p></div>`;
   }
 
   private get stage(): MapStage | null {

@@ -1,15 +1,20 @@
 /** The map itself: a canvas of the screen's pixels that asks the computation for exactly the part in sight. */
-import { LitElement, css, html } from 'lit';
+import { LitElement, html } from 'lit';
 import type { PropertyValues } from 'lit';
 import type { Compute, FlawEntry, MapName, Picture, PictureRequest, PointValues, SampleSummary } from '../../workers/api.ts';
+import { nearPixels, strokePixels } from '../hand/drawing.ts';
+import type { StrokePhase } from '../hand/drawing.ts';
+import type { Hand, PointUm } from '../hand/hand.ts';
+import { StageDrawing } from '../hand/stage-drawing.ts';
 import { SizeWatch } from '../sample/size-watch.ts';
-import { drawMap } from './draw-map.ts';
+import { drawMap, imageOf, sizeCanvas } from './draw-map.ts';
 import type { HeldPicture } from './draw-map.ts';
 import { Gestures } from './gestures.ts';
 import type { GestureTarget } from './gestures.ts';
 import { Latest } from './latest.ts';
+import { mapStageStyles } from './map-stage-styles.ts';
 import type { Limits } from './value-axis.ts';
-import { centreView, fitView, panView, toSample, visiblePart, zoomView } from './view.ts';
+import { centreView, fitView, panView, toSample, toSampleAnywhere, visiblePart, zoomView } from './view.ts';
 import type { Size, View } from './view.ts';
 
 export interface Cut {
@@ -30,7 +35,7 @@ const flawPixels = 36;
 export class MapStage extends LitElement implements GestureTarget {
   static override properties = {
     summary: { attribute: false }, compute: { attribute: false }, map: { attribute: false }, limits: { attribute: false }, causes: { attribute: false },
-    flaw: { attribute: false }, cut: { attribute: false }, cutting: { type: Boolean, reflect: true },
+    flaw: { attribute: false }, cut: { attribute: false }, cutting: { type: Boolean, reflect: true }, hand: { attribute: false }, handFill: { attribute: false },
   };
 
   declare summary: SampleSummary;
@@ -42,7 +47,11 @@ export class MapStage extends LitElement implements GestureTarget {
   declare cut: Cut | undefined;
   /** Clicks set the ends of a cut. */
   declare cutting: boolean;
+  /** The tool for correcting flaws, and the colour of what it draws. */
+  declare hand: Hand | undefined;
+  declare handFill: string | undefined;
 
+  private readonly pencil = new StageDrawing((type, detail) => { this.send(type, detail); }, () => { this.refresh(); });
   private view: View | undefined;
   /** Whether the whole map is to stay in sight when the stage changes its size. */
   private whole = true;
@@ -64,16 +73,11 @@ export class MapStage extends LitElement implements GestureTarget {
     (_, error) => { this.fail(error); },
   );
 
-  static override styles = css`
-    :host { display: block; position: relative; min-height: 0; }
-    canvas { position: absolute; inset: 0; width: 100%; height: 100%; border-radius: 4px; cursor: crosshair; touch-action: none; }
-    canvas:active { cursor: grabbing; }
-    canvas:focus-visible { outline: 2px solid var(--focus, var(--glow-soft, #ffd9a0)); outline-offset: 2px; }
-    @media (max-width: 760px) { canvas { touch-action: pan-y; } }
-  `;
+  static override styles = mapStageStyles;
 
   override render() {
-    return html`<canvas tabindex="0" role="application" aria-roledescription="map" aria-label="Map: ${this.map}. Plus and minus zoom, arrows move, 0 shows all of it." @keydown=${this.onKey}></canvas>`;
+    return html`<canvas tabindex="0" role="application" aria-roledescription="map" class=${this.pencil.now ? 'drawing' : ''}
+      aria-label="Map: ${this.map}. Plus and minus zoom, arrows move, 0 shows all of it.${this.pencil.now ? ' Enter sets a point in the middle, twice ends the path; Backspace takes it back, Escape drops it.' : ''}" @keydown=${this.onKey}></canvas>`;
   }
 
   override disconnectedCallback(): void {
@@ -90,6 +94,8 @@ export class MapStage extends LitElement implements GestureTarget {
 
   override willUpdate(changed: PropertyValues<this>): void {
     if (changed.has('cut')) this.aimed = undefined;
+    if (changed.has('hand')) this.pencil.take(this.hand);
+    if (changed.has('summary')) this.pencil.now?.settled();
     const before = changed.get('summary');
     if (before === undefined || !changed.has('summary')) return;
     this.askedKey = '';
@@ -109,6 +115,28 @@ export class MapStage extends LitElement implements GestureTarget {
     if (!this.view) return;
     const scale = Math.min(flawPixels / Math.max(diameterUm, 1e-9), fitView(this.summary, this.stage).scale * 8);
     this.show(centreView(this.view, xUm, this.summary.heightUm - yUm, scale, this.summary, this.stage));
+  }
+
+  /** The keyboard goes to the map, to draw on it. */
+  override focus(): void {
+    this.canvas.focus({ preventScroll: true });
+  }
+
+  /** Of the path that is being drawn; false when there is none. */
+  edit(what: 'back' | 'finish' | 'cancel'): boolean {
+    return this.pencil.edit(what);
+  }
+
+  draws(): boolean {
+    return this.pencil.isHeld;
+  }
+
+  stroke(phase: StrokePhase, x: number, y: number, moved: boolean): void {
+    if (this.view) this.pencil.now?.pointer(phase, this.anywhere(x, y), moved, strokePixels / this.view.scale);
+  }
+
+  twice(): void {
+    if (!this.pencil.now) this.fit();
   }
 
   fit(): void {
@@ -132,18 +160,21 @@ export class MapStage extends LitElement implements GestureTarget {
       this.refresh();
     }
     if (place) this.points.ask({ id: this.summary.id, ...place, clicked: false });
+    this.pencil.now?.aim(this.anywhere(x, y));
     if (!this.cutting || !this.cut || this.cut.toUm) return;
     this.aimed = place && [place.xUm, place.yUm];
     this.refresh();
   }
 
   leave(): void {
+    this.pencil.now?.aim(undefined);
     this.send('point', undefined);
   }
 
   clicked(x: number, y: number): void {
     const place = this.place(x, y);
-    if (!place) return;
+    if (this.pencil.now) this.pencil.now.add(this.anywhere(x, y), nearPixels / (this.view?.scale ?? 1));
+    if (!place || this.pencil.now) return;
     if (this.cutting) this.send('cut-point', place);
     else this.points.ask({ id: this.summary.id, ...place, clicked: true });
   }
@@ -156,7 +187,7 @@ export class MapStage extends LitElement implements GestureTarget {
 
   /** Zoom and movement by keys; true when the key meant something. */
   press(key: string): boolean {
-    const step = 60;
+    const step = this.pencil.now ? 12 : 60;
     const moves: Readonly<Record<string, readonly [number, number]>> = { ArrowLeft: [step, 0], ArrowRight: [-step, 0], ArrowUp: [0, step], ArrowDown: [0, -step] };
     const move = moves[key];
     if (move) this.pan(...move);
@@ -165,14 +196,27 @@ export class MapStage extends LitElement implements GestureTarget {
     else if (key === '0') this.fit();
     else return false;
     this.readMiddle();
+    if (this.cross) this.pencil.now?.aim([this.cross.xUm, this.cross.yUm]);
     return true;
   }
 
   private readonly onKey = (event: KeyboardEvent): void => {
-    if (event.ctrlKey || event.metaKey || event.altKey || !this.press(event.key)) return;
+    if (event.ctrlKey || event.metaKey || event.altKey) return;
+    if (this.pencil.now && event.key === 'Enter') this.setMiddle();
+    else if (!(event.key === 'Backspace' && this.edit('back')) && !this.press(event.key)) return;
     event.preventDefault();
     event.stopPropagation();
   };
+
+  /** A point in the middle, where the cross is. */
+  private setMiddle(): void {
+    this.readMiddle();
+    if (this.cross) this.pencil.now?.add([this.cross.xUm, this.cross.yUm], 0);
+  }
+
+  private anywhere(x: number, y: number): PointUm {
+    return this.view ? toSampleAnywhere(this.view, x, y, this.summary) : [0, 0];
+  }
 
   /** Without a pointer the values in the middle are read out. */
   private readMiddle(): void {
@@ -218,13 +262,9 @@ export class MapStage extends LitElement implements GestureTarget {
     this.pictures.ask(request);
   }
 
-  private hold(request: PictureRequest, { width, height, rgba }: Picture): void {
+  private hold(request: PictureRequest, picture: Picture): void {
     if (request.id !== this.summary.id) return;
-    const image = document.createElement('canvas');
-    image.width = width;
-    image.height = height;
-    image.getContext('2d')?.putImageData(new ImageData(rgba, width, height), 0, 0);
-    this.picture = { image, part: { left: request.left, top: request.top, columns: request.columns, rows: request.rows } };
+    this.picture = { image: imageOf(picture), part: { left: request.left, top: request.top, columns: request.columns, rows: request.rows } };
     this.send('picture', { map: request.map });
     this.refresh();
   }
@@ -233,16 +273,12 @@ export class MapStage extends LitElement implements GestureTarget {
     const canvas = this.canvas;
     const pen = canvas.getContext('2d');
     if (!pen || !this.view || this.stage.width === 0) return;
-    const width = Math.round(this.stage.width * devicePixelRatio);
-    const height = Math.round(this.stage.height * devicePixelRatio);
-    if (canvas.width !== width || canvas.height !== height) {
-      canvas.width = width;
-      canvas.height = height;
-    }
+    sizeCanvas(canvas, this.stage, devicePixelRatio);
     const style = getComputedStyle(this);
     const colour = (name: string, fallback: string): string => style.getPropertyValue(name).trim() || fallback;
     drawMap(pen, {
       extent: this.summary, stage: this.stage, pixelRatio: devicePixelRatio, view: this.view, picture: this.picture, flaw: this.flaw, cut: this.cut && { fromUm: this.cut.fromUm, toUm: this.cut.toUm ?? this.aimed }, cross: this.cross,
+      hand: this.pencil.scene(this.handFill),
       colours: { background: colour('--background', '#0d1216'), line: colour('--line', '#25313b'), ink: '#ffffff', mark: '#ffffff', halo: '#0d1216' },
     });
   }

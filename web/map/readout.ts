@@ -1,7 +1,7 @@
 /** Values of all channels under the cursor, in a fixed place. */
 import { LitElement, css, html } from 'lit';
 import type { MapInfo, MapName, PointValues } from '../../workers/api.ts';
-import { confidenceWord, fixed, mapValue } from '../sample/format.ts';
+import { fixed, mapValue, sureness } from '../sample/format.ts';
 import { mapWords } from './map-words.ts';
 
 export class Readout extends LitElement {
@@ -33,7 +33,7 @@ export class Readout extends LitElement {
         ${this.maps.map(({ name, unit }) => this.pair(mapWords[name], this.valueText(name, unit)))}
         ${this.pair('booked as', point?.cause ?? '–', 'booked')}
       </dl>
-      <p class="note">${[...(point?.flaw ? [`flaw ${point.flaw.flaw}: ${point.flaw.cause}, ${confidenceWord(point.flaw.confidence)}`] : []), ...marks].join(' · ')}</p>`;
+      <p class="note">${[...(point?.flaw ? [`flaw ${point.flaw.flaw}: ${point.flaw.cause}, ${sureness(point.flaw)}`] : []), ...marks].join(' · ')}</p>`;
   }
 
   private pair(word: string, value: string, look = '') {

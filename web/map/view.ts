@@ -80,6 +80,11 @@ export function toSample(view: View, x: number, y: number, extent: Extent): { re
   return { xUm, yUm: extent.heightUm - down };
 }
 
+/** The same for any stage point, beside the map too. */
+export function toSampleAnywhere(view: View, x: number, y: number, extent: Extent): readonly [xUm: number, yUm: number] {
+  return [view.leftUm + x / view.scale, extent.heightUm - view.topUm - y / view.scale];
+}
+
 /** Sample coordinates in µm (y up) → stage point. */
 export function toStage(view: View, xUm: number, yUm: number, extent: Extent): { readonly x: number; readonly y: number } {
   return { x: (xUm - view.leftUm) * view.scale, y: (extent.heightUm - yUm - view.topUm) * view.scale };

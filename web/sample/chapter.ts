@@ -54,6 +54,10 @@ export abstract class Chapter extends LitElement {
   belowKnobs(): TemplateResult | typeof nothing {
     return nothing;
   }
+  /** What else was changed here besides knobs: "3 by hand". */
+  alsoChanged(): string {
+    return '';
+  }
   /** What the appraisal uses where a field is absent. */
   found(_path: string): string | undefined {
     return undefined;
@@ -61,10 +65,11 @@ export abstract class Chapter extends LitElement {
 
   override render() {
     const changed = changedPaths(this.chapter, this.fields, this.recipe).length;
+    const count = [changed === 0 ? '' : `${changed} changed`, this.alsoChanged()].filter((part) => part !== '').join(', ');
     return html`
       <details ?open=${this.open} @toggle=${(event: Event) => { this.open = (event.target as HTMLDetailsElement).open; }}>
         <summary>
-          <h2>${this.heading}</h2><span class="count">${changed === 0 ? 'all by default' : `${changed} changed`}</span>
+          <h2>${this.heading}</h2><span class="count">${count === '' ? 'all by default' : count}</span>
           <p class="finding">${this.finding()}</p>
           <p class="effect" role="status">${this.effect}</p>
         </summary>

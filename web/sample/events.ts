@@ -1,4 +1,5 @@
 /** What the Sample place tells those around it. */
+import type { Hand, NamedCorrection } from '../hand/hand.ts';
 
 export interface RecipeChange {
   /** `band.factor`. */
@@ -14,3 +15,12 @@ export type RecipeChangeEvent = CustomEvent<RecipeChange>;
 
 /** Event `flaw-select`: a flaw's number, or undefined for none. */
 export type FlawSelectEvent = CustomEvent<{ readonly flaw: number | undefined }>;
+
+/** Event `correction`: one more correction by hand. */
+export type CorrectionEvent = CustomEvent<NamedCorrection>;
+
+/** Event `correction-out`: the correction at a place of the list is taken out. */
+export type CorrectionOutEvent = CustomEvent<{ readonly index: number; readonly label: string }>;
+
+/** Event `hand`: a tool is taken in hand, or put away. */
+export type HandEvent = CustomEvent<{ readonly hand: Hand | undefined }>;

@@ -3,7 +3,7 @@ import { LitElement, css, html, nothing } from 'lit';
 import type { PropertyValues } from 'lit';
 import type { FlawEntry } from '../../workers/api.ts';
 import { controlStyles } from '../app/controls.ts';
-import { confidenceWord, figure } from './format.ts';
+import { figure, sureness } from './format.ts';
 import { sortFlaws } from './sort-flaws.ts';
 import type { FlawColumn } from './sort-flaws.ts';
 
@@ -80,7 +80,7 @@ export class FlawTable extends LitElement {
     return html`
       <tr aria-current=${selected ? 'true' : nothing} @click=${() => { this.select(selected ? undefined : flaw.flaw); }}>
         <td><button type="button" aria-label="flaw ${flaw.flaw}, ${flaw.cause}: show on the map" aria-pressed=${selected ? 'true' : 'false'}>${flaw.flaw}</button></td>
-        <td>${flaw.cause}</td><td class="sure">${confidenceWord(flaw.confidence)}</td>
+        <td>${flaw.cause}</td><td class="sure">${sureness(flaw)}</td>
         <td class="number">${figure(flaw.areaUm2)}</td><td class="number">${figure(flaw.peakNm)}</td><td class="number">${figure(flaw.heightToRadius, 2)}</td>
       </tr>
       ${selected ? html`<tr class="reason"><td colspan=${columns.length}>${flaw.reason}</td></tr>` : nothing}`;

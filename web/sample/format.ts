@@ -106,6 +106,11 @@ export function confidenceWord(confidence: number): 'certain' | 'likely' | 'coul
   return confidence >= 0.9 ? 'certain' : confidence >= 0.7 ? 'likely' : 'could be another';
 }
 
+/** The same for a flaw, or that a person said so. */
+export function sureness({ byHand, confidence }: { readonly byHand?: true; readonly confidence: number }): string {
+  return byHand ? 'by hand' : confidenceWord(confidence);
+}
+
 /** "1 bubble", "34 bubbles", "no shorts". */
 export function counted(count: number, one: string, many = `${one}s`): string {
   return `${count === 0 ? 'no' : String(count)} ${count === 1 ? one : many}`;

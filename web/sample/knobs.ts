@@ -1,6 +1,6 @@
 /** Which settings stand in which chapter, and how they are operated. */
 import type { FieldInfo, RecipeData } from '../../workers/api.ts';
-import { valueAt } from '../session/recipe.ts';
+import { correctionsOf, valueAt } from '../session/recipe.ts';
 import { plain } from './format.ts';
 
 export type ChapterName = 'scan' | 'ground' | 'flaws' | 'glow';
@@ -59,7 +59,9 @@ export function changedPaths(chapter: ChapterName, fields: readonly FieldInfo[],
 
 /** The chapter whose settings differ between two recipes; undefined when none or several do. */
 export function chapterOfChange(before: RecipeData, after: RecipeData): ChapterName | undefined {
-  const touched = (Object.keys(chapterKnobs) as ChapterName[]).filter((chapter) => chapterKnobs[chapter].some(({ path }) => valueAt(before, path) !== valueAt(after, path)));
+  const corrected = JSON.stringify(correctionsOf(before)) !== JSON.stringify(correctionsOf(after));
+  const touched = (Object.keys(chapterKnobs) as ChapterName[])
+    .filter((chapter) => (chapter === 'flaws' && corrected) || chapterKnobs[chapter].some(({ path }) => valueAt(before, path) !== valueAt(after, path)));
   return touched.length === 1 ? touched[0] : undefined;
 }
 

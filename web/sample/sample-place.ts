@@ -3,6 +3,9 @@ import { LitElement, html, nothing } from 'lit';
 import type { PropertyValues } from 'lit';
 import type { Compute, ComputeFacts, FlawEntry, SampleSummary } from '../../workers/api.ts';
 import { controlStyles } from '../app/controls.ts';
+import { drawn, mergeFlaws } from '../hand/hand.ts';
+import type { Hand, NamedCorrection } from '../hand/hand.ts';
+import type { HandPath } from '../hand/stage-drawing.ts';
 import '../ledger/ledger-bar.ts';
 import type { IsolateEvent } from '../ledger/ledger-bar.ts';
 import '../map/map-panel.ts';
@@ -13,7 +16,7 @@ import './chapter-flaws.ts';
 import './chapter-glow.ts';
 import './chapter-ground.ts';
 import './chapter-scan.ts';
-import type { FlawSelectEvent } from './events.ts';
+import type { CorrectionEvent, FlawSelectEvent, HandEvent } from './events.ts';
 import { effectOf } from './findings.ts';
 import { chapterOfChange } from './knobs.ts';
 import type { ChapterName } from './knobs.ts';
@@ -23,7 +26,7 @@ import './verdict-line.ts';
 
 export class SamplePlace extends LitElement {
   static override properties = {
-    sample: { attribute: false }, facts: { attribute: false }, compute: { attribute: false }, isolated: { state: true }, flaw: { state: true }, touched: { state: true },
+    sample: { attribute: false }, facts: { attribute: false }, compute: { attribute: false }, isolated: { state: true }, flaw: { state: true }, touched: { state: true }, hand: { state: true },
   };
 
   declare sample: SampleState;
@@ -35,6 +38,8 @@ export class SamplePlace extends LitElement {
   declare flaw: number | undefined;
   /** Chapter of the last change of the recipe. */
   declare touched: ChapterName | undefined;
+  /** The tool for correcting flaws that is in hand. */
+  declare hand: Hand | undefined;
 
   static override styles = [controlStyles, samplePlaceStyles];
 
@@ -57,12 +62,14 @@ export class SamplePlace extends LitElement {
       this.isolated = undefined;
       this.flaw = undefined;
       this.touched = undefined;
+      this.hand = undefined;
       return;
     }
     const [from, to] = [recipeOf(before), recipeOf(this.sample)];
     if (from !== to) this.touched = chapterOfChange(from, to);
     // Flaws are numbered anew by every appraisal.
     if (before.summary !== this.sample.summary) {
+      if (this.hand?.tool === 'merge') this.hand = undefined;
       if (this.flaw !== undefined) this.flaw = sameFlaw(before.summary, this.flaw, this.sample.summary);
       const entry = this.sample.summary?.ledger.find(({ code }) => code === this.isolated);
       if (!entry || entry.areaUm2 === 0) this.isolated = undefined;
@@ -86,20 +93,23 @@ export class SamplePlace extends LitElement {
         ${working ? html`<eg-progress-line .progress=${sample.progress}></eg-progress-line>` : nothing}
         ${this.renderError()}
       </div>
-      <div class="main ${working ? 'stale' : ''}" @flaw-select=${(event: FlawSelectEvent) => { this.selectFlaw(event.detail.flaw, true); }}>
-        <eg-map-panel class="result" .summary=${summary} .facts=${facts} .compute=${this.compute} .isolated=${this.isolated} .flaw=${this.selected} .bandFactor=${this.bandFactor(summary)}
+      <div class="main ${working ? 'stale' : ''}" @flaw-select=${(event: FlawSelectEvent) => { this.selectFlaw(event.detail.flaw, true); }}
+        @hand=${(event: HandEvent) => { this.take(event.detail.hand); }} @correction=${this.onCorrection}>
+        <eg-map-panel class="result" .summary=${summary} .facts=${facts} .compute=${this.compute} .isolated=${this.isolated} .flaw=${this.selected} .bandFactor=${this.bandFactor(summary)} .hand=${this.hand}
+          @hand-path=${(event: CustomEvent<HandPath>) => { this.onPath(event.detail); }} @hand-leave=${() => { this.hand = undefined; }}
           @flaw-select=${(event: FlawSelectEvent) => { event.stopPropagation(); this.selectFlaw(event.detail.flaw, false); }}></eg-map-panel>
         <div class="chapters">${this.renderChapters(summary, facts, effect)}</div>
       </div>`;
   }
 
-  private renderChapters(summary: SampleSummary, { fields }: ComputeFacts, effect: string) {
+  private renderChapters(summary: SampleSummary, facts: ComputeFacts, effect: string) {
+    const { fields } = facts;
     const recipe = recipeOf(this.sample);
     const of = (chapter: ChapterName): string => (this.touched === chapter ? effect : '');
     return html`
       <eg-chapter-scan .summary=${summary} .fields=${fields} .recipe=${recipe} .effect=${of('scan')}></eg-chapter-scan>
       <eg-chapter-ground .summary=${summary} .fields=${fields} .recipe=${recipe} .effect=${of('ground')}></eg-chapter-ground>
-      <eg-chapter-flaws .summary=${summary} .fields=${fields} .recipe=${recipe} .effect=${of('flaws')} .selected=${this.flaw}></eg-chapter-flaws>
+      <eg-chapter-flaws .summary=${summary} .fields=${fields} .recipe=${recipe} .effect=${of('flaws')} .selected=${this.flaw} .hand=${this.hand} .facts=${facts}></eg-chapter-flaws>
       <eg-chapter-glow .summary=${summary} .fields=${fields} .recipe=${recipe} .effect=${of('glow')}></eg-chapter-glow>`;
   }
 
@@ -141,15 +151,48 @@ export class SamplePlace extends LitElement {
   }
 
   private selectFlaw(flaw: number | undefined, centre: boolean): void {
+    if (this.hand?.tool === 'merge') {
+      this.mergeWith(this.hand.first, flaw);
+      return;
+    }
     this.flaw = flaw;
     if (centre && this.selected) this.panel?.centreOn(this.selected);
     else if (!centre && flaw !== undefined) this.renderRoot.querySelector('eg-chapter-flaws')?.toggleAttribute('open', true);
   }
 
+  private mergeWith(first: FlawEntry, picked: number | undefined): void {
+    const second = this.sample.summary?.flaws.find(({ flaw }) => flaw === picked);
+    if (!second || second.flaw === first.flaw) return;
+    this.hand = undefined;
+    this.correct(mergeFlaws(first, second));
+  }
+
+  private take(hand: Hand | undefined): void {
+    const goes = hand !== undefined && hand.tool !== this.hand?.tool;
+    this.hand = hand;
+    if (goes) void this.updateComplete.then(() => { this.panel?.focusMap(); });
+  }
+
+  /** A line splits once; brush and outline stay in hand. */
+  private onPath({ pointsUm }: HandPath): void {
+    const correction = this.hand && drawn(this.hand, pointsUm);
+    if (this.hand?.tool === 'split') this.hand = undefined;
+    if (correction) this.correct(correction);
+  }
+
+  /** What is no flaw any more cannot stay selected. */
+  private readonly onCorrection = ({ detail }: CorrectionEvent): void => {
+    if (detail.correction.kind === 'dismiss') this.flaw = undefined;
+  };
+
+  private correct(detail: NamedCorrection): void {
+    this.dispatchEvent(new CustomEvent('correction', { detail, bubbles: true, composed: true }));
+  }
+
   private readonly onKey = (event: KeyboardEvent): void => {
     if (event.defaultPrevented || isTyping(event)) return;
     if ((event.ctrlKey || event.metaKey) && !event.altKey && event.key.toLowerCase() === 'z') this.step(event.shiftKey ? 'redo' : 'undo');
-    else if (event.key === 'Escape' && this.isolated !== undefined) this.isolated = undefined;
+    else if (event.key === 'Escape' && this.isolated !== undefined && !this.hand) this.isolated = undefined;
     else if (this.panel?.press(event)) { /* the map took it */ }
     else if (event.key === 'Escape' && this.flaw !== undefined) this.flaw = undefined;
     else return;

@@ -1,5 +1,5 @@
 /** Sparse recipes: plain JSON that holds only what differs from the defaults. */
-import type { RecipeData } from '../../workers/api.ts';
+import type { Correction, RecipeData } from '../../workers/api.ts';
 import type { SampleState } from './state.ts';
 
 export type RecipeValue = number | string | boolean;
@@ -28,6 +28,25 @@ export function withValue(recipe: RecipeData, path: string, value: RecipeValue |
 export function valueAt(recipe: RecipeData, path: string): unknown {
   const [name = '', ...key] = path.split('.');
   return sectionOf(recipe, name)[key.join('.')];
+}
+
+/** The corrections by hand, in order; the computation checks them. */
+export function correctionsOf(recipe: RecipeData): readonly Correction[] {
+  const list = recipe['corrections'];
+  return Array.isArray(list) ? (list as readonly Correction[]) : [];
+}
+
+/** The recipe with a correction behind those that are there. */
+export function withCorrection(recipe: RecipeData, correction: Correction): RecipeData {
+  return { ...recipe, corrections: [...correctionsOf(recipe), correction] };
+}
+
+/** The recipe without the correction at a place of the list; the same object when there is none. */
+export function withoutCorrection(recipe: RecipeData, index: number): RecipeData {
+  const before = correctionsOf(recipe);
+  if (before[index] === undefined) return recipe;
+  const { corrections: _before, ...rest } = recipe;
+  return before.length === 1 ? rest : { ...rest, corrections: before.filter((_, i) => i !== index) };
 }
 
 /** The recipe that a sample stands at. */
