@@ -1,15 +1,7 @@
 /** How many layers lie between neighbouring terraces of a map. */
-import type { LadderPeak } from '../ground/ladder.ts';
-import { median } from '../stats/median.ts';
 
 /** How near to a whole multiple of the model's step a measured step must be. */
 const nearness = 0.12;
-/** Part of the step within which a pixel counts to a terrace's height. */
-const peakPart = 0.25;
-/** Distance between the pixels of a pair: beyond the width of a border, within reach of any drift. */
-const apartPx = 6;
-const leastPairs = 30;
-
 export interface GapEvidence {
   /** Measured step, decades. */
   readonly stepDecades: number;
@@ -26,29 +18,4 @@ export interface GapEvidence {
 export function layersPerGap({ stepDecades, modelStepDecades, heightLayers }: GapEvidence): number {
   if (modelStepDecades === undefined || heightLayers === undefined) return 1;
   return [2, 3].find((layers) => Math.abs(stepDecades / (layers * modelStepDecades) - 1) <= nearness && Math.round(heightLayers) === layers) ?? 1;
-}
-
-/**
- * Height that one gap of the ladder adds, metres: median over pairs of pixels a few columns apart on one line that stand on different terraces. Near
- * the border and on one line, so that neither the form nor the lines' offsets, which both lean on steps, come into it.
- *
- * @param levelled metres, NaN missing; @param log10 log10 current; @param use admits flawless ground. NaN with fewer than `leastPairs` pairs.
- */
-export function heightPerGap(
-  levelled: Float32Array, log10: Float32Array, columns: number, peaks: readonly LadderPeak[], stepDecades: number, use: (index: number) => boolean,
-): number {
-  const place = (i: number): number => {
-    for (const peak of peaks) if (Math.abs(log10[i]! - peak.log10) < peakPart * stepDecades) return use(i) ? peak.rung : Number.NaN;
-    return Number.NaN;
-  };
-  const steps: number[] = [];
-  for (let i = 0; i + apartPx < levelled.length; i++) {
-    if (i % columns >= columns - apartPx) continue;
-    // Cheap test first: most pairs stand on one terrace.
-    if (!(Math.abs(log10[i + apartPx]! - log10[i]!) > 0.5 * stepDecades)) continue;
-    const gaps = place(i + apartPx) - place(i);
-    const step = (levelled[i + apartPx]! - levelled[i]!) / gaps;
-    if (Number.isFinite(step)) steps.push(step);
-  }
-  return steps.length < leastPairs ? Number.NaN : median(steps);
 }

@@ -1,7 +1,7 @@
 /** Which terrace the map is measured against. */
 import type { DensityWithInterval } from './anchor.ts';
 import type { MeasuredRung } from './terraces.ts';
-import { quantifiedOverFloor } from './terraces.ts';
+import { quantifiedOverFloor } from '../ground/current-limits.ts';
 
 /** A terrace that could be the reference. */
 export interface Candidate extends MeasuredRung {

@@ -1,7 +1,9 @@
 /** Every pixel's place on the layer ladder. */
 import type { CurrentGround } from '../ground/ground.ts';
+import { heightPerGap } from '../ground/gap-height.ts';
+import { quantifiedOverFloor } from '../ground/current-limits.ts';
 import { measureLadder } from '../ground/ladder.ts';
-import { heightPerGap, layersPerGap } from './layers-per-gap.ts';
+import { layersPerGap } from './layers-per-gap.ts';
 import { median } from '../stats/median.ts';
 import { scaledMad } from '../stats/mad.ts';
 
@@ -34,9 +36,6 @@ export interface TerraceHeight {
   readonly columns: number;
   readonly layerM: number;
 }
-
-/** Currents below this many times the detection limit (10σ against 3σ; Currie, Anal. Chem. 40, 586, 1968) are seen but not measured well enough for a ladder. */
-export const quantifiedOverFloor = 10 / 3;
 
 /**
  * Places the ground on a ladder of whole layers. Where the map shows two terraces or more, boundaries lie half-way between neighbouring

@@ -30,6 +30,15 @@ const compactRoundness = 0.8;
 const compactElongation = 1.3;
 /** Least share of the variance that a dome explains on a compact outline: single domes show 0.6 and more even when a neighbour leans on them, rubble next to nothing. */
 const leastDomeShare = 0.2;
+/** The same for `Region.topShare`: 0.55 for a paraboloid, 0.74 for 1 − ρ⁴. */
+const narrowToWide = 0.645;
+/** Bubbles of smaller height over radius are not known: adhesion is too strong (evidence, not a rule). */
+const flattest = 0.02;
+/** A region with fewer of its pixels at the floor still conducts; and it is a film only if it has lost this much, decades. */
+const conductingFloorShare = 0.25;
+const leastDrop = 0.3;
+/** Nothing tunnels through what is thicker than this, metres: a current read there is the amplifier's lag. */
+const blockedFromM = 5e-9;
 /** Confidence at which the other class is named. */
 const unsureBelow = 0.65;
 
@@ -52,25 +61,37 @@ export function classifyRaised(region: Region): Classified {
   const blocks = region.floorShare >= 0.5;
   const current = currentWords(region, blocks);
   const { fullness } = region;
+  const heightToRadius = region.peakM / (region.diameterM / 2);
   if (Number.isNaN(fullness)) return { cause: 'residue', confidence: 0.5, reason: `height not measured here, ${current}: residue, could be a bubble` };
-  if (region.pixels >= shapePixels && roundness < thinRoundness && (inscribed < thinInscribed || elongation > 3)) {
+  if (region.ridge === true) return { cause: 'wrinkle', confidence: sure((elongation - 1.5) / 3), reason: `crest that falls off on both sides, ${oneDigit(elongation)} times as long as wide, ${current}: wrinkle` };
+  if (region.ridge === undefined && region.pixels >= shapePixels && roundness < thinRoundness && (inscribed < thinInscribed || elongation > 3)) {
     const row = elongation < rowOfBubbles && fullness < domeToPatch;
     const confidence = Math.min(row ? 0.55 : 1, sure(Math.max((thinRoundness - roundness) / 0.3, (elongation - 3) / 5)));
     return { cause: 'wrinkle', confidence, reason: `long thin ridge, ${oneDigit(elongation)} times as long as wide, ${current}: wrinkle${row ? ', could be touching bubbles' : ''}` };
   }
   const shaped = region.pixels >= shapePixels;
+  // Trapped material blocks; what only lowers a current that can be told from none is a film.
+  if (shaped && region.floorShare < conductingFloorShare && region.dropDecades > leastDrop && region.peakM < blockedFromM) {
+    return { cause: 'residue', confidence: sure(0.4 + region.pixels / 100), reason: `patch, ${oneDigit(region.peakM * 1e9)} nm high, ${current} but not lost: residue, a film` };
+  }
   const pointed = shaped && fullness < coneToDome && region.coneShare > Math.max(surelyCone, region.domeShare);
   const compact = roundness > compactRoundness && elongation < compactElongation;
   const rubble = shaped && compact && region.domeShare < leastDomeShare;
-  const isDome = fullness < domeToPatch && !pointed && !rubble;
-  const margin = (pointed ? (coneToDome - fullness) / 0.09 : rubble ? 1 - region.domeShare / leastDomeShare : Math.abs(fullness - domeToPatch) / 0.14);
+  // Two looks at the same question, each with its own noise: how full the shape is, and how wide its top.
+  const plateau = clamp((fullness - domeToPatch) / 0.14) + (shaped ? clamp((region.topShare - narrowToWide) / 0.1) : 0) + (heightToRadius < flattest ? 0.5 : 0);
+  const isDome = plateau < 0 && !pointed && !rubble;
+  const margin = pointed ? (coneToDome - fullness) / 0.09 : rubble ? 1 - region.domeShare / leastDomeShare : Math.abs(plateau) / 2;
   const confidence = sure(shaped ? margin : margin / 2);
   const unsure = confidence < unsureBelow ? (isDome ? ', could be residue' : ', could be a bubble') : '';
   if (isDome) {
-    return { cause: 'bubble', confidence, reason: `smooth dome, h/R ${twoDigits(region.peakM / (region.diameterM / 2))}, ${current}: bubble${unsure}` };
+    return { cause: 'bubble', confidence, reason: `smooth dome, h/R ${twoDigits(heightToRadius)}, ${current}: bubble${unsure}` };
   }
   const what = pointed ? 'pointed lump' : blocks || rubble || Number.isNaN(region.floorShare) ? 'uneven or flat-topped lump' : 'flat patch';
   return { cause: 'residue', confidence, reason: `${what}, ${oneDigit(region.peakM * 1e9)} nm high, ${current}: residue${unsure}` };
+}
+
+function clamp(value: number): number {
+  return Math.min(1, Math.max(-1, value));
 }
 
 function currentWords(region: Region, blocks: boolean): string {

@@ -2,6 +2,7 @@ import { squaredDistance } from '../grid/distance.ts';
 import type { Grid, MaskMap } from '../grid/maps.ts';
 import { labelMap, pixelAreaM2 } from '../grid/maps.ts';
 import { labelComponents } from '../grid/label-components.ts';
+import { boxMean } from '../ground/flat-segments.ts';
 import type { Ground } from '../ground/ground.ts';
 import { notice } from '../problems/problem.ts';
 import type { Notice } from '../problems/problem.ts';
@@ -9,12 +10,14 @@ import { classifyRaised } from './classify.ts';
 import type { Classified } from './classify.ts';
 import { findOpens, findShorts } from './find-spots.ts';
 import { findRaised } from './find-raised.ts';
+import { flawOf } from './flaw-of.ts';
 import type { Flaw, Flaws } from './flaws.ts';
 import { riseAboveGround } from './local-ground.ts';
+import { overPlanes } from './over-planes.ts';
+import { partRegions } from './part-regions.ts';
 import { measureRegions } from './measure.ts';
 import type { Region } from './measure.ts';
 import type { FlawsSection } from './recipe.ts';
-import { splitRegions } from './split-regions.ts';
 
 /** What the flaw stage needs from other sections of the recipe, in SI. */
 export interface FlawScale {
@@ -49,14 +52,15 @@ export function findFlaws(ground: Ground, grid: Grid, footprint: MaskMap, sectio
   const leastM = noiseFactor * (ground.height?.noiseM ?? 0);
   const startM = Math.max(section.heightNm * 1e-9, leastM);
   if (startM === leastM && leastM > 0) warnings.push(notice('threshold-raised', { statedNm: section.heightNm, usedNm: startM * 1e9, noiseNm: ground.height!.noiseM * 1e9 }));
-  const rise = ground.height && riseAboveGround(ground.height.levelled.data, columns, rows, startM);
+  const planes = ground.height && overPlanes(ground.height, columns, rows, current?.floor.data, scale.terraceMinM2 / pixelAreaM2(grid), scale.layerM);
+  const rise = planes && riseAboveGround(planes.over, columns, rows, startM);
   const log10 = current?.log10.data;
 
   const raised = rise && findRaised({
-    columns, rows, rise, startM,
-    ...(current && log10 ? { log10, floor: current.floor.data, saturated: current.saturated.data } : {}),
+    columns, rows, rise, onPlane: planes.onPlane, startM,
+    ...(current && log10 ? { log10, floorLog10: Math.log10(current.floorA), floor: current.floor.data, saturated: current.saturated.data } : {}),
     edgeShare: section.edgeShare, dropDecades: section.dropDecades, minPixels: section.minPixels,
-    layerDecades: scale.layerDecades, layerM: scale.layerM, noiseM: ground.height!.noiseM,
+    layerM: scale.layerM, layerDecades: scale.layerDecades,
   });
   const raisedMask = raised?.mask ?? new Uint8Array(count);
   if (raised && raised.conductingPixels > 0) {
@@ -67,7 +71,7 @@ export function findFlaws(ground: Ground, grid: Grid, footprint: MaskMap, sectio
   if (current && log10) {
     const input = {
       columns, rows, log10, pixelAreaM2: pixelAreaM2(grid), saturated: current.saturated.data, floor: current.floor.data, raised: raisedMask,
-      ...(rise ? { rise } : {}), shortDecades: section.shortLayers * scale.layerDecades, layerDecades: scale.layerDecades, layerM: scale.layerM,
+      ...(rise ? { rise, onPlane: planes.onPlane } : {}), shortDecades: section.shortLayers * scale.layerDecades, layerDecades: scale.layerDecades, layerM: scale.layerM,
       shortMaxM2: scale.shortMaxM2, terraceMinM2: scale.terraceMinM2, minPixels: section.minPixels, pitM,
     };
     shorts = findShorts(input);
@@ -87,47 +91,28 @@ export function findFlaws(ground: Ground, grid: Grid, footprint: MaskMap, sectio
     columns, rows, pitchXM: grid.pitchXM, pitchYM: grid.pitchYM,
     ...(rise ? { rise } : {}), ...(current && log10 ? { log10, floor: current.floor.data } : {}), ...(raised?.drop ? { drop: raised.drop } : {}),
   };
-  const add = (found: { labels: Uint32Array; count: number; distance2: Float32Array }, classify: (region: Region) => Classified): void => {
+  const add = (found: { labels: Uint32Array; count: number; distance2: Float32Array; ridge?: Uint8Array }, classify: (region: Region) => Classified): void => {
     if (found.count === 0) return;
     const offset = list.length;
-    for (const region of measureRegions({ ...shared, ...found })) list.push(flawOf(region, offset, classify(region)));
+    for (const region of measureRegions({ ...shared, ...found })) list.push(flawOf(region, offset + region.label, classify(region)));
     for (let i = 0; i < count; i++) if (found.labels[i]! > 0) labels[i] = offset + found.labels[i]!;
   };
   const spots = (mask: Uint8Array): { labels: Uint32Array; count: number; distance2: Float32Array } => ({
     ...labelComponents(mask, columns, rows, 8), distance2: squaredDistance(mask, columns, rows, { pitchX: grid.pitchXM, pitchY: grid.pitchYM }),
   });
   add(spots(shorts), (region) => classifyShort(region, rise !== undefined));
-  add(splitRegions({ columns, rows, mask: raisedMask, pitchXM: grid.pitchXM, pitchYM: grid.pitchYM, minPixels: Math.max(6, section.minPixels) }), classifyRaised);
+  if (rise) {
+    const smooth = boxMean(rise, columns, rows, 1);
+    add(partRegions({
+      columns, rows, pitchXM: grid.pitchXM, pitchYM: grid.pitchYM, mask: raisedMask, rise: smooth, noiseM: ground.height!.noiseM / 3, minPixels: Math.max(6, section.minPixels),
+    }), classifyRaised);
+  }
   add(spots(opens), () => ({ cause: 'open', confidence: 0.8, reason: 'no current, and nothing in the height explains it: open' }));
-  return { labels: labelMap(grid, labels), list, warnings };
+  return { labels: labelMap(grid, labels), list, warnings, ...(rise ? { rise } : {}), ...(raised?.drop ? { drop: raised.drop } : {}) };
 }
 
 function classifyShort(region: Region, hasHeight: boolean): Classified {
   const pit = hasHeight && region.meanM < -0.5e-9;
   const height = !hasHeight ? '' : pit ? `, ${(-region.meanM * 1e9).toFixed(1)} nm pit` : ', no pit in the height';
   return { cause: 'short', confidence: !hasHeight ? 0.8 : pit ? 1 : 0.7, reason: `current far above its surroundings${height}: short` };
-}
-
-function flawOf(region: Region, offset: number, classified: Classified): Flaw {
-  return {
-    flaw: offset + region.label,
-    cause: classified.cause,
-    confidence: classified.confidence,
-    reason: classified.reason,
-    xM: region.xM,
-    yM: region.yM,
-    pixels: region.pixels,
-    areaM2: region.areaM2,
-    boundaryM: region.boundaryM,
-    diameterM: region.diameterM,
-    longM: region.longM,
-    shortM: region.shortM,
-    angleDeg: region.angleDeg,
-    peakM: region.peakM,
-    meanM: region.meanM,
-    volumeM3: region.volumeM3,
-    heightToRadius: region.peakM / (region.diameterM / 2),
-    log10Current: region.log10Current,
-    touchesEdge: region.touchesEdge,
-  };
 }

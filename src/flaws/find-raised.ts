@@ -1,6 +1,7 @@
 /** Where the surface stands above the ground and the current is missing or lowered: bubbles, residue, wrinkles. */
 import { squaredDistance } from '../grid/distance.ts';
 import { labelComponents } from '../grid/label-components.ts';
+import { boxMean } from '../ground/flat-segments.ts';
 import { dilate, nearestAdmitted } from './local-ground.ts';
 
 export interface RaisedInput {
@@ -8,9 +9,12 @@ export interface RaisedInput {
   readonly rows: number;
   /** Height above the local ground, metres, NaN missing. */
   readonly rise: Float32Array;
+  /** 1 where the pixel lies on its own terrace's plane: by height and current nothing is wrong there. */
+  readonly onPlane: Uint8Array;
   /** log10 current, NaN missing; absent for a height alone. */
   readonly log10?: Float32Array;
-  readonly floor?: Uint8Array;
+  /** log10 of the lowest current that can be told from none. */
+  readonly floorLog10?: number;
   readonly saturated?: Uint8Array;
   /** Starting threshold in metres and the share of it that ends a flaw. */
   readonly startM: number;
@@ -18,10 +22,11 @@ export interface RaisedInput {
   /** Decades below the surroundings that count as lost current. */
   readonly dropDecades: number;
   readonly minPixels: number;
-  /** Decades of current per layer, thickness of a layer and noise of the height, metres: what a mere step of the barrier looks like. */
-  readonly layerDecades: number;
+  /** 1 at the floor. */
+  readonly floor?: Uint8Array;
+  /** Thickness of a layer, metres, and decades of current it costs: what a mere step of the barrier looks like. */
   readonly layerM: number;
-  readonly noiseM: number;
+  readonly layerDecades: number;
 }
 
 export interface Raised {
@@ -35,19 +40,26 @@ export interface Raised {
 
 /** How far a flaw may reach beyond its raised part to follow the missing current, pixels. */
 const reachPx = 3;
-/** Half-width from which ground with the rise and loss of whole layers is a terrace, pixels. */
-const terraceHalfPx = 2.5;
+/** Ground must lie this much further above the floor than the drop that is looked for, decades. */
+const marginDecades = 0.5;
+/** Fewer pixels without current mark nothing. */
+const leastLost = 4;
+/** Half-width from which a low strip can be told from the rim of something higher, pixels. */
+const stepHalfPx = 1.5;
 
 /**
  * Joint two-threshold detection. A region starts where the rise exceeds `startM` and extends to `edgeShare · startM`
  * (hysteresis, Canny, IEEE Trans. PAMI 8, 679, 1986). Its outline then follows the current where the current can be judged: within
  * three pixels of the raised part a pixel is flawed if its current lies `dropDecades` below that of the nearest undisturbed
- * ground, and not flawed if its current is in order. Where the surroundings are censored (saturated or at the floor) or the
- * current is missing, the height alone decides.
+ * ground, and not flawed if its current is in order, or if it lies on the plane of a terrace of its own. Where the surroundings are censored
+ * (saturated or at the floor) or the current is missing, the height alone decides.
+ *
+ * Steps of the barrier are no rises, because the rise is taken over the terraces' planes.
  */
 export function findRaised(input: RaisedInput): Raised {
-  const { columns, rows, rise, log10 } = input;
-  const raised = hysteresis(rise, columns, rows, input.startM, input.edgeShare * input.startM);
+  const { columns, rows, rise, onPlane, log10 } = input;
+  const edgeM = input.edgeShare * input.startM;
+  const raised = hysteresis(rise, columns, rows, input.startM, edgeM);
   if (!log10) return { mask: withoutSpecks(raised, columns, rows, input.minPixels), conductingPixels: 0 };
 
   const zone = dilate(raised, columns, rows, reachPx);
@@ -56,26 +68,26 @@ export function findRaised(input: RaisedInput): Raised {
   const nearest = nearestAdmitted(outside, columns, rows);
   const mask = new Uint8Array(zone.length);
   const drop = new Float32Array(zone.length);
-  const step = new Uint8Array(zone.length);
   const conducting = new Uint8Array(zone.length);
+  const undecided = new Uint8Array(zone.length);
+  const dim = (input.floorLog10 ?? Number.NEGATIVE_INFINITY) + input.dropDecades + marginDecades;
   for (let i = 0; i < zone.length; i++) {
     if (zone[i] === 0) continue;
     const from = nearest[i]!;
     const loss = from < 0 ? Number.NaN : log10[from]! - log10[i]!;
     drop[i] = loss;
     if (Number.isNaN(loss)) mask[i] = raised[i]!;
-    else if (loss > input.dropDecades) {
-      mask[i] = 1;
-      if (isBarrierStep(input, i, loss)) step[i] = 1;
+    else if (loss > input.dropDecades) mask[i] = onPlane[i] === 1 && !(rise[i]! > input.startM) ? 0 : 1;
+    // Beside ground that is saturated, or too dim for a drop to show above the floor, the current cannot be judged: the height alone decides.
+    else if (input.saturated?.[from] === 1 || log10[from]! < dim) {
+      mask[i] = raised[i]!;
+      if (input.saturated?.[i] === 1) undecided[i] = raised[i]!;
     }
-    else if (raised[i] === 1 && rise[i]! > input.startM) {
-      // Beside ground that is itself saturated or at the floor a drop cannot be judged: the height alone decides.
-      if (input.saturated?.[from] === 1 || input.floor?.[from] === 1) mask[i] = 1;
-      else conducting[i] = 1;
-    }
+    else if (raised[i] === 1 && rise[i]! > input.startM) conducting[i] = 1;
   }
-  removeTerraces(mask, step, drop, input);
-  // What is left of a terrace's border does not reach the starting threshold and goes with it.
+  decideSaturated(mask, undecided, columns, rows);
+  removeSteps(mask, drop, input);
+  // What is left beside a terrace's border does not reach the starting threshold and goes with it.
   const strong = new Uint8Array(zone.length);
   for (let i = 0; i < strong.length; i++) strong[i] = mask[i] === 1 && rise[i]! > input.startM ? 1 : 0;
   const final = withoutSpecks(keepTouching(mask, strong, columns, rows), columns, rows, input.minPixels);
@@ -87,43 +99,45 @@ export function findRaised(input: RaisedInput): Raised {
 }
 
 /**
- * Takes mere barrier steps out of the mask: ground of some width (the rounded edge of a film passes through such values too) whose mean rise and
- * mean loss of current, both free of pixel noise, are those of the same whole number of layers.
+ * A raised pixel that saturates beside saturated ground may be flawed or not. Near what has lost its current it is the conducting flank of that; elsewhere the
+ * height alone decides. Changes `mask`.
  */
-function removeTerraces(mask: Uint8Array, step: Uint8Array, drop: Float32Array, input: RaisedInput): void {
-  const { columns, rows, rise } = input;
-  const distance2 = squaredDistance(step, columns, rows);
-  if (!distance2.some((d) => d > terraceHalfPx ** 2)) return;
-  const { labels, count, pixels } = labelComponents(step, columns, rows, 8);
-  const widest = new Float64Array(count + 1);
-  const riseSum = new Float64Array(count + 1);
-  const dropSum = new Float64Array(count + 1);
-  for (let i = 0; i < labels.length; i++) {
-    const n = labels[i]!;
-    if (n === 0) continue;
-    widest[n] = Math.max(widest[n]!, distance2[i]!);
-    riseSum[n]! += rise[i]!;
-    dropSum[n]! += drop[i]!;
-  }
-  const terrace = new Uint8Array(count + 1);
-  for (let n = 1; n <= count; n++) {
-    const lost = dropSum[n]! / pixels[n]! / input.layerDecades;
-    const layers = Math.round(lost);
-    const fits = Math.abs(lost - layers) < 0.2 && Math.abs(riseSum[n]! / pixels[n]! - layers * input.layerM) < 0.5 * input.layerM;
-    terrace[n] = widest[n]! > terraceHalfPx ** 2 && fits ? 1 : 0;
-  }
-  for (let i = 0; i < mask.length; i++) if (terrace[labels[i]!] === 1) mask[i] = 0;
+function decideSaturated(mask: Uint8Array, undecided: Uint8Array, columns: number, rows: number): void {
+  if (!undecided.includes(1)) return;
+  const lost = withoutSpecks(mask.map((value, i) => value & (1 - undecided[i]!)), columns, rows, leastLost);
+  const near = dilate(lost, columns, rows, reachPx);
+  for (let i = 0; i < mask.length; i++) if (undecided[i] === 1 && near[i] === 1) mask[i] = 0;
 }
 
 /**
- * Whether rise and loss of current are those of the same whole number of added layers: then the pixel is a thicker terrace, not a flaw.
- * At the floor the loss is only a bound, so nothing is concluded there.
+ * Takes mere barrier steps out of the mask: strips of ground too narrow for a plane of their own, whose mean rise is that of one or two layers, and whose
+ * current has fallen by as many or is censored where it would have. Changes `mask`.
  */
-function isBarrierStep(input: RaisedInput, i: number, loss: number): boolean {
-  if (input.floor?.[i] === 1) return false;
-  const layers = Math.round(loss / input.layerDecades);
-  if (layers < 1 || Math.abs(loss / input.layerDecades - layers) > 0.35) return false;
-  return Math.abs(input.rise[i]! - layers * input.layerM) < 0.5 * input.layerM + 2 * input.noiseM;
+function removeSteps(mask: Uint8Array, drop: Float32Array, { columns, rows, rise, floor, layerM, layerDecades }: RaisedInput): void {
+  const smooth = boxMean(rise, columns, rows, 1);
+  const low = new Uint8Array(mask.length);
+  for (let i = 0; i < low.length; i++) if (mask[i] === 1 && smooth[i]! > 0.4 * layerM && smooth[i]! < 2.6 * layerM) low[i] = 1;
+  const { labels, count, pixels } = labelComponents(low, columns, rows, 4);
+  if (count === 0) return;
+  const widest = new Float64Array(count + 1);
+  const [riseSum, dropSum, dark] = [0, 0, 0].map(() => new Float64Array(count + 1)) as [Float64Array, Float64Array, Float64Array];
+  const distance2 = squaredDistance(low, columns, rows, {});
+  for (let i = 0; i < labels.length; i++) {
+    const n = labels[i]!;
+    if (n === 0) continue;
+    if (distance2[i]! > widest[n]!) widest[n] = distance2[i]!;
+    riseSum[n]! += rise[i]!;
+    dropSum[n]! += drop[i] === drop[i] ? drop[i]! : 0;
+    dark[n]! += floor?.[i] ?? 0;
+  }
+  const step = new Uint8Array(count + 1);
+  for (let n = 1; n <= count; n++) {
+    const layers = Math.max(1, Math.round(riseSum[n]! / pixels[n]! / layerM));
+    const lost = dropSum[n]! / pixels[n]! / layerDecades;
+    const fits = dark[n]! > pixels[n]! / 2 ? lost < layers + 0.35 : Math.abs(lost - layers) < 0.35;
+    step[n] = widest[n]! > stepHalfPx ** 2 && fits && Math.abs(riseSum[n]! / pixels[n]! / layerM - layers) < 0.35 ? 1 : 0;
+  }
+  for (let i = 0; i < mask.length; i++) if (step[labels[i]!] === 1) mask[i] = 0;
 }
 
 /** Pixels above `low` connected (8) to at least one above `high`. */

@@ -13,6 +13,8 @@ export interface SpotsInput {
   readonly floor: Uint8Array;
   /** Height above the local ground in metres; absent without a height map. */
   readonly rise?: Float32Array;
+  /** 1 where the pixel lies on its own terrace's plane; absent without a height map. */
+  readonly onPlane?: Uint8Array;
   /** Raised flaws found before. */
   readonly raised: Uint8Array;
   /** Decades of two layers (or what the recipe says) above the surroundings. */
@@ -98,7 +100,7 @@ export function findOpens(input: SpotsInput): { opens: Uint8Array; belongToRaise
   const candidates = new Uint8Array(log10.length);
   const outside = new Uint8Array(log10.length);
   for (let i = 0; i < candidates.length; i++) {
-    if (floor[i] === 1 && raised[i] === 0) candidates[i] = 1;
+    if (floor[i] === 1 && raised[i] === 0 && input.onPlane?.[i] !== 1) candidates[i] = 1;
     outside[i] = floor[i] === 0 && raised[i] === 0 && !Number.isNaN(log10[i]!) ? 1 : 0;
   }
   const nearest = nearestAdmitted(outside, columns, rows);

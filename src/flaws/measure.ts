@@ -31,7 +31,11 @@ export interface Region {
   readonly coneShare: number;
   /** Mean over peak height, the peak taken at the 95 % quantile so that noise does not raise it; 1/2 for a paraboloid (0.475/0.95). */
   readonly fullness: number;
+  /** Area above three quarters of the peak's height over that above half of it, the peak taken as for `fullness`: 0.55 for a paraboloid, 0.74 for 1 − ρ⁴. */
+  readonly topShare: number;
   readonly touchesEdge: boolean;
+  /** Whether a crest runs through it; absent where nobody looked. */
+  readonly ridge?: boolean;
 }
 
 export interface MeasureInput {
@@ -48,6 +52,8 @@ export interface MeasureInput {
   readonly floor?: Uint8Array;
   /** Squared distance of each pixel from the outside of the labelled regions, m². */
   readonly distance2: Float32Array;
+  /** By label: 1 where a crest runs through the region; absent where nobody looked. */
+  readonly ridge?: Uint8Array;
 }
 
 /**
@@ -118,6 +124,7 @@ function measureRegion(input: MeasureInput, label: number, indices: Int32Array):
     dropDecades: medianOf(input.drop, indices),
     floorShare: input.floor ? atFloor / n : Number.NaN,
     touchesEdge,
+    ...(input.ridge ? { ridge: input.ridge[label] === 1 } : {}),
   };
 }
 
@@ -155,12 +162,12 @@ function ellipseOf(input: MeasureInput, indices: Int32Array, xM: number, yM: num
 }
 
 /** Height's measures; NaN (shares 0) where no height is known. */
-type Heights = Pick<Region, 'peakM' | 'meanM' | 'volumeM3' | 'domeShare' | 'coneShare' | 'fullness'>;
+type Heights = Pick<Region, 'peakM' | 'meanM' | 'volumeM3' | 'domeShare' | 'coneShare' | 'fullness' | 'topShare'>;
 
 function heights(input: MeasureInput, indices: Int32Array, xM: number, yM: number, ellipse: Ellipse): Heights {
   const { columns, rows, pitchXM, pitchYM, rise } = input;
   const { values, count } = presentOf(rise, indices);
-  if (!rise || count === 0) return { peakM: Number.NaN, meanM: Number.NaN, volumeM3: Number.NaN, domeShare: 0, coneShare: 0, fullness: Number.NaN };
+  if (!rise || count === 0) return { peakM: Number.NaN, meanM: Number.NaN, volumeM3: Number.NaN, domeShare: 0, coneShare: 0, fullness: Number.NaN, topShare: Number.NaN };
   // Regression of height on a paraboloid 1 − ρ² and on a cone 1 − ρ, ρ² = dᵀ·C⁻¹·d / 4 being 1 on the ellipse.
   const dome = new Float64Array(count);
   const cone = new Float64Array(count);
@@ -184,8 +191,17 @@ function heights(input: MeasureInput, indices: Int32Array, xM: number, yM: numbe
   const domeShare = explainedShare(dome, values, count);
   const coneShare = explainedShare(cone, values, count);
   // A paraboloid's 95 % quantile is 0.95 of its peak, so this is 1/2 for one. Selecting reorders the values, so it comes last.
-  const fullness = (0.95 * meanM) / selectInPlace(values, Math.min(count - 1, Math.floor(0.95 * count)), count);
-  return { peakM, meanM, volumeM3: sum * pitchXM * pitchYM, domeShare, coneShare, fullness };
+  const topM = selectInPlace(values, Math.min(count - 1, Math.floor(0.95 * count)), count);
+  const fullness = (0.95 * meanM) / topM;
+  let half = 0;
+  let upper = 0;
+  for (let n = 0; n < count; n++) {
+    if (!(values[n]! > 0.5 * topM)) continue;
+    half++;
+    if (values[n]! > 0.75 * topM) upper++;
+  }
+  const topShare = half > 0 ? upper / half : Number.NaN;
+  return { peakM, meanM, volumeM3: sum * pitchXM * pitchYM, domeShare, coneShare, fullness, topShare };
 }
 
 /** Share of the variance of `values` that grows with `shape`: the squared correlation, 0 where it falls with it. */

@@ -3,6 +3,13 @@
  * along the fast axis, sharp across it, and the lines on both sides agree.
  */
 
+/** Pixels in a row inside a run that may agree with the lines around it, by noise. */
+const mostGap = 2;
+/** Pixels in a row inside a run where the lines around it disagree too much to tell, over the flank of a feature. */
+const mostUntold = 12;
+/** Neither off nor in order. */
+const untold = 2;
+
 /** What a run must show. `noise` is the pixel noise in the map's unit. */
 export interface RunRule {
   readonly noise: number;
@@ -14,67 +21,68 @@ export interface RunRule {
 
 /**
  * Marks pixels of broken runs (1) in a map whose lines have been brought to a common level.
- * A pixel qualifies when it differs from the mean of the lines before and after the run by more than six times the
- * noise and more than four times their disagreement, and when those lines themselves run on smoothly (a wrinkle lying along the
- * fast axis does not: its flanks slope). NaN never qualifies.
+ * A pixel qualifies when it differs from its reference by more than six times the noise and more than four times the reference's own disagreement. The
+ * reference are the two middle ones of the four pixels up to two lines before and after, so that a second broken line beside the first, whatever it
+ * shows, does not hide it; a ridge or a slope does not qualify, because on it those two disagree. NaN never qualifies.
  */
 export function markBrokenRuns(values: Float32Array, columns: number, rows: number, rule: RunRule): Uint8Array {
   const marks = new Uint8Array(values.length);
-  for (const thickness of [1, 2]) {
-    for (let r = 1; r + thickness < rows; r++) {
-      markRow(values, marks, columns, rows, r, thickness, rule);
-    }
-  }
+  for (let r = 0; r < rows; r++) markRow(values, marks, columns, rows, r, rule);
   return marks;
 }
 
-function markRow(values: Float32Array, marks: Uint8Array, columns: number, rows: number, r: number, thickness: number, rule: RunRule): void {
+function markRow(values: Float32Array, marks: Uint8Array, columns: number, rows: number, r: number, rule: RunRule): void {
   let start = -1;
   let sign = 0;
-  let gaps = 0;
+  let last = 0;
+  let agreeing = 0;
   for (let c = 0; c <= columns; c++) {
-    let s = c < columns ? breakSign(values, columns, rows, r, c, thickness, rule.noise) : 0;
-    if (s > 0 && rule.only === 'below') s = 0;
+    let s = c < columns ? breakSign(values, columns, rows, r, c, rule.noise) : 0;
+    if (s === 1 && rule.only === 'below') s = 0;
     if (start >= 0 && s === sign) {
-      gaps = 0;
+      last = c;
+      agreeing = 0;
       continue;
     }
-    // Up to two pixels in a row may miss the rule, noise or a feature under the run does that.
-    if (start >= 0 && s !== -sign && gaps < 2 && c < columns) {
-      gaps++;
-      continue;
-    }
-    if (start >= 0) {
-      const end = c - gaps;
-      if (end - start >= rule.minLength) fillRun(marks, columns, r, thickness, start, end);
-    }
-    start = s === 0 ? -1 : c;
+    if (s === 0) agreeing++;
+    if (start >= 0 && s !== -sign && agreeing <= mostGap && c - last <= mostUntold && c < columns) continue;
+    if (start >= 0 && last + 1 - start >= rule.minLength) marks.fill(1, r * columns + start, r * columns + last + 1);
+    start = s === 0 || s === untold ? -1 : c;
     sign = s;
-    gaps = 0;
+    last = c;
+    agreeing = 0;
   }
 }
 
-function fillRun(marks: Uint8Array, columns: number, r: number, thickness: number, start: number, end: number): void {
-  for (let k = 0; k < thickness; k++) marks.fill(1, (r + k) * columns + start, (r + k) * columns + end);
-}
-
-/** +1 or −1 where all lines of the run stand off to one side of both neighbours, else 0. */
-function breakSign(values: Float32Array, columns: number, rows: number, r: number, c: number, thickness: number, noise: number): number {
-  const before = values[(r - 1) * columns + c]!;
-  const after = values[(r + thickness) * columns + c]!;
-  const mean = (before + after) / 2;
-  const least = Math.max(6 * noise, 4 * Math.abs(before - after));
-  let off = 0;
-  for (let k = 0; k < thickness; k++) {
-    const e = values[(r + k) * columns + c]! - mean;
-    if (!(Math.abs(e) > least)) return 0;
-    if (off !== 0 && Math.sign(e) !== Math.sign(off)) return 0;
-    off = off === 0 || Math.abs(e) < Math.abs(off) ? e : off;
+/** +1 or −1 where the pixel stands off to one side of the lines around it, 0 where it agrees with them, `untold` where they disagree themselves. */
+function breakSign(values: Float32Array, columns: number, rows: number, r: number, c: number, noise: number): number {
+  const i = r * columns + c;
+  const value = values[i]!;
+  const at = (row: number): number => (row >= 0 && row < rows ? values[row * columns + c]! : Number.NaN);
+  const before = at(r - 1);
+  const after = at(r + 1);
+  const least = 6 * noise;
+  // Most pixels are settled by the line before and the line after.
+  if (Math.abs(value - before) <= least && Math.abs(value - after) <= least) return 0;
+  let low: number;
+  let high: number;
+  if (r >= 2 && r + 2 < rows) {
+    const further = at(r - 2);
+    const beyond = at(r + 2);
+    // The two middle ones of four: of two pairs in order, the larger of the lower ends and the smaller of the upper ends.
+    low = Math.max(Math.min(before, after), Math.min(further, beyond));
+    high = Math.min(Math.max(before, after), Math.max(further, beyond));
+    if (low > high) [low, high] = [high, low];
+  } else {
+    // Beside the map's border: the two of three that are nearest to each other.
+    const side = r < 2 ? 1 : -1;
+    const [p, q, s] = [at(r + side), at(r + 2 * side), r === 1 || r === rows - 2 ? at(r - side) : at(r + 3 * side)].sort((a, b) => a - b) as [number, number, number];
+    [low, high] = q - p < s - q ? [p, q] : [q, s];
   }
-  const slopeLimit = Math.max(4 * noise, Math.abs(off) / 4);
-  if (r >= 2 && Math.abs(before - values[(r - 2) * columns + c]!) > slopeLimit) return 0;
-  if (r + thickness + 1 < rows && Math.abs(after - values[(r + thickness + 1) * columns + c]!) > slopeLimit) return 0;
-  return Math.sign(off);
+  const off = value - (low + high) / 2;
+  // Missing lines leave nothing to compare with.
+  if (!(Math.abs(off) > least)) return off === off ? 0 : untold;
+  return Math.abs(off) > 4 * (high - low) ? Math.sign(off) : untold;
 }
 
 /**
@@ -103,21 +111,25 @@ export function markSpikes(values: Float32Array, marks: Uint8Array, columns: num
 
 /**
  * Fills marked or missing pixels from the nearest unmarked pixels above and below in the same column, when these are at
- * most three lines apart and agree within `tolerance`; otherwise from left and right, for gaps of one or two pixels.
+ * most three lines apart and agree within a tolerance; otherwise from left and right, for gaps of one or two pixels. Beside the map's upper and
+ * lower border a marked pixel takes what lies up to two lines inwards.
  *
+ * @param tolerance for missing pixels; @param markedTolerance for marked ones, the same when absent.
  * @returns 1 where a pixel was filled. Pixels that could not be filled become NaN (they were marked) or stay NaN.
  */
-export function fillFromNeighbours(values: Float32Array, marks: Uint8Array, columns: number, rows: number, tolerance: number): Uint8Array {
+export function fillFromNeighbours(values: Float32Array, marks: Uint8Array, columns: number, rows: number, tolerance: number, markedTolerance = tolerance): Uint8Array {
   const filled = new Uint8Array(values.length);
   const source = Float32Array.from(values);
-  const usable = (r: number, c: number): boolean =>
-    r >= 0 && r < rows && c >= 0 && c < columns && marks[r * columns + c] === 0 && !Number.isNaN(source[r * columns + c]!);
+  const valueAt = (r: number, c: number): number =>
+    (r >= 0 && r < rows && c >= 0 && c < columns && marks[r * columns + c] === 0 ? source[r * columns + c]! : Number.NaN);
   for (let r = 0; r < rows; r++) {
     for (let c = 0; c < columns; c++) {
       const i = r * columns + c;
       if (marks[i] === 0 && !Number.isNaN(values[i]!)) continue;
-      const vertical = between(source, columns, usable, r, c, 1, 0, tolerance);
-      const value = Number.isNaN(vertical) ? between(source, columns, usable, r, c, 0, 1, tolerance) : vertical;
+      const within = marks[i] === 1 ? markedTolerance : tolerance;
+      let value = between(valueAt, r, c, 1, 0, within);
+      if (Number.isNaN(value)) value = between(valueAt, r, c, 0, 1, within);
+      if (Number.isNaN(value) && marks[i] === 1) value = inwards(valueAt, r, c, rows);
       values[i] = value;
       if (!Number.isNaN(value)) filled[i] = 1;
     }
@@ -126,17 +138,22 @@ export function fillFromNeighbours(values: Float32Array, marks: Uint8Array, colu
 }
 
 /** Linear interpolation between the nearest usable pixels on both sides, at most three steps apart; NaN if they disagree. */
-function between(
-  source: Float32Array, columns: number, usable: (r: number, c: number) => boolean,
-  r: number, c: number, dr: number, dc: number, tolerance: number,
-): number {
+function between(valueAt: (r: number, c: number) => number, r: number, c: number, dr: number, dc: number, tolerance: number): number {
   let back = 1;
-  while (back <= 2 && !usable(r - back * dr, c - back * dc)) back++;
+  while (back <= 2 && Number.isNaN(valueAt(r - back * dr, c - back * dc))) back++;
   let ahead = 1;
-  while (ahead <= 2 && !usable(r + ahead * dr, c + ahead * dc)) ahead++;
+  while (ahead <= 2 && Number.isNaN(valueAt(r + ahead * dr, c + ahead * dc))) ahead++;
   if (back > 2 || ahead > 2 || back + ahead > 3) return Number.NaN;
-  const a = source[(r - back * dr) * columns + c - back * dc]!;
-  const b = source[(r + ahead * dr) * columns + c + ahead * dc]!;
+  const a = valueAt(r - back * dr, c - back * dc);
+  const b = valueAt(r + ahead * dr, c + ahead * dc);
   if (Math.abs(a - b) > tolerance) return Number.NaN;
   return (a * ahead + b * back) / (back + ahead);
+}
+
+/** Beside the border, the nearest usable pixel inwards, two lines away at most; NaN elsewhere. */
+function inwards(valueAt: (r: number, c: number) => number, r: number, c: number, rows: number): number {
+  const step = r < 2 ? 1 : r >= rows - 2 ? -1 : 0;
+  if (step === 0) return Number.NaN;
+  const near = valueAt(r + step, c);
+  return Number.isNaN(near) ? valueAt(r + 2 * step, c) : near;
 }

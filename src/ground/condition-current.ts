@@ -5,135 +5,146 @@ import type { Notice } from '../problems/problem.ts';
 import { notice } from '../problems/problem.ts';
 import type { Channel } from '../read/sample.ts';
 import type { ScanSection } from '../read/recipe.ts';
+import { movedBack, shiftAgainstHeight } from './align-current.ts';
+import type { Shift } from './align-current.ts';
 import { fillFromNeighbours, markBrokenRuns } from './broken-runs.ts';
-import type { CurrentGround, HeightGround } from './ground.ts';
+import { quantifiedOverFloor } from './current-limits.ts';
+import { currentFloor } from './current-floor.ts';
+import type { CurrentGround, RoughHeight } from './ground.ts';
+import { clippedFrom, readAmplifier, runLength, runNoiseDecades } from './read-amplifier.ts';
 import type { GroundSection } from './recipe.ts';
-import { findSaturation } from './saturation.ts';
-import { findWear, leastWearDecades } from './wear.ts';
-import { findZeroCurrent } from './zero-current.ts';
+import { turnedUp } from './turn-current.ts';
+import { findDrift, isWear, leastWearDecades, wearPerRow } from './wear.ts';
+import type { Drift } from './wear.ts';
 
 /** Above this height over the ground nothing of a thin barrier's current is left, metres. */
-const blockedAboveM = 4e-9;
-/** Detection limit in standard deviations of the noise (three: one reading in 700 of pure noise lies above, common practice). */
-const floorSigmas = 3;
-/** A break of log current this large in decades, in units of the run rule's six sigmas. */
-const runNoiseDecades = 0.05;
+export const blockedAboveM = 4e-9;
 /** Neighbours of a broken run agree when they differ by less than this, decades. */
 const agreeDecades = 0.3;
+/** An unexplained trend from this size and this many standard errors up is worth a remark. */
+const unclear = { decades: 0.15, errors: 1 } as const;
+
+/** What else is known when a current is conditioned. */
+export interface BesideCurrent {
+  /** Roughly levelled height of the same grid: tall features show the reading at zero current, and where the current lies. */
+  readonly height?: RoughHeight | undefined;
+  /** 1 on the footprint by outlines; ground beside it may show the reading at zero current. */
+  readonly inside?: Uint8Array | undefined;
+  /** True when the first line is the picture's last row. */
+  readonly slowUp: boolean;
+  /** Trend along the slow axis on the return scan. */
+  readonly returned?: Drift | undefined;
+}
 
 /**
- * Conditions a current map: turns it by the bias's sign, removes the offset, marks what is censored (saturated, floor), repairs broken
- * runs of one or two lines between agreeing neighbours, and undoes tip wear as a factor per line. A current is never
- * levelled like a height: only an offset and a factor are physical.
+ * Conditions a current map: turns it by the bias's sign, removes the offset, undoes the amplifier's lag and a shift against the height, marks what is
+ * censored (saturated, floor), repairs broken runs of one or two lines between agreeing neighbours, and undoes tip wear as a factor per
+ * line. A current is never levelled like a height: only an offset, a time constant and a factor are physical.
  *
  * @param channel current in A, or relative units; NaN missing.
- * @param height levelled height of the same grid, when there is one: tall features show the reading at zero current.
  * @throws Problem `current-saturated` when 99 % or more of the map is saturated.
  */
-export function conditionCurrent(
-  channel: Channel, grid: Grid, height: HeightGround | undefined, section: GroundSection, scan: ScanSection, slowUp: boolean,
-): { current: CurrentGround; warnings: Notice[] } {
+export function conditionCurrent(channel: Channel, grid: Grid, section: GroundSection, scan: ScanSection, beside: BesideCurrent): { current: CurrentGround; warnings: Notice[] } {
   const { columns, rows } = grid;
   const count = columns * rows;
-  const warnings: Notice[] = [];
-  const turned = turnedUp(channel, warnings);
-
-  const levelled = height?.levelled.data;
+  const unit = channel.unit === 'A' ? 'A' : 'relative';
+  const { values: turned, sign, warnings } = turnedUp(channel);
+  const levelled = beside.height?.levelled.data;
   const tall = levelled && ((i: number) => levelled[i]! > blockedAboveM);
-  const saturationA = scan.saturationA ?? findSaturation(turned);
-  const zero = findZeroCurrent(turned, columns, { blocked: tall, saturation: saturationA });
+  const { inside, slowUp } = beside;
+  const amplifier = readAmplifier(turned, columns, rows, section, {
+    blocked: tall, beside: inside && ((i: number) => inside[i] === 0), saturation: scan.saturationA, given: section.offsetA === undefined ? undefined : sign * section.offsetA,
+  });
+  const { zero, lag, saturation } = amplifier;
   if (zero.from === 'assumed') warnings.push(notice('current-offset-assumed', {}));
-  const saturationNet = saturationA === undefined ? Number.POSITIVE_INFINITY : saturationA * (1 - 1e-4) - zero.offset;
+  if (lag) warnings.push(notice('current-lag', { px: lag.px, sePx: lag.sePx }));
+  const saturationNet = clippedFrom(saturation) - zero.offset;
   const offsetFree = turned.map((value) => value - zero.offset);
-  const floorA = scan.floorA ?? lowestFloor(floorSigmas * zero.noise, offsetFree);
-  const [floorLog, saturationLog] = [Math.log10(floorA), Math.log10(saturationNet)];
+  let unlagged = lag ? amplifier.values.map((value) => value - zero.offset) : offsetFree;
+  let blind = amplifier.blind;
+  const { floorA, floorSeA } = currentFloor(zero, scan.floorA, offsetFree);
+  if (zero.quantum !== undefined) warnings.push(notice('current-quantised', { step: zero.quantum, floor: floorA, unit }));
+  const floorLog = Math.log10(floorA);
+  const censored = (value: number): number => (Number.isNaN(value) ? Number.NaN : Math.log10(Math.min(Math.max(value, floorA), saturationNet)));
 
-  const log10 = new Float32Array(count);
+  let log10 = unlagged.map(censored);
+  const shift = levelled && shiftAgainstHeight(levelled, log10, floorLog, columns, rows);
+  if (section.align && shift && (shift.undoneXPx !== 0 || shift.undoneYPx !== 0)) {
+    unlagged = movedBack(unlagged, columns, shift, Number.NaN);
+    log10 = movedBack(log10, columns, shift, Number.NaN);
+    blind = blind && movedBack(blind, columns, shift, 0);
+    warnings.push(notice('current-shifted', shift));
+  }
+
+  const saturated = new Uint8Array(count);
+  const floor = new Uint8Array(count);
   let saturatedPixels = 0;
   for (let i = 0; i < count; i++) {
-    const value = offsetFree[i]!;
-    log10[i] = Number.isNaN(value) ? Number.NaN : Math.log10(Math.min(Math.max(value, floorA), saturationNet));
-    if (value >= saturationNet) saturatedPixels++;
+    const value = unlagged[i]!;
+    const hidden = blind?.[i] ?? 0;
+    if (value <= hidden && hidden > floorA) log10[i] = Math.log10(hidden);
+    if (value <= Math.max(hidden, floorA)) floor[i] = 1;
+    else if (value >= saturationNet) {
+      saturated[i] = 1;
+      saturatedPixels++;
+    }
   }
   if (saturatedPixels >= 0.99 * count) throw new Problem('current-saturated', { file: channel.source, share: saturatedPixels / count });
 
   let repaired: Uint8Array = new Uint8Array(count);
   if (section.repair) {
     // A broken contact loses current; what gains it along a line may be a short.
-    const marks = markBrokenRuns(log10, columns, rows, { noise: runNoiseDecades, minLength: 8, only: 'below' });
+    const marks = markBrokenRuns(log10, columns, rows, { noise: runNoiseDecades, minLength: runLength, only: 'below' });
     repaired = fillFromNeighbours(log10, marks, columns, rows, agreeDecades);
   }
-
-  // Censored after the repair: a run filled from saturated neighbours is as saturated as they are.
-  const saturated = new Uint8Array(count);
-  const floor = new Uint8Array(count);
+  let repairedPixels = 0;
+  const saturationLog = Math.log10(saturationNet);
   for (let i = 0; i < count; i++) {
+    // Censored like its neighbours: a run filled from saturated ones is as saturated as they are.
     if (log10[i]! <= floorLog + 1e-6) floor[i] = 1;
     else if (log10[i]! >= saturationLog - 1e-6) saturated[i] = 1;
-  }
-  const wear = findWear(log10, columns, rows, (i) => floor[i] === 0 && saturated[i] === 0 && log10[i]! > floorLog && !tall?.(i), slowUp);
-  const conditioned = new Float32Array(count);
-  for (let i = 0; i < count; i++) conditioned[i] = repaired[i] === 1 ? 10 ** log10[i]! : Number.isNaN(log10[i]!) ? Number.NaN : offsetFree[i]!;
-  if (section.wear && wear.decades >= leastWearDecades) {
-    // A bound moves with the wear like a value: what an unworn tip would have shown lies as much higher.
-    for (let i = 0; i < count; i++) {
-      const shift = wear.perRow[(i / columns) | 0]!;
-      conditioned[i]! *= 10 ** shift;
-      log10[i]! += shift;
-    }
-    warnings.push(notice('current-wear', { decades: wear.decades }));
+    else if (repaired[i] === 1 || Number.isNaN(log10[i]!)) floor[i] = saturated[i] = 0;
+    repairedPixels += repaired[i]!;
   }
 
-  let repairedPixels = 0;
-  for (const mark of repaired) repairedPixels += mark;
+  // What is seen but not measured well would be cut off from below and hide a trend.
+  const measuredFrom = Math.log10(floorA * quantifiedOverFloor);
+  const drift = findDrift(log10, columns, rows, (i) => floor[i] === 0 && saturated[i] === 0 && log10[i]! > measuredFrom && !tall?.(i), slowUp, (rows * grid.pitchYM) / (columns * grid.pitchXM));
+  const worn = isWear(drift, beside.returned);
+  warnings.push(...wearNotices(drift, worn, section.wear, beside.returned));
+  const conditioned = new Float32Array(count);
+  for (let i = 0; i < count; i++) conditioned[i] = repaired[i] === 1 ? 10 ** log10[i]! : Number.isNaN(log10[i]!) ? Number.NaN : unlagged[i]!;
+  if (section.wear && worn) {
+    const perRow = wearPerRow(drift.decades, rows, slowUp);
+    // A bound moves with the wear like a value: what an unworn tip would have shown lies as much higher.
+    for (let i = 0; i < count; i++) {
+      const shiftBy = perRow[(i / columns) | 0]!;
+      conditioned[i]! *= 10 ** shiftBy;
+      log10[i]! += shiftBy;
+    }
+  }
   return {
     current: {
-      unit: channel.unit === 'A' ? 'A' : 'relative',
-      ...(channel.biasV === undefined ? {} : { biasV: channel.biasV }),
-      offsetFree: scalarMap(grid, offsetFree),
-      conditioned: scalarMap(grid, conditioned),
-      log10: scalarMap(grid, log10),
-      saturated: maskMap(grid, saturated),
-      floor: maskMap(grid, floor),
-      repaired: maskMap(grid, repaired),
-      repairedPixels,
-      offsetA: zero.offset,
-      noiseA: zero.noise,
-      floorA,
-      ...(saturationA === undefined ? {} : { saturationA: saturationA - zero.offset }),
-      saturatedPixels,
-      wearDecades: wear.decades,
+      unit, ...(channel.biasV === undefined ? {} : { biasV: channel.biasV }),
+      offsetFree: scalarMap(grid, offsetFree), conditioned: scalarMap(grid, conditioned), log10: scalarMap(grid, log10),
+      saturated: maskMap(grid, saturated), floor: maskMap(grid, floor), repaired: maskMap(grid, repaired), repairedPixels,
+      offsetA: zero.offset, ...(zero.offsetSe === undefined ? {} : { offsetSeA: zero.offsetSe }), offsetFrom: zero.from,
+      noiseA: zero.noise, floorA, ...(floorSeA === undefined ? {} : { floorSeA }), ...(zero.quantum === undefined ? {} : { stepA: zero.quantum }),
+      ...(saturation === undefined ? {} : { saturationA: saturation - zero.offset }), saturatedPixels,
+      wearDecades: worn ? drift.decades : 0, driftDecades: drift.decades, driftSeDecades: drift.seDecades,
+      lagPx: lag?.px ?? 0, ...(lag && !Number.isNaN(lag.sePx) ? { lagSePx: lag.sePx } : {}), ...(shift ? { shift: done(shift, section.align) } : {}),
     },
     warnings,
   };
 }
 
-/**
- * Current times the sign that makes real currents positive: the bias's, or the current's own where no bias is known. Where nearly all readings
- * of some size oppose the bias, the amplifier inverts, as many do: then the current's own sign is taken and a remark says so.
- */
-function turnedUp(channel: Channel, warnings: Notice[]): Float32Array {
-  const values = channel.values.data;
-  let largest = 0;
-  for (const value of values) if (Math.abs(value) > largest) largest = Math.abs(value);
-  let up = 0;
-  let down = 0;
-  for (const value of values) {
-    if (value > largest / 100) up++;
-    else if (value < -largest / 100) down++;
-  }
-  const own = down > up ? -1 : 1;
-  const biasSign = channel.biasV === undefined || channel.biasV === 0 ? undefined : Math.sign(channel.biasV);
-  const inverted = biasSign !== undefined && biasSign !== own && (own === 1 ? up : down) >= 0.95 * (up + down) && up + down > 0;
-  if (inverted) warnings.push(notice('current-inverted', { biasV: channel.biasV! }));
-  const sign = inverted || biasSign === undefined ? own : biasSign;
-  return values.map((value) => value * sign);
+function done(shift: Shift, align: boolean): Shift {
+  return align ? shift : { ...shift, undoneXPx: 0, undoneYPx: 0 };
 }
 
-/** A noiseless map still needs a positive floor for its logs: the smallest positive value. */
-function lowestFloor(measured: number, values: Float32Array): number {
-  if (measured > 0) return measured;
-  let least = Number.POSITIVE_INFINITY;
-  for (const value of values) if (value > 0 && value < least) least = value;
-  return Number.isFinite(least) ? least : 1e-15;
+function wearNotices(drift: Drift, worn: boolean, undo: boolean, returned: Drift | undefined): Notice[] {
+  const { decades, seDecades } = drift;
+  if (worn) return undo ? [notice('current-wear', { decades, seDecades })] : [];
+  if (decades >= leastWearDecades && isWear(drift)) return [notice('current-drift-differs', { forwardDecades: decades, returnDecades: returned?.decades ?? Number.NaN })];
+  return decades >= Math.max(unclear.decades, unclear.errors * seDecades) ? [notice('current-drift-unclear', { decades, seDecades })] : [];
 }

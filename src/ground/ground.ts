@@ -2,6 +2,9 @@
 import type { MaskMap, ScalarMap } from '../grid/maps.ts';
 import type { Notice } from '../problems/problem.ts';
 import type { Outline } from '../read/sample.ts';
+import type { Shift } from './align-current.ts';
+import type { LadderFit } from './ladder.ts';
+import type { ZeroCurrent } from './zero-current.ts';
 
 export interface HeightGround {
   /** Levelled height in metres: ground near 0, NaN where missing and not repaired. */
@@ -11,6 +14,8 @@ export interface HeightGround {
   readonly repairedPixels: number;
   /** Robust standard deviation of the pixel noise on flat ground, metres. */
   readonly noiseM: number;
+  /** Height of the plane, the terrace, that each pixel lies on, metres above a common one; NaN where neither the current nor flat ground tells, and on small patches that may be films. */
+  readonly plane: Float32Array;
   /** Peak-to-peak of the removed tilt and bow over the map, metres. */
   readonly tiltM: number;
 }
@@ -21,9 +26,12 @@ export interface CurrentGround {
   readonly biasV?: number;
   /** Current with the offset removed, times the sign of the bias; NaN where missing (this is `current.tif`). */
   readonly offsetFree: ScalarMap;
-  /** The same with broken runs repaired and drift undone (this is `conditioned.tif`). */
+  /** The same with lag undone, moved back over the height, broken runs repaired and wear undone (this is `conditioned.tif`). All maps below lie as this one does. */
   readonly conditioned: ScalarMap;
-  /** log10 of `conditioned`; floor pixels at log10(floorA) and saturated ones at log10(saturationA), both plus the wear undone on their line; NaN where missing. */
+  /**
+   * log10 of `conditioned`; floor pixels at log10(floorA), or higher where a tail of the amplifier's lag was taken off and hides more, and saturated ones at log10(saturationA), both
+   * plus the wear undone on their line; NaN where missing.
+   */
   readonly log10: ScalarMap;
   /** Censored from above: the current is at least this. */
   readonly saturated: MaskMap;
@@ -32,12 +40,54 @@ export interface CurrentGround {
   readonly repaired: MaskMap;
   readonly repairedPixels: number;
   readonly offsetA: number;
+  /** Standard error of the offset; absent where it was not measured. */
+  readonly offsetSeA?: number;
+  readonly offsetFrom?: ZeroCurrent['from'];
   readonly noiseA: number;
   readonly floorA: number;
+  /** Standard error of the floor as a current, offset included; absent where the floor was given or the offset not measured. */
+  readonly floorSeA?: number;
+  /** Step between neighbouring readings of a coarsely digitised current. */
+  readonly stepA?: number;
   readonly saturationA?: number;
   readonly saturatedPixels: number;
-  /** Conductance lost by the tip from first to last line, in decades (positive = lost). */
+  /** Conductance lost by the tip from first to last line, in decades (positive = lost); 0 where no loss is told from the barrier. */
   readonly wearDecades: number;
+  /** Trend of the log current on the terraces from first to last line, whatever its cause, and its standard error; NaN where the map cannot tell. */
+  readonly driftDecades?: number;
+  readonly driftSeDecades?: number;
+  /** Time constant of the amplifier that was undone, pixels along the fast axis; 0 for none. */
+  readonly lagPx: number;
+  /** Absent where the time constant was given or is 0. */
+  readonly lagSePx?: number;
+  /** Shift of the current against the height, after the lag was undone; absent where the maps do not tell. */
+  readonly shift?: Shift;
+}
+
+/** What the return scan adds: it is measured and compared, not mixed into the maps. */
+export interface ReturnGround {
+  readonly height?: { readonly noiseM: number; readonly shift?: Shift };
+  readonly current?: {
+    readonly noiseA: number;
+    readonly offsetA: number;
+    readonly lagPx: number;
+    /** NaN where the map cannot tell. */
+    readonly driftDecades: number;
+    /** Shift against the forward scan, after the lag of both was undone. */
+    readonly shift?: Shift;
+  };
+}
+
+/** A height levelled without knowledge of terraces: good enough to tell features and to find edges. */
+export type RoughHeight = Pick<HeightGround, 'levelled' | 'noiseM'>;
+
+/** Terraces as parallel planes. */
+export interface LayerPlanes {
+  /** Height of the pixel's terrace above the thinnest one that was measured, metres; NaN where the current does not tell. */
+  readonly planes: Float32Array;
+  readonly ladder: LadderFit;
+  /** Height of one gap of the ladder, metres. */
+  readonly gapM: number;
 }
 
 /** What lies bare beside the flake: `both` injector and substrate, `unknown` when only the height tells. */
@@ -57,6 +107,10 @@ export interface FootprintProposal {
 export interface Ground {
   readonly height?: HeightGround;
   readonly current?: CurrentGround;
+  /** Absent without a return scan. */
+  readonly returned?: ReturnGround;
+  /** Planes of the terraces by their current; absent without height or without a terrace whose current can be measured. */
+  readonly layers?: LayerPlanes;
   /** Only for a sample without outlines, and only on evidence. */
   readonly footprintProposal?: FootprintProposal;
   readonly warnings: readonly Notice[];

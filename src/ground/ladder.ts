@@ -1,5 +1,7 @@
 /** The layer ladder: equal steps of log current between terraces of whole layers, measured from the map. */
 
+import { histogramPeaks } from '../stats/histogram-peaks.ts';
+
 export interface LadderFit {
   /** Positions of the terraces' peaks in log10 current, highest current first. */
   readonly peaks: readonly LadderPeak[];
@@ -16,13 +18,10 @@ export interface LadderPeak {
   readonly rung: number;
 }
 
-const binDecades = 0.01;
-/** Standard deviation of the kernel that smooths the histogram. */
+/** Standard deviation of the kernel that smooths the histogram, decades. */
 const smoothDecades = 0.05;
-/** A peak with a smaller share of the ground is no terrace worth a rung. */
-const leastShare = 0.01;
-/** A valley must fall at least to this share of the lower of its two peaks. */
-const valleyShare = 0.8;
+/** Peaks with less than a hundredth of the ground are no terraces worth a rung. */
+const rule = { bin: 0.01, smooth: smoothDecades, leastShare: 0.01, valleyShare: 0.8 } as const;
 
 /**
  * Finds the terraces as peaks of the histogram of log current and the common step between them.
@@ -33,81 +32,9 @@ const valleyShare = 0.8;
  * @param log10 log10 current; @param use admits uncensored, unflawed ground. NaN is skipped.
  */
 export function measureLadder(log10: Float32Array, use: (index: number) => boolean): LadderFit {
-  const histogram = smoothedHistogram(log10, use);
-  if (!histogram) return { peaks: [] };
-  const found = findPeaks(histogram.counts, histogram.low);
+  const found = histogramPeaks(log10, use, rule).map(({ at, share }) => ({ log10: at, share })).reverse();
   if (found.length < 2) return { peaks: found.map((peak) => ({ ...peak, rung: 0 })) };
   return fitStep(found);
-}
-
-function smoothedHistogram(log10: Float32Array, use: (index: number) => boolean): { counts: Float64Array; low: number } | undefined {
-  let low = Number.POSITIVE_INFINITY;
-  let high = Number.NEGATIVE_INFINITY;
-  for (let i = 0; i < log10.length; i++) {
-    const value = log10[i]!;
-    if (Number.isNaN(value) || !use(i)) continue;
-    if (value < low) low = value;
-    if (value > high) high = value;
-  }
-  if (!(high >= low)) return undefined;
-  const margin = 4 * smoothDecades;
-  low -= margin;
-  const bins = Math.ceil((high + margin - low) / binDecades) + 1;
-  const raw = new Float64Array(bins);
-  let total = 0;
-  for (let i = 0; i < log10.length; i++) {
-    const value = log10[i]!;
-    if (Number.isNaN(value) || !use(i)) continue;
-    raw[Math.floor((value - low) / binDecades)]!++;
-    total++;
-  }
-  return { counts: gaussianBlur(raw, smoothDecades / binDecades, 1 / total), low };
-}
-
-function gaussianBlur(values: Float64Array, sigma: number, scale: number): Float64Array {
-  const reach = Math.ceil(4 * sigma);
-  const kernel = Float64Array.from({ length: 2 * reach + 1 }, (_, k) => Math.exp(-((k - reach) ** 2) / (2 * sigma * sigma)));
-  const norm = kernel.reduce((sum, k) => sum + k, 0);
-  const out = new Float64Array(values.length);
-  for (let i = 0; i < values.length; i++) {
-    let sum = 0;
-    for (let k = -reach; k <= reach; k++) sum += (values[i + k] ?? 0) * kernel[k + reach]!;
-    out[i] = (sum * scale) / norm;
-  }
-  return out;
-}
-
-/** Maxima whose valleys on both sides are deep enough, merged upwards until all are; highest current first. */
-function findPeaks(counts: Float64Array, low: number): { log10: number; share: number }[] {
-  let tops: number[] = [];
-  for (let i = 1; i + 1 < counts.length; i++) if (counts[i]! > 0 && counts[i]! >= counts[i - 1]! && counts[i]! > counts[i + 1]!) tops.push(i);
-  for (;;) {
-    let worst = -1;
-    let worstRatio = valleyShare;
-    for (let k = 0; k + 1 < tops.length; k++) {
-      const ratio = valley(counts, tops[k]!, tops[k + 1]!).depth / Math.min(counts[tops[k]!]!, counts[tops[k + 1]!]!);
-      if (ratio > worstRatio) {
-        worstRatio = ratio;
-        worst = k;
-      }
-    }
-    if (worst < 0) break;
-    const lower = counts[tops[worst]!]! < counts[tops[worst + 1]!]! ? worst : worst + 1;
-    tops = tops.filter((_, k) => k !== lower);
-  }
-  const cuts = [0, ...tops.slice(1).map((top, k) => valley(counts, tops[k]!, top).at), counts.length];
-  const peaks = tops.map((top, k) => {
-    let share = 0;
-    for (let i = cuts[k]!; i < cuts[k + 1]!; i++) share += counts[i]!;
-    return { log10: low + (top + 0.5) * binDecades, share };
-  });
-  return peaks.filter((peak) => peak.share >= leastShare).reverse();
-}
-
-function valley(counts: Float64Array, from: number, to: number): { at: number; depth: number } {
-  let at = from;
-  for (let i = from; i <= to; i++) if (counts[i]! < counts[at]!) at = i;
-  return { at, depth: counts[at]! };
 }
 
 function fitStep(found: readonly { log10: number; share: number }[]): LadderFit {

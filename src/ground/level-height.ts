@@ -2,12 +2,13 @@ import type { Grid, ScalarMap } from '../grid/maps.ts';
 import { maskMap, scalarMap } from '../grid/maps.ts';
 import { fillFromNeighbours, markBrokenRuns, markSpikes } from './broken-runs.ts';
 import { lowerScatter, mostCommon } from './centre.ts';
-import { fitForm, fitGroundForm, presentCount, sampleStep, subSample } from './fit-form.ts';
+import { fitGroundForm, presentCount, sampleStep, subSample } from './fit-form.ts';
 import { formSurface, subtractForm } from './form.ts';
 import type { HeightGround } from './ground.ts';
 import { lineOffsets } from './lines.ts';
 import { pixelNoise } from './noise.ts';
 import type { GroundSection } from './recipe.ts';
+import type { Levels, RefinedLevels } from './refine-levels.ts';
 
 /** Shortest broken run that is repaired, pixels along the fast axis. */
 const runLength = 8;
@@ -15,28 +16,44 @@ const runLength = 8;
 const deepestPitM = 6e-9;
 
 /**
- * Levels a height map: robust form with features masked, line offsets from differences between nearby lines, repair of
- * broken runs, and the form once more over the ground that is left.
+ * Form and line offsets of a height map without knowledge of terraces: a robust form with features masked, and line offsets from differences
+ * between nearby lines.
+ *
+ * @param height shape [rows, columns], metres, NaN missing.
+ * @param inside 1 on the ground that counts; all of the map when absent. What lies beside the flake has a level of its own and no say in its form.
+ */
+export function firstLevels(height: ScalarMap, { columns, rows }: Grid, section: GroundSection, inside?: Uint8Array): Levels {
+  const raw = within(height.data, inside);
+  const form = fitGroundForm(raw, columns, rows, section.order);
+  if (!section.lines) return { form, lines: new Float64Array(rows) };
+  const values = subtractForm(raw, form, columns, rows);
+  return { form, lines: lineOffsets(values, columns, rows, groundTest(values, columns, rows)) };
+}
+
+/** Height without form and line offsets, metres. */
+export function withoutLevels(raw: Float32Array, { columns, rows }: Grid, levels: Levels): Float32Array {
+  const values = subtractForm(raw, levels.form, columns, rows);
+  for (let r = 0, i = 0; r < rows; r++) {
+    const line = levels.lines[r]!;
+    for (let c = 0; c < columns; c++, i++) values[i]! -= line;
+  }
+  return values;
+}
+
+/**
+ * Levels a height map: takes form and line offsets out, and repairs broken runs, spikes and single missing points.
  *
  * Levelled ground has its most common height at 0. A form of the section's order added to the input does not change
  * the result (to float32 rounding). Missing pixels stay missing unless `repair` can fill them from agreeing neighbours.
  *
  * @param height shape [rows, columns], metres, NaN missing.
  * @param fillMissing false where the height is all there is: then a missing point must stay one, because nothing else was measured there.
- * @param inside 1 on the ground that the form and the line offsets follow; all of the map when absent.
  * @throws never for finite or missing values; a map without any finite value must be refused before.
  */
-export function levelHeight(height: ScalarMap, grid: Grid, section: GroundSection, inside?: Uint8Array, fillMissing = true): HeightGround {
+export function levelHeight(height: ScalarMap, grid: Grid, section: GroundSection, levels: RefinedLevels, inside?: Uint8Array, fillMissing = true): HeightGround {
   const { columns, rows } = grid;
   const raw = height.data;
-  // What lies beside the flake has a level of its own and no say in the flake's form.
-  const within = (map: Float32Array): Float32Array => (inside ? map.map((value, i) => (inside[i] === 1 ? value : Number.NaN)) : map);
-  const first = fitGroundForm(within(raw), columns, rows, section.order);
-  let values = subtractForm(raw, first, columns, rows);
-  const isGround = groundTest(within(values), columns, rows);
-  const offsets = section.lines ? lineOffsets(values, columns, rows, isGround) : new Float64Array(rows);
-  values = values.map((value, i) => value - offsets[(i / columns) | 0]!);
-
+  const values = withoutLevels(raw, grid, levels);
   const noiseM = pixelNoise(values, columns, rows);
   const repaired = section.repair ? repairHeight(values, columns, rows, noiseM) : new Uint8Array(values.length);
   if (!fillMissing) {
@@ -46,12 +63,10 @@ export function levelHeight(height: ScalarMap, grid: Grid, section: GroundSectio
       repaired[i] = 0;
     }
   }
-
-  const groundAgain = groundTest(within(values), columns, rows);
-  const again = fitForm(values, columns, rows, section.order, groundAgain);
-  values = subtractForm(values, again, columns, rows);
-  const zero = mostCommon(sampled(within(values), columns, rows));
-  values = values.map((value) => value - zero);
+  const ground = within(values, inside);
+  const isGround = groundTest(ground, columns, rows);
+  const zero = mostCommon(sampled(ground, columns, rows));
+  for (let i = 0; i < values.length; i++) values[i]! -= zero;
 
   let repairedPixels = 0;
   for (const mark of repaired) repairedPixels += mark;
@@ -59,9 +74,14 @@ export function levelHeight(height: ScalarMap, grid: Grid, section: GroundSectio
     levelled: scalarMap(grid, values),
     repaired: maskMap(grid, repaired),
     repairedPixels,
-    noiseM: pixelNoise(values, columns, rows, groundAgain),
-    tiltM: peakToPeak(formSurface(first, columns, rows)),
+    noiseM: pixelNoise(values, columns, rows, isGround),
+    plane: levels.plane,
+    tiltM: peakToPeak(formSurface(levels.form, columns, rows)),
   };
+}
+
+function within(map: Float32Array, inside: Uint8Array | undefined): Float32Array {
+  return inside ? map.map((value, i) => (inside[i] === 1 ? value : Number.NaN)) : map;
 }
 
 /** A pixel is ground when it lies within the scatter around the most common height. */
@@ -83,8 +103,9 @@ function repairHeight(values: Float32Array, columns: number, rows: number, noise
   const marks = markBrokenRuns(values, columns, rows, { noise, minLength: runLength });
   markSpikes(values, marks, columns, rows, noise, deepestPitM);
   const before = values.slice();
-  const filled = fillFromNeighbours(values, marks, columns, rows, Math.max(1e-9, 12 * noise));
-  // Neighbours that disagree do not show that the run was broken: then what was measured stands.
+  // A run is known to be broken; a missing point between neighbours that disagree is not known at all.
+  const filled = fillFromNeighbours(values, marks, columns, rows, Math.max(1e-9, 12 * noise), Number.POSITIVE_INFINITY);
+  // With nothing beside it to fill it from, what was measured stands.
   for (let i = 0; i < values.length; i++) if (Number.isNaN(values[i]!)) values[i] = before[i]!;
   return filled;
 }

@@ -75,7 +75,8 @@ function mediansPlainly(values: Float32Array, columns: number, rows: number, ste
   return { counts, medians };
 }
 
-function removeTrend(offsets: Float64Array): void {
+/** Takes mean and linear trend out of row offsets; changes them. */
+export function removeTrend(offsets: Float64Array): void {
   const n = offsets.length;
   let mean = 0;
   for (const value of offsets) mean += value / n;

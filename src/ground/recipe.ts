@@ -1,6 +1,6 @@
 /** Recipe section `ground`: how the height is levelled and the current conditioned. */
 import type { z } from 'zod';
-import { flagField, numberField, section } from '../schema/fields.ts';
+import { flagField, numberField, optionalNumberField, section } from '../schema/fields.ts';
 
 export const groundSection = section({
   order: numberField(2, { min: 0, max: 5, integer: true }, {
@@ -9,6 +9,14 @@ export const groundSection = section({
   lines: flagField(true, { title: 'Line offsets', description: 'Bring scan lines to a common height by their differences on undisturbed ground, which terraces survive.' }),
   repair: flagField(true, { title: 'Repair', description: 'Fill spikes and broken runs of one or two lines from agreeing neighbours.' }),
   wear: flagField(true, { title: 'Tip wear', description: 'Undo a slow loss of conductance along the slow axis when it is told from real structure.' }),
+  offsetA: optionalNumberField({}, {
+    title: 'Current offset', unit: 'A', description: 'What the current channel reads where no current flows, with the file’s sign.', absent: 'measured where a flaw blocks, off the sample, or from the noise peak',
+  }),
+  lag: flagField(true, { title: 'Amplifier lag', description: 'Undo the smear of a slow amplifier along the fast axis when it is told from the edges.' }),
+  lagPx: optionalNumberField({ min: -20, max: 20 }, {
+    title: 'Lag', unit: 'px', description: 'Time constant of the amplifier in pixels along the fast axis, negative for a scan from right to left; 0 for none.', absent: 'measured from the tails behind sharp edges',
+  }),
+  align: flagField(true, { title: 'Alignment', description: 'Move the current back over the height, by whole pixels, when a shift between them is certain.' }),
 });
 
 export type GroundSection = z.output<typeof groundSection>;

@@ -1,53 +1,117 @@
 /** Slow loss of conductance along the slow axis, as a tip does when it wears. */
-import { fitForm } from './fit-form.ts';
-import { formSurface } from './form.ts';
-import { lineDifferencesSolved } from './lines.ts';
-import { pixelNoise } from './noise.ts';
+import { generalisedLeastSquares } from '../stats/generalised-least-squares.ts';
+import type { GeneralisedFit } from '../stats/generalised-least-squares.ts';
+import { patchesOf } from './wear-patches.ts';
+import type { PatchMean } from './wear-patches.ts';
 
-export interface Wear {
-  /** Decades to add to every row's log current to undo the drift; zeros when it is not applied (too small, or a gain). */
-  readonly perRow: Float64Array;
-  /** Decades lost from first to last line; positive = conductance lost. */
+/** Trend of the log current on the terraces along the slow axis, whatever its cause. */
+export interface Drift {
+  /** Decades lost from first to last line (positive = a loss); NaN where the map cannot tell. */
   readonly decades: number;
+  /** Standard error from the barrier's own slow variation. */
+  readonly seDecades: number;
+}
+
+/** A smaller loss, or any gain, is not put down to the tip, decades. */
+export const leastWearDecades = 0.2;
+/** A loss is told from the slow variation of the barrier when it is this many of its standard errors (two: the barrier alone shows more in one map of forty). */
+const leastErrors = 2;
+/** Forward and return scan must show the same loss to this part of it, and at least to within `agreeDecades`. */
+const agreeShare = 0.25;
+const agreeDecades = 0.05;
+/**
+ * Correlation lengths of the slow variation that are tried, in units of the map's longer side. What varies over more than a sixth of the map looks
+ * like a trend in it and cannot be measured from it.
+ */
+const lengths = [0.05, 0.1, 0.15] as const;
+/** Share of the variation that does not run on from one block to the next. */
+const nugget = 0.1;
+/** Fewer blocks than this per map leave no error to trust. */
+const leastBlocks = 12;
+/** Patches whose levels differ by less are of one terrace: less than a layer of any likely barrier, more than the levels' errors, decades. */
+const sameLevelDecades = 0.35;
+
+/**
+ * Fits log current = level of the terrace + trend along the slow axis + slow variation by generalised least squares. The slow variation is a random field
+ * of which length and strength are found from the map by restricted likelihood (universal kriging; Matheron, Cah. Cent. Morphol. Math.
+ * Fontainebleau 1, 1969). Levels are free, so terraces explain none of the trend, and neighbouring patches share the field, so a map cut into stripes along
+ * the fast axis still tells: the jump at a border is read where the border is. Patches are fitted apart at first; those that then
+ * lie at one level are taken as one terrace, which says more of the trend between them.
+ *
+ * A real variation that differs from column to column enlarges the standard error; wear, being common to a whole line, does not. What this cannot
+ * tell from wear is a barrier that changes from the first line to the last over the whole width. The trend is straight in decades: a
+ * map says too little of a curve's shape.
+ *
+ * @param log10 log10 of the current, NaN missing; @param use admits uncensored ground; @param aspect height over width of the map in metres.
+ */
+export function findDrift(log10: Float32Array, columns: number, rows: number, use: (index: number) => boolean, slowUp: boolean, aspect = rows / columns): Drift {
+  const { means, patches } = patchesOf(log10, columns, rows, use, aspect);
+  const apart = likeliestFit(means, patches);
+  if (!apart) return { decades: Number.NaN, seDecades: Number.NaN };
+  const terraces = terracesOf(apart.coefficients.subarray(1));
+  const joined = likeliestFit(means.map((mean) => ({ ...mean, patch: terraces.of[mean.patch]! })), terraces.count);
+  const { coefficients, standardErrors } = joined ?? apart;
+  // The slope is per unit of the longer side, y downwards.
+  const height = Math.min(1, aspect);
+  return { decades: (slowUp ? height : -height) * coefficients[0]!, seDecades: height * standardErrors[0]! };
 }
 
 /**
- * Differences beyond a window between nearby lines are terrace edges. The window follows the pixel noise of the log current (four standard
- * deviations of a difference) within these limits, decades: the upper one is still below a layer of any likely barrier.
+ * Whether a loss is told from real structure: large enough, well above what the barrier's own variation makes, and on the return scan, where there
+ * is one, the same. Both directions measure a line at nearly the same time through the same tip, so what differs between them is contact.
  */
-const window = { least: 0.15, most: 0.4 };
-/** A smaller loss, or any gain, cannot be told from the slow variation of a real barrier. */
-export const leastWearDecades = 0.2;
-/** Rounds in which the window is centred on the drift found so far; a window centred on zero would cut one side of the scatter and shrink the drift. */
-const rounds = 4;
+export function isWear({ decades, seDecades }: Drift, returned?: Drift): boolean {
+  if (!(decades >= leastWearDecades && decades >= leastErrors * seDecades)) return false;
+  return !returned || Number.isNaN(returned.decades) || Math.abs(returned.decades - decades) <= Math.max(agreeDecades, agreeShare * decades);
+}
 
-/**
- * Drift of log current from line to line, from medians of differences between nearby lines: a terrace edge moves few
- * pixels' difference, wear moves all. The accumulated drift is kept only as a smooth curve (second order), because
- * what varies faster than the whole map is barrier rather than tip.
- *
- * @param log10 log10 of the current, NaN missing; @param use admits uncensored ground.
- */
-export function findWear(log10: Float32Array, columns: number, rows: number, use: (index: number) => boolean, slowUp: boolean): Wear {
-  const noise = pixelNoise(log10, columns, rows, use);
-  const limit = Math.min(window.most, Math.max(window.least, 4 * Math.SQRT2 * (noise || 0)));
-  const curve = new Float64Array(rows);
-  let rest: Float32Array = log10;
-  for (let round = 0; round < rounds; round++) {
-    const drift = Float32Array.from(lineDifferencesSolved(rest, columns, rows, use, limit));
-    const found = formSurface(fitForm(drift, 1, rows, 2, () => true), 1, rows);
-    let largest = 0;
-    for (let r = 0; r < rows; r++) {
-      curve[r]! += found[r]!;
-      largest = Math.max(largest, Math.abs(found[r]! - found[0]!));
-    }
-    if (largest < 0.005) break;
-    rest = log10.map((value, i) => value - curve[(i / columns) | 0]!);
+/** Decades to add to every row's log current to undo a loss that grows evenly from the first line. */
+export function wearPerRow(decades: number, rows: number, slowUp: boolean): Float64Array {
+  return Float64Array.from({ length: rows }, (_, r) => (decades * (slowUp ? rows - 1 - r : r)) / Math.max(1, rows - 1));
+}
+
+/** The fit of the likeliest correlation length; its first coefficient is the trend, then one level per patch. */
+function likeliestFit(means: readonly PatchMean[], patches: number): GeneralisedFit | undefined {
+  const n = means.length;
+  const p = patches + 1;
+  if (patches === 0 || n < p + leastBlocks) return undefined;
+  const design = new Float64Array(n * p);
+  const values = new Float64Array(n);
+  for (const [i, { y, log10, patch }] of means.entries()) {
+    design[i * p] = y - 0.5;
+    design[i * p + 1 + patch] = 1;
+    values[i] = log10;
   }
-  const first = slowUp ? rows - 1 : 0;
-  const last = slowUp ? 0 : rows - 1;
-  const decades = curve[first]! - curve[last]!;
-  const perRow = new Float64Array(rows);
-  if (decades >= leastWearDecades) for (let r = 0; r < rows; r++) perRow[r] = curve[first]! - curve[r]!;
-  return { perRow, decades };
+  let best: GeneralisedFit | undefined;
+  for (const length of lengths) {
+    const fit = generalisedLeastSquares(correlationOf(means, length), design, values);
+    if (fit && (!best || fit.logLikelihood > best.logLikelihood)) best = fit;
+  }
+  return best;
+}
+
+/** Gaussian correlation exp(−d²/ℓ²) of the slow variation between blocks. */
+function correlationOf(means: readonly PatchMean[], length: number): Float64Array {
+  const n = means.length;
+  const out = new Float64Array(n * n);
+  for (const [i, here] of means.entries()) {
+    for (let j = 0; j < i; j++) {
+      const there = means[j]!;
+      out[i * n + j] = (1 - nugget) * Math.exp(-((here.x - there.x) ** 2 + (here.y - there.y) ** 2) / length ** 2);
+    }
+    out[i * n + i] = 1;
+  }
+  return out;
+}
+
+/** Numbers the levels by terrace: a gap in their order starts the next. */
+function terracesOf(levels: Float64Array): { of: Uint32Array; count: number } {
+  const of = new Uint32Array(levels.length);
+  const order = Array.from(levels.keys()).sort((a, b) => levels[a]! - levels[b]!);
+  let count = 0;
+  for (const [k, patch] of order.entries()) {
+    if (k === 0 || levels[patch]! - levels[order[k - 1]!]! > sameLevelDecades) count++;
+    of[patch] = count - 1;
+  }
+  return { of, count };
 }

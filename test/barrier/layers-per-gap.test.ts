@@ -1,6 +1,7 @@
 import assert from 'node:assert/strict';
 import { test } from 'node:test';
-import { heightPerGap, layersPerGap } from '../../src/barrier/layers-per-gap.ts';
+import { layersPerGap } from '../../src/barrier/layers-per-gap.ts';
+import { heightPerGap } from '../../src/ground/gap-height.ts';
 
 test('two and three layers where current (within 12 % of the model) and height agree', () => {
   const per = (ratio: number, heightLayers: number): number => layersPerGap({ stepDecades: 0.5 * ratio, modelStepDecades: 0.5, heightLayers });

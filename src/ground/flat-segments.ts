@@ -1,0 +1,67 @@
+/** Stretches of flat ground: each lies on one plane, whichever that is. */
+import { labelComponents } from '../grid/label-components.ts';
+import type { Components } from '../grid/label-components.ts';
+
+/** Half-width of the square over which the height is averaged before it is called flat, pixels. */
+const smoothPx = 2;
+/** Flat ground is compared between places this far to either side of a pixel, so that a border parts it in a band several pixels wide. */
+const asidePx = 3;
+/** It changes by less than this part of a layer in between; the step of one layer and the flank of a feature change by more. */
+const flatPart = 0.6;
+/** Ground is looked for in this range around the most common height, metres: nine layers down, twelve up. */
+const range = { lowM: -3e-9, highM: 4e-9 } as const;
+
+/**
+ * Connected (4) stretches of flat ground, on which a 5 × 5 mean changes by less than 0.6 of a layer over six pixels in both directions. A border between two terraces
+ * parts them.
+ *
+ * @param rest metres, roughly levelled, most common height near 0; NaN missing.
+ */
+export function flatSegments(rest: Float32Array, columns: number, rows: number, layerM: number): Components {
+  const smooth = boxMean(rest, columns, rows, smoothPx);
+  const least = flatPart * layerM;
+  const flat = new Uint8Array(rest.length);
+  for (let r = 0, i = 0; r < rows; r++) {
+    const up = Math.max(0, r - asidePx) * columns;
+    const down = Math.min(rows - 1, r + asidePx) * columns;
+    for (let c = 0; c < columns; c++, i++) {
+      const value = smooth[i]!;
+      if (!(value > range.lowM && value < range.highM)) continue;
+      const along = Math.abs(smooth[i - c + Math.min(columns - 1, c + asidePx)]! - smooth[i - c + Math.max(0, c - asidePx)]!);
+      if (along < least && Math.abs(smooth[down + c]! - smooth[up + c]!) < least) flat[i] = 1;
+    }
+  }
+  return labelComponents(flat, columns, rows, 4);
+}
+
+/** Mean of the finite values in a square of half-width `half` around each pixel, cut off at borders; NaN where there is none. */
+export function boxMean(values: Float32Array, columns: number, rows: number, half: number): Float32Array {
+  const sums = new Float64Array(columns + 1);
+  const counts = new Int32Array(columns + 1);
+  const columnSums = new Float64Array(columns);
+  const columnCounts = new Int32Array(columns);
+  const out = new Float32Array(values.length);
+  const take = (r: number, sign: 1 | -1): void => {
+    for (let c = 0, i = r * columns; c < columns; c++, i++) {
+      const value = values[i]!;
+      if (value !== value) continue;
+      columnSums[c]! += sign * value;
+      columnCounts[c]! += sign;
+    }
+  };
+  for (let r = 0; r < Math.min(half, rows); r++) take(r, 1);
+  for (let r = 0; r < rows; r++) {
+    if (r + half < rows) take(r + half, 1);
+    if (r - half > 0) take(r - half - 1, -1);
+    for (let c = 0; c < columns; c++) {
+      sums[c + 1] = sums[c]! + columnSums[c]!;
+      counts[c + 1] = counts[c]! + columnCounts[c]!;
+    }
+    for (let c = 0; c < columns; c++) {
+      const left = Math.max(0, c - half);
+      const right = Math.min(columns, c + half + 1);
+      out[r * columns + c] = (sums[right]! - sums[left]!) / (counts[right]! - counts[left]!);
+    }
+  }
+  return out;
+}

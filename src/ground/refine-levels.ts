@@ -1,0 +1,176 @@
+/** Form and line offsets of a height whose terraces are taken as parallel planes. */
+import type { Grid } from '../grid/maps.ts';
+import { medianInPlace } from '../stats/median.ts';
+import { lowerScatter, mostCommon } from './centre.ts';
+import { fitForm, presentCount, sampleStep, subSample } from './fit-form.ts';
+import type { Form } from './form.ts';
+import { subtractForm } from './form.ts';
+import { removeTrend } from './lines.ts';
+import type { GroundSection } from './recipe.ts';
+import { levelSegments } from './segment-levels.ts';
+import { solvePlanes } from './solve-planes.ts';
+
+/** What is taken out of a height: a form, and one offset per row. */
+export interface Levels {
+  readonly form: Form;
+  readonly lines: Float64Array;
+}
+
+export interface RefinedLevels extends Levels {
+  /** Height of the plane, the terrace, that each pixel lies on, metres; NaN where neither the current nor flat ground tells, and on small patches that may be films. */
+  readonly plane: Float32Array;
+}
+
+export interface RefineHelp {
+  readonly start: Levels;
+  /** 1 on the ground that counts; all of the map when absent. */
+  readonly inside?: Uint8Array | undefined;
+  /** Height of each pixel's terrace above some common plane by its current, metres, NaN unknown; absent where nothing tells. */
+  readonly planes?: Float32Array | undefined;
+  /** Height of one layer, metres. */
+  readonly layerM: number;
+}
+
+/** Rounds of planes, lines and form; each takes the better ground of the one before. */
+const rounds = 3;
+/** A line with less ground than this takes its offset from the lines beside it. */
+const leastInLine = 24;
+/** Mark of pixels in no segment. */
+const inNone = 2;
+
+/**
+ * Refines levels found without knowledge of terraces. The height is taken as form + line offset + plane + ground: the plane is the current's where that
+ * tells the layer, and where it does not (censored, or no current at all) one unknown level for each connected segment of flat ground.
+ * In each round what lies within the scatter of its plane is ground; form and levels follow from the ground whatever the lines' offsets
+ * (`solvePlanes`), each line's offset is the median of its ground over them, and the form is fitted once more to all ground.
+ *
+ * The median of a whole line sees the terraces' planes removed, so that steps do not pull it, unlike a plain line median; and it does not add up
+ * the errors of differences between lines.
+ *
+ * @param height metres, row-major, NaN missing.
+ */
+export function refineLevels(height: Float32Array, { columns, rows, pitchXM, pitchYM }: Grid, section: GroundSection, help: RefineHelp): RefinedLevels {
+  const { inside } = help;
+  const raw = inside ? height.map((value, i) => (inside[i] === 1 ? value : Number.NaN)) : height;
+  const known = help.planes ? help.planes.map((value) => (value === value ? value : 0)) : new Float32Array(raw.length);
+  const plane = known.slice();
+  const level = new Uint16Array(raw.length);
+  const terrace = new Uint8Array(raw.length);
+  let levels = 0;
+  let { form, lines } = help.start;
+  for (let round = 0; round < rounds; round++) {
+    const rest = overKnown(raw, form, lines, plane, columns, rows);
+    // Twice, because the first look is through lines and a form that lean on the steps.
+    if (round < 2) {
+      const over = round === 0 ? rest : overKnown(raw, form, lines, known, columns, rows);
+      const found = levelSegments(over, { columns, rows, pitchXM, pitchYM }, help.layerM, help.planes);
+      levels = 0;
+      const numbers = Uint16Array.from(found.levelM, (height) => (height === height ? 0 : ++levels));
+      for (let i = 0; i < plane.length; i++) {
+        const segment = found.segment[i]!;
+        const height = found.levelM[segment]!;
+        level[i] = numbers[segment]!;
+        terrace[i] = segment === 0 ? inNone : found.terrace[segment]!;
+        // Neither current nor segment: nothing is known of this ground.
+        const lost = segment === 0 && !(help.planes && help.planes[i] === help.planes[i]);
+        plane[i] = lost ? Number.NaN : known[i]! + (height === height ? height : 0);
+        rest[i] = over[i]! - (plane[i]! - known[i]!);
+      }
+    }
+    const ground = groundOf(rest, columns, rows, level, levels);
+    const change = solvePlanes({ rest, ground, columns, rows, order: section.order, lines: section.lines, level, levels });
+    const moved = subtractForm(rest, change.form, columns, rows);
+    for (let i = 0; i < plane.length; i++) {
+      const move = change.levelM[level[i]!]!;
+      plane[i]! += move;
+      moved[i]! -= move;
+    }
+    if (section.lines) lines = lineMedians(moved, groundOf(moved, columns, rows, level, 0), columns, rows, lines);
+    const flat = raw.slice();
+    takeAway(flat, plane, lines, columns, rows);
+    form = fitForm(flat, columns, rows, section.order, (i) => ground[i] === 1);
+  }
+  dropFilms(plane, terrace, columns);
+  return { form, lines, plane };
+}
+
+/** Films lie on planes too, and help to level; but they are no terraces: their planes, and those of the same height that reach out from them to their rims, become unknown. */
+function dropFilms(plane: Float32Array, terrace: Uint8Array, columns: number): void {
+  const queue: number[] = [];
+  for (let i = 0; i < plane.length; i++) if (terrace[i] === 0) queue.push(i);
+  for (let i = queue.pop(); i !== undefined; i = queue.pop()) {
+    const height = plane[i]!;
+    plane[i] = Number.NaN;
+    if (height !== height) continue;
+    const c = i % columns;
+    for (const j of [c > 0 ? i - 1 : -1, c + 1 < columns ? i + 1 : -1, i - columns, i + columns]) {
+      if (j >= 0 && j < plane.length && terrace[j] === inNone && Math.abs(plane[j]! - height) < 0.05e-9) queue.push(j);
+    }
+  }
+}
+
+function overKnown(raw: Float32Array, form: Form, lines: Float64Array, known: Float32Array, columns: number, rows: number): Float32Array {
+  const over = subtractForm(raw, form, columns, rows);
+  takeAway(over, known, lines, columns, rows);
+  return over;
+}
+
+function takeAway(values: Float32Array, plane: Float32Array, lines: Float64Array, columns: number, rows: number): void {
+  for (let r = 0, i = 0; r < rows; r++) {
+    const line = lines[r]!;
+    for (let c = 0; c < columns; c++, i++) values[i] = values[i]! - line - plane[i]!;
+  }
+}
+
+/**
+ * 1 where the height lies within the scatter of its plane: around its most common value, and on each level that is still unknown around the most
+ * common value there.
+ */
+function groundOf(rest: Float32Array, columns: number, rows: number, level: Uint16Array, levels: number): Uint8Array {
+  const sample = subSample(rest, columns, rows, sampleStep(presentCount(rest)));
+  const centre = mostCommon(sample);
+  const scatter = lowerScatter(sample, centre);
+  const centres = new Float64Array(levels + 1).fill(centre);
+  if (levels > 0) {
+    const lists: number[][] = Array.from({ length: levels + 1 }, () => []);
+    const every = Math.max(1, Math.floor(rest.length / 100_000));
+    for (let i = 0; i < rest.length; i += every) if (level[i]! > 0 && rest[i] === rest[i]) lists[level[i]!]!.push(rest[i]!);
+    for (let k = 1; k <= levels; k++) if (lists[k]!.length > 0) centres[k] = mostCommon(Float64Array.from(lists[k]!));
+  }
+  const out = new Uint8Array(rest.length);
+  for (let i = 0; i < out.length; i++) {
+    const off = rest[i]! - centres[levels > 0 ? level[i]! : 0]!;
+    if (off >= -4 * scatter && off <= 3 * scatter) out[i] = 1;
+  }
+  return out;
+}
+
+/**
+ * Offset of every row: the median of its ground added to what it was. Rows with little ground take the correction of the rows beside them, linear
+ * between those. Mean and trend are removed, as they belong to the form.
+ */
+function lineMedians(rest: Float32Array, ground: Uint8Array, columns: number, rows: number, before: Float64Array): Float64Array {
+  const step = Math.max(1, Math.floor(columns / 512));
+  const buffer = new Float64Array(columns);
+  const correction = new Float64Array(rows).fill(Number.NaN);
+  for (let r = 0; r < rows; r++) {
+    let count = 0;
+    for (let c = r % step; c < columns; c += step) {
+      const i = r * columns + c;
+      if (ground[i] === 1) buffer[count++] = rest[i]!;
+    }
+    if (count >= leastInLine) correction[r] = medianInPlace(buffer, count);
+  }
+  const known = [...correction.keys()].filter((r) => correction[r] === correction[r]);
+  if (known.length === 0) return before;
+  let next = 0;
+  const lines = before.map((offset, r) => {
+    while (next < known.length - 1 && known[next]! < r) next++;
+    const after = known[next]!;
+    const back = after === r ? r : (known[next - 1] ?? after);
+    const share = after === back ? 0 : Math.min(1, Math.max(0, (r - back) / (after - back)));
+    return offset + correction[back]! * (1 - share) + correction[after]! * share;
+  });
+  removeTrend(lines);
+  return lines;
+}

@@ -1,0 +1,150 @@
+/** Which plane each segment of flat ground lies on, from the steps at their common borders. */
+import type { Grid } from '../grid/maps.ts';
+import { medianInPlace } from '../stats/median.ts';
+import { flatSegments } from './flat-segments.ts';
+
+export interface LevelledSegments {
+  /** Number of the segment per pixel from 1; 0 between segments, on features and on segments too small to tell. */
+  readonly segment: Uint16Array;
+  /** Height of each segment's plane over what the current told (over the common plane where it told nothing), metres; NaN where no border links it to the others. Index 0 is 0. */
+  readonly levelM: Float64Array;
+  /** 1 for segments that are terraces by all that is known; 0 for small ones that may as well be films: their height is no whole number of layers, or says another number than their current. */
+  readonly terrace: Uint8Array;
+}
+
+/** A segment of flat ground with a smaller share of the map gets no plane of its own. */
+const leastSegment = 0.0005;
+/** Nor do more segments than this. */
+const mostSegments = 80;
+/** Places compared across a border are this far apart, pixels: wider than the band that parts two segments, nearer than the ground undulates. */
+const apartPx = 10;
+/** Fewer places say nothing about a border. */
+const leastPairs = 24;
+/** Enough for a median. */
+const mostPairs = 3000;
+/** A step this near to whole layers, in layers, is taken to be whole. */
+const wholePart = 0.3;
+/** Segments larger than this are terraces whatever their step: films of adsorbed matter are patches, m² (our judgement). */
+const filmMaxM2 = 0.6e-12;
+/** A small segment whose current is censored or on no rung is a terrace only up to this many layers above the ground beside it. */
+const mostLayers = 2.5;
+
+/**
+ * Segments flat ground and links the segments' planes by their steps: pairs of places on both sides of a common border, on one line or in one column, so
+ * that undulation of the ground does not come in, as it would in a fit over the whole map. Steps near to whole layers are whole. The largest
+ * segment whose plane the current tells, or else the largest, is the one that the others are measured against.
+ *
+ * @param rest metres over form, lines and known planes; NaN missing. @param planes the current's planes, NaN where it tells none.
+ */
+export function levelSegments(rest: Float32Array, grid: Grid, layerM: number, planes: Float32Array | undefined): LevelledSegments {
+  const { columns, rows } = grid;
+  const { segment, count, known, pixels, rung } = numberSegments(rest, columns, rows, layerM, planes);
+  const steps = stepsBetween(rest, segment, count, columns, rows);
+  const levelM = new Float64Array(count + 1).fill(Number.NaN);
+  levelM[0] = 0;
+  const terrace = new Uint8Array(count + 1).fill(1);
+  const first = known.indexOf(1);
+  if (count > 0) levelM[first > 0 ? first : 1] = 0;
+  for (;;) {
+    let best = 0;
+    let most = 0;
+    let level = 0;
+    let beside = 0;
+    for (let k = 1; k <= count; k++) {
+      if (levelM[k] === levelM[k]) continue;
+      let weight = 0;
+      let sum = 0;
+      let nearest = 0;
+      for (let j = 1; j <= count; j++) {
+        const step = steps[j * (count + 1) + k];
+        if (!step || levelM[j] !== levelM[j]) continue;
+        if (nearest === 0 || step.pairs > steps[nearest * (count + 1) + k]!.pairs) nearest = j;
+        weight += step.pairs;
+        sum += step.pairs * (levelM[j]! + step.upM);
+      }
+      if (weight > most) {
+        best = k;
+        most = weight;
+        level = sum / weight;
+        beside = nearest;
+      }
+    }
+    if (best === 0) break;
+    const layers = Math.round(level / layerM);
+    const whole = Math.abs(level / layerM - layers) < wholePart;
+    levelM[best] = whole ? layers * layerM : level;
+    const rises = level + rung[best]! > levelM[beside]! + rung[beside]! + layerM / 2;
+    if (rises && pixels[best]! * grid.pitchXM * grid.pitchYM < filmMaxM2) {
+      // Where the current tells: a step of the barrier agrees with it, a step of the conductor leaves it as it is beside.
+      const agrees = whole && (known[best] === 1
+        ? layers === 0 || Math.abs(rung[best]! - rung[beside]!) < layerM / 2
+        : level - levelM[beside]! - rung[beside]! < mostLayers * layerM);
+      if (!agrees) terrace[best] = 0;
+    }
+  }
+  // What no border links to the rest and no current tells is nothing that is known to be a terrace.
+  for (let k = 1; k <= count; k++) if (levelM[k] !== levelM[k] && known[k] === 0 && pixels[k]! * grid.pitchXM * grid.pitchYM < filmMaxM2) terrace[k] = 0;
+  return { segment, levelM, terrace };
+}
+
+/** Numbers flat segments from 1 by size; a segment with and without known planes counts as two, so that what is known is not moved by what is not. */
+function numberSegments(
+  rest: Float32Array, columns: number, rows: number, layerM: number, planes: Float32Array | undefined,
+): { segment: Uint16Array; count: number; known: Uint8Array; pixels: Uint32Array; rung: Float64Array } {
+  const { labels, count } = flatSegments(rest, columns, rows, layerM);
+  const pixels = new Uint32Array(2 * count + 2);
+  for (let i = 0; i < labels.length; i++) {
+    if (labels[i] === 0) continue;
+    labels[i] = 2 * labels[i]! + (planes && planes[i] === planes[i] ? 1 : 0);
+    pixels[labels[i]!]!++;
+  }
+  const bySize = [...pixels.keys()].filter((label) => label > 1 && pixels[label]! >= leastSegment * labels.length).sort((a, b) => pixels[b]! - pixels[a]!).slice(0, mostSegments);
+  const numbers = new Uint16Array(pixels.length);
+  bySize.forEach((label, k) => { numbers[label] = k + 1; });
+  const segment = new Uint16Array(labels.length);
+  // Height by the current: of a segment over several rungs any of its pixels will do, as a border would have parted it.
+  const rung = new Float64Array(bySize.length + 1);
+  for (let i = 0; i < labels.length; i++) {
+    segment[i] = numbers[labels[i]!]!;
+    const plane = planes?.[i];
+    if (plane !== undefined && plane === plane) rung[segment[i]!] = plane;
+  }
+  return {
+    segment, count: bySize.length, known: Uint8Array.from([0, ...bySize.map((label) => label % 2)]),
+    pixels: Uint32Array.from([0, ...bySize.map((label) => pixels[label]!)]), rung,
+  };
+}
+
+interface Step {
+  readonly upM: number;
+  readonly pairs: number;
+}
+
+/** By `from * (count + 1) + to`: the median rise from one segment to another. */
+function stepsBetween(rest: Float32Array, segment: Uint16Array, count: number, columns: number, rows: number): (Step | undefined)[] {
+  const size = count + 1;
+  const lists: (number[] | undefined)[] = new Array<number[] | undefined>(size * size);
+  const add = (i: number, j: number): void => {
+    const a = segment[i]!;
+    const b = segment[j]!;
+    if (a === b || a === 0 || b === 0) return;
+    const [from, to, up] = a < b ? [a, b, rest[j]! - rest[i]!] : [b, a, rest[i]! - rest[j]!];
+    if (up !== up) return;
+    const list = (lists[from * size + to] ??= []);
+    if (list.length < mostPairs) list.push(up);
+  };
+  for (let r = 0, i = 0; r < rows; r++) {
+    for (let c = 0; c < columns; c++, i++) {
+      if (c + apartPx < columns) add(i, i + apartPx);
+      if (r + apartPx < rows) add(i, i + apartPx * columns);
+    }
+  }
+  const steps: (Step | undefined)[] = new Array<Step | undefined>(size * size);
+  lists.forEach((list, at) => {
+    if (!list || list.length < leastPairs) return;
+    const upM = medianInPlace(Float64Array.from(list), list.length);
+    steps[at] = { upM, pairs: list.length };
+    steps[(at % size) * size + Math.floor(at / size)] = { upM: -upM, pairs: list.length };
+  });
+  return steps;
+}
