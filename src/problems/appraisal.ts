@@ -6,8 +6,6 @@ export const appraisalSentences = {
     'The current map shows no spot without current, so its offset could not be measured and zero was assumed.',
   'current-inverted': (d: { biasV: number }) =>
     `Nearly all of the current has the sign opposite to the bias of ${d.biasV} V; the amplifier was taken to invert and the current was turned. Correct the bias's sign if that is wrong.`,
-  'current-wear': (d: { decades: number }) =>
-    `The tip lost ${d.decades.toFixed(2)} decades of conductance from the first line to the last; this was undone as a factor per line.`,
   'footprint-proposed': (d: { sample: string; ground: 'injector' | 'substrate' | 'both' | 'unknown'; areaUm2: number; stepNm: number; flakeUm2: number }) =>
     `${bareWords[d.ground]} seems to be in view over ${d.areaUm2.toFixed(2)} µm², ${d.stepNm.toFixed(1)} nm below the rest, and is counted as footprint; to appraise the flake alone, save footprintProposal from verdict.json (${d.flakeUm2.toFixed(2)} µm²) as ${d.sample}.outlines.geojson beside the maps.`,
   'threshold-raised': (d: { statedNm: number; usedNm: number; noiseNm: number }) =>

@@ -14,7 +14,7 @@ import { evaluate } from '../../src/evaluate/evaluate.ts';
 const size = 128;
 function condition(sample: Sample, changes: RecipeChanges = {}): CurrentGround & { codes: string[] } {
   const recipe = createRecipe(changes);
-  const ground = levelGround(sample, recipe.ground, recipe.scan);
+  const ground = levelGround(sample, recipe.ground, recipe.scan, 0.333e-9);
   return { ...ground.current!, codes: ground.warnings.map(({ code }) => code) };
 }
 const busy = (seed: string, more: object = {}) => createScene({ seed, size, layersAt: threeTerraces(size), things: typicalThings(size), tiltNm: 5, ...more });
@@ -49,7 +49,8 @@ for (const seed of ['a', 'b', 'c']) {
 
   test(`no wear is claimed on a map without it, seed ${seed}`, () => {
     const found = condition(busy(seed).sample);
-    assert.ok(Math.abs(found.wearDecades) < 0.05, `${found.wearDecades}`);
+    assert.equal(found.wearDecades, 0);
+    assert.ok(Math.abs(found.driftDecades!) < 0.05, `${found.driftDecades}`);
     assert.ok(!found.codes.includes('current-wear'));
     for (let i = 0; i < size * size; i++) if (found.repaired.data[i] === 0) assert.equal(found.conditioned.data[i], found.offsetFree.data[i]);
   });
@@ -58,11 +59,13 @@ for (const seed of ['a', 'b', 'c']) {
     // Terraces that follow the slow axis: 10, 11 and 12 layers from top to bottom. Nothing wears.
     const stripes = createScene({ seed, size, layersAt: (_, r) => (r < 40 ? 10 : r < 90 ? 11 : 12) });
     const structure = condition(stripes.sample);
-    assert.ok(Math.abs(structure.wearDecades) < 0.1, `structure taken for ${structure.wearDecades} decades of wear`);
+    assert.equal(structure.wearDecades, 0);
+    assert.ok(Math.abs(structure.driftDecades!) < 0.1, `structure taken for ${structure.driftDecades} decades of drift`);
     const worn = busy(seed, { wearDecades: 0.4 });
     const upwards = condition({ ...worn.sample, frame: { ...worn.sample.frame, slowUp: true } });
     // Scanned upwards, the same map shows a gain, which a tip does not do by wearing.
-    assert.ok(Math.abs(upwards.wearDecades + 0.4) < 0.1, `${upwards.wearDecades}`);
+    assert.equal(upwards.wearDecades, 0);
+    assert.ok(Math.abs(upwards.driftDecades! + 0.4) < 0.1, `${upwards.driftDecades}`);
     assert.ok(!upwards.codes.includes('current-wear'));
     assert.deepEqual(upwards.conditioned.data, upwards.offsetFree.data);
   });

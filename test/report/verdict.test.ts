@@ -32,7 +32,7 @@ describe('verdict.json', () => {
     assert.deepEqual(verdict.map, { columns: 6, rows: 8, pitchXUm: 0.5, pitchYUm: 0.25 });
     assert.deepEqual(verdict.ground, {
       height: { noiseNm: 0.12, repairedPixels: 2, tiltNm: 38 },
-      current: { offsetA: 2e-13, noiseA: 5e-14, floorA: 1e-13, saturatedPixels: 1, repairedPixels: 1, wearDecades: 0.08, biasV: 4 },
+      current: { offsetA: 2e-13, noiseA: 5e-14, floorA: 1e-13, saturatedPixels: 1, repairedPixels: 1, wearDecades: 0.08, lagPx: 0, biasV: 4 },
     });
     assert.deepEqual(verdict.usable, {
       areaUm2: 2, share: 0.355555555556, low95Um2: 1.7, high95Um2: 2.2, largestPatchUm2: 1.625, knownToGlow: true, meaning: 'usable',
@@ -90,9 +90,24 @@ describe('verdict.json', () => {
     assert.ok(!('expectedMissedShorts' in verdict.flaws));
   });
 
+  it('gives errors, lag, drift, alignment and the return scan where they were measured', () => {
+    const shift = { dxPx: 2.25, dyPx: -0.5, seXPx: 0.125, seYPx: 0.25, correlation: 0.75, undoneXPx: 2, undoneYPx: 0 };
+    const shown = { rightPx: 2.25, rightSePx: 0.125, downPx: -0.5, downSePx: 0.25, undoneRightPx: 2, undoneDownPx: 0, correlation: 0.75 };
+    const current = createCurrentGround({
+      offsetSeA: 1e-15, offsetFrom: 'blocked', floorSeA: 4e-15, stepA: 3e-13, driftDecades: 0.25, driftSeDecades: 0.125, lagPx: 1.5, lagSePx: 0.0625, shift,
+    });
+    const returned = { height: { noiseM: 0.25e-9 }, current: { noiseA: 6e-14, offsetA: 1e-13, lagPx: 1.25, driftDecades: Number.NaN, shift } };
+    const { ground } = verdictOf(createAppraisal({ ground: { current, returned, warnings: [] } }), app);
+    assert.deepEqual(ground.current, {
+      offsetA: 2e-13, offsetSeA: 1e-15, noiseA: 5e-14, floorA: 1e-13, floorSeA: 4e-15, stepA: 3e-13, offsetFrom: 'blocked', saturatedPixels: 1, repairedPixels: 1,
+      wearDecades: 0.08, driftDecades: 0.25, driftSeDecades: 0.125, lagPx: 1.5, lagSePx: 0.0625, shift: shown, biasV: 4,
+    });
+    assert.deepEqual(ground.returnScan, { height: { noiseNm: 0.25 }, current: { noiseA: 6e-14, offsetA: 1e-13, lagPx: 1.25, shift: shown } });
+  });
+
   it('gives no ampere when the file has none', () => {
     const verdict = verdictOf(createRelativeAppraisal(), app);
-    assert.deepEqual(Object.keys(verdict.ground.current ?? {}), ['offsetRelative', 'noiseRelative', 'floorRelative', 'saturatedPixels', 'repairedPixels', 'wearDecades']);
+    assert.deepEqual(Object.keys(verdict.ground.current ?? {}), ['offsetRelative', 'noiseRelative', 'floorRelative', 'saturatedPixels', 'repairedPixels', 'wearDecades', 'lagPx']);
     assert.deepEqual(verdict.reference, { medianRelative: 1.18e-10, areaUm2: 2.25, shareOfUnflawed: 0.6 });
     assert.ok(!('device' in verdict));
   });

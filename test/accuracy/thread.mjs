@@ -1,0 +1,5 @@
+/** Entry of a worker thread: teaches it TypeScript, then loads the work. */
+import { register } from 'tsx/esm/api';
+
+register();
+await import('./thread.ts');
