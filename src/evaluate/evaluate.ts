@@ -74,7 +74,7 @@ export function* evaluateInSteps(sample: Sample, recipe: Recipe, options: Evalua
   const sheet: Sheet | undefined = yield* run('sheet', [], () => barrier && assessSheet(sheetInput(sample, ground, flaws, barrier, recipe)));
   const { ledger, texture } = yield* run('ledger', [], () => ({
     ledger: keepLedger({ sample, ground, flaws, barrier, sheet, band, barrierSection, offsetV: stack.offsetV }),
-    texture: ground.height && measureTexture(ground.height, sample.grid, sample.footprint.data, flaws.labels.data, recipe.ground, barrier?.step.data),
+    texture: ground.height && measureTexture(ground.height, sample.grid, sample.footprint.data, flaws.labels.data, textureSection(ground, recipe), barrier?.step.data),
   }));
   return {
     sample, recipe, ground, flaws,
@@ -85,7 +85,13 @@ export function* evaluateInSteps(sample: Sample, recipe: Recipe, options: Evalua
   };
 }
 
-function barrierOf(sample: Sample, ground: Ground, flaws: ReturnType<typeof findFlaws>, recipe: Recipe): Barrier | undefined {
+/** A form through a few spots takes next to nothing of the roughness with it. */
+function textureSection({ height }: Ground, { ground }: Recipe): Recipe['ground'] {
+  return height?.levels?.formFrom === 'spots' ? { ...ground, order: 0 } : ground;
+}
+
+/** The barrier stage's question; undefined without a current. */
+export function barrierOf(sample: Sample, ground: Ground, flaws: ReturnType<typeof findFlaws>, recipe: Recipe): Barrier | undefined {
   if (!ground.current) return undefined;
   const { band, stack } = recipe;
   return assessBarrier(ground.current, flaws, sample.footprint, sample.grid, sample.surface, recipe.barrier, {

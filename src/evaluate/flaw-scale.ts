@@ -14,21 +14,22 @@ const assumedDecades = 1;
 export function flawScale(ground: Ground, recipe: Recipe): FlawScale {
   return {
     layerM: recipe.barrier.layerNm * 1e-9,
-    layerDecades: layerDecades(ground, recipe),
+    ...layerWorth(ground, recipe),
     shortMaxM2: recipe.band.shortMaxUm2 * 1e-12,
     terraceMinM2: recipe.band.terraceMinUm2 * 1e-12,
   };
 }
 
-function layerDecades(ground: Ground, recipe: Recipe): number {
+function layerWorth(ground: Ground, recipe: Recipe): Pick<FlawScale, 'layerDecades' | 'layerFrom'> {
   const current = ground.current;
-  if (!current) return assumedDecades;
+  const assumed = { layerDecades: assumedDecades, layerFrom: 'assumed' } as const;
+  if (!current) return assumed;
   const levelled = ground.height?.levelled.data;
   const least = Math.log10(current.floorA * quantifiedOverFloor);
   const log10 = current.log10.data;
   const saturated = current.saturated.data;
   const ladder = measureLadder(log10, (i) => saturated[i] === 0 && log10[i]! >= least && !(levelled && levelled[i]! > flatM));
-  if (ladder.stepDecades !== undefined) return ladder.stepDecades;
+  if (ladder.stepDecades !== undefined) return { layerDecades: ladder.stepDecades, layerFrom: 'map' };
   const anchor = anchorOf(recipe.barrier, { offsetV: 0, targetAPerM2: 1 }, current.unit === 'A' ? current.biasV : undefined);
-  return anchor?.modelStepDecades ?? assumedDecades;
+  return anchor?.modelStepDecades === undefined ? assumed : { layerDecades: anchor.modelStepDecades, layerFrom: 'model' };
 }

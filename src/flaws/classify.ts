@@ -25,11 +25,10 @@ const coneToDome = 0.45;
 const surelyCone = 0.9;
 /** From so many pixels on a shape can be told from the noise in it. */
 const shapePixels = 12;
-/** Outlines rounder and shorter than this are those of one thing, so that one dome must explain its height; two that touch are not one dome. */
-const compactRoundness = 0.8;
-const compactElongation = 1.3;
-/** Least share of the variance that a dome explains on a compact outline: single domes show 0.6 and more even when a neighbour leans on them, rubble next to nothing. */
-const leastDomeShare = 0.2;
+/** A round paraboloid explains this share of a dome's height, wherever it is cut off, and less of what is flat-topped or uneven. */
+const domeFits = 0.92;
+/** Less than this, and no single shape is there. */
+const unevenShare = 0.5;
 /** The same for `Region.topShare`: 0.55 for a paraboloid, 0.74 for 1 − ρ⁴. */
 const narrowToWide = 0.645;
 /** Bubbles of smaller height over radius are not known: adhesion is too strong (evidence, not a rule). */
@@ -38,7 +37,7 @@ const flattest = 0.02;
 const conductingFloorShare = 0.25;
 const leastDrop = 0.3;
 /** Nothing tunnels through what is thicker than this, metres: a current read there is the amplifier's lag. */
-const blockedFromM = 5e-9;
+const blockedFromM = 6e-9;
 /** Confidence at which the other class is named. */
 const unsureBelow = 0.65;
 
@@ -46,10 +45,10 @@ const unsureBelow = 0.65;
  * First classifier for raised regions.
  *
  * - Long and thin: wrinkle. A short one that is as peaked as domes are could be a row of touching bubbles: it says so, at low confidence.
- * - A smooth dome: bubble. Its mean over peak height is near 1/2, so neither a plateau nor a cone (which must also explain the height
- *   well, and better than a paraboloid over the region's ellipse does); and on a compact outline a paraboloid must explain part
- *   of the height, which rules out rubble. Below 12 pixels noise hides the shape and only the plateau is told.
- *   Height over radius is named as evidence but not used as a rule, because multilayer skins do not hold it (Nat. Commun. 13, 2022, s41467-022-32708-z).
+ * - A smooth dome: bubble. Three looks are weighed: the mean over peak height (1/2 for a paraboloid, more for a plateau), the width of the top, and the share of
+ *   the height that a round paraboloid explains. What is as pointed as a cone is none. Below 12 pixels noise hides the shape and only the first look is taken.
+ *   Height over radius is named as evidence; only what is flatter than any bubble known leans towards residue, because multilayer skins do not hold a
+ *   narrow range (Nat. Commun. 13, 2022, s41467-022-32708-z).
  * - Otherwise residue: a particle when it blocks the current, a film when it only lowers it.
  *
  * Where no height is known the region is residue at confidence 0.5.
@@ -63,11 +62,14 @@ export function classifyRaised(region: Region): Classified {
   const { fullness } = region;
   const heightToRadius = region.peakM / (region.diameterM / 2);
   if (Number.isNaN(fullness)) return { cause: 'residue', confidence: 0.5, reason: `height not measured here, ${current}: residue, could be a bubble` };
-  if (region.ridge === true) return { cause: 'wrinkle', confidence: sure((elongation - 1.5) / 3), reason: `crest that falls off on both sides, ${oneDigit(elongation)} times as long as wide, ${current}: wrinkle` };
-  if (region.ridge === undefined && region.pixels >= shapePixels && roundness < thinRoundness && (inscribed < thinInscribed || elongation > 3)) {
+  if (region.kind === 'ridge') return { cause: 'wrinkle', confidence: sure((elongation - 1.5) / 3), reason: `crest that falls off on both sides, ${oneDigit(elongation)} times as long as wide, ${current}: wrinkle` };
+  if (region.kind === undefined && region.pixels >= shapePixels && roundness < thinRoundness && (inscribed < thinInscribed || elongation > 3)) {
     const row = elongation < rowOfBubbles && fullness < domeToPatch;
     const confidence = Math.min(row ? 0.55 : 1, sure(Math.max((thinRoundness - roundness) / 0.3, (elongation - 3) / 5)));
     return { cause: 'wrinkle', confidence, reason: `long thin ridge, ${oneDigit(elongation)} times as long as wide, ${current}: wrinkle${row ? ', could be touching bubbles' : ''}` };
+  }
+  if (region.kind === 'dome') {
+    return { cause: 'bubble', confidence: sure(0.6 + region.pixels / 250), reason: `round smooth dome, h/R ${twoDigits(heightToRadius)}, ${current}: bubble` };
   }
   const shaped = region.pixels >= shapePixels;
   // Trapped material blocks; what only lowers a current that can be told from none is a film.
@@ -75,18 +77,18 @@ export function classifyRaised(region: Region): Classified {
     return { cause: 'residue', confidence: sure(0.4 + region.pixels / 100), reason: `patch, ${oneDigit(region.peakM * 1e9)} nm high, ${current} but not lost: residue, a film` };
   }
   const pointed = shaped && fullness < coneToDome && region.coneShare > Math.max(surelyCone, region.domeShare);
-  const compact = roundness > compactRoundness && elongation < compactElongation;
-  const rubble = shaped && compact && region.domeShare < leastDomeShare;
-  // Two looks at the same question, each with its own noise: how full the shape is, and how wide its top.
-  const plateau = clamp((fullness - domeToPatch) / 0.14) + (shaped ? clamp((region.topShare - narrowToWide) / 0.1) : 0) + (heightToRadius < flattest ? 0.5 : 0);
-  const isDome = plateau < 0 && !pointed && !rubble;
-  const margin = pointed ? (coneToDome - fullness) / 0.09 : rubble ? 1 - region.domeShare / leastDomeShare : Math.abs(plateau) / 2;
+  // Three looks at the same question, each with its own noise: how full the shape is, how wide its top, and how well a paraboloid explains it.
+  const looks = shaped ? clamp((region.topShare - narrowToWide) / 0.1) + 1.5 * clamp((domeFits - region.domeShare) / 0.06) : 0;
+  const plateau = clamp((fullness - domeToPatch) / 0.14) + looks + (heightToRadius < flattest ? 0.5 : 0);
+  const isDome = plateau < 0 && !pointed;
+  const margin = pointed ? (coneToDome - fullness) / 0.09 : Math.abs(plateau) / 2;
   const confidence = sure(shaped ? margin : margin / 2);
   const unsure = confidence < unsureBelow ? (isDome ? ', could be residue' : ', could be a bubble') : '';
   if (isDome) {
     return { cause: 'bubble', confidence, reason: `smooth dome, h/R ${twoDigits(heightToRadius)}, ${current}: bubble${unsure}` };
   }
-  const what = pointed ? 'pointed lump' : blocks || rubble || Number.isNaN(region.floorShare) ? 'uneven or flat-topped lump' : 'flat patch';
+  const uneven = shaped && region.domeShare < unevenShare;
+  const what = pointed ? 'pointed lump' : uneven ? 'uneven lump' : blocks || Number.isNaN(region.floorShare) ? 'flat-topped lump' : 'flat patch';
   return { cause: 'residue', confidence, reason: `${what}, ${oneDigit(region.peakM * 1e9)} nm high, ${current}: residue${unsure}` };
 }
 

@@ -11,13 +11,14 @@ import type { Classified } from './classify.ts';
 import { findOpens, findShorts } from './find-spots.ts';
 import { findRaised } from './find-raised.ts';
 import { flawOf } from './flaw-of.ts';
-import type { Flaw, Flaws } from './flaws.ts';
+import type { Flaw, Flaws, LayerSource } from './flaws.ts';
 import { riseAboveGround } from './local-ground.ts';
 import { overPlanes } from './over-planes.ts';
 import { partRegions } from './part-regions.ts';
 import { measureRegions } from './measure.ts';
 import type { Region } from './measure.ts';
 import type { FlawsSection } from './recipe.ts';
+import { thresholdsOf } from './thresholds.ts';
 
 /** What the flaw stage needs from other sections of the recipe, in SI. */
 export interface FlawScale {
@@ -25,12 +26,12 @@ export interface FlawScale {
   readonly layerM: number;
   /** Decades of current one layer costs at the scan's bias. */
   readonly layerDecades: number;
+  /** How that is known; only handed on. */
+  readonly layerFrom?: LayerSource;
   readonly shortMaxM2: number;
   readonly terraceMinM2: number;
 }
 
-/** A rise of fewer standard deviations of the height's noise starts no flaw. */
-const noiseFactor = 6;
 /** A conducting pit of this depth counts as through the barrier, metres: the thinnest barrier worth building is 3 nm, and the probe's rounding keeps it from the bottom (our judgement). */
 const pitM = 2.6e-9;
 
@@ -48,10 +49,9 @@ export function findFlaws(ground: Ground, grid: Grid, footprint: MaskMap, sectio
   const count = columns * rows;
   const warnings: Notice[] = [];
   const current = ground.current;
-  // On a rough or noisy surface the stated rise would be noise itself.
-  const leastM = noiseFactor * (ground.height?.noiseM ?? 0);
-  const startM = Math.max(section.heightNm * 1e-9, leastM);
-  if (startM === leastM && leastM > 0) warnings.push(notice('threshold-raised', { statedNm: section.heightNm, usedNm: startM * 1e9, noiseNm: ground.height!.noiseM * 1e9 }));
+  const thresholds = thresholdsOf(ground, section, { decades: scale.layerDecades, from: scale.layerFrom });
+  const { startM = Number.NaN, noiseM = Number.NaN } = thresholds;
+  if (thresholds.ruledBy === 'noise') warnings.push(notice('threshold-raised', { statedNm: section.heightNm, usedNm: startM * 1e9, noiseNm: noiseM * 1e9, times: section.heightNoise }));
   const planes = ground.height && overPlanes(ground.height, columns, rows, current?.floor.data, scale.terraceMinM2 / pixelAreaM2(grid), scale.layerM);
   const rise = planes && riseAboveGround(planes.over, columns, rows, startM);
   const log10 = current?.log10.data;
@@ -91,7 +91,7 @@ export function findFlaws(ground: Ground, grid: Grid, footprint: MaskMap, sectio
     columns, rows, pitchXM: grid.pitchXM, pitchYM: grid.pitchYM,
     ...(rise ? { rise } : {}), ...(current && log10 ? { log10, floor: current.floor.data } : {}), ...(raised?.drop ? { drop: raised.drop } : {}),
   };
-  const add = (found: { labels: Uint32Array; count: number; distance2: Float32Array; ridge?: Uint8Array }, classify: (region: Region) => Classified): void => {
+  const add = (found: { labels: Uint32Array; count: number; distance2: Float32Array; kind?: Uint8Array }, classify: (region: Region) => Classified): void => {
     if (found.count === 0) return;
     const offset = list.length;
     for (const region of measureRegions({ ...shared, ...found })) list.push(flawOf(region, offset + region.label, classify(region)));
@@ -104,11 +104,11 @@ export function findFlaws(ground: Ground, grid: Grid, footprint: MaskMap, sectio
   if (rise) {
     const smooth = boxMean(rise, columns, rows, 1);
     add(partRegions({
-      columns, rows, pitchXM: grid.pitchXM, pitchYM: grid.pitchYM, mask: raisedMask, rise: smooth, noiseM: ground.height!.noiseM / 3, minPixels: Math.max(6, section.minPixels),
+      columns, rows, pitchXM: grid.pitchXM, pitchYM: grid.pitchYM, mask: raisedMask, rise: smooth, noiseM: ground.height!.noiseM / 3, minPixels: Math.max(6, section.minPixels), byHeight: raised?.byHeight,
     }), classifyRaised);
   }
   add(spots(opens), () => ({ cause: 'open', confidence: 0.8, reason: 'no current, and nothing in the height explains it: open' }));
-  return { labels: labelMap(grid, labels), list, warnings, ...(rise ? { rise } : {}), ...(raised?.drop ? { drop: raised.drop } : {}) };
+  return { labels: labelMap(grid, labels), list, warnings, thresholds, ...(rise ? { rise } : {}), ...(raised?.drop ? { drop: raised.drop } : {}) };
 }
 
 function classifyShort(region: Region, hasHeight: boolean): Classified {

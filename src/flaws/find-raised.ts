@@ -32,6 +32,8 @@ export interface RaisedInput {
 export interface Raised {
   /** 1 on flawed ground. */
   readonly mask: Uint8Array;
+  /** 1 on flawed ground where the current could not be judged, so that the height alone speaks; absent without current. */
+  readonly byHeight?: Uint8Array;
   /** Decades the current lies below that of the nearest undisturbed ground, within three pixels of raised ground; absent without current. */
   readonly drop?: Float32Array;
   /** Raised pixels apart from all flaws whose current is in order: worth a note, not a loss. */
@@ -70,6 +72,7 @@ export function findRaised(input: RaisedInput): Raised {
   const drop = new Float32Array(zone.length);
   const conducting = new Uint8Array(zone.length);
   const undecided = new Uint8Array(zone.length);
+  const byHeight = new Uint8Array(zone.length);
   const dim = (input.floorLog10 ?? Number.NEGATIVE_INFINITY) + input.dropDecades + marginDecades;
   for (let i = 0; i < zone.length; i++) {
     if (zone[i] === 0) continue;
@@ -81,6 +84,7 @@ export function findRaised(input: RaisedInput): Raised {
     // Beside ground that is saturated, or too dim for a drop to show above the floor, the current cannot be judged: the height alone decides.
     else if (input.saturated?.[from] === 1 || log10[from]! < dim) {
       mask[i] = raised[i]!;
+      byHeight[i] = raised[i]!;
       if (input.saturated?.[i] === 1) undecided[i] = raised[i]!;
     }
     else if (raised[i] === 1 && rise[i]! > input.startM) conducting[i] = 1;
@@ -95,7 +99,7 @@ export function findRaised(input: RaisedInput): Raised {
   const near = dilate(final, columns, rows, reachPx);
   let conductingPixels = 0;
   for (let i = 0; i < near.length; i++) if (conducting[i] === 1 && near[i] === 0) conductingPixels++;
-  return { mask: final, drop, conductingPixels };
+  return { mask: final, byHeight, drop, conductingPixels };
 }
 
 /**

@@ -32,6 +32,10 @@ export interface SpotsInput {
 
 /** Decades above the floor from which ground is bright enough that noise does not make a dead pixel of it. */
 const brightDecades = 0.5;
+/** Near saturated ground a saturated spot must be deeper than this, in layers: thinner terraces lie up to two or three below. */
+const pitLayers = 3.2;
+/** A spot without a pit is no short where raised flaws make up more than this share of its border: they cut it off from ground like itself. */
+const shutInShare = 0.5;
 /** Part of a layer's worth of current by which a spot must stand out to be a spot at all. */
 const standOut = 0.3;
 
@@ -62,12 +66,33 @@ export function findShorts(input: SpotsInput): Uint8Array {
     if (above < standOut * input.layerDecades) continue;
     const pitM = rise ? -rise[i]! : 0;
     if (above >= input.shortDecades) candidates[i] = 1;
-    else if (saturated[i] === 1) candidates[i] = nearTerrace[i] === 0 || pitM > 2 * input.layerM ? 1 : 0;
+    else if (saturated[i] === 1) candidates[i] = nearTerrace[i] === 0 || pitM > pitLayers * input.layerM ? 1 : 0;
     else if (pitM > input.pitM && floor[i] === 0) candidates[i] = 1;
   }
-  const { labels, pixels } = labelComponents(candidates, columns, rows, 8);
-  for (let i = 0; i < count; i++) if (candidates[i] === 1 && pixels[labels[i]!]! * input.pixelAreaM2 > input.shortMaxM2) candidates[i] = 0;
+  const { labels, pixels, count: spots } = labelComponents(candidates, columns, rows, 8);
+  const shutIn = shutInSpots(labels, spots, input);
+  for (let i = 0; i < count; i++) {
+    if (candidates[i] === 1 && (pixels[labels[i]!]! * input.pixelAreaM2 > input.shortMaxM2 || shutIn[labels[i]!] === 1)) candidates[i] = 0;
+  }
   return candidates;
+}
+
+/** By spot: 1 where it has no pit and raised flaws make up most of its border. */
+function shutInSpots(labels: Uint32Array, count: number, { columns, rise, raised, layerM }: SpotsInput): Uint8Array {
+  const [border, beside] = [new Float64Array(count + 1), new Float64Array(count + 1)];
+  const deepest = new Float64Array(count + 1);
+  for (let i = 0; i < labels.length; i++) {
+    const label = labels[i]!;
+    if (label === 0) continue;
+    if (rise && rise[i]! < deepest[label]!) deepest[label] = rise[i]!;
+    const c = i % columns;
+    for (const j of [c > 0 ? i - 1 : -1, c + 1 < columns ? i + 1 : -1, i - columns, i + columns]) {
+      if (j < 0 || j >= labels.length || labels[j] === label) continue;
+      border[label]!++;
+      beside[label]! += raised[j]!;
+    }
+  }
+  return Uint8Array.from(border, (edges, label) => (beside[label]! > shutInShare * edges && deepest[label]! > -2 * layerM ? 1 : 0));
 }
 
 /** 1 within one opening width of saturated ground larger than the largest short. */

@@ -39,11 +39,32 @@ export interface Flaw {
   readonly byHand?: true;
 }
 
+/** The limits that were in force on this map, and what they are worth against its noise. */
+export interface FlawThresholds {
+  /** Rise that starts a flaw, metres, the larger of the stated height and the stated multiple of the noise; absent without a height. */
+  readonly startM?: number;
+  readonly ruledBy?: 'height' | 'noise';
+  /** Standard deviation of the height's pixel noise, metres. */
+  readonly noiseM?: number;
+  /** Fall of the current that makes a rise a flaw, decades; absent without a current. */
+  readonly dropDecades?: number;
+  /** Decades that one layer costs, and how that is known. */
+  readonly layerDecades?: number;
+  readonly layerFrom?: LayerSource;
+  /** Robust standard deviation of the log current's noise from pixel to pixel where it is above the floor and not saturated, decades; absent where nothing is. */
+  readonly noiseDecades?: number;
+}
+
+/** Where a layer's worth in decades comes from: the map's own ladder, the tunnelling model, or nothing better than a decade. */
+export type LayerSource = 'map' | 'model' | 'assumed';
+
 export interface Flaws {
   /** Shape [rows, columns]; the number of the flaw a pixel belongs to, 0 for none. */
   readonly labels: LabelMap;
   readonly list: readonly Flaw[];
   readonly warnings: readonly Notice[];
+  /** Absent where no flaws were sought. */
+  readonly thresholds?: FlawThresholds;
   /** Height above the local ground, metres, pixel by pixel; absent without a height. With `drop` it lets a corrected region be measured again. */
   readonly rise?: Float32Array;
   /** Decades of current lost against the surrounding ground, pixel by pixel; absent where height and current were not both there. */

@@ -1,6 +1,11 @@
 /** Measurements of labelled regions. */
+import { solveBand } from '../stats/cholesky.ts';
 import { medianInPlace } from '../stats/median.ts';
 import { selectInPlace } from '../stats/select.ts';
+
+/** Marks of `MeasureInput.kind`. */
+export const partKinds = { blob: 0, ridge: 1, dome: 2 } as const;
+const kindNames = ['blob', 'ridge', 'dome'] as const;
 
 /** Geometry and content of one region; lengths in metres. */
 export interface Region {
@@ -25,17 +30,17 @@ export interface Region {
   readonly dropDecades: number;
   /** Share of pixels at the floor. */
   readonly floorShare: number;
-  /** Share of the height's variance that a paraboloid over the region's ellipse explains (0–1). */
+  /** Share of the height's variance that the best round paraboloid explains (0–1). */
   readonly domeShare: number;
-  /** The same for a cone over that ellipse. */
+  /** The same for a cone over the ellipse of the region's second moments. */
   readonly coneShare: number;
   /** Mean over peak height, the peak taken at the 95 % quantile so that noise does not raise it; 1/2 for a paraboloid (0.475/0.95). */
   readonly fullness: number;
   /** Area above three quarters of the peak's height over that above half of it, the peak taken as for `fullness`: 0.55 for a paraboloid, 0.74 for 1 − ρ⁴. */
   readonly topShare: number;
   readonly touchesEdge: boolean;
-  /** Whether a crest runs through it; absent where nobody looked. */
-  readonly ridge?: boolean;
+  /** How it was told from what touches it: a crest runs through it, a circle and a paraboloid fit it, or neither; absent where nobody looked. */
+  readonly kind?: 'blob' | 'ridge' | 'dome';
 }
 
 export interface MeasureInput {
@@ -52,8 +57,8 @@ export interface MeasureInput {
   readonly floor?: Uint8Array;
   /** Squared distance of each pixel from the outside of the labelled regions, m². */
   readonly distance2: Float32Array;
-  /** By label: 1 where a crest runs through the region; absent where nobody looked. */
-  readonly ridge?: Uint8Array;
+  /** By label: how the region was told (`partKinds`); absent where nobody looked. */
+  readonly kind?: Uint8Array;
 }
 
 /**
@@ -124,7 +129,7 @@ function measureRegion(input: MeasureInput, label: number, indices: Int32Array):
     dropDecades: medianOf(input.drop, indices),
     floorShare: input.floor ? atFloor / n : Number.NaN,
     touchesEdge,
-    ...(input.ridge ? { ridge: input.ridge[label] === 1 } : {}),
+    ...(input.kind ? { kind: kindNames[input.kind[label]!]! } : {}),
   };
 }
 
@@ -168,8 +173,7 @@ function heights(input: MeasureInput, indices: Int32Array, xM: number, yM: numbe
   const { columns, rows, pitchXM, pitchYM, rise } = input;
   const { values, count } = presentOf(rise, indices);
   if (!rise || count === 0) return { peakM: Number.NaN, meanM: Number.NaN, volumeM3: Number.NaN, domeShare: 0, coneShare: 0, fullness: Number.NaN, topShare: Number.NaN };
-  // Regression of height on a paraboloid 1 − ρ² and on a cone 1 − ρ, ρ² = dᵀ·C⁻¹·d / 4 being 1 on the ellipse.
-  const dome = new Float64Array(count);
+  // Regression of height on a cone 1 − ρ, ρ² = dᵀ·C⁻¹·d / 4 being 1 on the ellipse.
   const cone = new Float64Array(count);
   const [ixx, ixy, iyy] = ellipse.inverse;
   let peakM = Number.NEGATIVE_INFINITY;
@@ -182,13 +186,12 @@ function heights(input: MeasureInput, indices: Int32Array, xM: number, yM: numbe
     const dx = (c + 0.5) * pitchXM - xM;
     const dy = (rows - (i - c) / columns - 0.5) * pitchYM - yM;
     const rho2 = (ixx * dx * dx + 2 * ixy * dx * dy + iyy * dy * dy) / 4;
-    dome[k] = 1 - rho2;
     cone[k++] = 1 - Math.sqrt(rho2);
     sum += h;
     if (h > peakM) peakM = h;
   }
   const meanM = sum / count;
-  const domeShare = explainedShare(dome, values, count);
+  const domeShare = paraboloidShare(input, indices, xM, yM);
   const coneShare = explainedShare(cone, values, count);
   // A paraboloid's 95 % quantile is 0.95 of its peak, so this is 1/2 for one. Selecting reorders the values, so it comes last.
   const topM = selectInPlace(values, Math.min(count - 1, Math.floor(0.95 * count)), count);
@@ -202,6 +205,37 @@ function heights(input: MeasureInput, indices: Int32Array, xM: number, yM: numbe
   }
   const topShare = half > 0 ? upper / half : Number.NaN;
   return { peakM, meanM, volumeM3: sum * pitchXM * pitchYM, domeShare, coneShare, fullness, topShare };
+}
+
+/** Share of the height's variance that the best round paraboloid explains, wherever its centre lies; 0 for one that opens upwards. */
+function paraboloidShare({ columns, rows, pitchXM, pitchYM, rise }: MeasureInput, indices: Int32Array, xM: number, yM: number): number {
+  const scale = Math.sqrt(indices.length * pitchXM * pitchYM);
+  const normal = new Float64Array(16);
+  const right = new Float64Array(4);
+  let [sum, square, count] = [0, 0, 0];
+  for (const i of indices) {
+    const h = rise![i]!;
+    if (h !== h) continue;
+    const c = i % columns;
+    const dx = ((c + 0.5) * pitchXM - xM) / scale;
+    const dy = ((rows - (i - c) / columns - 0.5) * pitchYM - yM) / scale;
+    const basis = [1, dx, dy, dx * dx + dy * dy];
+    for (let a = 0; a < 4; a++) {
+      right[a]! += basis[a]! * h;
+      for (let b = 0; b <= a; b++) normal[a * 4 + (a - b)]! += basis[a]! * basis[b]!;
+    }
+    sum += h;
+    square += h * h;
+    count++;
+  }
+  const total = square - (sum * sum) / count;
+  const products = right.slice();
+  const solved = solveBand(normal, 3, right);
+  // Few pixels, or all in one line, fix no paraboloid.
+  if (!(total > 0) || !(solved[3]! < 0)) return 0;
+  let explained = -(sum * sum) / count;
+  for (let a = 0; a < 4; a++) explained += solved[a]! * products[a]!;
+  return Math.min(1, Math.max(0, explained / total));
 }
 
 /** Share of the variance of `values` that grows with `shape`: the squared correlation, 0 where it falls with it. */

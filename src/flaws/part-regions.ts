@@ -1,9 +1,11 @@
 /** Parts flawed ground into single things: folds by their crests, the rest by its peaks. */
 import { squaredDistance } from '../grid/distance.ts';
 import { labelComponents } from '../grid/label-components.ts';
+import { findDomes } from './find-domes.ts';
 import { findRidges } from './find-ridges.ts';
 import type { RidgeInput } from './find-ridges.ts';
 import { nearestAdmitted } from './local-ground.ts';
+import { partKinds } from './measure.ts';
 import { partByPeaks } from './part-by-peaks.ts';
 import { peelParts } from './peel.ts';
 
@@ -12,42 +14,57 @@ export interface PartInput extends RidgeInput {
   readonly noiseM: number;
   /** Remains of fewer pixels join what they touch. */
   readonly minPixels: number;
+  /** 1 where only the height says that the ground is flawed; absent where it always does. */
+  readonly byHeight?: Uint8Array | undefined;
 }
 
 export interface Parts {
   /** Number of the part per pixel from 1; 0 outside the mask. */
   readonly labels: Uint32Array;
   readonly count: number;
-  /** By label: 1 where the part is a ridge by its crest. */
-  readonly ridge: Uint8Array;
+  /** By label: how the part was told (`partKinds`). */
+  readonly kind: Uint8Array;
   /** Squared distance of each pixel from the outside of its own part, m². */
   readonly distance2: Float32Array;
 }
 
 /** A fold reaches this many times its full width at half height to each side of its crest: two standard deviations of a Gaussian ridge. */
 const halfWidths = 0.85;
+/** Half the width of the gap that is bridged under a fold, and the least size of what is bridged, pixels. */
+const bridgePx = 6;
+const leastBridged = 60;
+/** Half-width of remains that are a fold's own flank, pixels. */
+const sliverHalfPx = 2;
+/** Share of the border of remains that a fold must make up for them to belong to it. */
+const mostlyBordered = 0.45;
 
-/** Parts a mask of flawed ground (`mask` 1) and labels the parts. */
+/** Parts a mask of flawed ground (`mask` 1) and labels the parts. Changes `mask`: the foot of a fold may be left out. */
 export function partRegions(input: PartInput): Parts {
   const { columns, rows, mask } = input;
+  const domes = findDomes(input);
   const ridges = ridgeGround(input);
   const rest = new Uint8Array(mask.length);
-  for (let i = 0; i < rest.length; i++) rest[i] = mask[i] === 1 && ridges[i] === 0 ? 1 : 0;
+  for (let i = 0; i < rest.length; i++) {
+    if (domes.labels[i]! > 0) ridges[i] = 0;
+    else rest[i] = mask[i] === 1 && ridges[i] === 0 ? 1 : 0;
+  }
   giveBackSlivers(ridges, rest, input);
+  bridgeFolds(ridges, rest, input);
   const blobs = partByPeaks({ ...input, mask: rest });
   blobs.count = peelParts({ ...input, labels: blobs.labels, count: blobs.count });
   const folds = labelComponents(ridges, columns, rows, 8);
   const labels = new Uint32Array(mask.length);
-  for (let i = 0; i < labels.length; i++) labels[i] = rest[i] === 1 ? blobs.labels[i]! : ridges[i] === 1 ? blobs.count + folds.labels[i]! : 0;
-  const count = blobs.count + folds.count;
-  const ridge = new Uint8Array(count + 1);
-  ridge.fill(1, blobs.count + 1);
-  return { labels, count, ridge, distance2: distanceToOutside(labels, input) };
+  for (let i = 0; i < labels.length; i++) labels[i] = rest[i] === 1 ? blobs.labels[i]! : ridges[i] === 1 ? blobs.count + folds.labels[i]! : domes.labels[i]! > 0 ? blobs.count + folds.count + domes.labels[i]! : 0;
+  const count = blobs.count + folds.count + domes.count;
+  const kind = new Uint8Array(count + 1).fill(partKinds.blob);
+  kind.fill(partKinds.ridge, blobs.count + 1, blobs.count + folds.count + 1);
+  kind.fill(partKinds.dome, blobs.count + folds.count + 1);
+  return { labels, count, kind, distance2: distanceToOutside(labels, input) };
 }
 
-/** 1 on flawed ground within a fold's own half-width of its crest. */
+/** 1 on flawed ground within a fold's own half-width of its crest. Changes `mask` where the foot of a fold goes beyond it. */
 function ridgeGround(input: PartInput): Uint8Array {
-  const { columns, rows, pitchXM, pitchYM, mask, rise } = input;
+  const { columns, rows, pitchXM, pitchYM, mask, rise, byHeight } = input;
   const { crest, widthM } = findRidges(input);
   const ground = new Uint8Array(mask.length);
   if (!crest.includes(1)) return ground;
@@ -59,29 +76,64 @@ function ridgeGround(input: PartInput): Uint8Array {
     const dx = ((i % columns) - (at % columns)) * pitchXM;
     const dy = (Math.floor(i / columns) - Math.floor(at / columns)) * pitchYM;
     // What stands higher than the crest beside it belongs to something that leans on the fold.
-    if (Math.hypot(dx, dy) <= halfWidths * widthM[at]! + pixelM && !(rise[i]! > 1.5 * rise[at]!)) ground[i] = 1;
+    const away = Math.hypot(dx, dy);
+    if (rise[i]! > 1.5 * rise[at]! || away > halfWidths * widthM[at]! + pixelM) continue;
+    // A fold's foot goes on beyond where it stops the current; without a current to follow, the fold ends where others do.
+    if (byHeight?.[i] === 1 && away > halfWidths * widthM[at]!) mask[i] = 0;
+    else ground[i] = 1;
   }
   return ground;
 }
 
-/** Thin remains along a fold belong to it: what is nowhere wider than three pixels, or smaller than the smallest flaw. Changes both masks. */
-function giveBackSlivers(ridges: Uint8Array, rest: Uint8Array, { columns, rows, minPixels }: PartInput): void {
+/**
+ * Remains along a fold belong to it: what is nowhere wider than three pixels, what is smaller than the smallest flaw, and what is as low as the fold and bordered
+ * mostly by it (the gaps where folds meet). Changes both masks.
+ */
+function giveBackSlivers(ridges: Uint8Array, rest: Uint8Array, { columns, rows, minPixels, rise }: PartInput): void {
   const { labels, count, pixels } = labelComponents(rest, columns, rows, 8);
   const distance2 = squaredDistance(rest, columns, rows, {});
-  const widest = new Float64Array(count + 1);
-  const touching = new Uint8Array(count + 1);
+  const [widest, peak, foldSum, contact, border] = Array.from({ length: 5 }, () => new Float64Array(count + 1)) as [Float64Array, Float64Array, Float64Array, Float64Array, Float64Array];
   for (let i = 0; i < labels.length; i++) {
     const label = labels[i]!;
     if (label === 0) continue;
     if (distance2[i]! > widest[label]!) widest[label] = distance2[i]!;
+    if (rise[i]! > peak[label]!) peak[label] = rise[i]!;
     const c = i % columns;
-    for (const j of [c > 0 ? i - 1 : i, c + 1 < columns ? i + 1 : i, i - columns, i + columns]) if (ridges[j] === 1) touching[label] = 1;
+    for (const j of [c > 0 ? i - 1 : -1, c + 1 < columns ? i + 1 : -1, i - columns, i + columns]) {
+      if (j < 0 || j >= labels.length || labels[j] === label) continue;
+      border[label]!++;
+      if (ridges[j] !== 1) continue;
+      contact[label]!++;
+      foldSum[label]! += rise[j]!;
+    }
   }
+  const joins = Uint8Array.from(labels.length > 0 ? border : [], (edges, label) => {
+    if (label === 0 || contact[label] === 0) return 0;
+    if (widest[label]! <= sliverHalfPx ** 2 || pixels[label]! < minPixels) return 1;
+    return contact[label]! > mostlyBordered * edges && peak[label]! < 1.4 * (foldSum[label]! / contact[label]!) ? 1 : 0;
+  });
   for (let i = 0; i < labels.length; i++) {
-    const label = labels[i]!;
-    if (label === 0 || touching[label] === 0 || (widest[label]! > 4 && pixels[label]! >= minPixels)) continue;
+    if (labels[i] === 0 || joins[labels[i]!] === 0) continue;
     rest[i] = 0;
     ridges[i] = 1;
+  }
+}
+
+/**
+ * What lies on both sides of a fold goes on under it: there the ledger's order of test gives the place to residue. Takes ground from the fold where a
+ * closing of what lies beside it (by the fold's own reach) covers it. Changes both masks.
+ */
+function bridgeFolds(ridges: Uint8Array, rest: Uint8Array, { columns, rows }: PartInput): void {
+  const { labels, pixels } = labelComponents(rest, columns, rows, 8);
+  const large = Uint8Array.from(labels, (label) => (label > 0 && pixels[label]! >= leastBridged ? 1 : 0));
+  if (!large.includes(1) || !ridges.includes(1)) return;
+  const outside = squaredDistance(large.map((value) => 1 - value), columns, rows, {});
+  const near = Uint8Array.from(outside, (d) => (d <= bridgePx ** 2 ? 1 : 0));
+  const inside = squaredDistance(near, columns, rows, {});
+  for (let i = 0; i < ridges.length; i++) {
+    if (ridges[i] === 0 || !(inside[i]! > (bridgePx + 0.5) ** 2)) continue;
+    ridges[i] = 0;
+    rest[i] = 1;
   }
 }
 

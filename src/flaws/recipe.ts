@@ -9,6 +9,9 @@ export const flawsSection = section({
   heightNm: numberField(0.8, { above: 0, max: 1000 }, {
     title: 'Height above ground', unit: 'nm', description: 'A rise of at least this much over its surroundings starts a flaw.',
   }),
+  heightNoise: numberField(6, { min: 0, max: 100 }, {
+    title: 'Height above noise', unit: '× noise', description: 'The rise must also be this many times the noise of the map’s height; the larger of both limits holds. 0 leaves the noise out.',
+  }),
   dropDecades: numberField(0.5, { above: 0, max: 10 }, {
     title: 'Current drop', unit: 'decades', description: 'A rise is a flaw only where the current also falls by this much below its surroundings.',
   }),

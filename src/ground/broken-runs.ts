@@ -82,7 +82,14 @@ function breakSign(values: Float32Array, columns: number, rows: number, r: numbe
   const off = value - (low + high) / 2;
   // Missing lines leave nothing to compare with.
   if (!(Math.abs(off) > least)) return off === off ? 0 : untold;
-  return Math.abs(off) > 4 * (high - low) ? Math.sign(off) : untold;
+  if (!(Math.abs(off) > 4 * (high - low))) return untold;
+  if (r >= 3 && r + 3 < rows) {
+    // Where two of the four are broken themselves, three lines to either side must bear them out.
+    const six = [before, after, at(r - 2), at(r + 2), at(r - 3), at(r + 3)].sort((a, b) => a - b);
+    const wider = value - (six[2]! + six[3]!) / 2;
+    if (!(Math.abs(wider) > 4 * (six[3]! - six[2]!) && wider * off > 0)) return untold;
+  }
+  return Math.sign(off);
 }
 
 /**

@@ -3,6 +3,7 @@ import type { MaskMap, ScalarMap } from '../grid/maps.ts';
 import type { Notice } from '../problems/problem.ts';
 import type { Outline } from '../read/sample.ts';
 import type { Shift } from './align-current.ts';
+import type { LevelsFound } from './describe-levels.ts';
 import type { LadderFit } from './ladder.ts';
 import type { ZeroCurrent } from './zero-current.ts';
 
@@ -18,6 +19,8 @@ export interface HeightGround {
   readonly plane: Float32Array;
   /** Peak-to-peak of the removed tilt and bow over the map, metres. */
   readonly tiltM: number;
+  /** What levelling took out and how it was found; absent for a height that was levelled by itself. */
+  readonly levels?: LevelsFound;
 }
 
 export interface CurrentGround {

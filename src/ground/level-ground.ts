@@ -1,11 +1,15 @@
 import { maskMap, scalarMap } from '../grid/maps.ts';
 import type { Grid, ScalarMap } from '../grid/maps.ts';
 import { notice } from '../problems/problem.ts';
+import type { Notice } from '../problems/problem.ts';
 import { layerMask } from '../read/footprint.ts';
 import type { ScanSection } from '../read/recipe.ts';
 import { channelOf } from '../read/sample.ts';
 import type { Sample } from '../read/sample.ts';
 import { conditionCurrent } from './condition-current.ts';
+import { describeLevels } from './describe-levels.ts';
+import { fitSpots, leastSpots } from './fit-spots.ts';
+import type { SpotFit } from './fit-spots.ts';
 import type { CurrentGround, FootprintProposal, Ground, HeightGround, RoughHeight } from './ground.ts';
 import { layerPlanes } from './layer-planes.ts';
 import { firstLevels, levelHeight, withoutLevels } from './level-height.ts';
@@ -59,12 +63,21 @@ function levelInside(sample: Sample, section: GroundSection, scan: ScanSection, 
   const returned = compareReturn(grid, { height: rough, current: conditioned?.current }, { height: back, current: read });
   const layers = rough && conditioned && layerPlanes(conditioned.current, rough.levelled.data, grid.columns, layerM);
   const levels = values && first && refineLevels(values.data, grid, section, { start: first, inside, planes: layers?.planes, layerM });
-  const height = values && levels && levelHeight(values, grid, section, levels, inside, currentChannel !== undefined);
+  const byHand = values && levels && section.spots.length > 0 ? fitSpots(values.data, grid, section, levels.lines) : undefined;
+  const used = levels && byHand ? { ...levels, form: byHand.form } : levels;
+  const height = values && used && levelHeight(values, grid, section, used, inside, currentChannel !== undefined);
   return {
-    ...(height ? { height } : {}), ...(conditioned ? { current: conditioned.current } : {}), ...(layers ? { layers } : {}),
+    ...(height ? { height: { ...height, levels: describeLevels(used, byHand, section.lines, grid.columns, grid.rows) } } : {}), ...(conditioned ? { current: conditioned.current } : {}), ...(layers ? { layers } : {}),
     ...(returned ? { returned } : {}),
-    warnings: conditioned?.warnings ?? [],
+    warnings: [...(values ? spotNotices(section, byHand) : []), ...(conditioned?.warnings ?? [])],
   };
+}
+
+/** What became of spots picked by hand. */
+function spotNotices({ spots, order }: GroundSection, fit: SpotFit | undefined): Notice[] {
+  if (spots.length === 0) return [];
+  if (!fit) return [notice('spots-too-few', { given: spots.length, least: leastSpots })];
+  return fit.order < order || fit.used < spots.length ? [notice('spots-order-lowered', { given: spots.length, used: fit.used, order, usedOrder: fit.order })] : [];
 }
 
 function roughHeight(raw: Float32Array, grid: Grid, levels: Levels): RoughHeight {

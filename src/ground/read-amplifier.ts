@@ -45,7 +45,7 @@ export function readAmplifier(values: Float32Array, columns: number, rows: numbe
   const limit = clippedFrom(saturation);
   let zero = findZeroCurrent(values, columns, withLimit);
   const lag = lagOf(values, columns, rows, zero, limit, section);
-  const base = { ...(saturation === undefined ? {} : { saturation }) };
+  const base = saturation === undefined ? {} : { saturation };
   if (!lag) return { ...base, zero, values };
   // Tails fill the ground without current; without them its level and noise show better, and then the tails can be told from noise better.
   let undone: Unlagged = { values, blind: new Float32Array(0) };

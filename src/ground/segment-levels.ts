@@ -77,7 +77,7 @@ export function levelSegments(rest: Float32Array, grid: Grid, layerM: number, pl
     if (rises && pixels[best]! * grid.pitchXM * grid.pitchYM < filmMaxM2) {
       // Where the current tells: a step of the barrier agrees with it, a step of the conductor leaves it as it is beside.
       const agrees = whole && (known[best] === 1
-        ? layers === 0 || Math.abs(rung[best]! - rung[beside]!) < layerM / 2
+        ? layers === 0 || (known[beside] === 1 && Math.abs(rung[best]! - rung[beside]!) < layerM / 2)
         : level - levelM[beside]! - rung[beside]! < mostLayers * layerM);
       if (!agrees) terrace[best] = 0;
     }

@@ -8,8 +8,8 @@ export const appraisalSentences = {
     `Nearly all of the current has the sign opposite to the bias of ${d.biasV} V; the amplifier was taken to invert and the current was turned. Correct the bias's sign if that is wrong.`,
   'footprint-proposed': (d: { sample: string; ground: 'injector' | 'substrate' | 'both' | 'unknown'; areaUm2: number; stepNm: number; flakeUm2: number }) =>
     `${bareWords[d.ground]} seems to be in view over ${d.areaUm2.toFixed(2)} µm², ${d.stepNm.toFixed(1)} nm below the rest, and is counted as footprint; to appraise the flake alone, save footprintProposal from verdict.json (${d.flakeUm2.toFixed(2)} µm²) as ${d.sample}.outlines.geojson beside the maps.`,
-  'threshold-raised': (d: { statedNm: number; usedNm: number; noiseNm: number }) =>
-    `The height's noise is ${short(d.noiseNm)} nm, so flaws were sought from ${short(d.usedNm)} nm up instead of flaws.heightNm = ${short(d.statedNm)} nm.`,
+  'threshold-raised': (d: { statedNm: number; usedNm: number; noiseNm: number; times: number }) =>
+    `The height's noise is ${short(d.noiseNm)} nm, so flaws were sought from ${short(d.usedNm)} nm up, ${short(d.times)} times that (flaws.heightNoise), instead of flaws.heightNm = ${short(d.statedNm)} nm.`,
   'bumps-conduct': (d: { areaUm2: number }) =>
     `Bumps over ${d.areaUm2.toFixed(2)} µm² stand above the ground but conduct like it; they are noted and not booked as flaws.`,
   'barrier-no-ground': (_: Record<string, never>) => 'All flawless ground lies at the amplifier’s floor or limit, so there is no reference and nothing is usable; scan again at another gain or bias.',

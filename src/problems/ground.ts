@@ -12,6 +12,10 @@ export const groundSentences = {
     `The current lies ${signed(d.dxPx)} ± ${d.seXPx.toFixed(2)} pixels to the right of the height and ${signed(d.dyPx)} ± ${d.seYPx.toFixed(2)} below it; it was moved back by whole pixels (${-d.undoneXPx} and ${-d.undoneYPx}), which leaves its border unmeasured.`,
   'current-quantised': (d: { step: number; floor: number; unit: 'A' | 'relative' }) =>
     `The current comes in steps of ${amount(d.step, d.unit)}, so readings up to ${amount(d.floor, d.unit)} are counted as no current; a higher gain would show thicker barrier.`,
+  'spots-too-few': (d: { given: number; least: number }) =>
+    `Of ${d.given} spots of ground picked by hand fewer than ${d.least} lie on measured ground of the map, so the ground was found automatically; pick spots inside the map where the height was measured.`,
+  'spots-order-lowered': (d: { given: number; used: number; order: number; usedOrder: number }) =>
+    `${d.used < d.given ? `${d.given - d.used} of ${d.given} spots of ground picked by hand lie on nothing measured. ` : ''}${d.usedOrder < d.order ? `${d.used} spots support a form of order ${d.usedOrder} and not ${d.order}${d.usedOrder === 0 ? ' (they lie on one line), so no tilt was taken out' : ''}; pick more spots, spread over the map, or lower ground.order.` : 'The others were used.'}`,
 };
 
 function signed(value: number): string {

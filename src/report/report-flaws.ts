@@ -24,9 +24,19 @@ export function flawsPart({ flaws, ground, recipe }: Appraised, verdict: Verdict
     : markup`<p>Shorts cannot be seen without a current map.</p>`;
   return markup`<section><h2>Flaws</h2>
 <p>${counts}: ${withUnit(density.estimate, '/µm²')} (95 %: ${interval(density.low95, density.high95, '/µm²')}, exact Poisson).</p>
+${verdict.flaws.thresholds ? limitsLine(verdict.flaws.thresholds) : undefined}
 ${shortsLine}
 ${verdict.corrections ? correctionsList(recipe.corrections, verdict.corrections.applied) : undefined}
 ${flaws.list.length > 0 ? flawTable(flaws.list) : undefined}</section>`;
+}
+
+/** What the limits in force mean on this map. */
+function limitsLine(limits: NonNullable<Verdict['flaws']['thresholds']>): Markup | undefined {
+  const rise = limits.heightNm === undefined ? undefined
+    : `Sought from ${withUnit(limits.heightNm, 'nm')} above the ground up${limits.heightOverNoise === undefined ? '' : `, ${figure(limits.heightOverNoise)} times this map’s noise of ${withUnit(limits.heightNoiseNm, 'nm')}`}${limits.heightRuledBy === 'noise' ? ' (the limit by noise rules)' : ''}.`;
+  const drop = limits.dropDecades === undefined ? undefined
+    : `${rise === undefined ? 'A' : ' A'} current counts as lost when it is lower by ${figure(limits.dropDecades)} decades (powers of ten), ${figure(limits.dropLayers, 2)} layers${limits.layerFrom === 'map' ? ' of this map’s ladder' : limits.layerFrom === 'model' ? ' by the model' : ', a decade a layer assumed'}${limits.dropOverNoise === undefined ? '' : ` and ${figure(limits.dropOverNoise)} times the noise of its logarithm`}.`;
+  return rise === undefined && drop === undefined ? undefined : markup`<p class="note">${rise ?? ''}${drop ?? ''}</p>`;
 }
 
 /** In the order in which they are applied. */

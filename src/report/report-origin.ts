@@ -45,6 +45,7 @@ export function changedValues(recipe: AppliedRecipe): ChangedValue[] {
 }
 
 function valueText(value: unknown, unit: string): string {
+  if (Array.isArray(value)) return value.length === 0 ? 'none' : `${value.length} given`;
   const text = typeof value === 'object' ? JSON.stringify(value) : String(value);
   return unit === '' ? text : `${text} ${unit}`;
 }

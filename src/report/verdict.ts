@@ -1,6 +1,6 @@
 /** verdict.json: the appraisal in numbers, for scripts. Its layout is frozen by `version`. */
 import type { Barrier } from '../barrier/barrier.ts';
-import type { Flaw, FlawCause, Flaws } from '../flaws/flaws.ts';
+import type { Flaw, FlawCause, FlawThresholds, Flaws } from '../flaws/flaws.ts';
 import type { CurrentGround, FootprintProposal, Ground } from '../ground/ground.ts';
 import type { Ledger } from '../ledger/ledger.ts';
 import type { Sample } from '../read/sample.ts';
@@ -154,12 +154,30 @@ function flawsPart(flaws: Flaws, ledger: Ledger) {
     densityPerUm2: {
       estimate: rounded(seen / footprintUm2), low95: rounded(interval.low / footprintUm2), high95: rounded(interval.high / footprintUm2),
     },
+    thresholds: flaws.thresholds && thresholdsPart(flaws.thresholds),
     expectedMissedShorts: shorts && rounded(shorts.expectedMissed),
     shorts: shorts && {
       seen: shorts.seen,
       crossedShare: rounded(shorts.crossedShare),
       densityPerUm2: { estimate: toPerUm2(shorts.densityPerM2), low95: toPerUm2(shorts.low95PerM2), high95: toPerUm2(shorts.high95PerM2) },
     },
+  };
+}
+
+/** The limits in force, and what they mean against this map's noise. */
+export function thresholdsPart({ startM, ruledBy, noiseM, dropDecades, layerDecades, layerFrom, noiseDecades }: FlawThresholds) {
+  const ratio = (value: number | undefined, unit: number | undefined): number | undefined => (value === undefined || !(unit! > 0) ? undefined : rounded(value / unit!));
+  return {
+    heightNm: startM === undefined ? undefined : toNm(startM),
+    heightRuledBy: ruledBy,
+    heightNoiseNm: noiseM === undefined ? undefined : toNm(noiseM),
+    heightOverNoise: ratio(startM, noiseM),
+    dropDecades: dropDecades === undefined ? undefined : rounded(dropDecades),
+    layerDecades: layerDecades === undefined ? undefined : rounded(layerDecades),
+    layerFrom,
+    dropLayers: ratio(dropDecades, layerDecades),
+    currentNoiseDecades: noiseDecades === undefined ? undefined : rounded(noiseDecades),
+    dropOverNoise: ratio(dropDecades, noiseDecades),
   };
 }
 

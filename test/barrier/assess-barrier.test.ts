@@ -24,7 +24,7 @@ const materials = { heightEv: 2.5, massRatio: 0.5 };
 function assess(scene: Scene, barrier: RecipeChanges[string] = {}, more: Partial<BandQuestion> = wide, surface: 'barrier' | 'stack' = 'barrier'): Barrier {
   const { sample } = scene;
   const recipe = createRecipe({ barrier });
-  const { current, height } = levelGround(sample, recipe.ground, recipe.scan);
+  const { current, height } = levelGround(sample, recipe.ground, recipe.scan, layerNm * 1e-9);
   const flaws: Flaws = { labels: labelMap(sample.grid, Uint32Array.from(scene.things, (thing) => (thing === '' ? 0 : 1))), list: [], warnings: [] };
   return assessBarrier(current!, flaws, sample.footprint, sample.grid, surface, recipe.barrier, { ...band, ...more }, height?.levelled.data);
 }
@@ -188,7 +188,7 @@ test('a stack’s surface gives no layers, no thickness, no device density', () 
 
 test('a footprint without ground: nothing known, said', () => {
   const recipe = createRecipe();
-  const current = levelGround(scene.sample, recipe.ground, recipe.scan).current!;
+  const current = levelGround(scene.sample, recipe.ground, recipe.scan, layerNm * 1e-9).current!;
   const none = assessBarrier(current, { labels: labelMap(scene.sample.grid), list: [], warnings: [] }, maskMap(scene.sample.grid), scene.sample.grid, 'barrier', recipe.barrier, band);
   assert.ok(codes(none).includes('barrier-no-ground'));
   assert.ok(none.step.data.every((step) => step === -128));

@@ -1,16 +1,21 @@
 import assert from 'node:assert/strict';
 import { test } from 'node:test';
-import type { Grid } from '../../src/grid/maps.ts';
-import { scalarMap } from '../../src/grid/maps.ts';
-import { levelHeight } from '../../src/ground/level-height.ts';
-import { groundSection } from '../../src/ground/recipe.ts';
+import type { HeightGround } from '../../src/ground/ground.ts';
+import { levelGround } from '../../src/ground/level-ground.ts';
+import { firstLevels, levelHeight } from '../../src/ground/level-height.ts';
+import { refineLevels } from '../../src/ground/refine-levels.ts';
 import { assertClose } from '../fixtures/assert-close.ts';
 import { createRecipe, createSample } from '../fixtures/create-sample.ts';
 import { createScene, flipped, layerNm, threeTerraces, transposed, typicalThings } from '../fixtures/create-scene.ts';
 
 const size = 128;
-const grid: Grid = { columns: size, rows: size, pitchXM: 20e-9, pitchYM: 20e-9 };
-const level = (values: Float32Array, section: Record<string, unknown> = {}) => levelHeight(scalarMap(grid, values), grid, groundSection.parse(section));
+
+/** The height stage of a map, alone or beside a current, which then tells its terraces. */
+function level(heightM: Float32Array, section: Record<string, unknown> = {}, currentA?: Float32Array): HeightGround {
+  const recipe = createRecipe({ ground: section });
+  const sample = createSample({ columns: size, rows: size, heightM, biasV: 5.9, ...(currentA ? { currentA } : {}) });
+  return levelGround(sample, recipe.ground, recipe.scan, layerNm * 1e-9).height!;
+}
 const busy = (seed: string) => createScene({ seed, size, layersAt: threeTerraces(size), things: typicalThings(size), tiltNm: 10, bowNm: 2, lineNm: 0.2 });
 
 /** Values plus a form in u, v from 0 to 1 over the map, nanometres. */
@@ -175,7 +180,10 @@ test('a footprint of one row is levelled like any other', () => {
   for (const row of [100, 101]) {
     const inside = new Uint8Array(size * size).fill(1, row * size, (row + 1) * size);
     const sample = createSample({ columns: size, rows: size, heightM: height });
-    const { levelled } = levelHeight(sample.channels[0]!.values, sample.grid, createRecipe({}).ground, inside);
+    const recipe = createRecipe({});
+    const first = firstLevels(sample.channels[0]!.values, sample.grid, recipe.ground, inside);
+    const levels = refineLevels(sample.channels[0]!.values.data, sample.grid, recipe.ground, { start: first, inside, layerM: layerNm * 1e-9 });
+    const { levelled } = levelHeight(sample.channels[0]!.values, sample.grid, recipe.ground, levels, inside);
     for (let c = 0; c < size; c++) assert.ok(Math.abs(levelled.data[row * size + c]!) < 1e-11, `row ${row}, column ${c}: ${levelled.data[row * size + c]}`);
   }
 });

@@ -21,7 +21,7 @@ const size = 192;
 const pitchM = 50e-9;
 const pixelUm2 = 0.05 * 0.05;
 const recipe = createRecipe();
-const ground = (sample: Sample) => levelGround(sample, recipe.ground, recipe.scan);
+const ground = (sample: Sample) => levelGround(sample, recipe.ground, recipe.scan, layerNm * 1e-9);
 const remarks = (found: Ground) => found.warnings.filter(({ code }) => code === 'footprint-proposed').map(({ message }) => message);
 
 type Where = (c: number, r: number) => boolean;
