@@ -61,7 +61,9 @@ const stepHalfPx = 1.5;
 export function findRaised(input: RaisedInput): Raised {
   const { columns, rows, rise, onPlane, log10 } = input;
   const edgeM = input.edgeShare * input.startM;
-  const raised = hysteresis(rise, columns, rows, input.startM, edgeM);
+  // Started by a mean over nine pixels, so that no single noisy one starts a flaw.
+  const smooth = boxMean(rise, columns, rows, 1);
+  const raised = hysteresis(smooth, rise, columns, rows, input.startM, edgeM);
   if (!log10) return { mask: withoutSpecks(raised, columns, rows, input.minPixels), conductingPixels: 0 };
 
   const zone = dilate(raised, columns, rows, reachPx);
@@ -90,10 +92,10 @@ export function findRaised(input: RaisedInput): Raised {
     else if (raised[i] === 1 && rise[i]! > input.startM) conducting[i] = 1;
   }
   decideSaturated(mask, undecided, columns, rows);
-  removeSteps(mask, drop, input);
+  removeSteps(mask, drop, smooth, input);
   // What is left beside a terrace's border does not reach the starting threshold and goes with it.
   const strong = new Uint8Array(zone.length);
-  for (let i = 0; i < strong.length; i++) strong[i] = mask[i] === 1 && rise[i]! > input.startM ? 1 : 0;
+  for (let i = 0; i < strong.length; i++) strong[i] = mask[i] === 1 && smooth[i]! > input.startM ? 1 : 0;
   const final = withoutSpecks(keepTouching(mask, strong, columns, rows), columns, rows, input.minPixels);
   // The flanks of a flaw rise too; only what stands apart from all flaws is a bump of its own.
   const near = dilate(final, columns, rows, reachPx);
@@ -117,8 +119,7 @@ function decideSaturated(mask: Uint8Array, undecided: Uint8Array, columns: numbe
  * Takes mere barrier steps out of the mask: strips of ground too narrow for a plane of their own, whose mean rise is that of one or two layers, and whose
  * current has fallen by as many or is censored where it would have. Changes `mask`.
  */
-function removeSteps(mask: Uint8Array, drop: Float32Array, { columns, rows, rise, floor, layerM, layerDecades }: RaisedInput): void {
-  const smooth = boxMean(rise, columns, rows, 1);
+function removeSteps(mask: Uint8Array, drop: Float32Array, smooth: Float32Array, { columns, rows, rise, floor, layerM, layerDecades }: RaisedInput): void {
   const low = new Uint8Array(mask.length);
   for (let i = 0; i < low.length; i++) if (mask[i] === 1 && smooth[i]! > 0.4 * layerM && smooth[i]! < 2.6 * layerM) low[i] = 1;
   const { labels, count, pixels } = labelComponents(low, columns, rows, 4);
@@ -144,12 +145,15 @@ function removeSteps(mask: Uint8Array, drop: Float32Array, { columns, rows, rise
   for (let i = 0; i < mask.length; i++) if (step[labels[i]!] === 1) mask[i] = 0;
 }
 
-/** Pixels above `low` connected (8) to at least one above `high`. */
-function hysteresis(values: Float32Array, columns: number, rows: number, high: number, low: number): Uint8Array {
+/** Pixels above `low` connected (8) to at least one whose smoothed height is above `high`. */
+function hysteresis(smooth: Float32Array, values: Float32Array, columns: number, rows: number, high: number, low: number): Uint8Array {
   const weak = new Uint8Array(values.length);
-  for (let i = 0; i < weak.length; i++) weak[i] = values[i]! > low ? 1 : 0;
   const strong = new Uint8Array(values.length);
-  for (let i = 0; i < strong.length; i++) strong[i] = values[i]! > high ? 1 : 0;
+  for (let i = 0; i < weak.length; i++) {
+    if (!(values[i]! > low)) continue;
+    weak[i] = 1;
+    if (smooth[i]! > high) strong[i] = 1;
+  }
   return keepTouching(weak, strong, columns, rows);
 }
 

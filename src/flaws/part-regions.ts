@@ -4,7 +4,7 @@ import { labelComponents } from '../grid/label-components.ts';
 import { findDomes } from './find-domes.ts';
 import { findRidges } from './find-ridges.ts';
 import type { RidgeInput } from './find-ridges.ts';
-import { nearestAdmitted } from './local-ground.ts';
+import { dilate, nearestAdmitted } from './local-ground.ts';
 import { partKinds } from './measure.ts';
 import { partByPeaks } from './part-by-peaks.ts';
 import { peelParts } from './peel.ts';
@@ -42,7 +42,8 @@ const mostlyBordered = 0.45;
 export function partRegions(input: PartInput): Parts {
   const { columns, rows, mask } = input;
   const domes = findDomes(input);
-  const ridges = ridgeGround(input);
+  // A fold ends for the eye where it runs under a dome, and a dome has no crest.
+  const ridges = ridgeGround(input, mask.map((value, i) => (domes.labels[i]! > 0 ? 0 : value)));
   const rest = new Uint8Array(mask.length);
   for (let i = 0; i < rest.length; i++) {
     if (domes.labels[i]! > 0) ridges[i] = 0;
@@ -63,9 +64,9 @@ export function partRegions(input: PartInput): Parts {
 }
 
 /** 1 on flawed ground within a fold's own half-width of its crest. Changes `mask` where the foot of a fold goes beyond it. */
-function ridgeGround(input: PartInput): Uint8Array {
+function ridgeGround(input: PartInput, withoutDomes: Uint8Array): Uint8Array {
   const { columns, rows, pitchXM, pitchYM, mask, rise, byHeight } = input;
-  const { crest, widthM } = findRidges(input);
+  const { crest, widthM } = findRidges({ ...input, mask: withoutDomes });
   const ground = new Uint8Array(mask.length);
   if (!crest.includes(1)) return ground;
   const nearest = nearestAdmitted(crest, columns, rows);
@@ -125,18 +126,27 @@ function giveBackSlivers(ridges: Uint8Array, rest: Uint8Array, { columns, rows, 
  */
 function bridgeFolds(ridges: Uint8Array, rest: Uint8Array, { columns, rows }: PartInput): void {
   const { labels, pixels } = labelComponents(rest, columns, rows, 8);
-  const large = Uint8Array.from(labels, (label) => (label > 0 && pixels[label]! >= leastBridged ? 1 : 0));
-  if (!large.includes(1) || !ridges.includes(1)) return;
-  const outside = squaredDistance(large.map((value) => 1 - value), columns, rows, {});
-  const near = Uint8Array.from(outside, (d) => (d <= bridgePx ** 2 ? 1 : 0));
-  const inside = squaredDistance(near, columns, rows, {});
+  const large = new Uint8Array(rest.length);
+  let any = false;
+  for (let i = 0; i < large.length; i++) {
+    if (labels[i]! === 0 || pixels[labels[i]!]! < leastBridged) continue;
+    large[i] = 1;
+    any = true;
+  }
+  if (!any || !ridges.includes(1)) return;
+  // A closing: grown, and what was not reached grown back.
+  const beyond = dilate(large, columns, rows, bridgePx);
+  for (let i = 0; i < beyond.length; i++) beyond[i] = 1 - beyond[i]!;
+  const open = dilate(beyond, columns, rows, bridgePx);
   for (let i = 0; i < ridges.length; i++) {
-    if (ridges[i] === 0 || !(inside[i]! > (bridgePx + 0.5) ** 2)) continue;
+    if (ridges[i] === 0 || open[i] === 1) continue;
     ridges[i] = 0;
     rest[i] = 1;
   }
 }
 
 function distanceToOutside(labels: Uint32Array, { columns, rows, pitchXM, pitchYM }: PartInput): Float32Array {
-  return squaredDistance(Uint8Array.from(labels, (label) => (label > 0 ? 1 : 0)), columns, rows, { pitchX: pitchXM, pitchY: pitchYM });
+  const inside = new Uint8Array(labels.length);
+  for (let i = 0; i < inside.length; i++) if (labels[i]! > 0) inside[i] = 1;
+  return squaredDistance(inside, columns, rows, { pitchX: pitchXM, pitchY: pitchYM });
 }

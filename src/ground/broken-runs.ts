@@ -46,7 +46,10 @@ function markRow(values: Float32Array, marks: Uint8Array, columns: number, rows:
     }
     if (s === 0) agreeing++;
     if (start >= 0 && s !== -sign && agreeing <= mostGap && c - last <= mostUntold && c < columns) continue;
-    if (start >= 0 && last + 1 - start >= rule.minLength) marks.fill(1, r * columns + start, r * columns + last + 1);
+    if (start >= 0 && last + 1 - start >= rule.minLength) {
+      const [from, to] = lengthened(values, columns, rows, r, start, last, rule.noise);
+      marks.fill(1, r * columns + from, r * columns + to + 1);
+    }
     start = s === 0 || s === untold ? -1 : c;
     sign = s;
     last = c;
@@ -54,21 +57,30 @@ function markRow(values: Float32Array, marks: Uint8Array, columns: number, rows:
   }
 }
 
+/** A run goes on at its ends where the lines around it disagree too much to tell, as beside a terrace, and the line itself goes on as it was. */
+function lengthened(values: Float32Array, columns: number, rows: number, r: number, start: number, last: number, noise: number): [number, number] {
+  const goesOn = (c: number, inside: number): boolean =>
+    c >= 0 && c < columns && Math.abs(values[r * columns + c]! - values[r * columns + inside]!) <= 6 * noise && breakSign(values, columns, rows, r, c, noise) === untold;
+  let [from, to] = [start, last];
+  while (start - from < mostUntold && goesOn(from - 1, from)) from--;
+  while (to - last < mostUntold && goesOn(to + 1, to)) to++;
+  return [from, to];
+}
+
 /** +1 or −1 where the pixel stands off to one side of the lines around it, 0 where it agrees with them, `untold` where they disagree themselves. */
 function breakSign(values: Float32Array, columns: number, rows: number, r: number, c: number, noise: number): number {
   const i = r * columns + c;
   const value = values[i]!;
-  const at = (row: number): number => (row >= 0 && row < rows ? values[row * columns + c]! : Number.NaN);
-  const before = at(r - 1);
-  const after = at(r + 1);
+  const before = r > 0 ? values[i - columns]! : Number.NaN;
+  const after = r + 1 < rows ? values[i + columns]! : Number.NaN;
   const least = 6 * noise;
   // Most pixels are settled by the line before and the line after.
   if (Math.abs(value - before) <= least && Math.abs(value - after) <= least) return 0;
   let low: number;
   let high: number;
   if (r >= 2 && r + 2 < rows) {
-    const further = at(r - 2);
-    const beyond = at(r + 2);
+    const further = values[i - 2 * columns]!;
+    const beyond = values[i + 2 * columns]!;
     // The two middle ones of four: of two pairs in order, the larger of the lower ends and the smaller of the upper ends.
     low = Math.max(Math.min(before, after), Math.min(further, beyond));
     high = Math.min(Math.max(before, after), Math.max(further, beyond));
@@ -76,7 +88,8 @@ function breakSign(values: Float32Array, columns: number, rows: number, r: numbe
   } else {
     // Beside the map's border: the two of three that are nearest to each other.
     const side = r < 2 ? 1 : -1;
-    const [p, q, s] = [at(r + side), at(r + 2 * side), r === 1 || r === rows - 2 ? at(r - side) : at(r + 3 * side)].sort((a, b) => a - b) as [number, number, number];
+    const third = r === 1 || r === rows - 2 ? -side : 3 * side;
+    const [p, q, s] = [side, 2 * side, third].map((away) => values[i + away * columns] ?? Number.NaN).sort((a, b) => a - b) as [number, number, number];
     [low, high] = q - p < s - q ? [p, q] : [q, s];
   }
   const off = value - (low + high) / 2;
@@ -85,7 +98,7 @@ function breakSign(values: Float32Array, columns: number, rows: number, r: numbe
   if (!(Math.abs(off) > 4 * (high - low))) return untold;
   if (r >= 3 && r + 3 < rows) {
     // Where two of the four are broken themselves, three lines to either side must bear them out.
-    const six = [before, after, at(r - 2), at(r + 2), at(r - 3), at(r + 3)].sort((a, b) => a - b);
+    const six = [before, after, values[i - 2 * columns]!, values[i + 2 * columns]!, values[i - 3 * columns]!, values[i + 3 * columns]!].sort((a, b) => a - b);
     const wider = value - (six[2]! + six[3]!) / 2;
     if (!(Math.abs(wider) > 4 * (six[3]! - six[2]!) && wider * off > 0)) return untold;
   }
@@ -118,7 +131,8 @@ export function markSpikes(values: Float32Array, marks: Uint8Array, columns: num
 
 /**
  * Fills marked or missing pixels from the nearest unmarked pixels above and below in the same column, when these are at
- * most three lines apart and agree within a tolerance; otherwise from left and right, for gaps of one or two pixels. Beside the map's upper and
+ * most three lines apart and agree within a tolerance; otherwise from left and right, for gaps of one or two pixels. A marked pixel between lines that disagree
+ * takes the nearer line's value. Beside the map's upper and
  * lower border a marked pixel takes what lies up to two lines inwards.
  *
  * @param tolerance for missing pixels; @param markedTolerance for marked ones, the same when absent.
@@ -136,6 +150,7 @@ export function fillFromNeighbours(values: Float32Array, marks: Uint8Array, colu
       const within = marks[i] === 1 ? markedTolerance : tolerance;
       let value = between(valueAt, r, c, 1, 0, within);
       if (Number.isNaN(value)) value = between(valueAt, r, c, 0, 1, within);
+      if (Number.isNaN(value) && marks[i] === 1) value = oneSide(valueAt, r, c);
       if (Number.isNaN(value) && marks[i] === 1) value = inwards(valueAt, r, c, rows);
       values[i] = value;
       if (!Number.isNaN(value)) filled[i] = 1;
@@ -155,6 +170,16 @@ function between(valueAt: (r: number, c: number) => number, r: number, c: number
   const b = valueAt(r + ahead * dr, c + ahead * dc);
   if (Math.abs(a - b) > tolerance) return Number.NaN;
   return (a * ahead + b * back) / (back + ahead);
+}
+
+/** Where both sides are usable but disagree, as where a run crosses a border, the nearer one, the one before when both are as near; NaN where a side is missing. */
+function oneSide(valueAt: (r: number, c: number) => number, r: number, c: number): number {
+  const before = [valueAt(r - 1, c), valueAt(r - 2, c)];
+  const after = [valueAt(r + 1, c), valueAt(r + 2, c)];
+  const b = before.findIndex((value) => value === value);
+  const a = after.findIndex((value) => value === value);
+  if (a < 0 || b < 0) return Number.NaN;
+  return b <= a ? before[b]! : after[a]!;
 }
 
 /** Beside the border, the nearest usable pixel inwards, two lines away at most; NaN elsewhere. */

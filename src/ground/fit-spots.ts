@@ -61,21 +61,18 @@ function spotAt(height: Float32Array, { columns, rows, pitchXM, pitchYM }: Grid,
   const column = Math.floor(xM / pitchXM);
   const row = rows - 1 - Math.floor(yM / pitchYM);
   if (!(column >= 0 && column < columns && row >= 0 && row < rows)) return undefined;
+  const valueAt = (c: number, r: number): number => (c >= 0 && c < columns && r >= 0 && r < rows ? height[r * columns + c]! - lines[r]! : Number.NaN);
   const found = new Float64Array((2 * radiusPx + 1) ** 2);
   let count = 0;
-  let sumC = 0;
-  let sumR = 0;
-  for (let r = Math.max(0, row - radiusPx); r <= Math.min(rows - 1, row + radiusPx); r++) {
-    for (let c = Math.max(0, column - radiusPx); c <= Math.min(columns - 1, column + radiusPx); c++) {
-      const value = height[r * columns + c]! - lines[r]!;
-      if ((c - column) ** 2 + (r - row) ** 2 > radiusPx ** 2 || Number.isNaN(value)) continue;
+  for (let dy = -radiusPx; dy <= radiusPx; dy++) {
+    for (let dx = -radiusPx; dx <= radiusPx; dx++) {
+      const value = valueAt(column + dx, row + dy);
+      // Only with its opposite, so that beside the border and beside missing ground a slope does not move the median.
+      if (dx * dx + dy * dy > radiusPx ** 2 || Number.isNaN(value) || Number.isNaN(valueAt(column - dx, row - dy))) continue;
       found[count++] = value;
-      sumC += c;
-      sumR += r;
     }
   }
-  // Beside the border and beside missing ground the median belongs to the middle of what was measured.
-  return count < leastPixels ? undefined : { column: sumC / count, row: sumR / count, valueM: medianInPlace(found, count) };
+  return count < leastPixels ? undefined : { column, row, valueM: medianInPlace(found, count) };
 }
 
 const termsOf = (order: number): number => ((order + 1) * (order + 2)) / 2;
@@ -90,7 +87,9 @@ function padded(coefficients: Float64Array, order: number): Form {
 /** Least squares; undefined where the places of the spots leave a term open. */
 function solve(spots: readonly Spot[], { columns, rows }: Grid, order: number): Float64Array | undefined {
   const terms = termsOf(order);
-  const basis = spots.map((spot) => productsAt(spot, columns, rows, order));
+  const px = axisTable(columns, order);
+  const py = axisTable(rows, order);
+  const basis = spots.map((spot) => productsAt(spot, px, py, order));
   const normal = new Float64Array(terms * terms);
   const right = new Float64Array(terms);
   for (const [k, products] of basis.entries()) {
@@ -102,23 +101,11 @@ function solve(spots: readonly Spot[], { columns, rows }: Grid, order: number): 
   return isDetermined(basis, terms) ? solveBand(normal, terms - 1, right) : undefined;
 }
 
-/** Legendre products at a place between pixels, from the tables of the pixels beside it: the median of a plane lies where its middle does. */
-function productsAt({ column, row }: Spot, columns: number, rows: number, order: number): Float64Array {
-  const px = between(axisTable(columns, order), column, order, columns);
-  const py = between(axisTable(rows, order), row, order, rows);
+function productsAt({ column, row }: Spot, px: Float64Array, py: Float64Array, order: number): Float64Array {
   const out = new Float64Array(termsOf(order));
   let k = 0;
-  for (let total = 0; total <= order; total++) for (let j = 0; j <= total; j++) out[k++] = px[total - j]! * py[j]!;
+  for (let total = 0; total <= order; total++) for (let j = 0; j <= total; j++) out[k++] = px[column * (order + 1) + total - j]! * py[row * (order + 1) + j]!;
   return out;
-}
-
-function between(table: Float64Array, at: number, order: number, length: number): Float64Array {
-  const first = Math.min(Math.max(0, length - 2), Math.floor(at));
-  const share = at - first;
-  return Float64Array.from({ length: order + 1 }, (_, n) => {
-    const here = table[first * (order + 1) + n]!;
-    return share === 0 ? here : here + share * (table[(first + 1) * (order + 1) + n]! - here);
-  });
 }
 
 /** Whether each term has something over the spots that those before it have not (Gram–Schmidt, twice for rounding). */

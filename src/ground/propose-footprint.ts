@@ -120,7 +120,7 @@ function slopeForm(values: Float32Array, columns: number, rows: number, powers: 
   const n = powers.length;
   const lagC = Math.max(2, Math.round(columns / 32));
   const lagR = Math.max(2, Math.round(rows / 32));
-  const step = Math.max(1, Math.floor(Math.sqrt((columns * rows) / 20_000)));
+  const step = Math.max(1, Math.floor(Math.sqrt((columns * rows) / 8000)));
   const basis: number[] = [];
   const differences: number[] = [];
   const add = (r0: number, c0: number, r1: number, c1: number) => {

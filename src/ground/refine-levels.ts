@@ -35,6 +35,8 @@ export interface RefineHelp {
 const rounds = 3;
 /** A line with less ground than this takes its offset from the lines beside it. */
 const leastInLine = 24;
+/** Columns that are enough to refine by; of maps with twice as many or more, every second, third … is taken. */
+const enoughColumns = 480;
 /** Mark of pixels in no segment. */
 const inNone = 2;
 
@@ -49,13 +51,39 @@ const inNone = 2;
  *
  * @param height metres, row-major, NaN missing.
  */
-export function refineLevels(height: Float32Array, { columns, rows, pitchXM, pitchYM }: Grid, section: GroundSection, help: RefineHelp): RefinedLevels {
-  const { inside } = help;
+export function refineLevels(height: Float32Array, grid: Grid, section: GroundSection, help: RefineHelp): RefinedLevels {
+  const { inside, planes } = help;
   const raw = inside ? height.map((value, i) => (inside[i] === 1 ? value : Number.NaN)) : height;
-  const known = help.planes ? help.planes.map((value) => (value === value ? value : 0)) : new Float32Array(raw.length);
+  const every = Math.max(1, Math.floor(grid.columns / enoughColumns));
+  if (every === 1) {
+    const found = refine(raw, grid, section, help, planes);
+    dropFilms(found.plane, found.terrace, grid.columns);
+    return found;
+  }
+  // A line's offset and a terrace's plane are as well known from some hundred columns; only the result is needed at every pixel.
+  const narrow = { columns: Math.floor(grid.columns / every), rows: grid.rows, pitchXM: grid.pitchXM * every, pitchYM: grid.pitchYM };
+  const narrowPlanes = planes && columnsOf(planes, grid, every);
+  const found = refine(columnsOf(raw, grid, every), narrow, section, help, narrowPlanes);
+  const { plane, terrace } = widened(found, narrowPlanes, planes, grid, every);
+  const flat = raw.slice();
+  takeAway(flat, plane, found.lines, grid.columns, grid.rows);
+  const form = fitForm(flat, grid.columns, grid.rows, section.order, (i) => found.ground[Math.floor(i / grid.columns) * narrow.columns + Math.min(narrow.columns - 1, Math.floor((i % grid.columns) / every))] === 1);
+  dropFilms(plane, terrace, grid.columns);
+  return { form, lines: found.lines, plane };
+}
+
+interface Found extends RefinedLevels {
+  readonly terrace: Uint8Array;
+  readonly ground: Uint8Array;
+}
+
+function refine(raw: Float32Array, grid: Grid, section: GroundSection, help: RefineHelp, planes: Float32Array | undefined): Found {
+  const { columns, rows } = grid;
+  const known = planes ? planes.map((value) => (value === value ? value : 0)) : new Float32Array(raw.length);
   const plane = known.slice();
   const level = new Uint16Array(raw.length);
   const terrace = new Uint8Array(raw.length);
+  let ground: Uint8Array = new Uint8Array(raw.length);
   let levels = 0;
   let { form, lines } = help.start;
   for (let round = 0; round < rounds; round++) {
@@ -63,7 +91,7 @@ export function refineLevels(height: Float32Array, { columns, rows, pitchXM, pit
     // Twice, because the first look is through lines and a form that lean on the steps.
     if (round < 2) {
       const over = round === 0 ? rest : overKnown(raw, form, lines, known, columns, rows);
-      const found = levelSegments(over, { columns, rows, pitchXM, pitchYM }, help.layerM, help.planes);
+      const found = levelSegments(over, grid, help.layerM, planes);
       levels = 0;
       const numbers = Uint16Array.from(found.levelM, (height) => (height === height ? 0 : ++levels));
       for (let i = 0; i < plane.length; i++) {
@@ -72,12 +100,12 @@ export function refineLevels(height: Float32Array, { columns, rows, pitchXM, pit
         level[i] = numbers[segment]!;
         terrace[i] = segment === 0 ? inNone : found.terrace[segment]!;
         // Neither current nor segment: nothing is known of this ground.
-        const lost = segment === 0 && !(help.planes && help.planes[i] === help.planes[i]);
+        const lost = segment === 0 && !(planes && planes[i] === planes[i]);
         plane[i] = lost ? Number.NaN : known[i]! + (height === height ? height : 0);
         rest[i] = over[i]! - (plane[i]! - known[i]!);
       }
     }
-    const ground = groundOf(rest, columns, rows, level, levels);
+    ground = groundOf(rest, columns, rows, level, levels);
     const change = solvePlanes({ rest, ground, columns, rows, order: section.order, lines: section.lines, level, levels });
     const moved = subtractForm(rest, change.form, columns, rows);
     for (let i = 0; i < plane.length; i++) {
@@ -88,10 +116,41 @@ export function refineLevels(height: Float32Array, { columns, rows, pitchXM, pit
     if (section.lines) lines = lineMedians(moved, groundOf(moved, columns, rows, level, 0), columns, rows, lines);
     const flat = raw.slice();
     takeAway(flat, plane, lines, columns, rows);
-    form = fitForm(flat, columns, rows, section.order, (i) => ground[i] === 1);
+    const admitted = ground;
+    form = fitForm(flat, columns, rows, section.order, (i) => admitted[i] === 1);
   }
-  dropFilms(plane, terrace, columns);
-  return { form, lines, plane };
+  return { form, lines, plane, terrace, ground };
+}
+
+/** Every n-th column, from the middle of each group of n. */
+function columnsOf(values: Float32Array, { columns, rows }: Grid, every: number): Float32Array {
+  const narrow = Math.floor(columns / every);
+  const out = new Float32Array(narrow * rows);
+  for (let r = 0, k = 0; r < rows; r++) for (let c = 0; c < narrow; c++, k++) out[k] = values[r * columns + c * every + (every >> 1)]!;
+  return out;
+}
+
+/** Planes and marks of every pixel from those of every n-th column: a pixel takes over by how much the plane beside it was moved, where both are known to the current or neither is. */
+function widened({ plane, terrace }: Found, narrowPlanes: Float32Array | undefined, planes: Float32Array | undefined, { columns, rows }: Grid, every: number): { plane: Float32Array; terrace: Uint8Array } {
+  const narrow = Math.floor(columns / every);
+  const out = new Float32Array(columns * rows);
+  const marks = new Uint8Array(out.length);
+  for (let r = 0, i = 0; r < rows; r++) {
+    for (let c = 0; c < columns; c++, i++) {
+      const k = r * narrow + Math.min(narrow - 1, Math.floor(c / every));
+      const own = planes ? planes[i]! : Number.NaN;
+      const beside = narrowPlanes ? narrowPlanes[k]! : Number.NaN;
+      const known = own === own;
+      if (known !== (beside === beside)) {
+        out[i] = own;
+        marks[i] = inNone;
+        continue;
+      }
+      out[i] = known ? own + (plane[k]! - beside) : plane[k]!;
+      marks[i] = terrace[k]!;
+    }
+  }
+  return { plane: out, terrace: marks };
 }
 
 /** Films lie on planes too, and help to level; but they are no terraces: their planes, and those of the same height that reach out from them to their rims, become unknown. */
@@ -127,7 +186,7 @@ function takeAway(values: Float32Array, plane: Float32Array, lines: Float64Array
  * common value there.
  */
 function groundOf(rest: Float32Array, columns: number, rows: number, level: Uint16Array, levels: number): Uint8Array {
-  const sample = subSample(rest, columns, rows, sampleStep(presentCount(rest)));
+  const sample = subSample(rest, columns, rows, 2 * sampleStep(presentCount(rest)));
   const centre = mostCommon(sample);
   const scatter = lowerScatter(sample, centre);
   const centres = new Float64Array(levels + 1).fill(centre);

@@ -12,7 +12,7 @@ export interface Registration {
 }
 
 /** Pixels compared at most: those where the reference changes. */
-const mostPixels = 20_000;
+const mostPixels = 8000;
 /** Fewer say nothing. */
 const leastPixels = 60;
 /** Of them are used to find the whole pixels. */
