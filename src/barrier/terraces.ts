@@ -3,6 +3,8 @@ import type { CurrentGround } from '../ground/ground.ts';
 import { heightPerGap } from '../ground/gap-height.ts';
 import { quantifiedOverFloor } from '../ground/current-limits.ts';
 import { measureLadder } from '../ground/ladder.ts';
+import type { LadderHeight } from '../ground/ladder.ts';
+import { settleTerraces } from './settle-terraces.ts';
 import { layersPerGap } from './layers-per-gap.ts';
 import { median } from '../stats/median.ts';
 import { scaledMad } from '../stats/mad.ts';
@@ -29,27 +31,19 @@ export interface MeasuredRung {
   readonly bound: 'exact' | 'at-most' | 'at-least';
 }
 
-/** What the height says about the terraces. */
-export interface TerraceHeight {
-  /** Metres, NaN missing. */
-  readonly levelled: Float32Array;
-  readonly columns: number;
-  readonly layerM: number;
-}
-
 /**
- * Places the ground on a ladder of whole layers. Where the map shows two terraces or more, boundaries lie half-way between neighbouring
+ * Places the ground on a ladder of whole layers: with a height map by stretches of terrace (`settleTerraces`), else pixel by pixel. Where the map shows two terraces or more, boundaries lie half-way between neighbouring
  * peaks and the step is the map's own (`layersPerGap` decides whether layers in between are missing from the map); otherwise the step is `fallback`. Saturated ground is placed on the first rung that would
  * saturate (a bound: at most this thick), floor ground on the first rung that would vanish (at least this thick).
  *
  * @param ground admits ground of the footprint free of flaws.
  */
-export function findTerraces(current: CurrentGround, ground: (index: number) => boolean, fallback: { stepDecades: number; from: 'model' | 'assumed' }, height?: TerraceHeight): Terraces {
+export function findTerraces(current: CurrentGround, ground: (index: number) => boolean, fallback: { stepDecades: number; from: 'model' | 'assumed' }, height?: LadderHeight): Terraces {
   const log10 = current.log10.data;
   const saturated = current.saturated.data;
   const floor = current.floor.data;
   const quantified = Math.log10(current.floorA * quantifiedOverFloor);
-  const ladder = measureLadder(log10, (i) => ground(i) && saturated[i] === 0 && log10[i]! >= quantified);
+  const ladder = measureLadder(log10, (i) => ground(i) && saturated[i] === 0 && log10[i]! >= quantified, height);
   const measured = ladder.stepDecades !== undefined;
   const modelStepDecades = fallback.from === 'model' ? fallback.stepDecades : undefined;
   const heightLayers = measured && height ? heightPerGap(height.levelled, log10, height.columns, ladder.peaks, ladder.stepDecades!, ground) / height.layerM : undefined;
@@ -61,11 +55,17 @@ export function findTerraces(current: CurrentGround, ground: (index: number) => 
   const thickest = Math.min(127, firstBeyond(centres, stepDecades, Math.log10(current.floorA), 1));
 
   const steps = new Int8Array(log10.length).fill(unknownStep);
+  const exact = new Uint8Array(log10.length);
   for (let i = 0; i < steps.length; i++) {
     const value = log10[i]!;
     if (Number.isNaN(value) || !ground(i)) continue;
+    if (saturated[i] === 0 && floor[i] === 0) exact[i] = 1;
+    steps[i] = saturated[i] === 1 ? thinnest : thickest;
+  }
+  const settled = height && settleTerraces({ ...height, log10, measured: exact, stepDecades, place });
+  for (let i = 0; i < steps.length; i++) {
     // A single noisy pixel must not leave the ladder beyond its censored ends.
-    steps[i] = saturated[i] === 1 ? thinnest : floor[i] === 1 ? thickest : Math.min(thickest, Math.max(thinnest, place(value)));
+    if (exact[i] === 1) steps[i] = Math.min(thickest, Math.max(thinnest, settled ? settled[i]! : place(log10[i]!)));
   }
   return {
     steps,

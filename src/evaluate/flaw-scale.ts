@@ -24,6 +24,7 @@ function layerWorth(ground: Ground, recipe: Recipe): Pick<FlawScale, 'layerDecad
   const current = ground.current;
   const assumed = { layerDecades: assumedDecades, layerFrom: 'assumed' } as const;
   if (!current) return assumed;
+  if (ground.layers?.ladder.stepDecades !== undefined) return { layerDecades: ground.layers.ladder.stepDecades, layerFrom: 'map' };
   const levelled = ground.height?.levelled.data;
   const least = Math.log10(current.floorA * quantifiedOverFloor);
   const log10 = current.log10.data;

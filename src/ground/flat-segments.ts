@@ -1,4 +1,5 @@
 /** Stretches of flat ground: each lies on one plane, whichever that is. */
+import { squaredDistance } from '../grid/distance.ts';
 import { labelComponents } from '../grid/label-components.ts';
 import type { Components } from '../grid/label-components.ts';
 
@@ -8,6 +9,8 @@ const smoothPx = 2;
 const asidePx = 3;
 /** It changes by less than this part of a layer in between; the step of one layer and the flank of a feature change by more. */
 const flatPart = 0.6;
+/** Half-width of a throat too narrow to hold two parts of a terrace together, pixels. */
+const throatPx = 1.5;
 /** Ground is looked for in this range around the most common height, metres: nine layers down, twelve up. */
 const range = { lowM: -3e-9, highM: 4e-9 } as const;
 
@@ -19,19 +22,41 @@ const range = { lowM: -3e-9, highM: 4e-9 } as const;
  */
 export function flatSegments(rest: Float32Array, columns: number, rows: number, layerM: number): Components {
   const smooth = boxMean(rest, columns, rows, smoothPx);
-  const least = flatPart * layerM;
-  const flat = new Uint8Array(rest.length);
+  const flat = flatPlaces(smooth, columns, rows, flatPart * layerM);
+  for (let i = 0; i < flat.length; i++) if (!(smooth[i]! > range.lowM && smooth[i]! < range.highM)) flat[i] = 0;
+  return labelComponents(flat, columns, rows, 4);
+}
+
+/**
+ * The same where neither the height nor the log current shows a border: each stretch is one terrace, whichever.
+ *
+ * @param height metres, NaN missing; @param log10 log10 of the current, NaN missing; @param use 1 on flawless ground.
+ * @param layerM height of one layer; @param layerDecades what it costs.
+ */
+export function terraceSegments(height: Float32Array, log10: Float32Array, use: Uint8Array, columns: number, rows: number, layerM: number, layerDecades: number): Components {
+  // What a flaw shows beside the ground must not blur the ground's own border.
+  const only = (map: Float32Array): Float32Array => map.map((value, i) => (use[i] === 1 ? value : Number.NaN));
+  const flat = flatPlaces(boxMean(only(height), columns, rows, smoothPx), columns, rows, flatPart * layerM);
+  const even = flatPlaces(boxMean(only(log10), columns, rows, smoothPx), columns, rows, flatPart * layerDecades);
+  for (let i = 0; i < flat.length; i++) flat[i] = flat[i]! & even[i]! & use[i]!;
+  // Stretches hang together by more than a pixel or two.
+  const inside = squaredDistance(flat, columns, rows, {});
+  for (let i = 0; i < flat.length; i++) flat[i] = inside[i]! > throatPx ** 2 ? 1 : 0;
+  return labelComponents(flat, columns, rows, 4);
+}
+
+/** 1 where a smoothed map changes by less than `least` between the places to either side, along both axes. */
+function flatPlaces(smooth: Float32Array, columns: number, rows: number, least: number): Uint8Array {
+  const flat = new Uint8Array(smooth.length);
   for (let r = 0, i = 0; r < rows; r++) {
     const up = Math.max(0, r - asidePx) * columns;
     const down = Math.min(rows - 1, r + asidePx) * columns;
     for (let c = 0; c < columns; c++, i++) {
-      const value = smooth[i]!;
-      if (!(value > range.lowM && value < range.highM)) continue;
       const along = Math.abs(smooth[i - c + Math.min(columns - 1, c + asidePx)]! - smooth[i - c + Math.max(0, c - asidePx)]!);
       if (along < least && Math.abs(smooth[down + c]! - smooth[up + c]!) < least) flat[i] = 1;
     }
   }
-  return labelComponents(flat, columns, rows, 4);
+  return flat;
 }
 
 /** Mean of the finite values in a square of half-width `half` around each pixel, cut off at borders; NaN where there is none. */

@@ -1,12 +1,13 @@
 /** Height that one gap of the layer ladder adds. */
 import { median } from '../stats/median.ts';
-import type { LadderPeak } from './ladder.ts';
 
 /** Part of the step within which a pixel counts to a terrace's height. */
 const peakPart = 0.25;
 /** Distance between the pixels of a pair: beyond the width of a border, within reach of any drift. */
 const apartPx = 6;
 const leastPairs = 30;
+/** A height this near to whole layers, in layers, counts them. */
+const wholePart = 0.35;
 
 /**
  * Height that one gap of the ladder adds, metres: median over pairs of pixels a few columns apart on one line that stand on different terraces. Near
@@ -15,7 +16,7 @@ const leastPairs = 30;
  * @param levelled metres, NaN missing; @param log10 log10 current; @param use admits flawless ground. NaN with fewer than `leastPairs` pairs.
  */
 export function heightPerGap(
-  levelled: Float32Array, log10: Float32Array, columns: number, peaks: readonly LadderPeak[], stepDecades: number, use: (index: number) => boolean,
+  levelled: Float32Array, log10: Float32Array, columns: number, peaks: readonly { readonly log10: number; readonly rung: number }[], stepDecades: number, use: (index: number) => boolean,
 ): number {
   const place = (i: number): number => {
     for (const peak of peaks) if (Math.abs(log10[i]! - peak.log10) < peakPart * stepDecades) return use(i) ? peak.rung : Number.NaN;
@@ -31,4 +32,34 @@ export function heightPerGap(
     if (Number.isFinite(step)) steps.push(step);
   }
   return steps.length < leastPairs ? Number.NaN : median(steps);
+}
+
+/**
+ * Layers between each peak and the next by the height, from such pairs; undefined where too few pairs cross that border or the height is not near to whole
+ * layers.
+ *
+ * @param peaks by falling current, at least two.
+ */
+export function layersBetween(
+  levelled: Float32Array, log10: Float32Array, columns: number, peaks: readonly number[], layerM: number, use: (index: number) => boolean,
+): (number | undefined)[] {
+  const reach = peaks.map((peak, k) => peakPart * Math.min(k > 0 ? peaks[k - 1]! - peak : Number.POSITIVE_INFINITY, k + 1 < peaks.length ? peak - peaks[k + 1]! : Number.POSITIVE_INFINITY));
+  const place = (i: number): number => {
+    for (let k = 0; k < peaks.length; k++) if (Math.abs(log10[i]! - peaks[k]!) < reach[k]!) return use(i) ? k : -1;
+    return -1;
+  };
+  const least = Math.min(...reach);
+  const steps: number[][] = peaks.slice(1).map(() => []);
+  for (let i = 0; i + apartPx < levelled.length; i++) {
+    if (i % columns >= columns - apartPx || !(Math.abs(log10[i + apartPx]! - log10[i]!) > least)) continue;
+    const here = place(i);
+    const there = place(i + apartPx);
+    if (here < 0 || there < 0 || Math.abs(there - here) !== 1) continue;
+    const up = (levelled[i + apartPx]! - levelled[i]!) * (there - here);
+    if (up === up) steps[Math.min(here, there)]!.push(up);
+  }
+  return steps.map((list) => {
+    const layers = list.length < leastPairs ? Number.NaN : median(list) / layerM;
+    return Math.abs(layers - Math.round(layers)) < wholePart ? Math.round(layers) : undefined;
+  });
 }

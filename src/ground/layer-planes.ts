@@ -28,7 +28,7 @@ export function layerPlanes(current: CurrentGround, rough: Float32Array, columns
   const { data: saturated } = current.saturated;
   const { data: floor } = current.floor;
   const use = (i: number): boolean => saturated[i] === 0 && floor[i] === 0 && log10[i]! >= least && !(rough[i]! > flatM);
-  const ladder = measureLadder(log10, use);
+  const ladder = measureLadder(log10, use, { levelled: rough, columns, layerM });
   if (ladder.peaks.length === 0) return undefined;
   const step = ladder.stepDecades;
   const measuredM = step === undefined ? Number.NaN : heightPerGap(rough, log10, columns, ladder.peaks, step, use);

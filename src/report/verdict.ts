@@ -1,6 +1,7 @@
 /** verdict.json: the appraisal in numbers, for scripts. Its layout is frozen by `version`. */
 import type { Barrier } from '../barrier/barrier.ts';
 import type { Flaw, FlawCause, FlawThresholds, Flaws } from '../flaws/flaws.ts';
+import type { LevelsFound } from '../ground/describe-levels.ts';
 import type { CurrentGround, FootprintProposal, Ground } from '../ground/ground.ts';
 import type { Ledger } from '../ledger/ledger.ts';
 import type { Sample } from '../read/sample.ts';
@@ -62,9 +63,22 @@ function mapPart({ grid }: Sample) {
 
 function groundPart({ height, current, returned }: Ground) {
   return {
-    height: height && { noiseNm: toNm(height.noiseM), repairedPixels: height.repairedPixels, tiltNm: toNm(height.tiltM) },
+    height: height && { noiseNm: toNm(height.noiseM), repairedPixels: height.repairedPixels, tiltNm: toNm(height.tiltM), levels: height.levels && levelsPart(height.levels) },
     current: current && currentPart(current),
     returnScan: returned && returnPart(returned, current?.unit),
+  };
+}
+
+/** What levelling took out: the form's linear part and the rest of it peak to peak, and the offsets of lines. */
+function levelsPart(levels: LevelsFound) {
+  return {
+    formFrom: levels.formFrom,
+    formOrder: levels.order,
+    spotsUsed: levels.spotsUsed,
+    linearNm: toNm(levels.tiltM),
+    curvedNm: toNm(levels.bowM),
+    lineRmsNm: levels.lineRmsM === undefined ? undefined : toNm(levels.lineRmsM),
+    planes: levels.planesM.length,
   };
 }
 

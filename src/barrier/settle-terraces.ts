@@ -1,0 +1,64 @@
+/** One layer count for each stretch of a terrace: its current varies with the contact, its layers do not. */
+import { nearestAdmitted } from '../flaws/local-ground.ts';
+import { terraceSegments } from '../ground/flat-segments.ts';
+import { medianInPlace } from '../stats/median.ts';
+import { quantile } from '../stats/quantile.ts';
+
+export interface SettleInput {
+  /** Metres, NaN missing. */
+  readonly levelled: Float32Array;
+  readonly log10: Float32Array;
+  readonly columns: number;
+  /** 1 on flawless ground whose current is measured, neither saturated nor at the floor. */
+  readonly measured: Uint8Array;
+  readonly layerM: number;
+  readonly stepDecades: number;
+  /** Nearest rung to a log current. */
+  readonly place: (log10: number) => number;
+}
+
+/** Stretches of fewer pixels are no better known than their pixels. */
+const leastPixels = 60;
+/** Of each stretch about so many decide. */
+const sampled = 2000;
+/** A pixel further than this part of the step from its stretch's median is not of the same terrace, whatever leaks between them. */
+const withinPart = 0.75;
+/** Nine tenths of one terrace's currents lie within this part of the step: scatter of the contact, where two terraces would differ by all of it. */
+const oneTerrace = 0.95;
+
+/**
+ * Rung of every measured pixel. Stretches of ground on which neither height nor current shows a border take the rung of their median current. Between
+ * stretches, on borders, a pixel is counted from the nearest stretch by its own current against the current there, because the contact varies
+ * slowly. Without any stretch a pixel takes the rung nearest to its own current.
+ */
+export function settleTerraces({ levelled, log10, columns, measured, layerM, stepDecades, place }: SettleInput): Int16Array {
+  const rows = log10.length / columns;
+  const { labels, count, pixels } = terraceSegments(levelled, log10, measured, columns, rows, layerM, stepDecades);
+  const lists = Array.from({ length: count + 1 }, (_, label) => new Float64Array(label === 0 || pixels[label]! < leastPixels ? 0 : Math.ceil(pixels[label]! / Math.ceil(pixels[label]! / sampled))));
+  const seen = new Uint32Array(count + 1);
+  for (let i = 0; i < labels.length; i++) {
+    const label = labels[i]!;
+    const list = lists[label]!;
+    if (list.length === 0) continue;
+    const every = Math.ceil(pixels[label]! / sampled);
+    if (seen[label]! % every === 0) list[seen[label]! / every] = log10[i]!;
+    seen[label]!++;
+  }
+  const medians = lists.map((list) => {
+    const [low, high] = [0.05, 0.95].map((share) => quantile(list, share)) as [number, number];
+    // Two terraces that leak into each other are no stretch.
+    return list.length > 0 && high - low < oneTerrace * stepDecades ? medianInPlace(list, list.length) : Number.NaN;
+  });
+  const rungs = medians.map((median) => (Number.isNaN(median) ? 0 : place(median)));
+  const settled = new Uint8Array(labels.length);
+  const reach = withinPart * stepDecades;
+  for (let i = 0; i < labels.length; i++) if (Math.abs(log10[i]! - medians[labels[i]!]!) < reach) settled[i] = 1;
+  const nearest = nearestAdmitted(settled, columns, rows);
+  const out = new Int16Array(labels.length);
+  for (let i = 0; i < out.length; i++) {
+    if (measured[i] === 0) continue;
+    const from = nearest[i]!;
+    out[i] = from < 0 ? place(log10[i]!) : rungs[labels[from]!]! + (from === i ? 0 : Math.round((log10[from]! - log10[i]!) / stepDecades));
+  }
+  return out;
+}
