@@ -29,6 +29,8 @@ const shapePixels = 12;
 const domeFits = 0.92;
 /** Less than this, and no single shape is there. */
 const unevenShare = 0.5;
+/** Less than this, and it is rubble, however peaked. */
+const rubbleShare = 0.3;
 /** The same for `Region.topShare`: 0.55 for a paraboloid, 0.74 for 1 − ρ⁴. */
 const narrowToWide = 0.645;
 /** Bubbles of smaller height over radius are not known: adhesion is too strong (evidence, not a rule). */
@@ -80,8 +82,9 @@ export function classifyRaised(region: Region): Classified {
   // Three looks at the same question, each with its own noise: how full the shape is, how wide its top, and how well a paraboloid explains it.
   const looks = shaped ? clamp((region.topShare - narrowToWide) / 0.1) + 1.5 * clamp((domeFits - region.domeShare) / 0.06) : 0;
   const plateau = clamp((fullness - domeToPatch) / 0.14) + looks + (heightToRadius < flattest ? 0.5 : 0);
-  const isDome = plateau < 0 && !pointed;
-  const margin = pointed ? (coneToDome - fullness) / 0.09 : Math.abs(plateau) / 2;
+  const rubble = shaped && region.domeShare < rubbleShare;
+  const isDome = plateau < 0 && !pointed && !rubble;
+  const margin = pointed ? (coneToDome - fullness) / 0.09 : rubble ? 1 - region.domeShare / rubbleShare : Math.abs(plateau) / 2;
   const confidence = sure(shaped ? margin : margin / 2);
   const unsure = confidence < unsureBelow ? (isDome ? ', could be residue' : ', could be a bubble') : '';
   if (isDome) {

@@ -94,15 +94,19 @@ function breakSign(values: Float32Array, columns: number, rows: number, r: numbe
   }
   const off = value - (low + high) / 2;
   // Missing lines leave nothing to compare with.
-  if (!(Math.abs(off) > least)) return off === off ? 0 : untold;
-  if (!(Math.abs(off) > 4 * (high - low))) return untold;
+  if (!(Math.abs(off) > least) && high - low <= least) return off === off ? 0 : untold;
+  const agreed = Math.abs(off) > 4 * (high - low);
   if (r >= 3 && r + 3 < rows) {
-    // Where two of the four are broken themselves, three lines to either side must bear them out.
+    // Where lines beside it are broken themselves, three lines to either side must bear it out.
     const six = [before, after, values[i - 2 * columns]!, values[i + 2 * columns]!, values[i - 3 * columns]!, values[i + 3 * columns]!].sort((a, b) => a - b);
-    const wider = value - (six[2]! + six[3]!) / 2;
-    if (!(Math.abs(wider) > 4 * (six[3]! - six[2]!) && wider * off > 0)) return untold;
+    const middle = (six[2]! + six[3]!) / 2;
+    const wider = value - middle;
+    if (!(Math.abs(wider) > Math.max(least, 4 * (six[3]! - six[2]!)))) return untold;
+    // The crest of a ridge stands off six lines too; but then both lines beside it do.
+    if (agreed ? wider * off > 0 : Math.abs(before - middle) <= least || Math.abs(after - middle) <= least) return Math.sign(wider);
+    return untold;
   }
-  return Math.sign(off);
+  return agreed ? Math.sign(off) : untold;
 }
 
 /**
@@ -131,7 +135,7 @@ export function markSpikes(values: Float32Array, marks: Uint8Array, columns: num
 
 /**
  * Fills marked or missing pixels from the nearest unmarked pixels above and below in the same column, when these are at
- * most three lines apart and agree within a tolerance; otherwise from left and right, for gaps of one or two pixels. A marked pixel between lines that disagree
+ * most three lines apart (four for marked ones) and agree within a tolerance; otherwise from left and right, for gaps of one or two pixels. A marked pixel between lines that disagree
  * takes the nearer line's value. Beside the map's upper and
  * lower border a marked pixel takes what lies up to two lines inwards.
  *
@@ -148,8 +152,8 @@ export function fillFromNeighbours(values: Float32Array, marks: Uint8Array, colu
       const i = r * columns + c;
       if (marks[i] === 0 && !Number.isNaN(values[i]!)) continue;
       const within = marks[i] === 1 ? markedTolerance : tolerance;
-      let value = between(valueAt, r, c, 1, 0, within);
-      if (Number.isNaN(value)) value = between(valueAt, r, c, 0, 1, within);
+      let value = between(valueAt, r, c, 1, 0, within, marks[i] === 1 ? 4 : 3);
+      if (Number.isNaN(value)) value = between(valueAt, r, c, 0, 1, within, 3);
       if (Number.isNaN(value) && marks[i] === 1) value = oneSide(valueAt, r, c);
       if (Number.isNaN(value) && marks[i] === 1) value = inwards(valueAt, r, c, rows);
       values[i] = value;
@@ -159,13 +163,13 @@ export function fillFromNeighbours(values: Float32Array, marks: Uint8Array, colu
   return filled;
 }
 
-/** Linear interpolation between the nearest usable pixels on both sides, at most three steps apart; NaN if they disagree. */
-function between(valueAt: (r: number, c: number) => number, r: number, c: number, dr: number, dc: number, tolerance: number): number {
+/** Linear interpolation between the nearest usable pixels on both sides, at most `apart` steps apart; NaN if they disagree. */
+function between(valueAt: (r: number, c: number) => number, r: number, c: number, dr: number, dc: number, tolerance: number, apart: number): number {
   let back = 1;
-  while (back <= 2 && Number.isNaN(valueAt(r - back * dr, c - back * dc))) back++;
+  while (back < apart && Number.isNaN(valueAt(r - back * dr, c - back * dc))) back++;
   let ahead = 1;
-  while (ahead <= 2 && Number.isNaN(valueAt(r + ahead * dr, c + ahead * dc))) ahead++;
-  if (back > 2 || ahead > 2 || back + ahead > 3) return Number.NaN;
+  while (ahead < apart && Number.isNaN(valueAt(r + ahead * dr, c + ahead * dc))) ahead++;
+  if (back + ahead > apart) return Number.NaN;
   const a = valueAt(r - back * dr, c - back * dc);
   const b = valueAt(r + ahead * dr, c + ahead * dc);
   if (Math.abs(a - b) > tolerance) return Number.NaN;

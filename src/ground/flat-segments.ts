@@ -45,7 +45,7 @@ export function terraceSegments(height: Float32Array, log10: Float32Array, use: 
   return labelComponents(flat, columns, rows, 4);
 }
 
-/** 1 where a smoothed map changes by less than `least` between the places to either side, along both axes. */
+/** 1 where a smoothed map does not change by `least` or more between the places to either side, along both axes. */
 function flatPlaces(smooth: Float32Array, columns: number, rows: number, least: number): Uint8Array {
   const flat = new Uint8Array(smooth.length);
   for (let r = 0, i = 0; r < rows; r++) {
@@ -53,7 +53,8 @@ function flatPlaces(smooth: Float32Array, columns: number, rows: number, least: 
     const down = Math.min(rows - 1, r + asidePx) * columns;
     for (let c = 0; c < columns; c++, i++) {
       const along = Math.abs(smooth[i - c + Math.min(columns - 1, c + asidePx)]! - smooth[i - c + Math.max(0, c - asidePx)]!);
-      if (along < least && Math.abs(smooth[down + c]! - smooth[up + c]!) < least) flat[i] = 1;
+      // What is missing beside it says nothing against a place.
+      if (smooth[i] === smooth[i] && !(along >= least) && !(Math.abs(smooth[down + c]! - smooth[up + c]!) >= least)) flat[i] = 1;
     }
   }
   return flat;

@@ -23,6 +23,9 @@ export interface LadderPeak {
 const smoothDecades = 0.05;
 /** Two peaks on one level are one terrace when they lie nearer than this part of the widest gap. */
 const sameTerracePart = 0.75;
+/** A small peak that lies more layers than this from its neighbour is a film. */
+const mostLayers = 3;
+const filmShare = 0.05;
 /** Peaks with less than a hundredth of the ground are no terraces worth a rung. */
 const rule = { bin: 0.01, smooth: smoothDecades, leastShare: 0.01, valleyShare: 0.8 } as const;
 
@@ -38,7 +41,7 @@ export interface LadderHeight {
  * Finds the terraces as peaks of the histogram of log current and the common step between them.
  *
  * How many layers lie between two neighbouring peaks the height tells where enough borders between them are seen; two peaks on one level are one
- * terrace whose contact varies. Where it does not tell, the step is the largest one of which all gaps are whole multiples to within a fifth of it. The
+ * terrace whose contact varies, and a small one many layers away is a film. Where it does not tell, the step is the largest one of which all gaps are whole multiples to within a fifth of it. The
  * step is then refined by least squares of peak position over layer number, weighted by share. Equal numbers of layers in every gap
  * count as one here: what the current alone would not show is not decided by the ladder.
  *
@@ -46,9 +49,15 @@ export interface LadderHeight {
  */
 export function measureLadder(log10: Float32Array, use: (index: number) => boolean, height?: LadderHeight): LadderFit {
   let found = histogramPeaks(log10, use, rule).map(({ at, share }) => ({ log10: at, share })).reverse();
-  if (found.length < 2) return { peaks: found.map((peak) => ({ ...peak, rung: 0 })) };
   for (;;) {
+    if (found.length < 2) return { peaks: found.map((peak) => ({ ...peak, rung: 0 })) };
     const layers = height ? layersBetween(height.levelled, log10, height.columns, found.map((peak) => peak.log10), height.layerM, use) : found.slice(1).map(() => undefined);
+    const film = layers.findIndex((n, k) => n !== undefined && Math.abs(n) > mostLayers && Math.min(found[k]!.share, found[k + 1]!.share) < filmShare);
+    if (film >= 0) {
+      const drop = found[film]!.share < found[film + 1]!.share ? film : film + 1;
+      found = found.filter((_, k) => k !== drop);
+      continue;
+    }
     const widest = Math.max(...found.slice(1).map((peak, k) => found[k]!.log10 - peak.log10));
     const level = layers.findIndex((n, k) => n === 0 && found[k]!.log10 - found[k + 1]!.log10 < sameTerracePart * widest);
     if (level < 0) return fitStep(found, layers);
@@ -58,15 +67,21 @@ export function measureLadder(log10: Float32Array, use: (index: number) => boole
   }
 }
 
-/** Layers in each gap: by the height where it tells every gap, otherwise by the largest common step. */
+/** Layers in each gap: by the height, and where it does not tell by the step that follows from where it does; without any height by the largest common step. */
 function layersOfGaps(gaps: readonly number[], byHeight: readonly (number | undefined)[]): number[] {
-  if (byHeight.every((n) => n !== undefined && n > 0)) {
-    const layers = byHeight as number[];
-    return layers.every((n) => n === layers[0]) ? layers.map(() => 1) : [...layers];
-  }
+  let decades = 0;
+  let layers = 0;
+  gaps.forEach((gap, k) => {
+    const n = byHeight[k];
+    if (n === undefined || !(n > 0)) return;
+    decades += gap;
+    layers += n;
+  });
+  const told = layers > 0 ? decades / layers : undefined;
   const candidates = gaps.flatMap((gap) => [gap, gap / 2, gap / 3]).sort((a, b) => b - a);
-  const step = candidates.find((s) => gaps.every((gap) => Math.abs(gap / s - Math.max(1, Math.round(gap / s))) < 0.2)) ?? Math.min(...gaps);
-  return gaps.map((gap) => Math.max(1, Math.round(gap / step)));
+  const step = told ?? candidates.find((s) => gaps.every((gap) => Math.abs(gap / s - Math.max(1, Math.round(gap / s))) < 0.2)) ?? Math.min(...gaps);
+  const counts = gaps.map((gap, k) => (byHeight[k] !== undefined && byHeight[k]! > 0 ? byHeight[k]! : Math.max(1, Math.round(gap / step))));
+  return counts.every((n) => n === counts[0]) ? counts.map(() => 1) : counts;
 }
 
 function fitStep(found: readonly { log10: number; share: number }[], byHeight: readonly (number | undefined)[]): LadderFit {

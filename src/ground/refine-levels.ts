@@ -37,6 +37,8 @@ const rounds = 3;
 const leastInLine = 24;
 /** Columns that are enough to refine by; of maps with twice as many or more, every second, third … is taken. */
 const enoughColumns = 480;
+/** A noiseless map still has rounding: less scatter than this is none, metres. */
+const leastScatterM = 1e-13;
 /** Mark of pixels in no segment. */
 const inNone = 2;
 
@@ -188,7 +190,7 @@ function takeAway(values: Float32Array, plane: Float32Array, lines: Float64Array
 function groundOf(rest: Float32Array, columns: number, rows: number, level: Uint16Array, levels: number): Uint8Array {
   const sample = subSample(rest, columns, rows, 2 * sampleStep(presentCount(rest)));
   const centre = mostCommon(sample);
-  const scatter = lowerScatter(sample, centre);
+  const scatter = Math.max(leastScatterM, lowerScatter(sample, centre));
   const centres = new Float64Array(levels + 1).fill(centre);
   if (levels > 0) {
     const lists: number[][] = Array.from({ length: levels + 1 }, () => []);

@@ -13,6 +13,10 @@ const layerM = 0.333e-9;
 const barrier = { heightEv: 2.5, massRatio: 0.5 };
 /** The recipe's range of densities that glow, A/m². */
 const glows = [100, 30_000] as const;
+/** Less is not told from the floor well enough to carry a band. */
+const quantifiedA = 7e-13;
+/** The contact's area is known to a decade: half of one either way, and a third more for the variation within a terrace. */
+const areaSpread = 1.33 * Math.sqrt(10);
 const layerCounts = [9, 10, 11, 12, 13, 14, 15] as const;
 
 export interface LayerCurrents {
@@ -27,9 +31,9 @@ export interface LayerCurrents {
 }
 
 /**
- * Currents of a scene. With a factor per layer the most common terrace carries near 0.1 nA. The density of such a current through the default contact lies
- * far above what glows, and that of a terrace near the floor could lie in that range: draws in which a terrace measurable over the floor would are drawn
- * again, so that "the most common terrace" is the reference by every reading.
+ * Currents of a scene. With a factor per layer the most common terrace carries near 0.1 nA. Its density lies far above what glows at any contact area
+ * that the recipe thinks possible; that of a terrace a little over the floor may not, and then the ledger would take that one as its reference. Draws with
+ * such a terrace are drawn again, so that "the most common terrace" is the reference by every reading.
  */
 export function layerCurrents(random: Random, kind: Kind): LayerCurrents {
   if (kind.perLayer === 'model') {
@@ -50,7 +54,7 @@ export function layerCurrents(random: Random, kind: Kind): LayerCurrents {
     const decades = Math.log10(low) + (Math.log10(high) - Math.log10(low)) * random.uniform();
     const middle = -10 + 0.25 * (2 * random.uniform() - 1);
     const probe = (layers: number): number => middle - (layers - reference) * decades;
-    const ambiguous = layerCounts.some((layers) => probe(layers) > Math.log10(2.5e-13) && 10 ** probe(layers) < 1.5 * glows[1] * contactM2);
+    const ambiguous = layerCounts.some((layers) => 10 ** probe(layers) > quantifiedA && 10 ** probe(layers) < areaSpread * glows[1] * contactM2);
     if (!ambiguous) return { probe, device: probe, variationCounts: true, reference };
   }
 }

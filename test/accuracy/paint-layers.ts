@@ -1,7 +1,11 @@
 /** Terraces: borders drawn in nm, each a step of whole layers. */
+import { labelComponents } from '../../src/grid/label-components.ts';
 import type { Random } from '../../src/stats/random.ts';
 import type { PaintGrid } from './paint-grid.ts';
 import { pitchXNm, pitchYNm } from './paint-grid.ts';
+
+/** The recipe's smallest terrace, 0.25 µm², with some room. */
+const leastTerraceNm2 = 0.28e6;
 
 export const layouts = ['stripes', 'blobs', 'wedges'] as const;
 export type Layout = (typeof layouts)[number];
@@ -26,7 +30,43 @@ export function paintLayers(random: Random, grid: PaintGrid, layout: Layout, mos
     }
   }
   const base = mostCommon - commonest(steps);
-  return Uint8Array.from(steps, (step) => Math.min(15, Math.max(9, base + step)));
+  return withoutSlivers(Uint8Array.from(steps, (step) => Math.min(15, Math.max(9, base + step))), grid);
+}
+
+/**
+ * Where borders nearly meet they cut off slivers. By the ledger's rules a bright sliver is a short and a dead one an open spot, not a terrace:
+ * patches (4-connected) smaller than the smallest terrace take the layers of most of their neighbours.
+ */
+function withoutSlivers(layers: Uint8Array, grid: PaintGrid): Uint8Array {
+  const { columns, rows } = grid;
+  const least = leastTerraceNm2 / (pitchXNm(grid) * pitchYNm(grid));
+  for (let pass = 0; pass < 8; pass++) {
+    let small = 0;
+    for (const n of new Set(layers)) {
+      const patches = labelComponents(layers.map((value) => (value === n ? 1 : 0)), columns, rows, 4);
+      const votes = new Map<number, Uint32Array>();
+      for (let i = 0; i < layers.length; i++) {
+        const patch = patches.labels[i]!;
+        if (patch === 0 || patches.pixels[patch]! >= least) continue;
+        const tally = votes.get(patch) ?? new Uint32Array(16);
+        votes.set(patch, tally);
+        for (const k of neighbours(i, columns, rows)) if (layers[k] !== n) tally[layers[k]!]!++;
+      }
+      small += votes.size;
+      const winners = new Map([...votes].map(([patch, tally]) => [patch, tally.indexOf(Math.max(...tally))]));
+      layers.forEach((_, i) => {
+        const winner = winners.get(patches.labels[i]!);
+        if (winner) layers[i] = winner;
+      });
+    }
+    if (small === 0) break;
+  }
+  return layers;
+}
+
+function neighbours(i: number, columns: number, rows: number): number[] {
+  const c = i % columns;
+  return [...(c > 0 ? [i - 1] : []), ...(c < columns - 1 ? [i + 1] : []), ...(i >= columns ? [i - columns] : []), ...(i < columns * (rows - 1) ? [i + columns] : [])];
 }
 
 function commonest(steps: Int8Array): number {

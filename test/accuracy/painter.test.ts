@@ -9,7 +9,7 @@ import { kindOf, kinds, sized } from './paint-kinds.ts';
 import { paintScene } from './paint-scene.ts';
 import { visiblePixels } from './score-scene.ts';
 
-const small = (name: string) => sized(kindOf(name), 0.25);
+const small = (name: string) => sized(kindOf(name), 0.2);
 
 test('the same kind and seed give the same scene to the bit, another seed another one', () => {
   const first = paintScene(small('family'), 'a');
@@ -55,7 +55,7 @@ test('geometry does not depend on the pixel count: twice as many pixels, the sam
 });
 
 test('crowded maps are covered by bubbles on two fifths of their area', () => {
-  const { truth } = paintScene(sized(kindOf('crowded'), 0.6), 'cover');
+  const { truth } = paintScene(sized(kindOf('crowded'), 0.5), 'cover');
   const cover = truth.codes.filter((code) => code === codeOf('bubble')).length / truth.codes.length;
   assert.ok(Math.abs(cover - 0.4) < 0.03, `${cover}`);
 });
