@@ -25,6 +25,12 @@ const leastRadiusPx = 3;
 const directions = 48;
 /** Share of a circle's directions in which the flawed ground ends with it; the two sides of a fold are never more than 0.45 of a circle between them. */
 const leastFree = 0.52;
+/** Less will do, down to this share, for a dome that clearly rises out of what runs through it: by this factor over what lies just outside the circle. */
+const leastFreeIfHigh = 0.33;
+const standsOut = 1.35;
+/** What goes on outside a small circle at this part of its height or more is the same fold, of which the circle is the end; radius in pixels. */
+const goesOnPart = 0.7;
+const smallPx = 6;
 /** Half of the border over which the outline may stray from the circle, pixels. */
 const strayPx = 1.2;
 /** Largest rms deviation from a paraboloid, as a share of its height, beyond the noise. */
@@ -80,13 +86,37 @@ function settle(input: DomeInput, start: { xM: number; yM: number; radiusM: numb
     // Outline crossings along the rays, fitted by a circle (Kåsa, IEEE Trans. Instrum. Meas. IM-25, 8, 1976).
     const edges = Array.from({ length: directions }, (_, k) => edgeAlong(input, xM, yM, radiusM, (2 * Math.PI * k) / directions));
     const known = edges.filter((edge) => edge !== undefined);
-    if (known.length < leastFree * directions) return undefined;
+    if (known.length < leastFreeIfHigh * directions) return undefined;
     const fitted = kasa(known);
     if (!fitted || !(fitted.radiusM > 0.5 * radiusM && fitted.radiusM < 1.6 * radiusM)) return undefined;
     ({ xM, yM, radiusM } = fitted);
   }
   const free = Array.from({ length: directions }, (_, k) => edgeAlong(input, xM, yM, radiusM, (2 * Math.PI * k) / directions) !== undefined);
-  return free.filter(Boolean).length >= leastFree * directions ? { xM, yM, radiusM, free } : undefined;
+  const share = free.filter(Boolean).length / directions;
+  if (share < leastFreeIfHigh) return undefined;
+  const circle = { xM, yM, radiusM, free };
+  const ratio = outsideOverInside(input, circle);
+  if (share < leastFree) return ratio * standsOut <= 1 ? circle : undefined;
+  const small = radiusM < smallPx * Math.max(input.pitchXM, input.pitchYM);
+  return small && share < 0.85 && ratio > goesOnPart ? undefined : circle;
+}
+
+/** Highest rise just outside the circle, in the directions where the flawed ground goes on, over the rise at its centre; 0 where it ends everywhere. */
+function outsideOverInside({ columns, rows, pitchXM, pitchYM, rise }: DomeInput, { xM, yM, radiusM, free }: Circle): number {
+  const at = (x: number, y: number): number => {
+    const c = Math.floor(x / pitchXM);
+    const r = Math.floor(y / pitchYM);
+    return c >= 0 && c < columns && r >= 0 && r < rows ? rise[r * columns + c]! : Number.NaN;
+  };
+  let highest = 0;
+  free.forEach((ends, k) => {
+    if (ends) return;
+    const [ux, uy] = [Math.cos((2 * Math.PI * k) / directions), Math.sin((2 * Math.PI * k) / directions)];
+    const away = radiusM + 1.5 * Math.hypot(ux * pitchXM, uy * pitchYM);
+    const value = at(xM + away * ux, yM + away * uy);
+    if (value > highest) highest = value;
+  });
+  return highest / at(xM, yM);
 }
 
 /** Where the mask ends along a ray, if that is near the circle. */

@@ -13,6 +13,8 @@ const onPlaneM = 0.45e-9;
 const samePlaneM = 0.1e-9;
 /** Ground lends its plane only from where it is this far from other ground, pixels. */
 const coreHalfPx = 2;
+/** The border of a terrace at the floor is no wider than this, pixels (city-block). */
+const besidePx = 9;
 
 export interface OverPlanes {
   /** Height over the plane, metres, NaN missing. */
@@ -43,7 +45,11 @@ export function overPlanes(height: HeightGround, columns: number, rows: number, 
   const nearest = nearestAdmitted(core, columns, rows);
   // The rim of a film passes through the height that its current suggests.
   for (let i = 0; i < onPlane.length; i++) if (onPlane[i] === 1 && !(nearest[i]! >= 0 && Math.abs(plane[nearest[i]!]! - plane[i]!) < samePlaneM)) onPlane[i] = 0;
-  return { over: heights.map((value, i) => value - (Number.isNaN(centre) ? 0 : centre) - (nearest[i]! < 0 ? 0 : plane[nearest[i]!]!)), onPlane };
+  const zero = Number.isNaN(centre) ? 0 : centre;
+  const lent = new Float32Array(nearest.length);
+  for (let i = 0; i < lent.length; i++) lent[i] = nearest[i]! < 0 ? 0 : plane[nearest[i]!]!;
+  if (floor) lendFloorPlanes(lent, heights.map((value) => value - zero), onPlane, core, floor, plane, columns, rows, reach);
+  return { over: heights.map((value, i) => value - zero - lent[i]!), onPlane };
 }
 
 /** 1 on ground well inside a terrace: no place within two pixels lies on another plane or on none. */
@@ -62,6 +68,24 @@ function cores(onPlane: Uint8Array, plane: Float32Array, columns: number, rows: 
   let any = 0;
   for (let i = 0; i < core.length; i++) if (inside[i]! > coreHalfPx ** 2) any = core[i] = 1;
   return any === 1 ? core : onPlane;
+}
+
+/**
+ * Ground at the floor beside a terrace at the floor belongs to that where it lies on its plane: along its border, too narrow to be a segment, the nearest ground
+ * may be a far lower terrace. Changes `lent` and `onPlane`.
+ */
+function lendFloorPlanes(lent: Float32Array, heights: Float32Array, onPlane: Uint8Array, core: Uint8Array, floor: Uint8Array, plane: Float32Array, columns: number, rows: number, reach: number): void {
+  const dark = core.map((value, i) => value & floor[i]!);
+  if (!dark.includes(1)) return;
+  const nearest = nearestAdmitted(dark, columns, rows);
+  for (let i = 0; i < lent.length; i++) {
+    const from = nearest[i]!;
+    if (floor[i] === 0 || onPlane[i] === 1 || from < 0) continue;
+    const away = Math.abs((i % columns) - (from % columns)) + Math.abs(Math.floor(i / columns) - Math.floor(from / columns));
+    if (away > besidePx || !(Math.abs(heights[i]! - plane[from]!) < reach)) continue;
+    lent[i] = plane[from]!;
+    onPlane[i] = 1;
+  }
 }
 
 function dropSmallPatches(onPlane: Uint8Array, floor: Uint8Array, plane: Float32Array, columns: number, rows: number, least: number, layerM: number): void {

@@ -28,7 +28,17 @@ export interface RunRule {
 export function markBrokenRuns(values: Float32Array, columns: number, rows: number, rule: RunRule): Uint8Array {
   const marks = new Uint8Array(values.length);
   for (let r = 0; r < rows; r++) markRow(values, marks, columns, rows, r, rule);
+  markBetween(values, marks, columns, rows, rule.noise);
   return marks;
+}
+
+/** A line between two broken ones is broken too where it stands off the lines beyond them. */
+function markBetween(values: Float32Array, marks: Uint8Array, columns: number, rows: number, noise: number): void {
+  for (let i = 2 * columns; i + 2 * columns < rows * columns; i++) {
+    if (marks[i] === 1 || marks[i - columns] === 0 || marks[i + columns] === 0) continue;
+    const [above, below] = [values[i - 2 * columns]!, values[i + 2 * columns]!];
+    if (Math.abs(above - below) <= 6 * noise && Math.abs(values[i]! - (above + below) / 2) > 6 * noise) marks[i] = 1;
+  }
 }
 
 function markRow(values: Float32Array, marks: Uint8Array, columns: number, rows: number, r: number, rule: RunRule): void {
@@ -103,7 +113,7 @@ function breakSign(values: Float32Array, columns: number, rows: number, r: numbe
     const wider = value - middle;
     if (!(Math.abs(wider) > Math.max(least, 4 * (six[3]! - six[2]!)))) return untold;
     // The crest of a ridge stands off six lines too; but then both lines beside it do.
-    if (agreed ? wider * off > 0 : Math.abs(before - middle) <= least || Math.abs(after - middle) <= least) return Math.sign(wider);
+    if (agreed ? wider * off > 0 : Math.abs(before - middle) <= least / 2 || Math.abs(after - middle) <= least / 2) return Math.sign(wider);
     return untold;
   }
   return agreed ? Math.sign(off) : untold;

@@ -35,7 +35,7 @@ export function heightPerGap(
 }
 
 /**
- * Layers between each peak and the next by the height, from such pairs; undefined where too few pairs cross that border or the height is not near to whole
+ * Layers between each peak and the next by the height, from such pairs; NaN where too few pairs cross that border, undefined where the height is not near to whole
  * layers.
  *
  * @param peaks by falling current, at least two.
@@ -59,7 +59,8 @@ export function layersBetween(
     if (up === up) steps[Math.min(here, there)]!.push(up);
   }
   return steps.map((list) => {
-    const layers = list.length < leastPairs ? Number.NaN : median(list) / layerM;
+    if (list.length < leastPairs) return Number.NaN;
+    const layers = median(list) / layerM;
     return Math.abs(layers - Math.round(layers)) < wholePart ? Math.round(layers) : undefined;
   });
 }

@@ -23,6 +23,8 @@ export interface LadderPeak {
 const smoothDecades = 0.05;
 /** Two peaks on one level are one terrace when they lie nearer than this part of the widest gap. */
 const sameTerracePart = 0.75;
+/** Or this part, where no border between them is seen at all. */
+const borderlessPart = 0.4;
 /** A small peak that lies more layers than this from its neighbour is a film. */
 const mostLayers = 3;
 const filmShare = 0.05;
@@ -59,7 +61,7 @@ export function measureLadder(log10: Float32Array, use: (index: number) => boole
       continue;
     }
     const widest = Math.max(...found.slice(1).map((peak, k) => found[k]!.log10 - peak.log10));
-    const level = layers.findIndex((n, k) => n === 0 && found[k]!.log10 - found[k + 1]!.log10 < sameTerracePart * widest);
+    const level = layers.findIndex((n, k) => n !== undefined && found[k]!.log10 - found[k + 1]!.log10 < (n === 0 ? sameTerracePart : Number.isNaN(n) ? borderlessPart : 0) * widest);
     if (level < 0) return fitStep(found, layers);
     const [a, b] = [found[level]!, found[level + 1]!];
     const share = a.share + b.share;

@@ -27,7 +27,29 @@ export function firstLevels(height: ScalarMap, { columns, rows }: Grid, section:
   const form = fitGroundForm(raw, columns, rows, section.order);
   if (!section.lines) return { form, lines: new Float64Array(rows) };
   const values = subtractForm(raw, form, columns, rows);
-  return { form, lines: lineOffsets(values, columns, rows, groundTest(values, columns, rows)) };
+  const isGround = groundTest(values, columns, rows);
+  if (!linesOff(values, isGround, columns, rows)) return { form, lines: lineOffsets(values, columns, rows, isGround) };
+  // Lines that jump by more than the scatter are no ground by this test: they are brought near first, by all of their pixels.
+  const coarse = lineOffsets(values, columns, rows, () => true);
+  for (let r = 0, i = 0; r < rows; r++) for (let c = 0; c < columns; c++, i++) values[i]! -= coarse[r]!;
+  const fine = lineOffsets(values, columns, rows, groundTest(values, columns, rows));
+  return { form, lines: coarse.map((offset, r) => offset + fine[r]!) };
+}
+
+/** Whether some lines hold hardly any ground, although they are measured. */
+function linesOff(values: Float32Array, isGround: (index: number) => boolean, columns: number, rows: number): boolean {
+  const step = Math.max(1, Math.floor(columns / 64));
+  for (let r = 0; r < rows; r++) {
+    let [present, ground] = [0, 0];
+    for (let c = r % step; c < columns; c += step) {
+      const i = r * columns + c;
+      if (values[i] !== values[i]) continue;
+      present++;
+      if (isGround(i)) ground++;
+    }
+    if (present >= 8 && ground < 0.15 * present) return true;
+  }
+  return false;
 }
 
 /** Height without form and line offsets, metres. */

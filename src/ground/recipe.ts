@@ -19,7 +19,7 @@ export const groundSection = section({
     title: 'Form order', description: 'Highest total order of the polynomial removed from the height: 1 tilt, 2 tilt and bow.',
   }),
   lines: flagField(true, { title: 'Line offsets', description: 'Bring scan lines to a common height by their differences on undisturbed ground, which terraces survive.' }),
-  repair: flagField(true, { title: 'Repair', description: 'Fill spikes and broken runs of one or two lines from agreeing neighbours.' }),
+  repair: flagField(true, { title: 'Repair', description: 'Fill spikes and broken runs of one to three lines from agreeing neighbours.' }),
   wear: flagField(true, { title: 'Tip wear', description: 'Undo a slow loss of conductance along the slow axis when it is told from real structure.' }),
   offsetA: optionalNumberField({}, {
     title: 'Current offset', unit: 'A', description: 'What the current channel reads where no current flows, with the file’s sign.', absent: 'measured where a flaw blocks, off the sample, or from the noise peak',

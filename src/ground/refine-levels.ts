@@ -95,6 +95,8 @@ function refine(raw: Float32Array, grid: Grid, section: GroundSection, help: Ref
       const over = round === 0 ? rest : overKnown(raw, form, lines, known, columns, rows);
       const found = levelSegments(over, grid, help.layerM, planes);
       levels = 0;
+      // With neither a segment nor a current all of the map is taken for one plane.
+      const told = planes !== undefined || found.levelM.length > 1;
       const numbers = Uint16Array.from(found.levelM, (height) => (height === height ? 0 : ++levels));
       for (let i = 0; i < plane.length; i++) {
         const segment = found.segment[i]!;
@@ -102,7 +104,7 @@ function refine(raw: Float32Array, grid: Grid, section: GroundSection, help: Ref
         level[i] = numbers[segment]!;
         terrace[i] = segment === 0 ? inNone : found.terrace[segment]!;
         // Neither current nor segment: nothing is known of this ground.
-        const lost = segment === 0 && !(planes && planes[i] === planes[i]);
+        const lost = segment === 0 && told && !(planes && planes[i] === planes[i]);
         plane[i] = lost ? Number.NaN : known[i]! + (height === height ? height : 0);
         rest[i] = over[i]! - (plane[i]! - known[i]!);
       }
