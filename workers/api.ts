@@ -4,19 +4,14 @@
  *
  * Errors arrive as `ComputeError` with the code and detail of the problem. Lengths and areas carry their unit in the name.
  */
+import type { FlawCause, FlawEntry, LedgerEntry, MapName, RecipeData, SampleSummary, ThresholdsInForce } from './api-summary.ts';
+
+export * from './api-summary.ts';
 
 /** A file on offer: its bytes, or a browser's File, which the worker reads itself. */
 export interface SourceFile {
   readonly name: string;
   readonly content: Uint8Array<ArrayBuffer> | Blob;
-}
-
-/** A recipe as plain JSON; the computation checks it and fills in defaults. */
-export type RecipeData = Readonly<Record<string, unknown>>;
-
-export interface Remark {
-  readonly code: string;
-  readonly message: string;
 }
 
 /** What can be told about an input before it is appraised. */
@@ -32,110 +27,6 @@ export interface OpenReply {
   readonly samples: readonly OpenedSample[];
   readonly skipped: readonly { readonly name: string; readonly reason: string }[];
   readonly failed: readonly { readonly name: string; readonly message: string }[];
-}
-
-export interface LedgerEntry {
-  readonly code: number;
-  readonly cause: string;
-  readonly areaUm2: number;
-  readonly pixels: number;
-  readonly share: number;
-  readonly assessed: boolean;
-}
-
-export interface FlawEntry {
-  readonly flaw: number;
-  readonly cause: string;
-  readonly confidence: number;
-  readonly reason: string;
-  readonly xUm: number;
-  readonly yUm: number;
-  readonly areaUm2: number;
-  readonly diameterUm: number;
-  /** Absent without a height map. */
-  readonly peakNm?: number;
-  readonly heightToRadius?: number;
-  /** A person said what it is. */
-  readonly byHand?: true;
-  /** A point well inside it, by which corrections name it. In the lists of summaries only. */
-  readonly insideUm?: readonly [x: number, y: number];
-}
-
-/** What a flaw can be. */
-export const flawCauses = ['bubble', 'residue', 'wrinkle', 'short', 'open'] as const;
-export type FlawCause = (typeof flawCauses)[number];
-
-type PointUm = readonly [x: number, y: number];
-
-/** One correction by hand, as the list `corrections` of a recipe holds it: places in µm from the map's lower-left corner, never numbers of flaws. */
-export type Correction =
-  | { readonly kind: 'reclassify'; readonly xUm: number; readonly yUm: number; readonly cause: FlawCause }
-  | { readonly kind: 'dismiss'; readonly xUm: number; readonly yUm: number }
-  | { readonly kind: 'merge' | 'split'; readonly pointsUm: readonly PointUm[] }
-  | { readonly kind: 'paint'; readonly pointsUm: readonly PointUm[]; readonly widthUm: number; readonly cause: FlawCause }
-  | { readonly kind: 'erase'; readonly pointsUm: readonly PointUm[]; readonly widthUm: number }
-  | { readonly kind: 'polygon'; readonly pointsUm: readonly PointUm[]; readonly cause: FlawCause | 'none' };
-
-/** Maps that a picture, a point or a cut can be asked of. `raw…` are as the file has them. */
-export const mapNames = ['height', 'current', 'layers', 'thickness', 'glow', 'rawHeight', 'rawCurrent'] as const;
-export type MapName = (typeof mapNames)[number];
-
-export interface MapInfo {
-  readonly name: MapName;
-  /** Unit of the values that pictures and points speak in; empty for pure numbers. */
-  readonly unit: string;
-  /** Values that leave out the extreme half per cent on both sides: good limits for a first picture. */
-  readonly low: number;
-  readonly high: number;
-  /** Smallest and largest value. */
-  readonly least: number;
-  readonly most: number;
-  /** Logarithmic scale is natural (currents). */
-  readonly log: boolean;
-}
-
-/** Everything about an appraised sample except its maps. */
-export interface SampleSummary {
-  readonly id: string;
-  readonly name: string;
-  readonly verdict: string;
-  readonly surface: 'barrier' | 'stack';
-  readonly columns: number;
-  readonly rows: number;
-  readonly widthUm: number;
-  readonly heightUm: number;
-  readonly footprintUm2: number;
-  readonly ledger: readonly LedgerEntry[];
-  readonly usable: {
-    readonly areaUm2: number; readonly share: number; readonly low95Um2: number; readonly high95Um2: number; readonly largestPatchUm2: number;
-    readonly knownToGlow: boolean; readonly meaning: 'usable' | 'flaw-free';
-  };
-  readonly repairedUm2: number;
-  readonly height?: { readonly noiseNm: number; readonly tiltNm: number; readonly repairedPixels: number };
-  readonly current?: {
-    /** `A`, or `relative`: then the values ending in A are in the file's own unit. */
-    readonly unit: string; readonly biasV?: number; readonly offsetA: number; readonly noiseA: number; readonly floorA: number; readonly saturationA?: number;
-    readonly saturatedPixels: number; readonly repairedPixels: number; readonly wearDecades: number;
-    /** Whether the wear is a loss large enough to be told from the barrier; smaller ones, and gains, are not. */
-    readonly wearTold: boolean;
-  };
-  readonly ladder?: {
-    readonly stepDecades: number; readonly stepSeDecades: number; readonly modelStepDecades?: number; readonly from: string;
-    readonly rungs: readonly { readonly step: number; readonly layers?: number; readonly areaUm2: number; readonly medianLog10: number; readonly bound: string }[];
-  };
-  readonly reference?: { readonly layers?: number; readonly thicknessNm?: number; readonly medianA: number; readonly areaUm2: number; readonly shareOfUnflawed: number };
-  readonly device?: { readonly biasV: number; readonly proposed: boolean; readonly medianNaPerUm2: number; readonly low95NaPerUm2: number; readonly high95NaPerUm2: number };
-  /** Absent without a current: shorts do not show in height. */
-  readonly shorts?: { readonly seen: number; readonly expectedMissed: number; readonly crossedShare: number };
-  readonly flaws: readonly FlawEntry[];
-  /** The recipe's corrections by hand in words, in their order. */
-  readonly corrections: readonly string[];
-  readonly maps: readonly MapInfo[];
-  readonly remarks: readonly Remark[];
-  /** Complete recipe as applied. */
-  readonly recipe: RecipeData;
-  readonly sources: readonly { readonly name: string; readonly sha256: string; readonly bytes: number }[];
-  readonly timings: Readonly<Record<string, number>>;
 }
 
 /** Part of a map in pixels (fractions allowed), drawn into a picture of `width` × `height`. */
@@ -155,6 +46,8 @@ export interface PictureRequest {
   readonly causes: 'none' | 'all' | readonly number[];
   /** Outline one flaw. */
   readonly flaw?: number;
+  /** Mark the pixels that were repaired in the map. */
+  readonly repaired?: boolean;
   /** Size of a hatch's line in picture pixels: the screen's pixel ratio. */
   readonly pixelRatio: number;
 }
@@ -164,6 +57,24 @@ export interface Picture {
   readonly width: number;
   readonly height: number;
   readonly rgba: Uint8ClampedArray<ArrayBuffer>;
+}
+
+/** A recipe to be looked at while a handle moves. Its sections `scan` and `ground` do not count: the ground is that of the last appraisal. */
+export interface PreviewRequest {
+  readonly id: string;
+  readonly recipe: RecipeData;
+  /** The part of the map on show. */
+  readonly picture?: PictureRequest;
+}
+
+/** Near what the recipe would give, from every `everyPx`-th pixel in each direction; not to be kept. */
+export interface Preview {
+  readonly everyPx: number;
+  readonly ledger: readonly LedgerEntry[];
+  readonly usableUm2: number;
+  readonly flaws: Readonly<Record<FlawCause, number>>;
+  readonly thresholds?: ThresholdsInForce;
+  readonly picture?: Picture;
 }
 
 export interface PointValues {
@@ -249,6 +160,8 @@ export interface Compute {
   appraise(run: number, id: string, recipe: RecipeData, onStage?: OnStage): Promise<SampleSummary>;
   abort(run: number): Promise<void>;
   picture(request: PictureRequest): Promise<Picture>;
+  /** A quick look at a recipe; changes nothing of what the other calls answer. */
+  preview(request: PreviewRequest): Promise<Preview>;
   point(id: string, xUm: number, yUm: number): Promise<PointValues>;
   /** Values along a cut, NaN where missing. */
   cut(request: CutRequest): Promise<Float32Array<ArrayBuffer>>;

@@ -90,6 +90,14 @@ export class Appraiser {
     return sample.again;
   }
 
+  /** The appraisal on show, and a recipe checked that keeps to its ground. */
+  async previewed(id: string, recipe: RecipeData): Promise<{ readonly appraised: Appraised; readonly recipe: Recipe }> {
+    const full = checked(recipe);
+    const appraised = await this.appraised(id);
+    const { scan, ground } = this.sample(id).recipe ?? full;
+    return { appraised, recipe: { ...full, scan, ground } };
+  }
+
   private async madeAgain(id: string, sample: OpenSample): Promise<Appraised> {
     const { recipe } = sample;
     if (!recipe) throw failure('sample-not-appraised', sample.offer.name);

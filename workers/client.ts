@@ -88,6 +88,7 @@ export function createPool(options: PoolOptions = {}): ComputePool {
       runs.get(run)?.abort(run, options.patienceMs ?? 5000);
     },
     picture: async (request) => home(request.id).call((remote) => remote.picture(request), request.id),
+    preview: async (request) => home(request.id).call((remote) => remote.preview(request), request.id),
     point: async (id, xUm, yUm) => home(id).call((remote) => remote.point(id, xUm, yUm), id),
     cut: async (request) => home(request.id).call((remote) => remote.cut(request), request.id),
     histogram: async (request) => home(request.id).call((remote) => remote.histogram(request), request.id),

@@ -9,6 +9,7 @@ import { factsOf } from './facts.ts';
 import type { LocalCompute, Offers } from './local-compute.ts';
 import { offersOf } from './offers.ts';
 import { drawPicture } from './picture.ts';
+import { preview } from './preview.ts';
 import { cutValues, histogramOf, pointValues } from './readings.ts';
 import { summaryOf } from './summary.ts';
 import { thisApp } from './this-app.ts';
@@ -53,6 +54,10 @@ export function createCompute(options: ComputeOptions = {}): LocalCompute {
     appraise: guarded(async (run, id, recipe, onStage) => summaryOf(id, await appraiser.carry(run, id, recipe, onStage))),
     abort: guarded(async (run) => appraiser.abort(run)),
     picture: guarded(async (request) => drawPicture(await appraiser.appraised(request.id), request)),
+    preview: guarded(async (request) => {
+      const { appraised, recipe } = await appraiser.previewed(request.id, request.recipe);
+      return preview(appraised, recipe, request);
+    }),
     point: guarded(async (id, xUm, yUm) => pointValues(await appraiser.appraised(id), xUm, yUm)),
     cut: guarded(async (request) => cutValues(await appraiser.appraised(request.id), request)),
     histogram: guarded(async (request) => histogramOf(await appraiser.appraised(request.id), request)),

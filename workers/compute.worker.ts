@@ -47,6 +47,7 @@ const api: WorkerApi = {
   appraise: (run, id, recipe, onStage?: RemoteListener) => answer(released(compute.appraise(run, id, recipe, onStage && ((progress) => void onStage(progress))), onStage)),
   abort: (run) => answer(compute.abort(run)),
   picture: (request) => answer(compute.picture(request), ({ rgba }) => buffer(rgba)),
+  preview: (request) => answer(compute.preview(request), ({ picture }) => (picture ? buffer(picture.rgba) : [])),
   point: (id, xUm, yUm) => answer(compute.point(id, xUm, yUm)),
   cut: (request) => answer(compute.cut(request), buffer),
   histogram: (request) => answer(compute.histogram(request), buffer),

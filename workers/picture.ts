@@ -7,6 +7,7 @@ import { failure } from './errors.ts';
 import type { MapView } from './map-view.ts';
 import { viewFor } from './map-view.ts';
 import { drawCauses } from './picture-causes.ts';
+import { drawMarks } from './picture-marks.ts';
 import { drawOutline } from './picture-outline.ts';
 import { areaOf } from './picture-area.ts';
 import type { Area } from './picture-area.ts';
@@ -21,16 +22,25 @@ const scale = Uint8Array.from(Array.from({ length: cividisLength }, (_, index) =
  * present under it (of amperes, not of their logarithm). Values outside the limits take the end colours; missing ones are slate; beside the map the
  * picture is transparent. On a logarithmic scale values that are not positive are drawn as lowest.
  *
+ * @param codes causes to draw instead of the appraisal's own.
  * @throws ComputeError `map-absent`, `request-value`.
  */
-export function drawPicture(appraised: Appraised, request: PictureRequest): Picture {
+export function drawPicture(appraised: Appraised, request: PictureRequest, codes: Uint8Array = appraised.ledger.codes.data): Picture {
   const view = viewFor(appraised, request.map);
   const area = areaOf(request, view.columns, view.rows);
   const rgba = coloursOf(view, area, request);
   const { labels } = appraised.flaws;
-  if (request.causes !== 'none') drawCauses(rgba, appraised.ledger.codes.data, view.columns, area, request);
+  if (request.causes !== 'none') drawCauses(rgba, codes, view.columns, area, request);
+  if (request.repaired === true) drawMarks(rgba, repairedOf(appraised, request.map), view.columns, area);
   if (request.flaw !== undefined) drawOutline(rgba, labels.data, view.columns, area, request.flaw, request.pixelRatio);
   return { width: area.width, height: area.height, rgba };
+}
+
+/** What was repaired of the map's own quantity; of both for maps that follow from both. */
+function repairedOf({ ground: { height, current } }: Appraised, map: PictureRequest['map']): readonly Uint8Array[] {
+  const ofHeight = height && map !== 'current' && map !== 'rawCurrent' ? [height.repaired.data] : [];
+  const ofCurrent = current && map !== 'height' && map !== 'rawHeight' ? [current.repaired.data] : [];
+  return [...ofHeight, ...ofCurrent];
 }
 
 function coloursOf(view: MapView, area: Area, { low, high, log }: PictureRequest): Uint8ClampedArray<ArrayBuffer> {

@@ -1,12 +1,13 @@
 /** Everything about an appraised sample except its maps, rounded as in the result files. */
+import { alternativeOf } from '../src/flaws/alternative.ts';
 import { correctionWords } from '../src/flaws/correction-words.ts';
 import type { Flaw } from '../src/flaws/flaws.ts';
 import { innerPoints } from '../src/flaws/inner-points.ts';
-import { leastWearDecades } from '../src/ground/wear.ts';
 import type { Appraised } from '../src/report/appraised.ts';
 import { rounded, toNaPerUm2, toNm, toUm, toUm2 } from '../src/report/units.ts';
 import type { FlawEntry, RecipeData, SampleSummary } from './api.ts';
 import { mapInfos } from './map-view.ts';
+import { groundParts, textureOf, thresholdsIn } from './summary-ground.ts';
 
 export function summaryOf(id: string, appraised: Appraised): SampleSummary {
   const { sample, recipe, ledger, warnings } = appraised;
@@ -25,6 +26,8 @@ export function summaryOf(id: string, appraised: Appraised): SampleSummary {
     },
     repairedUm2: toUm2(ledger.repairedM2),
     ...groundParts(appraised),
+    ...(appraised.texture ? { texture: textureOf(appraised.texture) } : {}),
+    ...(appraised.flaws.thresholds ? { thresholds: thresholdsIn(appraised.flaws.thresholds) } : {}),
     ...barrierParts(appraised),
     ...(missedShorts ? { shorts: { seen: missedShorts.seen, expectedMissed: rounded(missedShorts.expectedMissed), crossedShare: rounded(missedShorts.crossedShare) } } : {}),
     flaws: flawList(appraised),
@@ -43,27 +46,14 @@ function flawList({ flaws, sample }: Appraised): FlawEntry[] {
 }
 
 export function flawEntry(flaw: Flaw): FlawEntry {
+  const other = alternativeOf(flaw);
   return {
     flaw: flaw.flaw, cause: flaw.cause, confidence: rounded(flaw.confidence), reason: flaw.reason,
     xUm: toUm(flaw.xM), yUm: toUm(flaw.yM), areaUm2: toUm2(flaw.areaM2), diameterUm: toUm(flaw.diameterM),
     ...(Number.isFinite(flaw.peakM) ? { peakNm: toNm(flaw.peakM) } : {}),
     ...(Number.isFinite(flaw.heightToRadius) ? { heightToRadius: rounded(flaw.heightToRadius) } : {}),
+    ...(other ? { other } : {}),
     ...(flaw.byHand ? { byHand: flaw.byHand } : {}),
-  };
-}
-
-function groundParts({ ground: { height, current } }: Appraised): Pick<SampleSummary, 'height' | 'current'> {
-  return {
-    ...(height ? { height: { noiseNm: toNm(height.noiseM), tiltNm: toNm(height.tiltM), repairedPixels: height.repairedPixels } } : {}),
-    ...(current ? {
-      current: {
-        unit: current.unit, ...(current.biasV === undefined ? {} : { biasV: current.biasV }),
-        offsetA: rounded(current.offsetA), noiseA: rounded(current.noiseA), floorA: rounded(current.floorA),
-        ...(current.saturationA === undefined ? {} : { saturationA: rounded(current.saturationA) }),
-        saturatedPixels: current.saturatedPixels, repairedPixels: current.repairedPixels, wearDecades: rounded(current.wearDecades),
-        wearTold: current.wearDecades >= leastWearDecades,
-      },
-    } : {}),
   };
 }
 

@@ -1,5 +1,5 @@
 /** What crosses between page and worker. */
-import type { ComputeFacts, CutRequest, HistogramRequest, OnStage, Picture, PictureRequest, PointValues, RecipeData, SampleSummary, SourceFile } from './api.ts';
+import type { ComputeFacts, CutRequest, HistogramRequest, OnStage, Picture, PictureRequest, PointValues, Preview, PreviewRequest, RecipeData, SampleSummary, SourceFile } from './api.ts';
 import { ComputeError } from './api.ts';
 import type { Offers, SampleOffer } from './local-compute.ts';
 
@@ -18,6 +18,7 @@ export interface WorkerApi {
   appraise(run: number, id: string, recipe: RecipeData, onStage?: OnStage): Promise<Reply<SampleSummary>>;
   abort(run: number): Promise<Reply<void>>;
   picture(request: PictureRequest): Promise<Reply<Picture>>;
+  preview(request: PreviewRequest): Promise<Reply<Preview>>;
   point(id: string, xUm: number, yUm: number): Promise<Reply<PointValues>>;
   cut(request: CutRequest): Promise<Reply<Float32Array<ArrayBuffer>>>;
   histogram(request: HistogramRequest): Promise<Reply<Uint32Array<ArrayBuffer>>>;

@@ -31,7 +31,8 @@ const standsOut = 1.35;
 /** What goes on outside a small circle at this part of its height or more is the same fold, of which the circle is the end; radius in pixels. */
 const goesOnPart = 0.7;
 const smallPx = 6;
-/** Half of the border over which the outline may stray from the circle, pixels. */
+/** How far the outline may stray from the circle, pixels, while the circle moves on to it; the last holds for what is found. */
+const straysPx = [3, 2, 1.2, 1.2] as const;
 const strayPx = 1.2;
 /** Largest rms deviation from a paraboloid, as a share of its height, beyond the noise. */
 const mostDeviation = 0.12;
@@ -82,16 +83,16 @@ export function findDomes(input: DomeInput): Domes {
 /** Moves a circle on to the outline where that follows it; undefined where it follows too little of it. y runs down here. */
 function settle(input: DomeInput, start: { xM: number; yM: number; radiusM: number }): Circle | undefined {
   let { xM, yM, radiusM } = start;
-  for (let round = 0; round < 3; round++) {
+  for (const strayed of straysPx) {
     // Outline crossings along the rays, fitted by a circle (Kåsa, IEEE Trans. Instrum. Meas. IM-25, 8, 1976).
-    const edges = Array.from({ length: directions }, (_, k) => edgeAlong(input, xM, yM, radiusM, (2 * Math.PI * k) / directions));
+    const edges = Array.from({ length: directions }, (_, k) => edgeAlong(input, xM, yM, radiusM, (2 * Math.PI * k) / directions, strayed));
     const known = edges.filter((edge) => edge !== undefined);
     if (known.length < leastFreeIfHigh * directions) return undefined;
     const fitted = kasa(known);
     if (!fitted || !(fitted.radiusM > 0.5 * radiusM && fitted.radiusM < 1.6 * radiusM)) return undefined;
     ({ xM, yM, radiusM } = fitted);
   }
-  const free = Array.from({ length: directions }, (_, k) => edgeAlong(input, xM, yM, radiusM, (2 * Math.PI * k) / directions) !== undefined);
+  const free = Array.from({ length: directions }, (_, k) => edgeAlong(input, xM, yM, radiusM, (2 * Math.PI * k) / directions, strayPx) !== undefined);
   const share = free.filter(Boolean).length / directions;
   if (share < leastFreeIfHigh) return undefined;
   const circle = { xM, yM, radiusM, free };
@@ -120,7 +121,7 @@ function outsideOverInside({ columns, rows, pitchXM, pitchYM, rise }: DomeInput,
 }
 
 /** Where the mask ends along a ray, if that is near the circle. */
-function edgeAlong({ columns, rows, pitchXM, pitchYM, mask }: DomeInput, xM: number, yM: number, radiusM: number, angle: number): { xM: number; yM: number } | undefined {
+function edgeAlong({ columns, rows, pitchXM, pitchYM, mask }: DomeInput, xM: number, yM: number, radiusM: number, angle: number, stray: number): { xM: number; yM: number } | undefined {
   const [ux, uy] = [Math.cos(angle), Math.sin(angle)];
   const pixelM = Math.hypot(ux * pitchXM, uy * pitchYM);
   const inside = (at: number): boolean => {
@@ -128,9 +129,9 @@ function edgeAlong({ columns, rows, pitchXM, pitchYM, mask }: DomeInput, xM: num
     const r = Math.floor((yM + at * uy) / pitchYM);
     return c >= 0 && c < columns && r >= 0 && r < rows && mask[r * columns + c] === 1;
   };
-  const from = radiusM - strayPx * pixelM;
+  const from = radiusM - stray * pixelM;
   if (!inside(from)) return undefined;
-  for (let at = from + 0.25 * pixelM; at <= radiusM + strayPx * pixelM; at += 0.25 * pixelM) {
+  for (let at = from + 0.25 * pixelM; at <= radiusM + stray * pixelM; at += 0.25 * pixelM) {
     if (!inside(at)) return { xM: xM + (at - 0.125 * pixelM) * ux, yM: yM + (at - 0.125 * pixelM) * uy };
   }
   return undefined;

@@ -36,7 +36,7 @@ const leastBridged = 60;
 /** Half-width of remains that are a fold's own flank, pixels. */
 const sliverHalfPx = 2;
 /** Share of the border of remains that a fold must make up for them to belong to it. */
-const mostlyBordered = 0.45;
+const mostlyBordered = 0.62;
 
 /** Parts a mask of flawed ground (`mask` 1) and labels the parts. Changes `mask`: the foot of a fold may be left out. */
 export function partRegions(input: PartInput): Parts {

@@ -42,7 +42,7 @@ for (const seed of ['a', 'b']) {
     assertClose(ladder.modelStepDecades, made, 0.05, 'the model’s own step at 4 nm');
     for (const [k, layers] of [10, 11, 12].entries()) {
       const rung = ladder.rungs[k]!;
-      assert.ok(Math.abs(rung.medianLog10 - Math.log10(terraceCurrentA(layers, scanV))) < 0.02);
+      assert.ok(Math.abs(rung.medianLog10 - Math.log10(terraceCurrentA(layers, scanV))) < 0.02, `${layers} layers: ${rung.medianLog10} for ${Math.log10(terraceCurrentA(layers, scanV))}`);
       assertClose(rung.scatterDecades, 0.05, 0.15, 'scatter put in');
       assert.equal(rung.bound, 'exact');
     }
@@ -124,14 +124,19 @@ test('within a terrace: the contact’s scatter stays out by default, and goes t
   assert.deepEqual(own.layers!.data, shared.layers!.data, 'layers are whole either way');
 });
 
-test('the border between two terraces lies half-way between them in log current', () => {
+test('the border between two terraces lies half-way between them in log current, but one pixel is no terrace where the height says otherwise', () => {
   const [upper, lower] = [Math.log10(terraceCurrentA(11, scanV)), Math.log10(terraceCurrentA(12, scanV))];
   const currentA = scene.currentA.slice();
   const parts = [0.4, 0.45, 0.55, 0.6];
   const at = (k: number) => 60 * size + 50 + 3 * k;
   parts.forEach((part, k) => { currentA[at(k)] = 10 ** (upper + part * (lower - upper)); });
-  const found = assess({ ...scene, sample: createSample({ columns: size, rows: size, biasV: scanV, heightM: scene.heightM, currentA }) }, { referenceLayers: 11 });
-  assert.deepEqual(parts.map((_, k) => found.layers!.data[at(k)]), [11, 11, 12, 12]);
+  const layersAt = (maps: { heightM?: Float32Array }): number[] => {
+    const found = assess({ ...scene, sample: createSample({ columns: size, rows: size, biasV: scanV, ...maps, currentA }) }, { referenceLayers: 11 });
+    return parts.map((_, k) => found.layers!.data[at(k)]!);
+  };
+  assert.deepEqual(layersAt({}), [11, 11, 12, 12]);
+  // Where the height shows that they stand on one terrace, single pixels are the contact's scatter.
+  assert.deepEqual(layersAt({ heightM: scene.heightM }), [11, 11, 11, 11]);
 });
 
 test('one terrace: the step is the model’s, and said', () => {

@@ -56,6 +56,7 @@ export class FakeCompute implements Compute {
     return { width, height, rgba: new Uint8ClampedArray(4 * width * height).fill(200) };
   }
 
+  async preview(): Promise<never> { throw new ComputeError('not-here', 'The test asks for no quick look.'); }
   async point(): Promise<never> { throw new ComputeError('not-here', 'The test asks for no point.'); }
   async cut(): Promise<never> { throw new ComputeError('not-here', 'The test asks for no cut.'); }
   async histogram(): Promise<never> { throw new ComputeError('not-here', 'The test asks for no histogram.'); }

@@ -1,5 +1,5 @@
 /** A small invented sample and a computation that answers from it at once, or when told to. */
-import type { Compute, ComputeFacts, CutRequest, FlawEntry, HistogramRequest, LedgerEntry, MapInfo, Picture, PictureRequest, PointValues, SampleSummary } from '../../workers/api.ts';
+import type { Compute, ComputeFacts, CutRequest, FlawEntry, HistogramRequest, LedgerEntry, MapInfo, Picture, PictureRequest, PointValues, PreviewRequest, SampleSummary } from '../../workers/api.ts';
 import { factsOf } from '../../workers/facts.ts';
 import type { SampleState } from '../../web/session/state.ts';
 
@@ -24,8 +24,9 @@ export const summary: SampleSummary = {
   id: 's1', name: 'flake 04', verdict: '40.7 µm² (95 %: 37.9–43.2) of 100 µm² is even barrier, ×/÷3 at 4.0 V; an upper bound, as a bare barrier was scanned.',
   surface: 'barrier', columns: 200, rows: 200, widthUm: 10, heightUm: 10, footprintUm2: 100, ledger,
   usable: { areaUm2: 40.7, share: 0.407, low95Um2: 37.9, high95Um2: 43.2, largestPatchUm2: 22.4, knownToGlow: true, meaning: 'usable' },
-  repairedUm2: 0, height: { noiseNm: 0.08, tiltNm: 38, repairedPixels: 7 },
-  current: { unit: 'A', biasV: 5.9, offsetA: 0, noiseA: 3e-14, floorA: 9e-14, saturatedPixels: 4, repairedPixels: 5, wearDecades: 0.28, wearTold: true },
+  repairedUm2: 0, height: { noiseNm: 0.08, tiltNm: 38, repairedPixels: 7, levels: { formFrom: 'ground', order: 2, tiltNm: 37, bowNm: 2.1, lineRmsNm: 0.12, lineMostNm: 0.4, planesNm: [0, 0.333, 0.666], gapNm: 0.333 } },
+  thresholds: { heightNm: 0.8, heightRuledBy: 'height', heightNoiseNm: 0.08, heightOverNoise: 10, dropDecades: 0.5, layerDecades: 0.8, layerFrom: 'map', dropLayers: 0.625, currentNoiseDecades: 0.05, dropOverNoise: 10 },
+  current: { unit: 'A', biasV: 5.9, offsetA: 0, noiseA: 3e-14, floorA: 9e-14, saturatedPixels: 4, repairedPixels: 5, wearDecades: 0.28, wearTold: true, driftDecades: 0.28, driftSeDecades: 0.03, offsetFrom: 'blocked', offsetSeA: 1e-16, floorSeA: 3e-16, lagPx: 0 },
   ladder: { stepDecades: 0.8, stepSeDecades: 0.02, from: 'map', rungs: [
     { step: -1, layers: 11, areaUm2: 25, medianLog10: -9.2, bound: 'exact' }, { step: 0, layers: 12, areaUm2: 41, medianLog10: -10, bound: 'exact' },
     { step: 1, layers: 13, areaUm2: 20, medianLog10: -10.8, bound: 'exact' }, { step: 3, layers: 15, areaUm2: 7, medianLog10: -12.9, bound: 'at-least' } ] },
@@ -45,6 +46,11 @@ export interface FakeCompute extends Compute {
   readonly pictures: PictureRequest[];
   readonly cuts: CutRequest[];
   readonly histograms: HistogramRequest[];
+  readonly previews: PreviewRequest[];
+  /** While true, quick looks wait for `answerPreview`. */
+  holdPreviews: boolean;
+  /** Answers the quick look that waits. */
+  answerPreview(): void;
   /** While true, pictures wait for `answer`. */
   hold: boolean;
   /** Answers the picture that waits. */
@@ -54,9 +60,21 @@ export interface FakeCompute extends Compute {
 /** Its pictures are red left of the map's middle and blue right of it. Flaw 1 covers the map left of 3 µm. */
 export function fakeCompute(): FakeCompute {
   let release: (() => void) | undefined;
+  let releasePreview: (() => void) | undefined;
   const unused = () => Promise.reject(new Error('not part of this test'));
   const compute: FakeCompute = {
-    pictures: [], cuts: [], histograms: [], hold: false,
+    pictures: [], cuts: [], histograms: [], previews: [], hold: false, holdPreviews: false,
+    answerPreview: () => { releasePreview?.(); },
+    preview: async (request) => {
+      compute.previews.push(request);
+      if (compute.holdPreviews) await new Promise<void>((resolve) => { releasePreview = resolve; });
+      const height = Number((request.recipe['flaws'] as Record<string, unknown> | undefined)?.['heightNm'] ?? 0.8);
+      return {
+        everyPx: 2, usableUm2: 40 + height, flaws: { bubble: 1, residue: 2, wrinkle: 0, short: 0, open: 0 },
+        ledger: ledger.map((entry) => (entry.cause === 'usable' ? { ...entry, areaUm2: 40 + height } : entry)),
+        ...(request.picture ? { picture: halves(request.picture) } : {}),
+      };
+    },
     answer: () => { release?.(); },
     facts: async () => facts, open: unused, openDemo: unused, close: async () => undefined, appraise: unused, abort: async () => undefined, resultNames: unused, resultFile: unused,
     picture: async (request) => {

@@ -1,12 +1,14 @@
 /** What the Sample place is made of: its words and numbers, its knobs, its table. */
 import { assert } from 'chai';
 import { effectOf, flawsFinding, glowAssumption, glowFinding, groundFinding, scanFinding, verdictRest } from '../../web/sample/findings.ts';
-import { area, confidenceWord, counted, density, figure, mapValue, percent, span, tickText, typedNumber, volts, withPrefix } from '../../web/sample/format.ts';
+import { area, confidenceWord, counted, density, figure, ledgerFigure, mapValue, percent, span, tickText, typedNumber, volts, withPrefix } from '../../web/sample/format.ts';
+import { groundFacts } from '../../web/sample/ground-facts.ts';
 import type { RecipeChange } from '../../web/sample/events.ts';
 import { FlawTable } from '../../web/sample/flaw-table.ts';
 import { Knob } from '../../web/sample/knob.ts';
 import { changedPaths, chapterKnobs, chapterOfChange, knobsOf, refusal, stepLabel } from '../../web/sample/knobs.ts';
 import type { ChapterName } from '../../web/sample/knobs.ts';
+import { dropMeaning, heightMeaning, noiseMeaning } from '../../web/sample/threshold-words.ts';
 import { sortFlaws } from '../../web/sample/sort-flaws.ts';
 import { facts, flaws, mount, summary, unmountAll } from './fake-sample.ts';
 
@@ -55,9 +57,39 @@ describe('findings', () => {
   });
 
   it('say what was done to the ground', () => {
-    assert.equal(plainSpaces(groundFinding(summary)), '38 nm of tilt removed, 12 broken pixels repaired, noise 0.080 nm; the tip lost 0.28 decades.');
+    assert.equal(plainSpaces(groundFinding(summary)), '38 nm of tilt removed, 12 broken pixels repaired, noise 0.080 nm; the tip lost 0.28 decades of conductance (a factor of 1.9).');
     const { height: _height, ...currentAlone } = summary;
     assert.equal(plainSpaces(groundFinding({ ...currentAlone, current: { ...summary.current!, repairedPixels: 0, wearDecades: -0.3, wearTold: false } })), 'Nothing to repair; no wear of the tip told from the barrier.');
+  });
+
+  it('tell of the ground fact by fact, with units and what was done', () => {
+    const facts = new Map(groundFacts(summary).map(({ name, value, note = '' }) => [name, `${plainSpaces(value)} | ${plainSpaces(note)}`]));
+    assert.match(facts.get('Form removed')!, /^order 2 \(tilt and bow\): tilt 37\.0 nm, curved part 2\.10 nm, peak to peak \| fitted to ground found automatically/);
+    assert.match(facts.get('Line offsets')!, /^0\.12 nm rms, 0\.40 nm at most \|/);
+    assert.match(facts.get('Terraces')!, /^3 heights taken as parallel planes, 0\.67 nm from lowest to highest \| one step of the current’s ladder is 0\.333 nm high/);
+    assert.match(facts.get('Floor')!, /^90\.0 fA ± 300 aA \|/);
+    assert.match(facts.get('Wear of the tip')!, /^0\.28 decades lost \(a factor of 1\.9\), undone \| .*0\.28 ± 0\.03 decades \(powers of ten\)/);
+    const { height: _height, ...alone } = summary;
+    assert.isFalse(groundFacts(alone).some(({ name }) => name === 'Form removed'));
+    const shift = { rightPx: 2.2, rightSePx: 0.1, downPx: 0, downSePx: 0.1, undoneRightPx: 2, undoneDownPx: 0 };
+    const more = groundFacts({ ...summary, current: { ...summary.current!, lagPx: 1.5, lagSePx: 0.02, shift, wearTold: false } });
+    assert.include(plainSpaces(more.find(({ name }) => name === 'Amplifier’s lag')?.value), '1.50 ± 0.02 pixels, undone');
+    assert.include(more.find(({ name }) => name === 'Current against height')?.note ?? '', 'moved back by whole pixels: 2 to the left');
+    assert.include(more.find(({ name }) => name === 'Wear of the tip')?.note ?? '', 'not told from the barrier');
+  });
+
+  it('say what a threshold means on this map, and which limit rules', () => {
+    const limits = { heightNoiseNm: 0.08, layerDecades: 0.8, layerFrom: 'map' as const, currentNoiseDecades: 0.05, dropDecades: 0.5 };
+    assert.equal(plainSpaces(heightMeaning(0.8, 6, limits)), '= 10.0 × this map’s noise (0.080 nm); this limit rules here.');
+    assert.equal(plainSpaces(heightMeaning(0.4, 6, limits)), '= 5.0 × this map’s noise (0.080 nm); the limit by noise, 0.480 nm, rules here.');
+    assert.equal(plainSpaces(noiseMeaning(12, 0.8, limits)), '= 0.960 nm on this map; this limit rules here.');
+    assert.equal(dropMeaning(0.5, limits, undefined), 'A decade is a factor of ten: to 1/3.2 of the current around; 0.63 layers of this map’s ladder (0.80 decades each); 10 × the noise of the log current (0.050 decades).');
+    assert.equal(heightMeaning(0.8, 6, {}), '');
+  });
+
+  it('give areas that add up no more decimals than the whole asks for', () => {
+    assert.deepEqual([84.9, 0.0129, 0.449, 0.001].map((value) => ledgerFigure(value, 121)), ['84.9', '0.01', '0.45', '<0.01']);
+    assert.equal(ledgerFigure(0.0129, 1.2), '0.0129');
   });
 
   it('count the flaws, and the shorts that were and were not seen', () => {
@@ -167,6 +199,52 @@ describe('a knob', () => {
     assert.deepEqual(changes.map(({ value }) => value), [10]);
   });
 
+  it('tells a held handle’s places without committing them, and commits when it is let go', async () => {
+    const { element, changes } = await knob('flaws.heightNm', { slider: { from: 0.1, to: 20, log: true } });
+    element.live = true;
+    element.meaning = (nm) => `means ${nm}`;
+    const looks: unknown[] = [];
+    element.addEventListener('recipe-preview', (event) => { looks.push((event as CustomEvent).detail); });
+    const slider = element.renderRoot.querySelector<HTMLInputElement>('input[type="range"]')!;
+    const slide = (type: string, to: number): void => {
+      slider.value = String(to);
+      slider.dispatchEvent(new Event(type));
+    };
+    slide('input', 200);
+    slide('input', 300);
+    await element.updateComplete;
+    assert.deepEqual(looks, [{ path: 'flaws.heightNm', value: 1.4 }, { path: 'flaws.heightNm', value: 5.3 }]);
+    assert.include(element.renderRoot.querySelector('.meaning')!.textContent!, 'means 5.3');
+    assert.deepEqual(changes, []);
+    slide('change', 300);
+    assert.deepEqual(changes.map(({ value }) => value), [5.3]);
+  });
+
+  it('takes a key that is held for one movement, and says when the handle came back', async () => {
+    const { element, changes } = await knob('flaws.heightNm', { slider: { from: 0.1, to: 20, log: true } });
+    element.live = true;
+    const looks: unknown[] = [];
+    element.addEventListener('recipe-preview', (event) => { looks.push((event as CustomEvent<{ value: unknown }>).detail.value); });
+    const slider = element.renderRoot.querySelector<HTMLInputElement>('input[type="range"]')!;
+    const press = (to: number): void => {
+      slider.dispatchEvent(new KeyboardEvent('keydown', { key: 'ArrowRight' }));
+      slider.value = String(to);
+      slider.dispatchEvent(new Event('input'));
+      slider.dispatchEvent(new Event('change'));
+    };
+    press(200);
+    press(201);
+    assert.deepEqual(changes, []);
+    slider.dispatchEvent(new KeyboardEvent('keyup', { key: 'ArrowRight' }));
+    assert.equal(changes.length, 1);
+    looks.length = 0;
+    slider.value = '157';
+    slider.dispatchEvent(new Event('input'));
+    slider.dispatchEvent(new Event('change'));
+    assert.deepEqual(looks, [0.8, undefined]);
+    assert.equal(changes.length, 1);
+  });
+
   it('switches and chooses', async () => {
     const flag = await knob('ground.wear');
     flag.element.renderRoot.querySelector<HTMLElement>('input')!.click();
@@ -185,14 +263,22 @@ describe('the flaw table', () => {
     assert.deepEqual([order('areaUm2', false), order('peakNm', true), order('peakNm', false), order('cause', true)], [[2, 1, 3], [2, 1, 3], [1, 2, 3], [1, 2, 3]]);
   });
 
+  it('lists reason and confidence of every flaw, and of an ambiguous one between what it is', async () => {
+    const table = await mount(Object.assign(new FlawTable(), { flaws: [...flaws, { ...flaws[0]!, flaw: 4, confidence: 0.6, other: 'residue', areaUm2: 9 }] }), 400);
+    const rows = [...table.renderRoot.querySelectorAll('tbody tr')].map((row) => plainSpaces(row.textContent));
+    assert.match(rows[0]!, /^4 bubble or residueambiguous 0\.60 9\.00/);
+    assert.deepEqual([rows[2], rows[3]].map((row) => row!.slice(0, 27)), ['2 residuelikely 0.75 0.9002', 'flat, rough edge: residue']);
+    assert.equal(rows.length, 8);
+  });
+
   it('shows the first 200, and all on demand or when a later one is selected', async () => {
     const many = Array.from({ length: 250 }, (_, i) => ({ ...flaws[0]!, flaw: i + 1, areaUm2: 250 - i }));
     const table = await mount(Object.assign(new FlawTable(), { flaws: many }), 400);
-    const rows = () => table.renderRoot.querySelectorAll('tbody tr').length;
+    const rows = () => table.renderRoot.querySelectorAll('tbody tr:not(.reason)').length;
     assert.equal(rows(), 200);
     table.selected = 240;
     await table.updateComplete;
-    assert.equal(rows(), 251);
+    assert.equal(rows(), 250);
     table.selected = undefined;
     await table.updateComplete;
     table.renderRoot.querySelector<HTMLElement>('.more')!.click();
@@ -208,7 +294,7 @@ describe('the flaw table', () => {
     assert.deepEqual(heard, [2]);
     table.selected = 2;
     await table.updateComplete;
-    assert.include(table.renderRoot.querySelector('.reason')?.textContent ?? '', 'flat, rough edge');
+    assert.include(table.renderRoot.querySelector('.reason.whole')?.textContent ?? '', 'flat, rough edge');
     table.renderRoot.querySelector<HTMLElement>('th button')!.click();
     await table.updateComplete;
     assert.deepEqual([...table.renderRoot.querySelectorAll('tbody td button')].map((each) => each.textContent), ['1', '2', '3']);

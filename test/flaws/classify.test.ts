@@ -70,7 +70,7 @@ test('rubble as high as a bubble is no dome, however peaked', () => {
     const random = seededRandom(seed);
     const { cause, reason } = classifyRaised(measured(at(9, () => 4 + 26 * random.uniform() ** 2)));
     assert.equal(cause, 'residue');
-    assert.match(reason, /uneven or flat-topped lump/);
+    assert.match(reason, /^uneven/);
   }
 });
 
@@ -87,6 +87,44 @@ test('a row of touching bubbles may look like a ridge, but says so at low confid
   const ridge = classifyRaised(measured((x, y) => (Math.abs(x) < 30 && Math.abs(y) < 3 ? 8 * Math.exp(-(y * y) / 6) : 0)));
   assert.deepEqual([ridge.cause, /touching/.test(ridge.reason)], ['wrinkle', false]);
   assert.ok(ridge.confidence > 0.9);
+});
+
+test('how a region was parted decides: a crest is a wrinkle whatever its outline, a circle with a paraboloid is a bubble', () => {
+  const region = measured(dome(20, 9));
+  const crest = classifyRaised({ ...region, kind: 'ridge' });
+  assert.deepEqual([crest.cause, /crest/.test(crest.reason)], ['wrinkle', true]);
+  assert.equal(classifyRaised({ ...region, kind: 'dome' }).cause, 'bubble');
+  // Where somebody looked for a crest and found none, an outline alone makes no wrinkle.
+  const long = measured((x, y) => (Math.abs(x) < 30 && Math.abs(y) < 3 ? 8 * Math.exp(-(y * y) / 6) : 0));
+  assert.equal(classifyRaised(long).cause, 'wrinkle');
+  assert.notEqual(classifyRaised({ ...long, kind: 'blob' }).cause, 'wrinkle');
+});
+
+test('a current that is lowered but not lost makes a film, whatever the shape; what blocks makes none', () => {
+  const region = measured(dome(2.5, 9));
+  const film = classifyRaised({ ...region, floorShare: 0, dropDecades: 1.4, log10Current: -10.4 });
+  assert.equal(film.cause, 'residue');
+  assert.match(film.reason, /^patch, 2\.[4-8] nm high, current lower by 1\.4 decades but not lost: residue, a film$/);
+  assert.equal(classifyRaised({ ...region, floorShare: 1, dropDecades: 4 }).cause, 'bubble');
+  // Nothing tunnels through tens of nanometres: what is read there is no film's current.
+  assert.equal(classifyRaised({ ...measured(dome(40, 12)), floorShare: 0, dropDecades: 1.4 }).cause, 'bubble');
+});
+
+test('what is too close to call says so, and between what', () => {
+  let unsure = 0;
+  for (let k = 0; k <= 40; k++) {
+    // From a paraboloid to a flat top.
+    const power = 2 + k / 5;
+    const { cause, confidence, reason } = classifyRaised(measured(at(10, (rho) => 12 * (1 - rho ** power))));
+    assert.ok(confidence >= 0.5 && confidence <= 1);
+    if (k === 0) assert.equal(cause, 'bubble');
+    if (k === 40) assert.equal(cause, 'residue');
+    assert.ok(/could be/.test(reason) || confidence >= 0.6, reason);
+    if (!/could be/.test(reason)) continue;
+    unsure++;
+    assert.match(reason, cause === 'bubble' ? /could be residue$/ : /could be a bubble$/);
+  }
+  assert.ok(unsure >= 1, 'nowhere between the two is it in doubt');
 });
 
 test('without a height inside nothing is concluded: confidence 0.5, no made-up numbers in the reason', () => {

@@ -1,8 +1,8 @@
 import assert from 'node:assert/strict';
 import { test } from 'node:test';
+import { evaluate } from '../../src/evaluate/evaluate.ts';
 import { thresholdsOf } from '../../src/flaws/thresholds.ts';
 import { levelGround } from '../../src/ground/level-ground.ts';
-import { evaluate } from '../../src/evaluate/evaluate.ts';
 import { verdictOf } from '../../src/report/verdict.ts';
 import { seededRandom } from '../../src/stats/random.ts';
 import { assertClose } from '../fixtures/assert-close.ts';
@@ -29,7 +29,7 @@ test('the larger of the stated height and the stated multiple of the noise rules
   const byHeight = limits({ heightNm: 0.8, heightNoise: 3 });
   assert.equal(byHeight.ruledBy, 'height');
   assertClose(byHeight.startM!, 0.8e-9, 1e-12);
-  assert.equal(limits({ heightNm: 0.1, heightNoise: 0 }).startM, 0.1e-9);
+  assertClose(limits({ heightNm: 0.1, heightNoise: 0 }).startM!, 0.1e-9, 1e-12);
 });
 
 test('the drop comes with the worth of a layer and the noise of the log current', () => {

@@ -1,58 +1,76 @@
 /** Invented scans with known truth that are kept outside the project (../shared/scenes); skipped where they are not at hand. */
 import assert from 'node:assert/strict';
-import { existsSync, readdirSync, readFileSync } from 'node:fs';
-import { fileURLToPath } from 'node:url';
 import { test } from 'node:test';
 import { evaluate } from '../../src/evaluate/evaluate.ts';
-import { decodeMaps } from '../../src/read/decode.ts';
-import type { InputFile } from '../../src/read/input.ts';
-import { groupInputs } from '../../src/read/pairing.ts';
-import type { SampleGroup } from '../../src/read/pairing.ts';
-import { readSample } from '../../src/read/read-sample.ts';
-import { sha256 } from '../../src/read/sha256.ts';
+import { StageCache } from '../../src/evaluate/stage-cache.ts';
+import { codeOf } from '../../src/ledger/book-causes.ts';
+import { channelOf } from '../../src/read/sample.ts';
+import { answerOf } from '../accuracy/score-answer.ts';
+import { poolScores } from '../accuracy/score-pool.ts';
+import { scoreScene } from '../accuracy/score-scene.ts';
+import type { SceneScore } from '../accuracy/score-scene.ts';
+import { sharedNames, sharedScene } from '../accuracy/shared-scenes.ts';
 import { createRecipe } from '../fixtures/create-sample.ts';
+import { streakRatio } from '../fixtures/streaks.ts';
 
-const folder = fileURLToPath(new URL('../../../shared/scenes/', import.meta.url));
-const here = existsSync(folder);
-const read = (name: string): InputFile => ({ name, bytes: new Uint8Array(readFileSync(folder + name)) });
-const names = here ? readdirSync(folder).filter((name) => /\.(tif|json)$/.test(name)) : [];
-const groups: readonly SampleGroup[] = groupInputs(names.map((name) => ({ name, explicit: false }))).samples;
+const names = sharedNames();
+const scores: SceneScore[] = [];
+/** The device's bias is what a person would state; all else is the default. */
+const changes = { stack: { biasV: 4 } };
+const missing = names.length === 0 && 'no ../shared/scenes';
 
-test('outside: nine scenes are at hand', { skip: !here && 'no ../shared/scenes' }, () => {
-  assert.equal(groups.length, 9);
+test('outside: nine scenes are at hand', { skip: missing }, () => {
+  assert.equal(names.length, 9);
 });
 
-async function truth(name: string, map: 'truth' | 'layers'): Promise<ArrayLike<number>> {
-  return (await decodeMaps(read(`truth/${name}.${map}.tif`)))[0]!.values;
-}
-
-for (const group of groups) {
+for (const name of names) {
   // The model's own terraces carry the currents of 9 to 15 layers, so there layers can be checked.
-  const modelled = group.name.startsWith('model-');
-  test(`outside: ${group.name}, usable share within 0.02 of the truth${modelled ? ', layers right on 95 % of it' : ''} [known truth]`, async () => {
-    const recipe = createRecipe({ stack: { biasV: 4 }, ...(modelled ? { barrier: { referenceLayers: 11 } } : {}) });
-    const sample = await readSample(group, names.filter((name) => name.startsWith(`${group.name}.`)).map(read), recipe.scan, sha256);
-    const { ledger, barrier } = evaluate(sample, recipe);
+  const modelled = name.startsWith('model-');
+  test(`outside: ${name}, usable share within 0.02 of the truth, levelled without streaks${modelled ? ', layers right on 95 % of the usable' : ''} [known truth]`, async () => {
+    const { sample, truth } = await sharedScene(name, changes);
+    const cache = new StageCache(2e8);
+    const appraisal = evaluate(sample, createRecipe(changes), { cache });
+    const { ledger, ground } = appraisal;
     const codes = ledger.codes.data;
     assert.equal(ledger.footprintPixels, codes.length);
     assert.equal(ledger.rows.reduce((sum, row) => sum + row.pixels, 0), codes.length);
     assert.ok(codes.every((code) => code >= 1 && code <= 12));
+    const score = scoreScene(answerOf(appraisal), truth);
+    scores.push(score);
+    const [found, there] = score.usable;
+    assert.ok(Math.abs(found - there) <= 0.02, `${found} for ${there}`);
 
-    const wanted = await truth(group.name, 'truth');
-    assert.equal(wanted.length, codes.length);
-    let usable = 0;
-    for (let i = 0; i < codes.length; i++) if (wanted[i] === 1) usable++;
-    assert.ok(Math.abs(ledger.usable.share - usable / codes.length) <= 0.02, `${ledger.usable.share} for ${usable / codes.length}`);
+    const { columns, rows } = sample.grid;
+    const bare = new Set([codeOf('usable'), codeOf('thin'), codeOf('thick')]);
+    const streaks = (values: Float32Array): number => streakRatio(values.map((value, i) => (bare.has(truth.codes[i]!) ? value : Number.NaN)), columns, rows);
+    const [before, after] = [streaks(channelOf(sample, 'height')!.values.data), streaks(ground.height!.levelled.data)];
+    assert.ok(before > 100 && after < 10, `streaks ${before} before, ${after} after`);
 
     if (!modelled) return;
-    const layers = await truth(group.name, 'layers');
+    const { barrier } = evaluate(sample, createRecipe({ ...changes, barrier: { referenceLayers: 11 } }), { cache });
     let right = 0;
     let judged = 0;
     for (let i = 0; i < codes.length; i++) {
-      if (codes[i] !== 1) continue;
+      if (codes[i] !== codeOf('usable')) continue;
       judged++;
-      if (barrier!.layers!.data[i] === layers[i]) right++;
+      if (barrier!.layers!.data[i] === truth.layers[i]) right++;
     }
     assert.ok(right >= 0.95 * judged, `layers right on ${right} of ${judged} usable pixels`);
   });
 }
+
+test('outside: over all scenes, bubbles, residue and wrinkles by pixels, whole bubbles and shorts, levelled height [known truth]', { skip: missing }, () => {
+  const pool = poolScores(scores);
+  assert.equal(pool.scenes, names.length);
+  const least = (value: number, limit: number, what: string): void => assert.ok(value >= limit, `${what}: ${value}, wanted ${limit}`);
+  least(pool.f1.bubble, 0.95, 'F1 of bubbles');
+  least(pool.f1.residue, 0.85, 'F1 of residue');
+  least(pool.f1.wrinkle, 0.85, 'F1 of wrinkles');
+  least(pool.bubblesFound, 0.95, 'bubbles found');
+  least(pool.bubblesTrue, 0.95, 'bubbles true');
+  least(pool.shortsFound, 0.95, 'shorts found');
+  least(pool.shortsTrue, 0.9, 'shorts true');
+  // In multiples of the white noise, which is all that a perfect levelling would leave.
+  assert.ok(pool.levelMedian <= 1.5, `levelled height off by ${pool.levelMedian} of the noise`);
+  assert.equal(pool.covered, 1, 'an interval of the usable share does not hold the truth');
+});

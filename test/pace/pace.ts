@@ -16,6 +16,7 @@ import { commandPace } from './command-pace.ts';
 import { kernelPace, leastGain } from './kernel-pace.ts';
 import type { KernelPace } from './kernel-pace.ts';
 import { pagePace } from './page-pace.ts';
+import { previewPace } from './preview-pace.ts';
 import { paintedFiles } from './scans.ts';
 import { aligned, shownMs } from './times.ts';
 import type { Times } from './times.ts';
@@ -46,6 +47,7 @@ async function printPage(side: number): Promise<void> {
   const { firstView, demo, drop, longestTaskMs, mostWorkMs, longestWaitMs, workers } = await pagePace(side, pageRepeats);
   print(`\nThe app in Chromium, ${workers} ${workers === 1 ? 'worker' : 'workers'}, ${pageRepeats} pages`);
   print(aligned([header.slice(0, 3), ...([['six rows on the screen', firstView], ['six samples appraised', demo], [`drop to verdict, ${side} × ${side} pixels`, drop]] as const).map(([name, times]) => row(name, times, undefined).slice(0, 3))]));
+  print(aligned([row('held handle to new picture and areas, 512 × 512 pixels', await previewPace(), undefined).slice(0, 3)]));
   print(`  the page’s own thread: longest task ${shownMs(longestTaskMs)} ms by the clock; most processor time of one task ${shownMs(mostWorkMs)} ms; a timer waited ${shownMs(longestWaitMs)} ms at most`);
 }
 

@@ -163,7 +163,7 @@ describe('an appraisal', () => {
     const [xUm, yUm] = flaw.insideUm!;
     const corrected = await compute.appraise(90, id, { ...summary.recipe, corrections: [{ kind: 'reclassify', xUm, yUm, cause: 'residue' }] });
     const { insideUm: _inside, ...now } = corrected.flaws.find((entry) => entry.flaw === flaw.flaw)!;
-    const { insideUm: _was, ...before } = flaw;
+    const { insideUm: _was, other: _other, ...before } = flaw;
     assert.deepEqual(now, { ...before, cause: 'residue', confidence: 1, reason: 'set by hand: residue', byHand: true });
     assert.deepEqual(corrected.corrections, [`flaw at x ${xUm.toFixed(2)}, y ${yUm.toFixed(2)} µm set to residue`]);
     assert.equal((await compute.point(id, xUm, yUm)).cause, 'residue');

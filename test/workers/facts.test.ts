@@ -42,6 +42,8 @@ describe('facts', () => {
     for (const [section, values] of Object.entries(facts.defaultRecipe)) {
       if (typeof values !== 'object' || values === null || Array.isArray(values)) continue;
       for (const [key, value] of Object.entries(values)) {
+        // Lists, such as the spots of ground, have no single value to show.
+        if (Array.isArray(value)) continue;
         assert.ok(paths.has(`${section}.${key}`), `${section}.${key}`);
         assert.deepEqual(facts.fields.find(({ path }) => path === `${section}.${key}`)!.fallback, value);
       }

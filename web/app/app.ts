@@ -6,7 +6,7 @@ import type { AnswerDetail } from '../import/import-form.ts';
 import '../import/import-form.ts';
 import type { PagesDetail } from '../import/pages-form.ts';
 import { questionsOf } from '../import/questions.ts';
-import type { CorrectionEvent, CorrectionOutEvent } from '../sample/events.ts';
+import type { CorrectionEvent, CorrectionOutEvent, HowEvent, SpotsEvent } from '../sample/events.ts';
 import '../sample/sample-place.ts';
 import { answer } from '../session/actions/answer.ts';
 import { answerPages } from '../session/actions/answer-pages.ts';
@@ -18,6 +18,7 @@ import { correct, takeOutCorrection } from '../session/actions/correct.ts';
 import { redo, undo } from '../session/actions/move-in-history.ts';
 import { openDemo } from '../session/actions/open-demo.ts';
 import { openFiles } from '../session/actions/open-files.ts';
+import { pickSpots } from '../session/actions/pick-spots.ts';
 import { retry } from '../session/actions/retry.ts';
 import { dismiss, go, setRequired, setTheme } from '../session/actions/settings.ts';
 import type { RecipeValue } from '../session/recipe.ts';
@@ -31,12 +32,16 @@ import './notices.ts';
 import { rememberTheme, watchTheme } from './theme.ts';
 
 export class App extends LitElement {
-  static override properties = { session: { attribute: false }, facts: { state: true } };
+  static override properties = { session: { attribute: false }, facts: { state: true }, hasMethod: { state: true } };
 
   declare session: Session;
   declare facts: ComputeFacts | undefined;
+  /** The method page has been loaded: it is not part of the page's first script. */
+  declare hasMethod: boolean;
   /** The place that is on the screen. */
   private shownPlace: Place | undefined;
+  /** How far the sample was scrolled when the method page was opened. */
+  private leftAt = 0;
   private theme: ReturnType<typeof watchTheme> | undefined;
 
   static override styles = css`
@@ -66,20 +71,20 @@ export class App extends LitElement {
   override render() {
     const { state } = this.session;
     const { place } = state;
-    const sample = place.name === 'sample' ? this.session.sample(place.id) : undefined;
+    const sample = place.name === 'tray' ? undefined : this.session.sample(place.id);
     return html`
       <eg-drop-zone @files=${this.filesGiven}></eg-drop-zone>
       <eg-header .sampleName=${sample?.name} .count=${state.samples.length} .theme=${state.theme}
-        @files=${this.filesGiven} @leave=${this.leave} @theme=${(event: CustomEvent<SessionState['theme']>) => { this.setTheme(event.detail); }}></eg-header>
+        ?explains=${place.name === 'method'} @files=${this.filesGiven} @leave=${this.leave} @back=${this.back} @theme=${(event: CustomEvent<SessionState['theme']>) => { this.setTheme(event.detail); }}></eg-header>
       <eg-notices .notices=${state.notices} @dismiss=${(event: CustomEvent<{ index?: number }>) => { this.session.do(dismiss, event.detail.index); }}></eg-notices>
-      <main tabindex="-1">${sample === undefined ? this.tray(state) : this.samplePlace(sample)}</main>
+      <main tabindex="-1">${sample === undefined ? this.tray(state) : html`${this.samplePlace(sample, place.name === 'method')}${place.name === 'method' ? this.method(place) : nothing}`}</main>
     `;
   }
 
   override updated(changed: PropertyValues): void {
     super.updated(changed);
     const { place } = this.session.state;
-    const name = place.name === 'sample' ? this.session.sample(place.id)?.name : undefined;
+    const name = place.name === 'tray' ? undefined : this.session.sample(place.id)?.name;
     document.title = name === undefined ? 'Evenglow' : `${name} · Evenglow`;
     if (place !== this.shownPlace) this.arrive(place);
   }
@@ -89,10 +94,11 @@ export class App extends LitElement {
     const from = this.shownPlace;
     this.shownPlace = place;
     if (from === undefined || (place.name === 'tray' && from.name === 'tray')) return;
-    if (place.name === 'sample') {
-      scrollTo(0, 0);
+    if (place.name === 'sample' && from.name === 'method') scrollTo(0, this.leftAt);
+    else if (place.name !== 'tray') {
+      if (place.name === 'sample') scrollTo(0, 0);
       this.renderRoot.querySelector('main')?.focus({ preventScroll: true });
-    } else if (from.name === 'sample') {
+    } else if (from.name !== 'tray') {
       const tray = this.renderRoot.querySelector('eg-tray');
       if (tray instanceof Tray) void tray.focusRow(from.id);
     }
@@ -116,14 +122,28 @@ export class App extends LitElement {
     `;
   }
 
-  private samplePlace(sample: SampleState) {
+  /** The sample stays where it is, out of sight, so that one comes back to what one left. */
+  private method({ topic }: Extract<Place, { name: 'method' }>) {
+    if (!this.hasMethod) {
+      import('../method/method-place.ts').then(() => { this.hasMethod = true; }, () => {
+        this.session.say('How this is done', 'This page could not be loaded; check that the program still serves it, and try again.');
+        this.back();
+      });
+      return nothing;
+    }
+    return html`<eg-method-place .topic=${topic} .fields=${this.facts?.fields ?? []} @back=${this.back}></eg-method-place>`;
+  }
+
+  private samplePlace(sample: SampleState, hidden: boolean) {
     const { session } = this;
     const { id } = sample;
     type Change = CustomEvent<{ readonly path: string; readonly value: RecipeValue | undefined; readonly label: string }>;
     return html`
-      ${sample.status === 'asking' ? this.questions(sample) : nothing}
-      <eg-sample-place .sample=${sample} .facts=${this.facts} .compute=${session.compute}
+      ${sample.status === 'asking' && !hidden ? this.questions(sample) : nothing}
+      <eg-sample-place ?hidden=${hidden} .sample=${sample} .facts=${this.facts} .compute=${session.compute}
         @recipe-change=${({ detail }: Change) => { void session.do(changeRecipe, id, detail.path, detail.value, detail.label); }}
+        @how=${({ detail }: HowEvent) => { this.explain(id, detail.topic); }}
+        @spots=${({ detail }: SpotsEvent) => { void session.do(pickSpots, id, detail.spots, detail.label); }}
         @correction=${({ detail }: CorrectionEvent) => { void session.do(correct, id, detail.correction, detail.label); }}
         @correction-out=${({ detail }: CorrectionOutEvent) => { void session.do(takeOutCorrection, id, detail.index, detail.label); }}
         @undo=${() => { void session.do(undo, id); }}
@@ -147,6 +167,16 @@ export class App extends LitElement {
   }
 
   private readonly changed = (): void => { this.requestUpdate(); };
+
+  private explain(id: string, topic: string): void {
+    this.leftAt = scrollY;
+    this.session.do(go, { name: 'method', id, topic });
+  }
+
+  private readonly back = (): void => {
+    const { place } = this.session.state;
+    if (place.name === 'method') this.session.do(go, { name: 'sample', id: place.id });
+  };
 
   private readonly leave = (): void => { this.session.do(go, { name: 'tray' }); };
 

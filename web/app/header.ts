@@ -1,4 +1,4 @@
-/** Head of the page: the name, where one is, and how files get in. Sends `files`, `theme`, `leave`. */
+/** Head of the page: the name, where one is, and how files get in. Sends `files`, `theme`, `leave`, `back`. */
 import { LitElement, css, html, svg } from 'lit';
 import type { SessionState } from '../session/state.ts';
 import { controlStyles } from './controls.ts';
@@ -17,13 +17,15 @@ const themeDrawing: Readonly<Record<Theme, unknown>> = {
 };
 
 export class Header extends LitElement {
-  static override properties = { sampleName: { attribute: false }, count: { type: Number }, theme: {} };
+  static override properties = { sampleName: { attribute: false }, count: { type: Number }, theme: {}, explains: { type: Boolean } };
 
   /** Name of the sample that is open; undefined in the tray. */
   declare sampleName: string | undefined;
   /** Samples in the tray. */
   declare count: number;
   declare theme: Theme;
+  /** The method page is open, reached from the sample. */
+  declare explains: boolean;
 
   static override styles = [controlStyles, css`
     :host { display: block; background: var(--panel); border-bottom: 1px solid var(--line); }
@@ -48,6 +50,7 @@ export class Header extends LitElement {
     super();
     this.count = 0;
     this.theme = 'system';
+    this.explains = false;
   }
 
   override render() {
@@ -61,7 +64,9 @@ export class Header extends LitElement {
           <ol>
             ${this.sampleName === undefined
               ? html`<li aria-current="page">${tray}</li>`
-              : html`<li><button class="plain" @click=${this.leave}>${tray}</button></li><li aria-current="page">${this.sampleName}</li>`}
+              : html`<li><button class="plain" @click=${this.leave}>${tray}</button></li>${this.explains
+                ? html`<li><button class="plain" @click=${() => { this.send('back', undefined); }}>${this.sampleName}</button></li><li aria-current="page">How this is done</li>`
+                : html`<li aria-current="page">${this.sampleName}</li>`}`}
           </ol>
         </nav>
         <div class="ways">

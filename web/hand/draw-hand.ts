@@ -13,7 +13,7 @@ export interface HandScene {
 }
 
 /** A line or ring over the map in the map's own marks. */
-type Haloed = (width: number, path: () => void) => void;
+export type Haloed = (width: number, path: () => void) => void;
 
 export function drawHand(pen: CanvasRenderingContext2D, view: View, extent: Extent, colours: { readonly halo: string }, { drawing, widthUm, fill }: HandScene, haloed: Haloed): void {
   const { kind, points, aimed, settling } = drawing;
@@ -25,6 +25,10 @@ export function drawHand(pen: CanvasRenderingContext2D, view: View, extent: Exte
       else pen.lineTo(x, y);
     });
   };
+  if (kind === 'places') {
+    for (const path of [...settling, points]) drawSpots(pen, path.map(place), haloed);
+    return;
+  }
   const area = fill ?? colours.halo;
   if (kind === 'stroke' && widthUm !== undefined) {
     const width = Math.max(2, widthUm * view.scale);
@@ -49,6 +53,14 @@ export function drawHand(pen: CanvasRenderingContext2D, view: View, extent: Exte
     pen.setLineDash([]);
   }
   points.forEach((point, k) => { ring(haloed, pen, place(point), k === 0 && kind === 'corners' ? 6 : 3); });
+}
+
+/** Spots of ground: a ring with a dot, on the stage. */
+export function drawSpots(pen: CanvasRenderingContext2D, places: readonly { readonly x: number; readonly y: number }[], haloed: Haloed): void {
+  for (const place of places) {
+    ring(haloed, pen, place, 8);
+    ring(haloed, pen, place, 1.5);
+  }
 }
 
 /** A hundredth of a stage pixel away: a line from a point to itself leaves no dot. */

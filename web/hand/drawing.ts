@@ -1,4 +1,5 @@
 /** A path while it is drawn on the map, by pointer or by keys. Points are µm in the sample's frame. */
+import { leastSpots } from './hand.ts';
 import type { DrawingKind, PointUm } from './hand.ts';
 
 export type StrokePhase = 'start' | 'move' | 'end' | 'cancel';
@@ -8,6 +9,7 @@ export const nearPixels = 8;
 export const strokePixels = 1.5;
 /** A recipe takes no more points in one path. */
 const mostPoints = 10_000;
+const mostPlaces = 1000;
 
 export class Drawing {
   readonly kind: DrawingKind;
@@ -20,9 +22,10 @@ export class Drawing {
   private readonly onPath: (path: readonly PointUm[]) => void;
   private readonly onChange: () => void;
 
-  /** @param onPath takes a finished path; @param onChange is told whenever something looks different. */
-  constructor(kind: DrawingKind, onPath: (path: readonly PointUm[]) => void, onChange: () => void) {
+  /** @param onPath takes a finished path; @param onChange is told whenever something looks different; @param from what is there already. */
+  constructor(kind: DrawingKind, onPath: (path: readonly PointUm[]) => void, onChange: () => void, from: readonly PointUm[] = []) {
     this.kind = kind;
+    this.path = [...from];
     this.onPath = onPath;
     this.onChange = onChange;
   }
@@ -33,7 +36,7 @@ export class Drawing {
 
   /** Whether the path could end now. */
   get isEnough(): boolean {
-    return this.path.length >= { stroke: 1, line: 2, corners: 3 }[this.kind];
+    return this.path.length >= { stroke: 1, line: 2, corners: 3, places: leastSpots }[this.kind];
   }
 
   /** A held pointer, for strokes and lines. `moved`: it is no mere click; `leastUm`: nearer points say nothing new. */
@@ -64,13 +67,22 @@ export class Drawing {
   add(at: PointUm, nearUm: number): void {
     const [first, last] = [this.path[0], this.path.at(-1)];
     this.aimed = at;
-    if (last && near(last, at, nearUm)) this.finish();
+    if (this.kind === 'places') this.toggle(at, nearUm);
+    else if (last && near(last, at, nearUm)) this.finish();
     else if (this.kind === 'corners' && this.isEnough && first && near(first, at, nearUm)) this.finish();
     else if (this.path.length < mostPoints) {
       this.path = [...this.path, at];
       if (this.kind === 'line' && this.isEnough) this.finish();
     }
     this.onChange();
+  }
+
+  /** The nearest place within reach goes; where there is none, one is set. */
+  private toggle(at: PointUm, nearUm: number): void {
+    const distance = ([x, y]: PointUm): number => Math.hypot(x - at[0], y - at[1]);
+    const nearest = this.path.reduce<PointUm | undefined>((best, point) => (best && distance(best) <= distance(point) ? best : point), undefined);
+    if (nearest && distance(nearest) <= nearUm) this.path = this.path.filter((point) => point !== nearest);
+    else if (this.path.length < mostPlaces) this.path = [...this.path, at];
   }
 
   /** Takes the last point back; false when there is none. */

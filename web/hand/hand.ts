@@ -1,4 +1,4 @@
-/** Tools for correcting flaws by hand: what each draws on the map, what it says, and the correction that comes of it. */
+/** Tools for work by hand on the map, corrections of flaws and spots of ground: what each draws, what it says, and the correction that comes of it. */
 import type { Correction, FlawCause, FlawEntry } from '../../workers/api.ts';
 import { plain } from '../sample/format.ts';
 
@@ -12,10 +12,14 @@ export type Hand =
   | { readonly tool: 'merge'; readonly first: FlawEntry }
   | { readonly tool: 'split' }
   | { readonly tool: 'brush'; readonly as: DrawnAs; readonly widthUm: number }
-  | { readonly tool: 'outline'; readonly as: DrawnAs };
+  | { readonly tool: 'outline'; readonly as: DrawnAs }
+  | { readonly tool: 'spots'; readonly from: readonly PointUm[] };
 
-/** How a tool draws: a path under a held pointer, a straight line, or corners set one by one. */
-export type DrawingKind = 'stroke' | 'line' | 'corners';
+/** How a tool draws: a path under a held pointer, a straight line, corners set one by one, or single places, which a second click takes out. */
+export type DrawingKind = 'stroke' | 'line' | 'corners' | 'places';
+
+/** Fewer spots of ground leave a tilt open. */
+export const leastSpots = 3;
 
 /** A correction and its name for the undo button. */
 export interface NamedCorrection {
@@ -24,7 +28,7 @@ export interface NamedCorrection {
 }
 
 export function drawingKind(hand: Hand): DrawingKind | undefined {
-  return hand.tool === 'brush' ? 'stroke' : hand.tool === 'split' ? 'line' : hand.tool === 'outline' ? 'corners' : undefined;
+  return hand.tool === 'brush' ? 'stroke' : hand.tool === 'split' ? 'line' : hand.tool === 'outline' ? 'corners' : hand.tool === 'spots' ? 'places' : undefined;
 }
 
 /** Which flaw is meant, as a place on it: numbers change with every appraisal. */
@@ -50,7 +54,7 @@ export function mergeFlaws(first: FlawEntry, second: FlawEntry): NamedCorrection
 export function drawn(hand: Hand, path: readonly PointUm[]): NamedCorrection | undefined {
   const pointsUm = path.map(rounded);
   switch (hand.tool) {
-    case 'merge': return undefined;
+    case 'merge': case 'spots': return undefined;
     case 'split': return { correction: { kind: 'split', pointsUm }, label: 'flaw split' };
     case 'brush':
       return hand.as === 'none'
@@ -67,6 +71,7 @@ export function hintOf(hand: Hand): string {
     case 'merge': return `Merging flaw ${hand.first.flaw}: pick the other flaw, on the map or in the list.`;
     case 'split': return 'Splitting: draw a line right across the flaw.';
     case 'brush': return `${hand.as === 'none' ? 'Erasing flaws' : `Painting ${hand.as}`}, ${plain(hand.widthUm)}\u00a0µm wide: drag over the map.`;
+    case 'spots': return `Picking ground: ${leastSpots} or more places of bare, even ground, spread over the map; a place again takes it out.`;
     case 'outline': return `Outlining ${hand.as === 'none' ? 'flawless ground' : hand.as}: set corners, then the first one again.`;
   }
 }
@@ -77,6 +82,14 @@ export function firstWidthUm(mapUm: number): number {
   const power = 10 ** Math.floor(Math.log10(most));
   const lead = most / power;
   return Number(((lead >= 5 ? 5 : lead >= 2 ? 2 : 1) * power).toPrecision(1));
+}
+
+/** Places as the recipe's spots of ground. */
+export function asSpots(path: readonly PointUm[]): readonly { readonly xUm: number; readonly yUm: number }[] {
+  return path.map((point) => {
+    const [xUm, yUm] = rounded(point);
+    return { xUm, yUm };
+  });
 }
 
 /** To a tenth of a nanometre, finer than any pixel. */

@@ -35,7 +35,7 @@ export class StageDrawing {
     this.now = kind && new Drawing(kind, (pointsUm) => { this.tell('hand-path', { pointsUm }); }, () => {
       this.sayDraft();
       this.changed();
-    });
+    }, hand.tool === 'spots' ? hand.from : []);
     // Another width or cause: what is still computed stays in sight.
     if (this.now && former?.kind === kind) this.now.settling = former?.settling ?? [];
     this.sayDraft();
@@ -50,7 +50,7 @@ export class StageDrawing {
 
   /** Whether a held pointer draws. */
   get isHeld(): boolean {
-    return this.now !== undefined && this.now.kind !== 'corners';
+    return this.now !== undefined && this.now.kind !== 'corners' && this.now.kind !== 'places';
   }
 
   /** @param fill colour of what is drawn. */

@@ -8,13 +8,21 @@ export interface Span {
 /** A segment below this cannot be seen or hit. */
 export const leastWidth = 3;
 
+/** The same for a cause of a few pixels of the map: a mark that it is there, not a segment like others. */
+export const markWidth = 1.5;
+
+/** Least width of each segment: what would be less than a quarter of a pixel wide is only marked. */
+export function leastWidths(shares: readonly number[], width: number): readonly number[] {
+  return shares.map((share) => (share * width < 0.25 ? markWidth : leastWidth));
+}
+
 /**
- * Widths in proportion to `shares` that fill `width` exactly, none below `least` and `gaps[i]` pixels free before segment i.
+ * Widths in proportion to `shares` that fill `width` exactly, none below its `least` (one for all, or one each) and `gaps[i]` pixels free before segment i.
  * What the small ones gain, the large ones give in proportion. When not even `least` fits for all, they are equal.
  */
-export function segmentSpans(shares: readonly number[], width: number, gaps: readonly number[], least = leastWidth): readonly Span[] {
+export function segmentSpans(shares: readonly number[], width: number, gaps: readonly number[], least: number | readonly number[] = leastWidth): readonly Span[] {
   const room = Math.max(0, width - gaps.reduce((sum, gap) => sum + gap, 0));
-  const widths = sharedWidths(shares, room, least);
+  const widths = sharedWidths(shares, room, typeof least === 'number' ? shares.map(() => least) : least);
   let x = 0;
   return widths.map((each, index) => {
     x += gaps[index] ?? 0;
@@ -24,16 +32,17 @@ export function segmentSpans(shares: readonly number[], width: number, gaps: rea
   });
 }
 
-function sharedWidths(shares: readonly number[], room: number, least: number): readonly number[] {
-  if (shares.length * least >= room) return shares.map(() => room / Math.max(1, shares.length));
+function sharedWidths(shares: readonly number[], room: number, least: readonly number[]): readonly number[] {
+  const leastOf = (index: number): number => least[index] ?? 0;
+  if (least.reduce((sum, each) => sum + each, 0) >= room) return shares.map(() => room / Math.max(1, shares.length));
   const small = new Set<number>();
   // Each round lifts segments to the least width; the others share what is left, which may push further ones below it.
   for (;;) {
-    const left = room - small.size * least;
+    const left = room - [...small].reduce((total, index) => total + leastOf(index), 0);
     const sum = shares.reduce((total, share, index) => (small.has(index) ? total : total + share), 0);
     const before = small.size;
-    const widths = shares.map((share, index) => (small.has(index) ? least : (share / (sum > 0 ? sum : 1)) * left));
-    widths.forEach((each, index) => { if (each < least) small.add(index); });
+    const widths = shares.map((share, index) => (small.has(index) ? leastOf(index) : (share / (sum > 0 ? sum : 1)) * left));
+    widths.forEach((each, index) => { if (each < leastOf(index)) small.add(index); });
     if (small.size === before) return widths;
   }
 }

@@ -2,10 +2,10 @@
 import { LitElement, html, nothing, svg } from 'lit';
 import type { PropertyValues } from 'lit';
 import type { ComputeFacts, LedgerEntry } from '../../workers/api.ts';
-import { area, figure, percent } from '../sample/format.ts';
+import { area, ledgerFigure, percent } from '../sample/format.ts';
 import { SizeWatch } from '../sample/size-watch.ts';
 import { causeFill, hatchDefinitions } from './hatches.ts';
-import { labelRow, leaderRoutes, segmentSpans } from './layout.ts';
+import { labelRow, leaderRoutes, leastWidths, segmentSpans } from './layout.ts';
 import type { Span } from './layout.ts';
 import { ledgerBarStyles } from './ledger-bar-styles.ts';
 import { notAssessed, orderEntries } from './order.ts';
@@ -65,7 +65,7 @@ export class LedgerBar extends LitElement {
     const ordered = orderEntries(this.entries);
     const spans = this.spansOf(ordered);
     if (this.compact) return this.renderCompact(ordered, spans);
-    const labels = ordered.map((entry) => `${entry.cause} ${figure(entry.areaUm2)}`);
+    const labels = ordered.map((entry) => `${entry.cause} ${this.areaText(entry)}`);
     const widths = labels.map((label) => swatch + 5 + this.textWidth(label));
     const places = labelRow(spans.map((span) => span.x), widths, this.width, labelGap);
     return html`
@@ -95,7 +95,8 @@ export class LedgerBar extends LitElement {
       const before = ordered[index - 1];
       return before === undefined ? 0 : this.compact || before.group === entry.group ? pairGap : groupGap;
     });
-    return segmentSpans(ordered.map((entry) => entry.share), this.width, gaps);
+    const shares = ordered.map((entry) => entry.share);
+    return segmentSpans(shares, this.width, gaps, leastWidths(shares, this.width));
   }
 
   private renderCompact(ordered: readonly OrderedEntry[], spans: readonly Span[]) {
@@ -144,7 +145,7 @@ export class LedgerBar extends LitElement {
         return svg`<g class=${this.labelClass(entry)}>
           ${route ? svg`<path class="leader" d="M${route.from} ${entry.group === 'uneven' ? base : 1}V${base + level * (route.level + 1)}H${route.to}V${top}"></path>` : nothing}
           <rect x=${x} y=${top + 1} width=${swatch} height=${swatch} rx="2" fill=${causeFill(entry.code, entry.cause)}></rect>
-          <text x=${x + swatch + 5} y=${top + 12}><tspan class="cause">${entry.cause}</tspan> <tspan class="area">${figure(entry.areaUm2)}</tspan></text>
+          <text x=${x + swatch + 5} y=${top + 12}><tspan class="cause">${entry.cause}</tspan> <tspan class="area">${this.areaText(entry)}</tspan></text>
         </g>`;
       })}
     </svg>`;
@@ -154,7 +155,7 @@ export class LedgerBar extends LitElement {
     return html`<div class="legend" aria-hidden="true">${ordered.map((entry) => html`
       <span class=${this.labelClass(entry)} @click=${() => this.isolate(this.isolated === entry.code ? undefined : entry.code)}>
         <svg width="18" height="12"><rect width="18" height="12" rx="2" fill=${causeFill(entry.code, entry.cause)}></rect></svg>
-        <b>${entry.cause}</b> ${figure(entry.areaUm2)}
+        <b>${entry.cause}</b> ${this.areaText(entry)}
       </span>`)}</div>`;
   }
 
@@ -193,6 +194,10 @@ export class LedgerBar extends LitElement {
 
   private isolate(code: number | undefined): void {
     this.dispatchEvent(new CustomEvent('isolate', { detail: { code }, bubbles: true, composed: true }));
+  }
+
+  private areaText({ areaUm2 }: OrderedEntry): string {
+    return ledgerFigure(areaUm2, this.entries.reduce((total, entry) => total + entry.areaUm2, 0));
   }
 
   private textWidth(text: string): number {

@@ -1,6 +1,6 @@
 /** Draws the stage: the picture at hand, moved and scaled to the present view, and what lies over it. */
 import type { Picture } from '../../workers/api.ts';
-import { drawHand } from '../hand/draw-hand.ts';
+import { drawHand, drawSpots } from '../hand/draw-hand.ts';
 import type { HandScene } from '../hand/draw-hand.ts';
 import { withUnit, figure } from '../sample/format.ts';
 import { boxOnStage, roundLength, toStage } from './view.ts';
@@ -19,6 +19,13 @@ export interface MapColours {
   readonly halo: string;
 }
 
+/** The page's colours where they are set, else those of the dark theme. */
+export function coloursOf(element: Element): MapColours {
+  const style = getComputedStyle(element);
+  const colour = (name: string, fallback: string): string => style.getPropertyValue(name).trim() || fallback;
+  return { background: colour('--background', '#0d1216'), line: colour('--line', '#25313b'), ink: '#ffffff', mark: '#ffffff', halo: '#0d1216' };
+}
+
 export interface MapScene {
   readonly extent: Extent;
   readonly stage: Size;
@@ -30,6 +37,8 @@ export interface MapScene {
   readonly cut: { readonly fromUm: readonly [number, number]; readonly toUm: readonly [number, number] | undefined } | undefined;
   /** Place whose values are read out by keyboard. */
   readonly cross: { readonly xUm: number; readonly yUm: number } | undefined;
+  /** Spots of ground picked by hand, µm. */
+  readonly spots?: readonly (readonly [x: number, y: number])[];
   /** What is being drawn by hand. */
   readonly hand?: HandScene | undefined;
   readonly colours: MapColours;
@@ -78,6 +87,7 @@ export function drawMap(pen: CanvasRenderingContext2D, scene: MapScene): void {
   pen.strokeRect(Math.round(whole.left) - 0.5, Math.round(whole.top) - 0.5, Math.round(whole.width) + 1, Math.round(whole.height) + 1);
   if (scene.flaw) drawFlaw(pen, scene, scene.flaw);
   if (scene.cut) drawCut(pen, scene, scene.cut);
+  if (scene.spots) drawSpots(pen, scene.spots.map(([x, y]) => toStage(view, x, y, extent)), (width, path) => { haloed(pen, colours, width, path); });
   if (scene.hand) drawHand(pen, view, extent, colours, scene.hand, (width, path) => { haloed(pen, colours, width, path); });
   if (scene.cross) drawCross(pen, scene, scene.cross);
   drawScaleBar(pen, scene, Math.max(whole.left, 0), Math.min(whole.top + whole.height, stage.height));

@@ -8,7 +8,8 @@ export interface GestureTarget {
   twice(): void;
   clicked(x: number, y: number): void;
   hover(x: number, y: number): void;
-  leave(): void;
+  /** The pointer is no longer over the map; `finger`: because it was lifted. */
+  leave(finger: boolean): void;
   /** A straight line dragged with Shift held; `done` with the last point. */
   line(fromX: number, fromY: number, toX: number, toY: number, done: boolean): void;
   /** Whether one pointer draws now instead of moving the map. */
@@ -40,7 +41,7 @@ export class Gestures {
     element.addEventListener('pointermove', this.onMove);
     element.addEventListener('pointerup', this.onUp);
     element.addEventListener('pointercancel', this.onCancel);
-    element.addEventListener('pointerleave', () => { target.leave(); });
+    element.addEventListener('pointerleave', (event) => { target.leave(event.pointerType === 'touch'); });
     element.addEventListener('dblclick', () => { target.twice(); });
     element.addEventListener('wheel', this.onWheel, { passive: false });
   }

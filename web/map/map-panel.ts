@@ -1,9 +1,9 @@
 /** Map, switches, value scale, readout and cut together: what is seen of a sample's maps and how. */
 import { LitElement, html, nothing } from 'lit';
 import type { PropertyValues } from 'lit';
-import type { Compute, ComputeFacts, CutRequest, FlawEntry, HistogramRequest, MapInfo, MapName, PointValues, SampleSummary } from '../../workers/api.ts';
+import type { Compute, ComputeFacts, CutRequest, FlawEntry, HistogramRequest, MapInfo, MapName, Picture, PictureRequest, PointValues, SampleSummary } from '../../workers/api.ts';
 import { controlStyles } from '../app/controls.ts';
-import type { Hand } from '../hand/hand.ts';
+import type { Hand, PointUm } from '../hand/hand.ts';
 import '../hand/hand-strip.ts';
 import type { HandEdit } from '../hand/hand-strip.ts';
 import type { HandDraft, HandPath } from '../hand/stage-drawing.ts';
@@ -29,7 +29,7 @@ const holdMs = 350;
 
 export class MapPanel extends LitElement {
   static override properties = {
-    summary: { attribute: false }, facts: { attribute: false }, compute: { attribute: false }, isolated: { attribute: false }, flaw: { attribute: false }, bandFactor: { attribute: false }, hand: { attribute: false },
+    summary: { attribute: false }, facts: { attribute: false }, compute: { attribute: false }, isolated: { attribute: false }, flaw: { attribute: false }, bandFactor: { attribute: false }, hand: { attribute: false }, spots: { attribute: false }, repaired: { type: Boolean },
     map: { state: true }, raw: { state: true }, overlay: { state: true }, chosen: { state: true }, cut: { state: true }, cutting: { state: true },
     point: { state: true }, bins: { state: true }, profile: { state: true }, problem: { state: true }, draft: { state: true },
   };
@@ -42,6 +42,10 @@ export class MapPanel extends LitElement {
   declare bandFactor: number;
   /** The tool for correcting flaws that is in hand. */
   declare hand: Hand | undefined;
+  /** Of ground picked by hand. */
+  declare spots: readonly PointUm[];
+  /** Mark what was repaired. */
+  declare repaired: boolean;
   declare map: SwitchMap;
   declare raw: boolean;
   declare overlay: boolean;
@@ -73,6 +77,8 @@ export class MapPanel extends LitElement {
     this.problem = '';
     this.bandFactor = 3;
     this.draft = { points: 0, enough: false };
+    this.spots = [];
+    this.repaired = false;
   }
 
   /** The map on show; the first there is when the wanted one is not. */
@@ -108,10 +114,10 @@ export class MapPanel extends LitElement {
     return html`
       <eg-map-bar .maps=${summary.maps.map(({ name }) => name)} .map=${this.map} .raw=${this.raw} .causes=${this.overlay} .cutting=${this.cutting} @tool=${(event: CustomEvent<Tool>) => { this.use(event.detail); }}></eg-map-bar>
       <div class="stage">
-        <eg-map-stage .summary=${summary} .compute=${this.compute} .map=${info.name} .limits=${limits} .causes=${causes} .flaw=${this.flaw} .cut=${cut} .cutting=${this.cutting} .hand=${this.hand} .handFill=${this.handFill}
+        <eg-map-stage .summary=${summary} .compute=${this.compute} .map=${info.name} .limits=${limits} .causes=${causes} .flaw=${this.flaw} .cut=${cut} .cutting=${this.cutting} .hand=${this.hand} .handFill=${this.handFill} .spots=${this.spots} ?repaired=${this.repaired}
           @hand-draft=${(event: CustomEvent<HandDraft>) => { this.draft = event.detail; }}
           @hand-path=${(event: CustomEvent<HandPath>) => { this.tell('hand-path', event.detail); }}
-          @point=${(event: CustomEvent<PointValues | undefined>) => { this.point = event.detail ?? this.point; }}
+          @point=${(event: CustomEvent<PointValues | undefined>) => { this.point = event.detail ?? undefined; }}
           @flaw-select=${(event: CustomEvent) => { this.tell('flaw-select', event.detail); }}
           @picture=${() => { this.problem = ''; }}
           @map-problem=${(event: CustomEvent<{ message: string }>) => { this.problem = event.detail.message; }}
@@ -158,6 +164,16 @@ export class MapPanel extends LitElement {
   focusMap(): void {
     if (matchMedia('(max-width: 900px)').matches) this.scrollIntoView({ block: 'start' });
     this.stage?.focus();
+  }
+
+  /** What a quick look at another recipe needs to draw. */
+  get glanceRequest(): PictureRequest | undefined {
+    return this.stage?.glanceRequest;
+  }
+
+  /** Shows a quick look's picture in place of the map's own, which comes back without one. */
+  glance(request: PictureRequest, picture: Picture | undefined): void {
+    this.stage?.glance(request, picture);
   }
 
   /** A key pressed anywhere in the sample's place; true when it meant something here. */

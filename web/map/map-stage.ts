@@ -1,32 +1,26 @@
 /** The map itself: a canvas of the screen's pixels that asks the computation for exactly the part in sight. */
 import { LitElement, html } from 'lit';
 import type { PropertyValues } from 'lit';
-import type { Compute, FlawEntry, MapName, Picture, PictureRequest, PointValues, SampleSummary } from '../../workers/api.ts';
+import type { Compute, FlawEntry, MapName, Picture, PictureRequest, SampleSummary } from '../../workers/api.ts';
 import { nearPixels, strokePixels } from '../hand/drawing.ts';
 import type { StrokePhase } from '../hand/drawing.ts';
 import type { Hand, PointUm } from '../hand/hand.ts';
 import { StageDrawing } from '../hand/stage-drawing.ts';
 import { SizeWatch } from '../sample/size-watch.ts';
-import { drawMap, imageOf, sizeCanvas } from './draw-map.ts';
-import type { HeldPicture } from './draw-map.ts';
+import { coloursOf, drawMap, sizeCanvas } from './draw-map.ts';
 import { Gestures } from './gestures.ts';
 import type { GestureTarget } from './gestures.ts';
-import { Latest } from './latest.ts';
 import { mapStageStyles } from './map-stage-styles.ts';
+import { stageLabel } from './map-words.ts';
+import { StagePictures } from './stage-pictures.ts';
+import { StagePoints } from './stage-points.ts';
 import type { Limits } from './value-axis.ts';
-import { centreView, fitView, panView, toSample, toSampleAnywhere, visiblePart, zoomView } from './view.ts';
+import { centreView, fitView, keyMove, panView, toSample, toSampleAnywhere, visiblePart, zoomView } from './view.ts';
 import type { Size, View } from './view.ts';
 
 export interface Cut {
   readonly fromUm: readonly [number, number];
   readonly toUm: readonly [number, number] | undefined;
-}
-
-interface PointQuestion {
-  readonly id: string;
-  readonly xUm: number;
-  readonly yUm: number;
-  readonly clicked: boolean;
 }
 
 /** A selected flaw is brought to at least this many stage pixels. */
@@ -35,7 +29,8 @@ const flawPixels = 36;
 export class MapStage extends LitElement implements GestureTarget {
   static override properties = {
     summary: { attribute: false }, compute: { attribute: false }, map: { attribute: false }, limits: { attribute: false }, causes: { attribute: false },
-    flaw: { attribute: false }, cut: { attribute: false }, cutting: { type: Boolean, reflect: true }, hand: { attribute: false }, handFill: { attribute: false },
+    flaw: { attribute: false }, cut: { attribute: false }, cutting: { type: Boolean, reflect: true }, hand: { attribute: false }, handFill: { attribute: false }, spots: { attribute: false },
+    repaired: { type: Boolean },
   };
 
   declare summary: SampleSummary;
@@ -50,34 +45,32 @@ export class MapStage extends LitElement implements GestureTarget {
   /** The tool for correcting flaws, and the colour of what it draws. */
   declare hand: Hand | undefined;
   declare handFill: string | undefined;
+  /** Of ground picked by hand. */
+  declare spots: readonly PointUm[] | undefined;
+  /** Mark what was repaired. */
+  declare repaired: boolean | undefined;
 
   private readonly pencil = new StageDrawing((type, detail) => { this.send(type, detail); }, () => { this.refresh(); });
   private view: View | undefined;
   /** Whether the whole map is to stay in sight when the stage changes its size. */
   private whole = true;
   private stage: Size = { width: 0, height: 0 };
-  private picture: HeldPicture | undefined;
-  private askedKey = '';
   private cross: { readonly xUm: number; readonly yUm: number } | undefined;
   private frame = 0;
   /** Where the second end of a cut would be. */
   private aimed: readonly [number, number] | undefined;
   protected readonly sizes = new SizeWatch(this, () => { this.onSize(); });
-  private readonly pictures = new Latest<PictureRequest, Picture>((request) => this.compute.picture(request), (request, picture) => { this.hold(request, picture); }, (_, error) => { this.fail(error); });
-  private readonly points = new Latest<PointQuestion, PointValues>(
-    ({ id, xUm, yUm }) => this.compute.point(id, xUm, yUm),
-    ({ clicked }, values) => {
-      this.send('point', values);
-      if (clicked) this.send('flaw-select', { flaw: values.flaw?.flaw });
-    },
-    (_, error) => { this.fail(error); },
-  );
+  private readonly pictures = new StagePictures((request) => this.compute.picture(request), (request, picture) => { this.hold(request, picture); }, (error) => { this.fail(error); });
+  private readonly points = new StagePoints((id, xUm, yUm) => this.compute.point(id, xUm, yUm), (values, clicked) => {
+    this.send('point', values);
+    if (clicked) this.send('flaw-select', { flaw: values.flaw?.flaw });
+  }, (error) => { this.fail(error); });
 
   static override styles = mapStageStyles;
 
   override render() {
     return html`<canvas tabindex="0" role="application" aria-roledescription="map" class=${this.pencil.now ? 'drawing' : ''}
-      aria-label="Map: ${this.map}. Plus and minus zoom, arrows move, 0 shows all of it.${this.pencil.now ? ' Enter sets a point in the middle, twice ends the path; Backspace takes it back, Escape drops it.' : ''}" @keydown=${this.onKey}></canvas>`;
+      aria-label=${stageLabel(this.map, this.pencil.now?.kind)} @keydown=${this.onKey}></canvas>`;
   }
 
   override disconnectedCallback(): void {
@@ -98,9 +91,9 @@ export class MapStage extends LitElement implements GestureTarget {
     if (changed.has('summary')) this.pencil.now?.settled();
     const before = changed.get('summary');
     if (before === undefined || !changed.has('summary')) return;
-    this.askedKey = '';
+    this.pictures.again();
     if (before.id === this.summary.id && before.columns === this.summary.columns && before.rows === this.summary.rows) return;
-    this.picture = undefined;
+    this.pictures.held = undefined;
     this.cross = undefined;
     this.whole = true;
     this.onSize();
@@ -115,6 +108,18 @@ export class MapStage extends LitElement implements GestureTarget {
     if (!this.view) return;
     const scale = Math.min(flawPixels / Math.max(diameterUm, 1e-9), fitView(this.summary, this.stage).scale * 8);
     this.show(centreView(this.view, xUm, this.summary.heightUm - yUm, scale, this.summary, this.stage));
+  }
+
+  /** What to ask of a quick look at another recipe. */
+  get glanceRequest(): PictureRequest | undefined {
+    return this.pictures.glance;
+  }
+
+  /** Shows a picture of a quick look; none: the map's own comes back. */
+  glance(request: PictureRequest, picture: Picture | undefined): void {
+    this.pictures.look(picture !== undefined);
+    if (picture) this.hold(request, picture);
+    this.refresh();
   }
 
   /** The keyboard goes to the map, to draw on it. */
@@ -154,21 +159,24 @@ export class MapStage extends LitElement implements GestureTarget {
   }
 
   hover(x: number, y: number): void {
+    this.points.isOver = true;
     const place = this.place(x, y);
     if (this.cross) {
       this.cross = undefined;
       this.refresh();
     }
-    if (place) this.points.ask({ id: this.summary.id, ...place, clicked: false });
+    if (place) this.points.ask(this.summary.id, place, 'hover');
     this.pencil.now?.aim(this.anywhere(x, y));
     if (!this.cutting || !this.cut || this.cut.toUm) return;
     this.aimed = place && [place.xUm, place.yUm];
     this.refresh();
   }
 
-  leave(): void {
+  /** A finger always leaves: what it tapped stays. */
+  leave(finger: boolean): void {
+    this.points.isOver = false;
     this.pencil.now?.aim(undefined);
-    this.send('point', undefined);
+    if (!finger) this.send('point', undefined);
   }
 
   clicked(x: number, y: number): void {
@@ -176,7 +184,7 @@ export class MapStage extends LitElement implements GestureTarget {
     if (this.pencil.now) this.pencil.now.add(this.anywhere(x, y), nearPixels / (this.view?.scale ?? 1));
     if (!place || this.pencil.now) return;
     if (this.cutting) this.send('cut-point', place);
-    else this.points.ask({ id: this.summary.id, ...place, clicked: true });
+    else this.points.ask(this.summary.id, place, 'click');
   }
 
   line(fromX: number, fromY: number, toX: number, toY: number, done: boolean): void {
@@ -187,9 +195,7 @@ export class MapStage extends LitElement implements GestureTarget {
 
   /** Zoom and movement by keys; true when the key meant something. */
   press(key: string): boolean {
-    const step = this.pencil.now ? 12 : 60;
-    const moves: Readonly<Record<string, readonly [number, number]>> = { ArrowLeft: [step, 0], ArrowRight: [-step, 0], ArrowUp: [0, step], ArrowDown: [0, -step] };
-    const move = moves[key];
+    const move = keyMove(key, this.pencil.now ? 12 : 60);
     if (move) this.pan(...move);
     else if (key === '+' || key === '=') this.zoom(1.4);
     else if (key === '-') this.zoom(1 / 1.4);
@@ -211,7 +217,7 @@ export class MapStage extends LitElement implements GestureTarget {
   /** A point in the middle, where the cross is. */
   private setMiddle(): void {
     this.readMiddle();
-    if (this.cross) this.pencil.now?.add([this.cross.xUm, this.cross.yUm], 0);
+    if (this.cross) this.pencil.now?.add([this.cross.xUm, this.cross.yUm], this.pencil.now.kind === 'places' ? nearPixels / (this.view?.scale ?? 1) : 0);
   }
 
   private anywhere(x: number, y: number): PointUm {
@@ -223,7 +229,7 @@ export class MapStage extends LitElement implements GestureTarget {
     const place = this.place(this.stage.width / 2, this.stage.height / 2);
     if (!place) return;
     this.cross = place;
-    this.points.ask({ id: this.summary.id, ...place, clicked: false });
+    this.points.ask(this.summary.id, place, 'cross');
     this.refresh();
   }
 
@@ -252,19 +258,15 @@ export class MapStage extends LitElement implements GestureTarget {
     const part = this.view && visiblePart(this.view, this.summary, this.stage, devicePixelRatio);
     if (!part || !this.limits) return;
     const { low, high, log } = this.limits;
-    const request: PictureRequest = {
+    this.pictures.want({
       id: this.summary.id, map: this.map, ...part.part, width: part.picture.width, height: part.picture.height, low, high, log,
-      causes: this.causes, pixelRatio: devicePixelRatio, ...(this.flaw ? { flaw: this.flaw.flaw } : {}),
-    };
-    const key = JSON.stringify(request);
-    if (key === this.askedKey) return;
-    this.askedKey = key;
-    this.pictures.ask(request);
+      causes: this.causes, pixelRatio: devicePixelRatio, ...(this.flaw ? { flaw: this.flaw.flaw } : {}), ...(this.repaired ? { repaired: true } : {}),
+    });
   }
 
   private hold(request: PictureRequest, picture: Picture): void {
     if (request.id !== this.summary.id) return;
-    this.picture = { image: imageOf(picture), part: { left: request.left, top: request.top, columns: request.columns, rows: request.rows } };
+    this.pictures.hold(request, picture);
     this.send('picture', { map: request.map });
     this.refresh();
   }
@@ -274,12 +276,10 @@ export class MapStage extends LitElement implements GestureTarget {
     const pen = canvas.getContext('2d');
     if (!pen || !this.view || this.stage.width === 0) return;
     sizeCanvas(canvas, this.stage, devicePixelRatio);
-    const style = getComputedStyle(this);
-    const colour = (name: string, fallback: string): string => style.getPropertyValue(name).trim() || fallback;
     drawMap(pen, {
-      extent: this.summary, stage: this.stage, pixelRatio: devicePixelRatio, view: this.view, picture: this.picture, flaw: this.flaw, cut: this.cut && { fromUm: this.cut.fromUm, toUm: this.cut.toUm ?? this.aimed }, cross: this.cross,
-      hand: this.pencil.scene(this.handFill),
-      colours: { background: colour('--background', '#0d1216'), line: colour('--line', '#25313b'), ink: '#ffffff', mark: '#ffffff', halo: '#0d1216' },
+      extent: this.summary, stage: this.stage, pixelRatio: devicePixelRatio, view: this.view, picture: this.pictures.held, flaw: this.flaw, cut: this.cut && { fromUm: this.cut.fromUm, toUm: this.cut.toUm ?? this.aimed }, cross: this.cross,
+      ...(this.spots && this.pencil.now?.kind !== 'places' ? { spots: this.spots } : {}), hand: this.pencil.scene(this.handFill),
+      colours: coloursOf(this),
     });
   }
 

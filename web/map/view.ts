@@ -135,3 +135,9 @@ export function roundLength(scale: number, longest: number): number {
   const lead = most / power;
   return Number(((lead >= 5 ? 5 : lead >= 2 ? 2 : 1) * power).toPrecision(1));
 }
+
+/** By how many stage pixels an arrow key moves the map; undefined for other keys. */
+export function keyMove(key: string, step: number): readonly [dx: number, dy: number] | undefined {
+  const moves: Readonly<Record<string, readonly [number, number]>> = { ArrowLeft: [step, 0], ArrowRight: [-step, 0], ArrowUp: [0, step], ArrowDown: [0, -step] };
+  return moves[key];
+}

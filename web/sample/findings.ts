@@ -1,5 +1,5 @@
 /** What each chapter found, in one or two plain sentences composed from the summary. */
-import type { SampleSummary } from '../../workers/api.ts';
+import type { Preview, SampleSummary } from '../../workers/api.ts';
 import { area, counted, density, densitySpan, figure, fixed, percent, volts, withUnit } from './format.ts';
 
 /** "Bare barrier, height and current, 5.9 V between tip and sample; 512 × 512 pixels on 10.0 × 10.0 µm." */
@@ -19,8 +19,17 @@ export function groundFinding({ height, current, repairedUm2 }: SampleSummary): 
   if (height) parts.push(`noise ${withUnit(height.noiseNm, 'nm', 2)}`);
   const first = capital(parts.join(', '));
   if (!current) return `${first}.`;
-  const wear = current.wearTold ? `the tip lost ${fixed(current.wearDecades, 2)} decades` : 'no wear of the tip told from the barrier';
+  const wear = current.wearTold ? `the tip lost ${fixed(current.wearDecades, 2)} decades of conductance (a factor of ${figure(10 ** current.wearDecades, 2)})` : 'no wear of the tip told from the barrier';
   return `${first}; ${wear}.`;
+}
+
+/** Where a held handle would lead: "about 40.2 µm² usable; 34 bubbles, 9 residue patches …, from every 2nd pixel". */
+export function lookFinding({ usableUm2, flaws, everyPx }: Preview): string {
+  const seen = [
+    [flaws.bubble, 'bubble', 'bubbles'], [flaws.residue, 'residue patch', 'residue patches'], [flaws.wrinkle, 'wrinkle', 'wrinkles'], [flaws.short, 'short', 'shorts'], [flaws.open, 'open spot', 'open spots'],
+  ] as const;
+  const found = seen.filter(([number]) => number > 0).map(([number, one, many]) => counted(number, one, many)).join(', ');
+  return `About ${area(usableUm2)} usable; ${found === '' ? 'no flaws' : found}${everyPx > 1 ? `; a quick look at every ${everyPx === 2 ? '2nd' : everyPx === 3 ? '3rd' : `${everyPx}th`} pixel` : ''}. Let go for the result.`;
 }
 
 /** "34 bubbles, 9 residue patches, 4 wrinkles; 6 shorts seen, about 19 more expected." More: those between the scan lines, as in the verdict. */

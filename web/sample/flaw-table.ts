@@ -3,7 +3,7 @@ import { LitElement, css, html, nothing } from 'lit';
 import type { PropertyValues } from 'lit';
 import type { FlawEntry } from '../../workers/api.ts';
 import { controlStyles } from '../app/controls.ts';
-import { figure, sureness } from './format.ts';
+import { figure, fixed, sureness } from './format.ts';
 import { sortFlaws } from './sort-flaws.ts';
 import type { FlawColumn } from './sort-flaws.ts';
 
@@ -35,8 +35,11 @@ export class FlawTable extends LitElement {
     tbody tr:hover td, tr[aria-current] td { background: var(--raised, #1b252d); }
     tr[aria-current] td:first-child { box-shadow: inset 3px 0 var(--glow, #ffb454); }
     .sure { white-space: normal; }
+    .figure { color: var(--dim, #8fa0af); }
     td button { padding: 0 4px; border: 0; background: none; font-size: inherit; }
-    .reason td { border-top: 0; padding: 0 8px 6px; white-space: normal; color: var(--dim, #8fa0af); cursor: default; }
+    .reason td { border-top: 0; max-width: 0; padding: 0 8px 3px; overflow: hidden; text-overflow: ellipsis; color: var(--dim, #8fa0af); }
+    .reason.whole td { padding-bottom: 6px; white-space: normal; }
+    tr:has(+ .reason:hover) td { background: var(--raised, #1b252d); }
     .more { margin-top: 6px; font-size: 0.8125rem; }
   `];
 
@@ -80,10 +83,10 @@ export class FlawTable extends LitElement {
     return html`
       <tr aria-current=${selected ? 'true' : nothing} @click=${() => { this.select(selected ? undefined : flaw.flaw); }}>
         <td><button type="button" aria-label="flaw ${flaw.flaw}, ${flaw.cause}: show on the map" aria-pressed=${selected ? 'true' : 'false'}>${flaw.flaw}</button></td>
-        <td>${flaw.cause}</td><td class="sure">${sureness(flaw)}</td>
+        <td>${flaw.other === undefined ? flaw.cause : `${flaw.cause} or ${flaw.other}`}</td><td class="sure">${flaw.other === undefined ? sureness(flaw) : 'ambiguous'} ${flaw.byHand ? '' : html`<span class="figure">${fixed(flaw.confidence, 2)}</span>`}</td>
         <td class="number">${figure(flaw.areaUm2)}</td><td class="number">${figure(flaw.peakNm)}</td><td class="number">${figure(flaw.heightToRadius, 2)}</td>
       </tr>
-      ${selected ? html`<tr class="reason"><td colspan=${columns.length}>${flaw.reason}</td></tr>` : nothing}`;
+      <tr class="reason ${selected ? 'whole' : ''}"><td colspan=${columns.length} title=${selected ? nothing : flaw.reason} @click=${() => { this.select(selected ? undefined : flaw.flaw); }}>${flaw.reason}</td></tr>`;
   }
 
   private sortBy(column: FlawColumn, number: boolean): void {

@@ -18,6 +18,19 @@ export function figure(value: number | undefined, digits = 3): string {
   return signed(value.toFixed(Math.max(0, digits - 1 - exponent)));
 }
 
+/**
+ * An area in a column whose entries add up to `total`: three significant digits, but no more decimals than a ten-thousandth of the whole asks for, so
+ * that a cause of one pixel does not look the most exact of all. What is below that is "<0.01".
+ */
+export function ledgerFigure(value: number, total: number): string {
+  const decimals = total > 0 ? Math.min(12, Math.max(0, 4 - Math.floor(Math.log10(total)))) : 2;
+  const least = 10 ** -decimals;
+  if (value > 0 && value < least) return `<${least.toFixed(decimals)}`;
+  const text = figure(value);
+  const own = /\.(\d+)$/.exec(text)?.[1]?.length ?? 0;
+  return own > decimals ? fixed(value, decimals) : text;
+}
+
 /** A number as somebody gave it: up to six significant digits, no trailing zeros. */
 export function plain(value: number | undefined): string {
   return value === undefined || !Number.isFinite(value) ? missing : signed(String(Number(value.toPrecision(6))));
@@ -106,9 +119,9 @@ export function confidenceWord(confidence: number): 'certain' | 'likely' | 'coul
   return confidence >= 0.9 ? 'certain' : confidence >= 0.7 ? 'likely' : 'could be another';
 }
 
-/** The same for a flaw, or that a person said so. */
-export function sureness({ byHand, confidence }: { readonly byHand?: true; readonly confidence: number }): string {
-  return byHand ? 'by hand' : confidenceWord(confidence);
+/** The same for a flaw, or that a person said so; an ambiguous one says what else it could be. */
+export function sureness({ byHand, confidence, other }: { readonly byHand?: true; readonly confidence: number; readonly other?: string }): string {
+  return byHand ? 'by hand' : other === undefined ? confidenceWord(confidence) : `could be ${other}`;
 }
 
 /** "1 bubble", "34 bubbles", "no shorts". */

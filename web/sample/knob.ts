@@ -3,7 +3,7 @@ import { LitElement, css, html, nothing } from 'lit';
 import type { PropertyValues } from 'lit';
 import type { FieldInfo } from '../../workers/api.ts';
 import { controlStyles } from '../app/controls.ts';
-import type { RecipeChange } from './events.ts';
+import type { RecipeChange, RecipePreview } from './events.ts';
 import { plain, typedNumber } from './format.ts';
 import { refusal, stepLabel } from './knobs.ts';
 import type { Slider } from './knobs.ts';
@@ -13,7 +13,7 @@ const sliderSteps = 400;
 export class Knob extends LitElement {
   static override properties = {
     field: { attribute: false }, slider: { attribute: false }, value: { attribute: false }, found: { attribute: false },
-    draft: { state: true }, problem: { state: true },
+    live: { type: Boolean }, look: { attribute: false }, meaning: { attribute: false }, topic: { attribute: false }, draft: { state: true }, problem: { state: true },
   };
 
   declare field: FieldInfo;
@@ -22,9 +22,21 @@ export class Knob extends LitElement {
   declare value: number | string | boolean | undefined;
   /** What is used while the field is absent, where the appraisal found it: "5.9 V". */
   declare found: string | undefined;
+  /** Every place of a held slider is told, not only the last. */
+  declare live: boolean;
+  /** Where a held handle would lead, in words; shown while it is this one. */
+  declare look: string;
+  /** What a value means on this map, in words. */
+  declare meaning: ((value: number) => string) | undefined;
+  /** Where the method page explains it. */
+  declare topic: string | undefined;
   /** Number on a slider that is still held. */
   declare draft: number | undefined;
   declare problem: string;
+  /** A key that moves the slider is down: its release is the handle's. */
+  private keyDown = false;
+  /** What the slider was left at while a key was down. */
+  private waiting: number | undefined;
 
   static override styles = [controlStyles, css`
     :host { display: block; padding: 5px 0; font-size: 0.875rem; }
@@ -38,12 +50,17 @@ export class Knob extends LitElement {
     .reset { padding: 0; width: 1.4rem; height: 1.6rem; line-height: 1; }
     .changed label { color: var(--glow-soft, #ffd9a0); }
     .hint { margin: 1px 0 0; color: var(--dim, #8fa0af); font-size: 0.78rem; line-height: 1.4; }
+    .meaning { margin: 1px 0 0; font-size: 0.8125rem; line-height: 1.4; }
+    .look { color: var(--glow-soft, #ffd9a0); }
+    .how { padding: 0 0.15rem; font-size: inherit; }
     .problem { margin: 2px 0 0; color: var(--bad, #ff9a76); font-size: 0.8125rem; }
   `];
 
   constructor() {
     super();
     this.problem = '';
+    this.live = false;
+    this.look = '';
   }
 
   override willUpdate(changed: PropertyValues<this>): void {
@@ -64,7 +81,17 @@ export class Knob extends LitElement {
         ${this.renderSlider()}
       </div>
       ${this.problem === '' ? nothing : html`<p class="problem" role="alert">${this.problem}</p>`}
-      <p class="hint" id="hint">${field.description} <span class="default">Default: ${this.defaultText()}.</span></p>`;
+      ${this.renderMeaning()}
+      <p class="hint" id="hint">${field.description} <span class="default">Default: ${this.defaultText()}.</span>${this.topic === undefined ? nothing : html`
+        <button type="button" class="plain how" aria-label="${field.title}: how this is done" @click=${() => { this.tell('how', { topic: this.topic }); }}>how</button>`}</p>`;
+  }
+
+  private renderMeaning() {
+    const now = this.draft ?? this.value ?? this.field.fallback;
+    const words = typeof now === 'number' ? this.meaning?.(now) ?? '' : '';
+    return html`
+      ${words === '' ? nothing : html`<p class="meaning">${words}</p>`}
+      ${this.draft === undefined || this.look === '' ? nothing : html`<p class="meaning look">${this.look}</p>`}`;
   }
 
   private get isChanged(): boolean {
@@ -111,8 +138,27 @@ export class Knob extends LitElement {
     const now = value ?? field.fallback;
     const shown = this.draft ?? (typeof now === 'number' ? now : undefined);
     return html`<input type="range" min="0" max=${sliderSteps} aria-label="${field.title}, slider" aria-valuetext=${this.withUnit(shown)} .value=${String(this.toSlider(shown, slider))}
-      @input=${(event: Event) => { this.draft = this.fromSlider(event, slider); }} @change=${(event: Event) => { this.commit(this.fromSlider(event, slider)); }}>`;
+      @input=${(event: Event) => { this.onSlide(this.fromSlider(event, slider)); }} @change=${(event: Event) => { this.onLeft(this.fromSlider(event, slider)); }}
+      @keydown=${() => { this.keyDown = true; }} @keyup=${this.onKeyUp} @blur=${this.onKeyUp}>`;
   }
+
+  private onSlide(value: number): void {
+    this.draft = value;
+    if (this.live && refusal(this.field, value) === undefined) this.tell('recipe-preview', { path: this.field.path, value } satisfies RecipePreview);
+  }
+
+  /** A key that is held makes many places of one movement. */
+  private onLeft(value: number): void {
+    if (this.keyDown) this.waiting = value;
+    else this.commit(value);
+  }
+
+  private readonly onKeyUp = (): void => {
+    this.keyDown = false;
+    const value = this.waiting;
+    this.waiting = undefined;
+    if (value !== undefined) this.commit(value);
+  };
 
   private withUnit(value: number | undefined): string {
     return value === undefined ? 'not given' : `${plain(value)} ${this.field.unit ?? ''}`.trim();
@@ -147,9 +193,17 @@ export class Knob extends LitElement {
   /** Nothing is sent when nothing changes; the default is sent as "not given". */
   private send(value: number | string | boolean | undefined): void {
     const sparse = value === this.field.fallback ? undefined : value;
-    if (sparse === this.value || (sparse === undefined && !this.isChanged)) return;
+    if (sparse === this.value || (sparse === undefined && !this.isChanged)) {
+      // The handle came back to where it was.
+      if (this.live) this.tell('recipe-preview', { path: this.field.path, value: undefined } satisfies RecipePreview);
+      return;
+    }
     const detail: RecipeChange = { path: this.field.path, value: sparse, label: stepLabel(this.field, sparse === undefined && value !== undefined ? value : sparse) };
-    this.dispatchEvent(new CustomEvent('recipe-change', { detail, bubbles: true, composed: true }));
+    this.tell('recipe-change', detail);
+  }
+
+  private tell(type: string, detail: unknown): void {
+    this.dispatchEvent(new CustomEvent(type, { detail, bubbles: true, composed: true }));
   }
 }
 

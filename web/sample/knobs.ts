@@ -1,6 +1,6 @@
 /** Which settings stand in which chapter, and how they are operated. */
 import type { FieldInfo, RecipeData } from '../../workers/api.ts';
-import { correctionsOf, valueAt } from '../session/recipe.ts';
+import { correctionsOf, spotsOf, valueAt } from '../session/recipe.ts';
 import { plain } from './format.ts';
 
 export type ChapterName = 'scan' | 'ground' | 'flaws' | 'glow';
@@ -16,6 +16,8 @@ export interface Slider {
 export interface KnobPlan {
   readonly path: string;
   readonly slider?: Slider;
+  /** Of the method page. */
+  readonly topic?: string;
 }
 
 /** By hand: the order is the order of use, sliders only where a feel for the value helps. */
@@ -23,14 +25,18 @@ export const chapterKnobs: Readonly<Record<ChapterName, readonly KnobPlan[]>> = 
   scan: [
     { path: 'scan.surface' }, { path: 'scan.biasV' }, { path: 'scan.biasOn' }, { path: 'scan.heightUnit' }, { path: 'scan.currentUnit' }, { path: 'scan.widthUm' }, { path: 'scan.heightUm' },
   ],
-  ground: [{ path: 'ground.order', slider: { from: 0, to: 5, step: 1 } }, { path: 'ground.lines' }, { path: 'ground.repair' }, { path: 'ground.wear' }],
+  ground: [
+    { path: 'ground.order', slider: { from: 0, to: 5, step: 1 }, topic: 'form' }, { path: 'ground.lines', topic: 'lines' }, { path: 'ground.repair', topic: 'repair' },
+    { path: 'ground.offsetA', topic: 'zero' }, { path: 'ground.wear', topic: 'wear' }, { path: 'ground.lag', topic: 'lag' }, { path: 'ground.lagPx', topic: 'lag' }, { path: 'ground.align', topic: 'alignment' },
+  ],
   flaws: [
-    { path: 'flaws.heightNm', slider: { from: 0.1, to: 20, log: true } },
-    { path: 'flaws.dropDecades', slider: { from: 0.05, to: 3, step: 0.05 } },
-    { path: 'flaws.edgeShare', slider: { from: 0.05, to: 1, step: 0.05 } },
-    { path: 'flaws.minPixels', slider: { from: 1, to: 1000, log: true, step: 1 } },
-    { path: 'flaws.shortLayers', slider: { from: 0.5, to: 6, step: 0.5 } },
-    { path: 'band.shortMaxUm2' }, { path: 'band.terraceMinUm2' },
+    { path: 'flaws.heightNm', slider: { from: 0.1, to: 20, log: true }, topic: 'thresholds' },
+    { path: 'flaws.heightNoise', slider: { from: 0, to: 30, step: 0.5 }, topic: 'thresholds' },
+    { path: 'flaws.dropDecades', slider: { from: 0.05, to: 3, step: 0.05 }, topic: 'thresholds' },
+    { path: 'flaws.edgeShare', slider: { from: 0.05, to: 1, step: 0.05 }, topic: 'thresholds' },
+    { path: 'flaws.minPixels', slider: { from: 1, to: 1000, log: true, step: 1 }, topic: 'thresholds' },
+    { path: 'flaws.shortLayers', slider: { from: 0.5, to: 6, step: 0.5 }, topic: 'spots-of-current' },
+    { path: 'band.shortMaxUm2', topic: 'spots-of-current' }, { path: 'band.terraceMinUm2', topic: 'spots-of-current' },
   ],
   glow: [
     { path: 'stack.biasV' }, { path: 'stack.targetNaPerUm2', slider: { from: 0.01, to: 100, log: true } },
@@ -60,10 +66,14 @@ export function changedPaths(chapter: ChapterName, fields: readonly FieldInfo[],
 /** The chapter whose settings differ between two recipes; undefined when none or several do. */
 export function chapterOfChange(before: RecipeData, after: RecipeData): ChapterName | undefined {
   const corrected = JSON.stringify(correctionsOf(before)) !== JSON.stringify(correctionsOf(after));
+  const picked = JSON.stringify(spotsOf(before)) !== JSON.stringify(spotsOf(after));
   const touched = (Object.keys(chapterKnobs) as ChapterName[])
-    .filter((chapter) => (chapter === 'flaws' && corrected) || chapterKnobs[chapter].some(({ path }) => valueAt(before, path) !== valueAt(after, path)));
+    .filter((chapter) => (chapter === 'flaws' && corrected) || (chapter === 'ground' && picked) || chapterKnobs[chapter].some(({ path }) => valueAt(before, path) !== valueAt(after, path)));
   return touched.length === 1 ? touched[0] : undefined;
 }
+
+/** Chapters whose sliders show on the map where they would lead while they are held: what they change does not touch the ground. */
+export const liveChapters: readonly ChapterName[] = ['flaws', 'glow'];
 
 /** Name of the step that a change makes, for the undo button: "band factor 5", "repair off", "device bias back to default". */
 export function stepLabel(field: FieldInfo, value: number | string | boolean | undefined): string {

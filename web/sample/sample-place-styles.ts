@@ -3,6 +3,7 @@ import { css } from 'lit';
 
 export const samplePlaceStyles = css`
   :host { display: flex; flex-direction: column; box-sizing: border-box; height: calc(100dvh - var(--header-height, 3.3rem)); min-height: 620px; overflow: hidden; }
+  :host([hidden]) { display: none; }
   .top { position: relative; padding: 10px 24px 8px; border-bottom: 1px solid var(--line, #25313b); }
   .headline { display: flex; gap: 8px 24px; align-items: flex-start; justify-content: space-between; margin-bottom: 10px; }
   eg-verdict-line { flex: 1; min-width: 0; }
@@ -17,6 +18,8 @@ export const samplePlaceStyles = css`
   eg-map-panel { padding: 12px 18px 4px 24px; }
   .chapters { border-left: 1px solid var(--line, #25313b); overflow: auto; scrollbar-gutter: stable; }
   .stale .result { opacity: 0.72; }
+  /* The verdict is not that of what the bar shows while a handle is held. */
+  .looking eg-verdict-line { filter: grayscale(1); }
   .result { transition: opacity 200ms; }
   .empty { padding: 2rem 24px; }
   @media (max-width: 1180px) and (min-width: 901px) { .main { grid-template-columns: fit-content(calc(100% - 22rem)) minmax(22rem, 1fr); } }

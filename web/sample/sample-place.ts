@@ -3,21 +3,23 @@ import { LitElement, html, nothing } from 'lit';
 import type { PropertyValues } from 'lit';
 import type { Compute, ComputeFacts, FlawEntry, SampleSummary } from '../../workers/api.ts';
 import { controlStyles } from '../app/controls.ts';
-import { drawn, mergeFlaws } from '../hand/hand.ts';
+import { asSpots, drawn, mergeFlaws } from '../hand/hand.ts';
 import type { Hand, NamedCorrection } from '../hand/hand.ts';
 import type { HandPath } from '../hand/stage-drawing.ts';
 import '../ledger/ledger-bar.ts';
 import type { IsolateEvent } from '../ledger/ledger-bar.ts';
 import '../map/map-panel.ts';
 import type { MapPanel } from '../map/map-panel.ts';
-import { recipeOf, valueAt } from '../session/recipe.ts';
+import { isBusy } from '../session/actions/appraise.ts';
+import { recipeOf, spotsOf, valueAt, withValue } from '../session/recipe.ts';
 import type { SampleState } from '../session/state.ts';
 import './chapter-flaws.ts';
 import './chapter-glow.ts';
 import './chapter-ground.ts';
 import './chapter-scan.ts';
-import type { CorrectionEvent, FlawSelectEvent, HandEvent } from './events.ts';
+import type { CorrectionEvent, FlawSelectEvent, HandEvent, MarkRepairedEvent, RecipePreviewEvent } from './events.ts';
 import { effectOf } from './findings.ts';
+import { Glance } from './glance.ts';
 import { chapterOfChange } from './knobs.ts';
 import type { ChapterName } from './knobs.ts';
 import './progress-line.ts';
@@ -26,7 +28,7 @@ import './verdict-line.ts';
 
 export class SamplePlace extends LitElement {
   static override properties = {
-    sample: { attribute: false }, facts: { attribute: false }, compute: { attribute: false }, isolated: { state: true }, flaw: { state: true }, touched: { state: true }, hand: { state: true },
+    sample: { attribute: false }, facts: { attribute: false }, compute: { attribute: false }, isolated: { state: true }, flaw: { state: true }, touched: { state: true }, hand: { state: true }, repaired: { state: true },
   };
 
   declare sample: SampleState;
@@ -40,6 +42,9 @@ export class SamplePlace extends LitElement {
   declare touched: ChapterName | undefined;
   /** The tool for correcting flaws that is in hand. */
   declare hand: Hand | undefined;
+  /** Repaired pixels are marked on the map. */
+  declare repaired: boolean;
+  private readonly glance = new Glance(() => this.compute, () => this.panel, () => { this.requestUpdate(); });
 
   static override styles = [controlStyles, samplePlaceStyles];
 
@@ -63,8 +68,12 @@ export class SamplePlace extends LitElement {
       this.flaw = undefined;
       this.touched = undefined;
       this.hand = undefined;
+      this.repaired = false;
+      this.glance.end();
       return;
     }
+    // A look ends with the result that it foresaw, and with one that does not come.
+    if (before.summary !== this.sample.summary || !isBusy(this.sample)) this.glance.end();
     const [from, to] = [recipeOf(before), recipeOf(this.sample)];
     if (from !== to) this.touched = chapterOfChange(from, to);
     // Flaws are numbered anew by every appraisal.
@@ -83,19 +92,20 @@ export class SamplePlace extends LitElement {
     if (!summary || !facts) return this.renderWithout(working);
     const effect = working ? '' : effectOf(sample.previousUsableUm2, summary.usable.areaUm2);
     return html`
-      <div class="top ${working ? 'stale' : ''}">
+      <div class="top ${working ? 'stale' : ''} ${this.glance.now ? 'looking' : ''}">
         <div class="headline">
           <eg-verdict-line class="result" .summary=${summary} .effect=${this.touched === undefined ? effect : ''}></eg-verdict-line>
           ${this.renderSteps()}
         </div>
-        <eg-ledger-bar class="result" .entries=${summary.ledger} .causes=${facts.causes} .hatchPeriod=${facts.hatchPeriod} .isolated=${this.isolated}
+        <eg-ledger-bar class="result" .entries=${this.glance.now?.ledger ?? summary.ledger} .causes=${facts.causes} .hatchPeriod=${facts.hatchPeriod} .isolated=${this.isolated}
           @isolate=${(event: IsolateEvent) => { this.isolated = event.detail.code; }}></eg-ledger-bar>
         ${working ? html`<eg-progress-line .progress=${sample.progress}></eg-progress-line>` : nothing}
         ${this.renderError()}
       </div>
-      <div class="main ${working ? 'stale' : ''}" @flaw-select=${(event: FlawSelectEvent) => { this.selectFlaw(event.detail.flaw, true); }}
+      <div class="main ${working ? 'stale' : ''}" @recipe-preview=${this.onPreview} @recipe-change=${() => { this.glance.stop(); }}
+        @mark-repaired=${(event: MarkRepairedEvent) => { this.repaired = event.detail.on; }} @flaw-select=${(event: FlawSelectEvent) => { this.selectFlaw(event.detail.flaw, true); }}
         @hand=${(event: HandEvent) => { this.take(event.detail.hand); }} @correction=${this.onCorrection}>
-        <eg-map-panel class="result" .summary=${summary} .facts=${facts} .compute=${this.compute} .isolated=${this.isolated} .flaw=${this.selected} .bandFactor=${this.bandFactor(summary)} .hand=${this.hand}
+        <eg-map-panel class="result" .summary=${summary} .facts=${facts} .compute=${this.compute} .isolated=${this.isolated} .flaw=${this.selected} .bandFactor=${this.bandFactor(summary)} .hand=${this.hand} .spots=${spotsOf(recipeOf(sample)).map(({ xUm, yUm }) => [xUm, yUm])} ?repaired=${this.repaired}
           @hand-path=${(event: CustomEvent<HandPath>) => { this.onPath(event.detail); }} @hand-leave=${() => { this.hand = undefined; }}
           @flaw-select=${(event: FlawSelectEvent) => { event.stopPropagation(); this.selectFlaw(event.detail.flaw, false); }}></eg-map-panel>
         <div class="chapters">${this.renderChapters(summary, facts, effect)}</div>
@@ -106,11 +116,12 @@ export class SamplePlace extends LitElement {
     const { fields } = facts;
     const recipe = recipeOf(this.sample);
     const of = (chapter: ChapterName): string => (this.touched === chapter ? effect : '');
+    const look = this.glance.now;
     return html`
       <eg-chapter-scan .summary=${summary} .fields=${fields} .recipe=${recipe} .effect=${of('scan')}></eg-chapter-scan>
-      <eg-chapter-ground .summary=${summary} .fields=${fields} .recipe=${recipe} .effect=${of('ground')}></eg-chapter-ground>
-      <eg-chapter-flaws .summary=${summary} .fields=${fields} .recipe=${recipe} .effect=${of('flaws')} .selected=${this.flaw} .hand=${this.hand} .facts=${facts}></eg-chapter-flaws>
-      <eg-chapter-glow .summary=${summary} .fields=${fields} .recipe=${recipe} .effect=${of('glow')}></eg-chapter-glow>`;
+      <eg-chapter-ground .summary=${summary} .fields=${fields} .recipe=${recipe} .effect=${of('ground')} .hand=${this.hand} ?marked=${this.repaired}></eg-chapter-ground>
+      <eg-chapter-flaws .summary=${summary} .fields=${fields} .recipe=${recipe} .effect=${of('flaws')} .look=${look} .selected=${this.flaw} .hand=${this.hand} .facts=${facts}></eg-chapter-flaws>
+      <eg-chapter-glow .summary=${summary} .fields=${fields} .recipe=${recipe} .effect=${of('glow')} .look=${look}></eg-chapter-glow>`;
   }
 
   /** The step that each button would undo or redo is named on it. */
@@ -175,6 +186,11 @@ export class SamplePlace extends LitElement {
 
   /** A line splits once; brush and outline stay in hand. */
   private onPath({ pointsUm }: HandPath): void {
+    if (this.hand?.tool === 'spots') {
+      this.hand = undefined;
+      this.tell('spots', { spots: asSpots(pointsUm), label: `ground by ${pointsUm.length} spots` });
+      return;
+    }
     const correction = this.hand && drawn(this.hand, pointsUm);
     if (this.hand?.tool === 'split') this.hand = undefined;
     if (correction) this.correct(correction);
@@ -186,11 +202,21 @@ export class SamplePlace extends LitElement {
   };
 
   private correct(detail: NamedCorrection): void {
-    this.dispatchEvent(new CustomEvent('correction', { detail, bubbles: true, composed: true }));
+    this.tell('correction', detail);
   }
 
+  private tell(type: string, detail: unknown): void {
+    this.dispatchEvent(new CustomEvent(type, { detail, bubbles: true, composed: true }));
+  }
+
+  /** While a run is under way the result on show is not the one that the handle started from. */
+  private readonly onPreview = ({ detail: { path, value } }: RecipePreviewEvent): void => {
+    if (value === undefined) this.glance.end();
+    else if (this.sample.summary && !isBusy(this.sample)) this.glance.look(this.sample.id, withValue(recipeOf(this.sample), path, value));
+  };
+
   private readonly onKey = (event: KeyboardEvent): void => {
-    if (event.defaultPrevented || isTyping(event)) return;
+    if (this.hidden || event.defaultPrevented || isTyping(event)) return;
     if ((event.ctrlKey || event.metaKey) && !event.altKey && event.key.toLowerCase() === 'z') this.step(event.shiftKey ? 'redo' : 'undo');
     else if (event.key === 'Escape' && this.isolated !== undefined && !this.hand) this.isolated = undefined;
     else if (this.panel?.press(event)) { /* the map took it */ }

@@ -49,6 +49,27 @@ export function withoutCorrection(recipe: RecipeData, index: number): RecipeData
   return before.length === 1 ? rest : { ...rest, corrections: before.filter((_, i) => i !== index) };
 }
 
+/** A place of bare ground that a person picked, µm from the map's lower-left corner. */
+export interface Spot {
+  readonly xUm: number;
+  readonly yUm: number;
+}
+
+/** The spots of ground picked by hand; the computation checks them. */
+export function spotsOf(recipe: RecipeData): readonly Spot[] {
+  const list = sectionOf(recipe, 'ground')['spots'];
+  return Array.isArray(list) ? (list as readonly Spot[]) : [];
+}
+
+/** The recipe with these spots, or with the ground found automatically when there are none; the same object when nothing changes. */
+export function withSpots(recipe: RecipeData, spots: readonly Spot[]): RecipeData {
+  if (JSON.stringify(spotsOf(recipe)) === JSON.stringify(spots)) return recipe;
+  const { spots: _before, ...others } = sectionOf(recipe, 'ground');
+  const changed = spots.length === 0 ? others : { ...others, spots };
+  const { ground: _section, ...rest } = recipe;
+  return Object.keys(changed).length === 0 ? rest : { ...rest, ground: changed };
+}
+
 /** The recipe that a sample stands at. */
 export function recipeOf(sample: SampleState): RecipeData {
   return sample.history[sample.at]?.recipe ?? emptyRecipe;

@@ -35,7 +35,11 @@ export interface SampleState {
   readonly restarted?: boolean;
 }
 
-export type Place = { readonly name: 'tray' } | { readonly name: 'sample'; readonly id: string };
+/** `method` explains how something is done; from there one goes back to the sample that one came from. */
+export type Place =
+  | { readonly name: 'tray' }
+  | { readonly name: 'sample'; readonly id: string }
+  | { readonly name: 'method'; readonly id: string; readonly topic: string };
 
 export interface SessionState {
   readonly place: Place;

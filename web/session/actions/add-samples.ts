@@ -37,7 +37,7 @@ export const addSamples: Action<[added: Added], Promise<void>> = {
         };
         if (saved === undefined) found.push(fresh);
         else samples = samples.map((sample) => (sample === saved ? fresh : sample));
-        if (saved !== undefined && place.name === 'sample' && place.id === saved.id) place = { name: 'sample', id: fresh.id };
+        if (saved !== undefined && place.name !== 'tray' && place.id === saved.id) place = { ...place, id: fresh.id };
       }
       // One's own samples stand above the invented ones.
       samples = demo ? [...samples, ...found] : [...found, ...samples];

@@ -37,7 +37,7 @@ async function reopen(session: Session, sample: SampleState, said: Readonly<Reco
   forget(session, sample.id);
   session.update((state) => ({
     ...state,
-    place: state.place.name === 'sample' && state.place.id === sample.id ? { name: 'sample', id: opened.id } : state.place,
+    place: state.place.name !== 'tray' && state.place.id === sample.id ? { ...state.place, id: opened.id } : state.place,
   }));
   session.updateSample(sample.id, (former) => ({ ...former, id: opened.id, files: opened.files }));
   return opened.id;

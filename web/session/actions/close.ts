@@ -13,7 +13,7 @@ export const close: Action<[ids: readonly string[]]> = {
     session.update((state) => ({
       ...state,
       samples: state.samples.filter(({ id }) => !ids.includes(id)),
-      place: state.place.name === 'sample' && ids.includes(state.place.id) ? { name: 'tray' } : state.place,
+      place: state.place.name !== 'tray' && ids.includes(state.place.id) ? { name: 'tray' } : state.place,
     }));
   },
 };

@@ -6,7 +6,7 @@ import type { Place, SessionState } from '../state.ts';
 export const go: Action<[place: Place]> = {
   undo: 'none',
   run(session, place) {
-    if (place.name === 'sample' && session.sample(place.id) === undefined) return;
+    if (place.name !== 'tray' && session.sample(place.id) === undefined) return;
     session.update((state) => ({ ...state, place }));
   },
 };
