@@ -1,6 +1,7 @@
 /** One layer count for each stretch of a terrace: its current varies with the contact, its layers do not. */
 import { nearestAdmitted } from '../flaws/local-ground.ts';
-import { terraceSegments } from '../ground/flat-segments.ts';
+import { labelComponents } from '../grid/label-components.ts';
+import { boxMean, terraceSegments } from '../ground/flat-segments.ts';
 import { medianInPlace } from '../stats/median.ts';
 import { quantile } from '../stats/quantile.ts';
 
@@ -21,6 +22,12 @@ export interface SettleInput {
 const leastPixels = 60;
 /** Of each stretch about so many decide. */
 const sampled = 2000;
+/** Fewer pixels together that stand off their stretch are scatter. */
+const leastOdd = 4;
+/** But not by more than this, in steps. */
+const mostScatter = 1.5;
+/** Half-width of the square over which a stretch's current is averaged, pixels. */
+const aroundPx = 2;
 /** A pixel further than this part of the step from its stretch's median is not of the same terrace, whatever leaks between them. */
 const withinPart = 0.75;
 /** Nine tenths of one terrace's currents lie within this part of the step: scatter of the contact, where two terraces would differ by all of it. */
@@ -54,11 +61,19 @@ export function settleTerraces({ levelled, log10, columns, measured, layerM, ste
   const reach = withinPart * stepDecades;
   for (let i = 0; i < labels.length; i++) if (Math.abs(log10[i]! - medians[labels[i]!]!) < reach) settled[i] = 1;
   const nearest = nearestAdmitted(settled, columns, rows);
+  // A few odd pixels inside a stretch are scatter too.
+  const odd = new Uint8Array(labels.length);
+  for (let i = 0; i < odd.length; i++) if (measured[i] === 1 && settled[i] === 0) odd[i] = 1;
+  const patches = labelComponents(odd, columns, rows, 8);
+  // The contact's scatter from pixel to pixel stays out of what the others are measured against.
+  const around = boxMean(log10.map((value, i) => (settled[i] === 1 ? value : Number.NaN)), columns, rows, aroundPx);
   const out = new Int16Array(labels.length);
   for (let i = 0; i < out.length; i++) {
     if (measured[i] === 0) continue;
     const from = nearest[i]!;
-    out[i] = from < 0 ? place(log10[i]!) : rungs[labels[from]!]! + (from === i ? 0 : Math.round((log10[from]! - log10[i]!) / stepDecades));
+    const off = from < 0 ? Number.NaN : (around[from]! - log10[i]!) / stepDecades;
+    const scatter = patches.labels[i]! > 0 && patches.pixels[patches.labels[i]!]! < leastOdd && Math.abs(off) < mostScatter;
+    out[i] = from < 0 ? place(log10[i]!) : rungs[labels[from]!]! + (from === i || scatter ? 0 : Math.round(off));
   }
   return out;
 }

@@ -77,14 +77,16 @@ export function findShorts(input: SpotsInput): Uint8Array {
   return candidates;
 }
 
-/** By spot: 1 where it has no pit and raised flaws make up most of its border. */
+/** By spot: 1 where it lies level with the ground and raised flaws make up most of its border. A short inside a bubble lies high up or in a pit. */
 function shutInSpots(labels: Uint32Array, count: number, { columns, rise, raised, layerM }: SpotsInput): Uint8Array {
   const [border, beside] = [new Float64Array(count + 1), new Float64Array(count + 1)];
   const deepest = new Float64Array(count + 1);
+  const highest = new Float64Array(count + 1);
   for (let i = 0; i < labels.length; i++) {
     const label = labels[i]!;
     if (label === 0) continue;
     if (rise && rise[i]! < deepest[label]!) deepest[label] = rise[i]!;
+    if (rise && rise[i]! > highest[label]!) highest[label] = rise[i]!;
     const c = i % columns;
     for (const j of [c > 0 ? i - 1 : -1, c + 1 < columns ? i + 1 : -1, i - columns, i + columns]) {
       if (j < 0 || j >= labels.length || labels[j] === label) continue;
@@ -92,7 +94,7 @@ function shutInSpots(labels: Uint32Array, count: number, { columns, rise, raised
       beside[label]! += raised[j]!;
     }
   }
-  return Uint8Array.from(border, (edges, label) => (beside[label]! > shutInShare * edges && deepest[label]! > -2 * layerM ? 1 : 0));
+  return Uint8Array.from(border, (edges, label) => (beside[label]! > shutInShare * edges && deepest[label]! > -2 * layerM && highest[label]! < 3 * layerM ? 1 : 0));
 }
 
 /** 1 within one opening width of saturated ground larger than the largest short. */

@@ -112,9 +112,10 @@ function breakSign(values: Float32Array, columns: number, rows: number, r: numbe
     const middle = (six[2]! + six[3]!) / 2;
     const wider = value - middle;
     if (!(Math.abs(wider) > Math.max(least, 4 * (six[3]! - six[2]!)))) return untold;
-    // The crest of a ridge stands off six lines too; but then both lines beside it do.
-    if (agreed ? wider * off > 0 : Math.abs(before - middle) <= least / 2 || Math.abs(after - middle) <= least / 2) return Math.sign(wider);
-    return untold;
+    if (agreed) return wider * off > 0 ? Math.sign(off) : untold;
+    // The crest of a ridge or a dome stands off six lines too; but these do not lie level with each other, as all that are whole do beside broken ones.
+    const level = six.filter((near) => Math.abs(near - middle) <= least / 2).length;
+    return level >= 4 && (Math.abs(before - middle) <= least / 2 || Math.abs(after - middle) <= least / 2) ? Math.sign(wider) : untold;
   }
   return agreed ? Math.sign(off) : untold;
 }

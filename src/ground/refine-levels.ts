@@ -1,6 +1,6 @@
 /** Form and line offsets of a height whose terraces are taken as parallel planes. */
 import type { Grid } from '../grid/maps.ts';
-import { medianInPlace } from '../stats/median.ts';
+import { median, medianInPlace } from '../stats/median.ts';
 import { lowerScatter, mostCommon } from './centre.ts';
 import { fitForm, presentCount, sampleStep, subSample } from './fit-form.ts';
 import type { Form } from './form.ts';
@@ -37,6 +37,9 @@ const rounds = 3;
 const leastInLine = 24;
 /** Columns that are enough to refine by; of maps with twice as many or more, every second, third … is taken. */
 const enoughColumns = 480;
+/** Jumps that many times those of the differences, and this many metres more, are streaks. */
+const streakTimes = 1.5;
+const streakM = 0.03e-9;
 /** A noiseless map still has rounding: less scatter than this is none, metres. */
 const leastScatterM = 1e-13;
 /** Mark of pixels in no segment. */
@@ -49,7 +52,7 @@ const inNone = 2;
  * (`solvePlanes`), each line's offset is the median of its ground over them, and the form is fitted once more to all ground.
  *
  * The median of a whole line sees the terraces' planes removed, so that steps do not pull it, unlike a plain line median; and it does not add up
- * the errors of differences between lines.
+ * the errors of differences between lines. On ground that is no set of planes, where such medians would leave streaks, the differences stay.
  *
  * @param height metres, row-major, NaN missing.
  */
@@ -121,9 +124,41 @@ function refine(raw: Float32Array, grid: Grid, section: GroundSection, help: Ref
     const flat = raw.slice();
     takeAway(flat, plane, lines, columns, rows);
     const admitted = ground;
+    if (round === rounds - 1 && section.lines && streaks(withoutLines(subtractForm(raw, form, columns, rows), lines, columns), columns, rows, lines, help.start.lines)) {
+      for (let r = 0, i = 0; r < rows; r++) for (let c = 0; c < columns; c++, i++) flat[i]! += lines[r]! - help.start.lines[r]!;
+      lines = help.start.lines;
+    }
     form = fitForm(flat, columns, rows, section.order, (i) => admitted[i] === 1);
   }
   return { form, lines, plane, terrace, ground };
+}
+
+function withoutLines(values: Float32Array, lines: Float64Array, columns: number): Float32Array {
+  for (let i = 0; i < values.length; i++) values[i]! -= lines[Math.floor(i / columns)]!;
+  return values;
+}
+
+/**
+ * Whether medians over the planes leave more of a jump from line to line than the differences they started from. They do where the ground is no set of planes:
+ * there each line's median is that of other places than the next one's.
+ *
+ * @param over height without form and `lines`.
+ */
+function streaks(over: Float32Array, columns: number, rows: number, lines: Float64Array, start: Float64Array): boolean {
+  const buffer = new Float64Array(columns);
+  const [own, others]: [number[], number[]] = [[], []];
+  for (let r = 1; r < rows; r++) {
+    let count = 0;
+    for (let i = r * columns; i < (r + 1) * columns; i++) {
+      const jump = over[i]! - over[i - columns]!;
+      if (jump === jump) buffer[count++] = jump;
+    }
+    if (count < leastInLine) continue;
+    const jump = medianInPlace(buffer, count);
+    own.push(Math.abs(jump));
+    others.push(Math.abs(jump + lines[r]! - lines[r - 1]! - (start[r]! - start[r - 1]!)));
+  }
+  return own.length > 0 && median(own) > streakTimes * median(others) + streakM;
 }
 
 /** Every n-th column, from the middle of each group of n. */
@@ -190,7 +225,8 @@ function takeAway(values: Float32Array, plane: Float32Array, lines: Float64Array
  * common value there.
  */
 function groundOf(rest: Float32Array, columns: number, rows: number, level: Uint16Array, levels: number): Uint8Array {
-  const sample = subSample(rest, columns, rows, 2 * sampleStep(presentCount(rest)));
+  const present = presentCount(rest);
+  const sample = subSample(rest, columns, rows, (present > 20_000 ? 2 : 1) * sampleStep(present));
   const centre = mostCommon(sample);
   const scatter = Math.max(leastScatterM, lowerScatter(sample, centre));
   const centres = new Float64Array(levels + 1).fill(centre);

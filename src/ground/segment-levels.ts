@@ -123,7 +123,7 @@ interface Step {
 /** By `from * (count + 1) + to`: the median rise from one segment to another. */
 function stepsBetween(rest: Float32Array, segment: Uint16Array, count: number, columns: number, rows: number): (Step | undefined)[] {
   const size = count + 1;
-  const lists: (number[] | undefined)[] = new Array<number[] | undefined>(size * size);
+  const lists: (number[] | undefined)[] = Array.from({ length: size * size });
   const add = (i: number, j: number): void => {
     const a = segment[i]!;
     const b = segment[j]!;
@@ -139,7 +139,7 @@ function stepsBetween(rest: Float32Array, segment: Uint16Array, count: number, c
       if (r + apartPx < rows) add(i, i + apartPx * columns);
     }
   }
-  const steps: (Step | undefined)[] = new Array<Step | undefined>(size * size);
+  const steps: (Step | undefined)[] = Array.from({ length: size * size });
   lists.forEach((list, at) => {
     if (!list || list.length < leastPairs) return;
     const upM = medianInPlace(Float64Array.from(list), list.length);

@@ -1,8 +1,7 @@
 /** Shares tasks between threads; results keep the order of the tasks and do not depend on the number of threads. */
 import { Worker } from 'node:worker_threads';
+import type { CrewMessage } from './crew-message.ts';
 import type { SceneResult, SceneTask } from './work.ts';
-
-export type CrewMessage = { readonly result: SceneResult } | { readonly error: string };
 
 export async function shareOut(tasks: readonly SceneTask[], jobs: number, onDone: (done: number, result: SceneResult) => void): Promise<SceneResult[]> {
   const results: SceneResult[] = [];

@@ -1,7 +1,7 @@
 /** What a worker thread does with each task that it is sent. */
 import { parentPort } from 'node:worker_threads';
 import { loadKernels } from '../../src/cli/load-kernels.ts';
-import type { CrewMessage } from './crew.ts';
+import type { CrewMessage } from './crew-message.ts';
 import { workOn } from './work.ts';
 import type { SceneTask } from './work.ts';
 
