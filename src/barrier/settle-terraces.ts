@@ -1,6 +1,7 @@
 /** One layer count for each stretch of a terrace: its current varies with the contact, its layers do not. */
 import { nearestAdmitted } from '../flaws/local-ground.ts';
 import { labelComponents } from '../grid/label-components.ts';
+import { thin, thinGrid } from '../ground/thin.ts';
 import { boxMean, terraceSegments } from '../ground/flat-segments.ts';
 import { medianInPlace } from '../stats/median.ts';
 import { quantile } from '../stats/quantile.ts';
@@ -18,6 +19,8 @@ export interface SettleInput {
   readonly place: (log10: number) => number;
 }
 
+/** Pixels a side that are enough to find stretches by. */
+const enoughSide = 480;
 /** Stretches of fewer pixels are no better known than their pixels. */
 const leastPixels = 60;
 /** Of each stretch about so many decide. */
@@ -38,9 +41,56 @@ const oneTerrace = 0.95;
  * stretches, on borders, a pixel is counted from the nearest stretch by its own current against the current there, because the contact varies
  * slowly. Without any stretch a pixel takes the rung nearest to its own current.
  */
-export function settleTerraces({ levelled, log10, columns, measured, layerM, stepDecades, place }: SettleInput): Int16Array {
+export function settleTerraces(input: SettleInput): Int16Array {
+  const { log10, columns, measured, stepDecades, place } = input;
   const rows = log10.length / columns;
-  const { labels, count, pixels } = terraceSegments(levelled, log10, measured, columns, rows, layerM, stepDecades);
+  // Stretches of large maps are sought on every n-th pixel: a terrace is no less sure by fewer of them.
+  const every = Math.max(1, Math.floor(Math.min(columns, rows) / enoughSide));
+  const grid = { columns, rows, pitchXM: 1, pitchYM: 1 };
+  const coarse = thinGrid(grid, every);
+  const at = (i: number): number => Math.min(coarse.rows - 1, Math.floor(Math.floor(i / columns) / every)) * coarse.columns + Math.min(coarse.columns - 1, Math.floor((i % columns) / every));
+  const thinLog = thin(log10, grid, every);
+  const { labels, medians, rungs } = stretches({ ...input, levelled: thin(input.levelled, grid, every), log10: thinLog, measured: thin(measured, grid, every), columns: coarse.columns });
+
+  const reach = withinPart * stepDecades;
+  const settled = new Uint8Array(labels.length);
+  const settledLog = new Float32Array(labels.length).fill(Number.NaN);
+  for (let k = 0; k < labels.length; k++) {
+    if (!(Math.abs(thinLog[k]! - medians[labels[k]!]!) < reach)) continue;
+    settled[k] = 1;
+    settledLog[k] = thinLog[k]!;
+  }
+  const nearest = nearestAdmitted(settled, coarse.columns, coarse.rows);
+  // The contact's scatter from pixel to pixel stays out of what the others are measured against.
+  const around = boxMean(settledLog, coarse.columns, coarse.rows, aroundPx);
+  // A few odd pixels inside a stretch are scatter too.
+  const odd = new Uint8Array(log10.length);
+  const own = new Uint8Array(log10.length);
+  for (let i = 0; i < odd.length; i++) {
+    if (measured[i] === 0) continue;
+    const k = at(i);
+    if (settled[k] === 1 && Math.abs(log10[i]! - medians[labels[k]!]!) < reach) own[i] = 1;
+    else odd[i] = 1;
+  }
+  const patches = labelComponents(odd, columns, rows, 8);
+  const out = new Int16Array(log10.length);
+  for (let i = 0; i < out.length; i++) {
+    if (measured[i] === 0) continue;
+    const from = nearest[at(i)]!;
+    if (from < 0) {
+      out[i] = place(log10[i]!);
+      continue;
+    }
+    const off = own[i] === 1 ? 0 : (around[from]! - log10[i]!) / stepDecades;
+    const scatter = patches.labels[i]! > 0 && patches.pixels[patches.labels[i]!]! < leastOdd && Math.abs(off) < mostScatter;
+    out[i] = rungs[labels[from]!]! + (scatter ? 0 : Math.round(off));
+  }
+  return out;
+}
+
+/** Stretches of terrace with their median log current (NaN for those that tell nothing) and rung. */
+function stretches({ levelled, log10, columns, measured, layerM, stepDecades, place }: SettleInput): { labels: Uint32Array; medians: number[]; rungs: number[] } {
+  const { labels, count, pixels } = terraceSegments(levelled, log10, measured, columns, log10.length / columns, layerM, stepDecades);
   const lists = Array.from({ length: count + 1 }, (_, label) => new Float64Array(label === 0 || pixels[label]! < leastPixels ? 0 : Math.ceil(pixels[label]! / Math.ceil(pixels[label]! / sampled))));
   const seen = new Uint32Array(count + 1);
   for (let i = 0; i < labels.length; i++) {
@@ -56,24 +106,5 @@ export function settleTerraces({ levelled, log10, columns, measured, layerM, ste
     // Two terraces that leak into each other are no stretch.
     return list.length > 0 && high - low < oneTerrace * stepDecades ? medianInPlace(list, list.length) : Number.NaN;
   });
-  const rungs = medians.map((median) => (Number.isNaN(median) ? 0 : place(median)));
-  const settled = new Uint8Array(labels.length);
-  const reach = withinPart * stepDecades;
-  for (let i = 0; i < labels.length; i++) if (Math.abs(log10[i]! - medians[labels[i]!]!) < reach) settled[i] = 1;
-  const nearest = nearestAdmitted(settled, columns, rows);
-  // A few odd pixels inside a stretch are scatter too.
-  const odd = new Uint8Array(labels.length);
-  for (let i = 0; i < odd.length; i++) if (measured[i] === 1 && settled[i] === 0) odd[i] = 1;
-  const patches = labelComponents(odd, columns, rows, 8);
-  // The contact's scatter from pixel to pixel stays out of what the others are measured against.
-  const around = boxMean(log10.map((value, i) => (settled[i] === 1 ? value : Number.NaN)), columns, rows, aroundPx);
-  const out = new Int16Array(labels.length);
-  for (let i = 0; i < out.length; i++) {
-    if (measured[i] === 0) continue;
-    const from = nearest[i]!;
-    const off = from < 0 ? Number.NaN : (around[from]! - log10[i]!) / stepDecades;
-    const scatter = patches.labels[i]! > 0 && patches.pixels[patches.labels[i]!]! < leastOdd && Math.abs(off) < mostScatter;
-    out[i] = from < 0 ? place(log10[i]!) : rungs[labels[from]!]! + (from === i || scatter ? 0 : Math.round(off));
-  }
-  return out;
+  return { labels, medians, rungs: medians.map((median) => (Number.isNaN(median) ? 0 : place(median))) };
 }

@@ -83,6 +83,10 @@ export function findDomes(input: DomeInput): Domes {
 /** Moves a circle on to the outline where that follows it; undefined where it follows too little of it. y runs down here. */
 function settle(input: DomeInput, start: { xM: number; yM: number; radiusM: number }): Circle | undefined {
   let { xM, yM, radiusM } = start;
+  // Most candidates lie on folds and show it at once.
+  let near = 0;
+  for (let k = 0; k < directions; k += 4) if (edgeAlong(input, xM, yM, radiusM, (2 * Math.PI * k) / directions, straysPx[0])) near++;
+  if (near < (leastFreeIfHigh * directions) / 4 - 1) return undefined;
   for (const strayed of straysPx) {
     // Outline crossings along the rays, fitted by a circle (Kåsa, IEEE Trans. Instrum. Meas. IM-25, 8, 1976).
     const edges = Array.from({ length: directions }, (_, k) => edgeAlong(input, xM, yM, radiusM, (2 * Math.PI * k) / directions, strayed));
@@ -124,15 +128,13 @@ function outsideOverInside({ columns, rows, pitchXM, pitchYM, rise }: DomeInput,
 function edgeAlong({ columns, rows, pitchXM, pitchYM, mask }: DomeInput, xM: number, yM: number, radiusM: number, angle: number, stray: number): { xM: number; yM: number } | undefined {
   const [ux, uy] = [Math.cos(angle), Math.sin(angle)];
   const pixelM = Math.hypot(ux * pitchXM, uy * pitchYM);
-  const inside = (at: number): boolean => {
+  const from = radiusM - stray * pixelM;
+  for (let at = from; at <= radiusM + stray * pixelM; at += 0.25 * pixelM) {
     const c = Math.floor((xM + at * ux) / pitchXM);
     const r = Math.floor((yM + at * uy) / pitchYM);
-    return c >= 0 && c < columns && r >= 0 && r < rows && mask[r * columns + c] === 1;
-  };
-  const from = radiusM - stray * pixelM;
-  if (!inside(from)) return undefined;
-  for (let at = from + 0.25 * pixelM; at <= radiusM + stray * pixelM; at += 0.25 * pixelM) {
-    if (!inside(at)) return { xM: xM + (at - 0.125 * pixelM) * ux, yM: yM + (at - 0.125 * pixelM) * uy };
+    if (c >= 0 && c < columns && r >= 0 && r < rows && mask[r * columns + c] === 1) continue;
+    if (at === from) return undefined;
+    return { xM: xM + (at - 0.125 * pixelM) * ux, yM: yM + (at - 0.125 * pixelM) * uy };
   }
   return undefined;
 }

@@ -56,8 +56,9 @@ export function findFlaws(ground: Ground, grid: Grid, footprint: MaskMap, sectio
   const rise = planes && riseAboveGround(planes.over, columns, rows, startM);
   const log10 = current?.log10.data;
 
-  const raised = rise && findRaised({
-    columns, rows, rise, onPlane: planes.onPlane, startM,
+  const smooth = rise && boxMean(rise, columns, rows, 1);
+  const raised = rise && smooth && findRaised({
+    columns, rows, rise, smooth, onPlane: planes.onPlane, startM,
     ...(current && log10 ? { log10, floorLog10: Math.log10(current.floorA), floor: current.floor.data, saturated: current.saturated.data } : {}),
     edgeShare: section.edgeShare, dropDecades: section.dropDecades, minPixels: section.minPixels,
     layerM: scale.layerM, layerDecades: scale.layerDecades,
@@ -101,8 +102,7 @@ export function findFlaws(ground: Ground, grid: Grid, footprint: MaskMap, sectio
     ...labelComponents(mask, columns, rows, 8), distance2: squaredDistance(mask, columns, rows, { pitchX: grid.pitchXM, pitchY: grid.pitchYM }),
   });
   add(spots(shorts), (region) => classifyShort(region, rise !== undefined));
-  if (rise) {
-    const smooth = boxMean(rise, columns, rows, 1);
+  if (rise && smooth) {
     add(partRegions({
       columns, rows, pitchXM: grid.pitchXM, pitchYM: grid.pitchYM, mask: raisedMask, rise: smooth, noiseM: ground.height!.noiseM / 3, minPixels: Math.max(6, section.minPixels), byHeight: raised?.byHeight,
     }), classifyRaised);

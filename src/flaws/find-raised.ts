@@ -1,7 +1,6 @@
 /** Where the surface stands above the ground and the current is missing or lowered: bubbles, residue, wrinkles. */
 import { squaredDistance } from '../grid/distance.ts';
 import { labelComponents } from '../grid/label-components.ts';
-import { boxMean } from '../ground/flat-segments.ts';
 import { dilate, nearestAdmitted } from './local-ground.ts';
 
 export interface RaisedInput {
@@ -9,6 +8,8 @@ export interface RaisedInput {
   readonly rows: number;
   /** Height above the local ground, metres, NaN missing. */
   readonly rise: Float32Array;
+  /** The same as a mean over nine pixels. */
+  readonly smooth: Float32Array;
   /** 1 where the pixel lies on its own terrace's plane: by height and current nothing is wrong there. */
   readonly onPlane: Uint8Array;
   /** log10 current, NaN missing; absent for a height alone. */
@@ -62,7 +63,7 @@ export function findRaised(input: RaisedInput): Raised {
   const { columns, rows, rise, onPlane, log10 } = input;
   const edgeM = input.edgeShare * input.startM;
   // Started by a mean over nine pixels, so that no single noisy one starts a flaw.
-  const smooth = boxMean(rise, columns, rows, 1);
+  const { smooth } = input;
   const raised = hysteresis(smooth, rise, columns, rows, input.startM, edgeM);
   if (!log10) return { mask: withoutSpecks(raised, columns, rows, input.minPixels), conductingPixels: 0 };
 

@@ -10,7 +10,7 @@ export interface Shift extends Registration {
 }
 
 /** Side up to which maps are compared pixel by pixel; larger ones by means over squares. */
-const comparedSide = 600;
+const comparedSide = 400;
 /** Heights between which a flaw goes from open to blocked, metres. */
 const blocking = { from: 1e-9, to: 4e-9 } as const;
 /** Decades above the floor over which a current goes from blocked to open. */

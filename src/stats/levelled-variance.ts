@@ -3,7 +3,7 @@
  *
  * A fit of orthonormal functions eᵢ takes Σᵢ⟨e², z⟩ of the variance with it. For a stationary surface its expectation is the
  * autocorrelation projected on those functions, ∬ρ(x − x′)·e(x)·e(x′) dx dx′/L². This closed form is the one of Nečas, Klapetek &
- * Valtr, Meas. Sci. Technol. 31, 094010 (2020), arXiv:2001.00433; here e are Legendre polynomials and the inner integral is a polynomial.
+ * Valtr, arXiv:2001.00433 (2020), arXiv:2001.00433; here e are Legendre polynomials and the inner integral is a polynomial.
  */
 import { gaussLegendre } from './gauss-legendre.ts';
 

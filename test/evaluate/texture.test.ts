@@ -8,8 +8,9 @@ import { createRoughSurface } from '../fixtures/create-rough-surface.ts';
 import { createRecipe, createSample } from '../fixtures/create-sample.ts';
 
 const size = 192;
-const roughNm = 0.2;
-const noiseNm = 0.05;
+// Smooth against the step of a layer, 0.33 nm: on a rougher surface flat patches pass for planes of their own, and levelling takes less than is estimated.
+const roughNm = 0.1;
+const noiseNm = 0.025;
 
 /** A rough sheet under tilt, bow and line offsets; a bump in one corner, a strip beyond the footprint. */
 function roughSample(seed: string, lengthPx: number) {

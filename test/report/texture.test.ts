@@ -39,7 +39,7 @@ describe('texture in the report', () => {
     const text = reportText({});
     for (const words of [
       'Sq 0.300 nm (0.260 nm inside terraces), Sa 0.240 nm, Sz 1.80 nm, Ssk −0.200, Sku 3.10, Sdq 0.0125 (ISO 25178-2', 'Sq is too low by about 25 %; corrected 0.400 nm',
-      'correlation length, 200 nm inside terraces', '3.5 % went with line offsets and 0.4 % with the form (Nečas, Klapetek &amp; Valtr, Meas. Sci. Technol. 31, 094010, 2020)', 'structure as wide as the map is not in it',
+      'correlation length, 200 nm inside terraces', '3.5 % went with line offsets and 0.4 % with the form (Nečas, Klapetek &amp; Valtr, arXiv:2001.00433, 2020)', 'structure as wide as the map is not in it',
     ]) assert.ok(text.includes(words), words);
     assert.ok(!text.includes('carry much of Sq'));
   });

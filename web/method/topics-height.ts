@@ -59,7 +59,7 @@ export const heightTopics: readonly Topic[] = [
     id: 'texture', title: 'Roughness, and what levelling took of it',
     what: html`<p>Sq is the rms height of the flawless measured ground (ISO 25178-2), repaired pixels left out. Taking a level from every line and a form from the map takes part of the roughness too, the more the longer its correlation length T is against the line’s length L. The share follows from projecting the autocorrelation onto what was subtracted. T and the roughness are fitted together with that share to the autocorrelation of the levelled ground, and Sq is given with it added back.</p>`,
     formulas: ['share taken by a line’s mean, Gaussian correlation exp(−d²/T²): (1/L²) ∬ ρ(x − x′) dx dx′', 'Sq corrected = √(Sq² + variance taken)'],
-    sources: ['D. Nečas, P. Klapetek, M. Valtr, Meas. Sci. Technol. 31, 094010 (2020).', 'ISO 25178-2.'],
+    sources: ['D. Nečas, P. Klapetek, M. Valtr, arXiv:2001.00433 (2020).', 'ISO 25178-2.'],
     limits: 'Roughness is taken to be normal and the same everywhere. Structure as wide as the map is gone with the form and leaves no trace; from a share of a fifth on the estimate is a lower bound.',
   },
 ];
