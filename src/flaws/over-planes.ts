@@ -90,7 +90,7 @@ function lendFloorPlanes(lent: Float32Array, heights: Float32Array, onPlane: Uin
 
 function dropSmallPatches(onPlane: Uint8Array, floor: Uint8Array, plane: Float32Array, columns: number, rows: number, least: number, layerM: number): void {
   const { labels, pixels, count } = labelComponents(onPlane.map((value, i) => value & floor[i]!), columns, rows, 8);
-  if (count === 0) return;
+  if (!pixels.some((size, label) => label > 0 && size < least)) return;
   const nearest = nearestAdmitted(onPlane.map((value, i) => value & (1 - floor[i]!)), columns, rows);
   const above = new Float64Array(count + 1);
   for (let i = 0; i < labels.length; i++) {

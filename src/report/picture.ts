@@ -79,7 +79,7 @@ export function pngAddress({ width, height, indices, palette }: Picture): string
   const png = encode(
     { width, height, data: indices, channels: 1, depth: 8, palette: palette.map((colour) => [...colour]) },
     // Levels above 3 take several times as long for a tenth less.
-    { zlib: { level: 3 } },
+    { zlib: { level: 1 } },
   );
   return `data:image/png;base64,${base64(png)}`;
 }
