@@ -19,6 +19,7 @@ import { measureRegions } from './measure.ts';
 import type { Region } from './measure.ts';
 import type { FlawsSection } from './recipe.ts';
 import { thresholdsOf } from './thresholds.ts';
+import { assumedTipM, tipGaps } from './tip-gaps.ts';
 
 /** What the flaw stage needs from other sections of the recipe, in SI. */
 export interface FlawScale {
@@ -86,6 +87,11 @@ export function findFlaws(ground: Ground, grid: Grid, footprint: MaskMap, sectio
     if (inside[i] === 0) raisedMask[i] = shorts[i] = opens[i] = 0;
   }
 
+  if (rise) {
+    let gapPixels = 0;
+    for (const mark of tipGaps(raisedMask, rise, columns, rows, grid.pitchXM, grid.pitchYM, assumedTipM)) gapPixels += mark;
+    if (gapPixels > 0) warnings.push(notice('tip-gaps', { areaUm2: gapPixels * pixelAreaM2(grid) * 1e12, tipNm: assumedTipM * 1e9 }));
+  }
   const labels = new Uint32Array(count);
   const list: Flaw[] = [];
   const shared = {

@@ -12,6 +12,8 @@ export const appraisalSentences = {
     `The height's noise is ${short(d.noiseNm)} nm, so flaws were sought from ${short(d.usedNm)} nm up, ${short(d.times)} times that (flaws.heightNoise), instead of flaws.heightNm = ${short(d.statedNm)} nm.`,
   'bumps-conduct': (d: { areaUm2: number }) =>
     `Bumps over ${d.areaUm2.toFixed(2)} µm² stand above the ground but conduct like it; they are noted and not booked as flaws.`,
+  'tip-gaps': (d: { areaUm2: number; tipNm: number }) =>
+    `${d.areaUm2 < 0.01 ? 'Less than 0.01' : d.areaUm2.toFixed(2)} µm² of ground lies in gaps between tall flaws too narrow for a tip of ${d.tipNm.toFixed(0)} nm radius: what was measured there is the tip’s flank, and the ledger can only book it as it looks.`,
   'barrier-no-ground': (_: Record<string, never>) => 'All flawless ground lies at the amplifier’s floor or limit, so there is no reference and nothing is usable; scan again at another gain or bias.',
   'barrier-stack-surface': (_: Record<string, never>) =>
     'A finished stack was scanned: its emitter spreads the current, so layers and thickness are not given.',

@@ -1,5 +1,6 @@
 import assert from 'node:assert/strict';
 import { test } from 'node:test';
+import { boxMean } from '../../src/ground/flat-segments.ts';
 import { findRaised } from '../../src/flaws/find-raised.ts';
 import type { RaisedInput } from '../../src/flaws/find-raised.ts';
 import { seededRandom } from '../../src/stats/random.ts';
@@ -25,7 +26,7 @@ function find({ riseNm, log10, onPlane, change }: Spec) {
   const rise = map((c, r) => 1e-9 * riseNm(c, r), 0.05e-9);
   const current = log10 && map(log10, 0.04).map((value) => Math.min(-8, Math.max(floorLog10, value)));
   return findRaised({
-    columns: side, rows: side, rise, startM: 0.8e-9, edgeShare: 0.35, dropDecades: 0.5, minPixels: 4, layerM: 0.333e-9, layerDecades: 0.55,
+    columns: side, rows: side, rise, smooth: boxMean(rise, side, side, 1), startM: 0.8e-9, edgeShare: 0.35, dropDecades: 0.5, minPixels: 4, layerM: 0.333e-9, layerDecades: 0.55,
     onPlane: Uint8Array.from({ length: count }, (_, i) => (onPlane?.(i % side, Math.floor(i / side)) ? 1 : 0)),
     ...(current ? { log10: current, floorLog10, floor: current.map((value) => (value <= floorLog10 ? 1 : 0)) as unknown as Uint8Array, saturated: current.map((value) => (value >= -8 ? 1 : 0)) as unknown as Uint8Array } : {}),
     ...change,
