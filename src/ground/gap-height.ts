@@ -8,6 +8,7 @@ const apartPx = 6;
 const leastPairs = 30;
 /** A height this near to whole layers, in layers, counts them. */
 const wholePart = 0.35;
+const farLayers = 3.5;
 
 /**
  * Height that one gap of the ladder adds, metres: median over pairs of pixels a few columns apart on one line that stand on different terraces. Near
@@ -61,6 +62,8 @@ export function layersBetween(
   return steps.map((list) => {
     if (list.length < leastPairs) return Number.NaN;
     const layers = median(list) / layerM;
+    // What lies this far off is told from a layer or two however it fits.
+    if (Math.abs(layers) > farLayers) return Math.round(layers);
     return Math.abs(layers - Math.round(layers)) < wholePart ? Math.round(layers) : undefined;
   });
 }

@@ -82,9 +82,30 @@ export function levelSegments(rest: Float32Array, grid: Grid, layerM: number, pl
       if (!agrees) terrace[best] = 0;
     }
   }
-  // What no border links to the rest and no current tells is nothing that is known to be a terrace.
-  for (let k = 1; k <= count; k++) if (levelM[k] !== levelM[k] && known[k] === 0 && pixels[k]! * grid.pitchXM * grid.pitchYM < filmMaxM2) terrace[k] = 0;
+  dropUnlinked(rest, segment, levelM, terrace, { known, pixels }, grid, layerM);
   return { segment, levelM, terrace };
+}
+
+/**
+ * Small segments that no border links to the rest: where no current tells their plane nothing is known of them, and where it does their height must agree with
+ * it, measured against the largest segment. Changes `terrace`.
+ */
+function dropUnlinked(
+  rest: Float32Array, segment: Uint16Array, levelM: Float64Array, terrace: Uint8Array, { known, pixels }: { known: Uint8Array; pixels: Uint32Array }, grid: Grid, layerM: number,
+): void {
+  const small = (k: number): boolean => levelM[k] !== levelM[k] && pixels[k]! * grid.pitchXM * grid.pitchYM < filmMaxM2;
+  if (!levelM.some((_, k) => k > 0 && small(k))) return;
+  const lists: number[][] = Array.from(levelM, () => []);
+  const every = Uint32Array.from(pixels, (n) => Math.max(1, Math.floor(n / 500)));
+  const seen = new Uint32Array(levelM.length);
+  for (let i = 0; i < segment.length; i++) {
+    const k = segment[i]!;
+    if (k > 0 && seen[k]!++ % every[k]! === 0 && rest[i] === rest[i]) lists[k]!.push(rest[i]!);
+  }
+  const height = (k: number): number => medianInPlace(Float64Array.from(lists[k]!), lists[k]!.length);
+  const first = known.indexOf(1);
+  const zero = height(first > 0 ? first : 1);
+  for (let k = 1; k < levelM.length; k++) if (small(k) && (known[k] === 0 || Math.abs(height(k) - zero) > layerM / 2)) terrace[k] = 0;
 }
 
 /** Numbers flat segments from 1 by size; a segment with and without known planes counts as two, so that what is known is not moved by what is not. */
