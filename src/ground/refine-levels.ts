@@ -31,8 +31,8 @@ export interface RefineHelp {
   readonly layerM: number;
 }
 
-/** Rounds of planes, lines and form; the second takes the better ground of the first. */
-const rounds = 2;
+/** Rounds of planes, lines and form; each takes the better ground of the one before. Segments are sought in the first two. */
+const rounds = 3;
 /** A line with less ground than this takes its offset from the lines beside it. */
 const leastInLine = 24;
 /** Columns that are enough to refine by; of maps with twice as many or more every second, third … is taken. */
@@ -93,22 +93,24 @@ function refine(raw: Float32Array, grid: Grid, section: GroundSection, help: Ref
   let { form, lines } = help.start;
   for (let round = 0; round < rounds; round++) {
     const rest = overKnown(raw, form, lines, plane, columns, rows);
-    // Segments are sought in both rounds, because the first look is through lines and a form that lean on the steps.
-    const over = round === 0 ? rest : overKnown(raw, form, lines, known, columns, rows);
-    const found = levelSegments(over, grid, help.layerM, planes);
-    levels = 0;
-    // With neither a segment nor a current all of the map is taken for one plane.
-    const told = planes !== undefined || found.levelM.length > 1;
-    const numbers = Uint16Array.from(found.levelM, (height) => (height === height ? 0 : ++levels));
-    for (let i = 0; i < plane.length; i++) {
-      const segment = found.segment[i]!;
-      const height = found.levelM[segment]!;
-      level[i] = numbers[segment]!;
-      terrace[i] = segment === 0 ? inNone : found.terrace[segment]!;
-      // Neither current nor segment: nothing is known of this ground.
-      const lost = segment === 0 && told && !(planes && planes[i] === planes[i]);
-      plane[i] = lost ? Number.NaN : known[i]! + (height === height ? height : 0);
-      rest[i] = over[i]! - (plane[i]! - known[i]!);
+    // Twice, because the first look is through lines and a form that lean on the steps.
+    if (round < 2) {
+      const over = round === 0 ? rest : overKnown(raw, form, lines, known, columns, rows);
+      const found = levelSegments(over, grid, help.layerM, planes);
+      levels = 0;
+      // With neither a segment nor a current all of the map is taken for one plane.
+      const told = planes !== undefined || found.levelM.length > 1;
+      const numbers = Uint16Array.from(found.levelM, (height) => (height === height ? 0 : ++levels));
+      for (let i = 0; i < plane.length; i++) {
+        const segment = found.segment[i]!;
+        const height = found.levelM[segment]!;
+        level[i] = numbers[segment]!;
+        terrace[i] = segment === 0 ? inNone : found.terrace[segment]!;
+        // Neither current nor segment: nothing is known of this ground.
+        const lost = segment === 0 && told && !(planes && planes[i] === planes[i]);
+        plane[i] = lost ? Number.NaN : known[i]! + (height === height ? height : 0);
+        rest[i] = over[i]! - (plane[i]! - known[i]!);
+      }
     }
     ground = groundOf(rest, columns, rows, level, levels);
     const change = solvePlanes({ rest, ground, columns, rows, order: section.order, lines: section.lines, level, levels });
