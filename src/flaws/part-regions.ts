@@ -49,6 +49,7 @@ export function partRegions(input: PartInput): Parts {
     if (domes.labels[i]! > 0) ridges[i] = 0;
     else rest[i] = mask[i] === 1 && ridges[i] === 0 ? 1 : 0;
   }
+  giveBackFringes(domes.labels, rest, input);
   giveBackSlivers(ridges, rest, input);
   bridgeFolds(ridges, rest, input);
   const blobs = partByPeaks({ ...input, mask: rest });
@@ -84,6 +85,28 @@ function ridgeGround(input: PartInput, withoutDomes: Uint8Array): Uint8Array {
     else ground[i] = 1;
   }
   return ground;
+}
+
+/** The fringe of a dome that is no perfect circle belongs to the dome: remains that touch one and are nowhere wider than three pixels. Changes both. */
+function giveBackFringes(domes: Uint32Array, rest: Uint8Array, { columns, rows, minPixels }: PartInput): void {
+  const { labels, count, pixels } = labelComponents(rest, columns, rows, 8);
+  const distance2 = squaredDistance(rest, columns, rows, {});
+  const widest = new Float64Array(count + 1);
+  const touched = new Uint32Array(count + 1);
+  for (let i = 0; i < labels.length; i++) {
+    const label = labels[i]!;
+    if (label === 0) continue;
+    if (distance2[i]! > widest[label]!) widest[label] = distance2[i]!;
+    if (touched[label] !== 0) continue;
+    const c = i % columns;
+    touched[label] = (c > 0 ? domes[i - 1]! : 0) || (c + 1 < columns ? domes[i + 1]! : 0) || (domes[i - columns] ?? 0) || (domes[i + columns] ?? 0);
+  }
+  for (let i = 0; i < labels.length; i++) {
+    const label = labels[i]!;
+    if (label === 0 || touched[label] === 0 || (widest[label]! > sliverHalfPx ** 2 && pixels[label]! >= minPixels)) continue;
+    rest[i] = 0;
+    domes[i] = touched[label]!;
+  }
 }
 
 /**
