@@ -100,8 +100,11 @@ export async function drop(page: Page, paths: readonly string[]): Promise<void> 
   const cover = page.getByText('Drop to appraise');
   await drag('dragEnter');
   for (const end = Date.now() + patienceMs; !(await cover.isVisible()) && Date.now() < end; await page.waitForTimeout(50)) await drag('dragOver');
-  await drag('dragOver');
-  await drag('drop');
+  // A busy page may answer one dragOver too late, and the browser then refuses the drop: a person lets go again.
+  for (const end = Date.now() + patienceMs; (await cover.isVisible()) && Date.now() < end; await page.waitForTimeout(500)) {
+    await drag('dragOver');
+    await drag('drop');
+  }
   await cover.waitFor({ state: 'hidden' });
   await devTools.detach();
 }
