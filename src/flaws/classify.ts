@@ -44,9 +44,10 @@ const blockedFromM = 6e-9;
 const unsureBelow = 0.65;
 
 /**
- * First classifier for raised regions.
+ * Class of a raised region. Where parting has told a crest (`kind` ridge) or a round dome, that is the class, and a film is known by a current that is lowered
+ * but not lost on ground too low to block; the rest goes by shape:
  *
- * - Long and thin: wrinkle. A short one that is as peaked as domes are could be a row of touching bubbles: it says so, at low confidence.
+ * - Long and thin (only where nobody looked for crests): wrinkle. A short one that is as peaked as domes are could be a row of touching bubbles: it says so, at low confidence.
  * - A smooth dome: bubble. Three looks are weighed: the mean over peak height (1/2 for a paraboloid, more for a plateau), the width of the top, and the share of
  *   the height that a round paraboloid explains. What is as pointed as a cone is none. Below 12 pixels noise hides the shape and only the first look is taken.
  *   Height over radius is named as evidence; only what is flatter than any bubble known leans towards residue, because multilayer skins do not hold a

@@ -61,7 +61,7 @@ export function partByPeaks({ columns, rows, mask, rise, noiseM, minPixels }: Pe
         }
         // The pixel itself goes to the part on whose side it lies higher up.
         best = find(best);
-        if (distinct && nearerTo(j, i, part, find, rise, best, other, columns, rows)) best = other;
+        if (distinct && nearerTo(i, part, find, rise, best, other, columns, rows)) best = other;
       }
     }
     if (best === 0) {
@@ -77,7 +77,7 @@ export function partByPeaks({ columns, rows, mask, rise, noiseM, minPixels }: Pe
 }
 
 /** Whether the highest neighbour of a pixel belongs to `other` rather than to `best`. */
-function nearerTo(_from: number, i: number, part: Int32Array, find: (k: number) => number, rise: Float32Array, best: number, other: number, columns: number, rows: number): boolean {
+function nearerTo(i: number, part: Int32Array, find: (k: number) => number, rise: Float32Array, best: number, other: number, columns: number, rows: number): boolean {
   const c = i % columns;
   const r = (i - c) / columns;
   let top = Number.NEGATIVE_INFINITY;

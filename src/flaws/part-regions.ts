@@ -24,7 +24,7 @@ export interface Parts {
   readonly count: number;
   /** By label: how the part was told (`partKinds`). */
   readonly kind: Uint8Array;
-  /** Squared distance of each pixel from the outside of its own part, m². */
+  /** Squared distance of each pixel from ground outside all parts, m²: between two that touch it does not fall. */
   readonly distance2: Float32Array;
 }
 

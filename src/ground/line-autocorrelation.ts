@@ -16,7 +16,7 @@ export interface LineAutocorrelation {
   /** At distance 0: pixel noise is in it, and in no other. */
   readonly variance: number;
   readonly pixels: number;
-  /** Mean number of pixels that count on a line that has any. */
+  /** Mean number of pixels that count, over the lines that hold at least one. */
   readonly pixelsPerLine: number;
 }
 

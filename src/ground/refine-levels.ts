@@ -134,7 +134,7 @@ function refine(raw: Float32Array, grid: Grid, section: GroundSection, help: Ref
 }
 
 function withoutLines(values: Float32Array, lines: Float64Array, columns: number): Float32Array {
-  for (let i = 0; i < values.length; i++) values[i]! -= lines[Math.floor(i / columns)]!;
+  for (let r = 0, i = 0; i < values.length; r++) for (let c = 0; c < columns; c++, i++) values[i]! -= lines[r]!;
   return values;
 }
 

@@ -23,7 +23,6 @@ export const sections = {
   band: bandSection,
   plan: planSection,
 } as const;
-export type SectionName = keyof typeof sections;
 
 export const recipeSchema = z.strictObject({
   format: z.literal(recipeFormat),

@@ -11,7 +11,6 @@ import { placeLabels } from './place-labels.ts';
 import { valueScaleStyles } from './value-scale-styles.ts';
 
 /** Detail of the `limits` event. */
-export type LimitsEvent = CustomEvent<Limits>;
 
 /** Width of a digit at the ticks' size, a little generous. */
 const letterWidth = 7.2;

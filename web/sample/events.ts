@@ -12,7 +12,6 @@ export interface RecipeChange {
 }
 
 /** Event `recipe-change`; it crosses shadow roots. */
-export type RecipeChangeEvent = CustomEvent<RecipeChange>;
 
 /** A handle that is held has come to a value; undefined: it was let go where it was taken. */
 export interface RecipePreview {
