@@ -73,7 +73,7 @@ export function findFlaws(ground: Ground, grid: Grid, footprint: MaskMap, sectio
   if (current && log10) {
     const input = {
       columns, rows, log10, pixelAreaM2: pixelAreaM2(grid), saturated: current.saturated.data, floor: current.floor.data, raised: raisedMask,
-      ...(rise ? { rise, onPlane: planes.onPlane } : {}), shortDecades: section.shortLayers * scale.layerDecades, layerDecades: scale.layerDecades, layerM: scale.layerM,
+      ...(rise ? { rise, onPlane: planes.onPlane, noiseM, lost: ground.height!.repaired.data } : {}), shortDecades: section.shortLayers * scale.layerDecades, layerDecades: scale.layerDecades, layerM: scale.layerM,
       shortMaxM2: scale.shortMaxM2, terraceMinM2: scale.terraceMinM2, minPixels: section.minPixels, pitM,
     };
     shorts = findShorts(input);

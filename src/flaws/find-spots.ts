@@ -1,5 +1,6 @@
 /** Spots that only the current shows: shorts (too much) and opens (none). */
 import { labelComponents } from '../grid/label-components.ts';
+import { median } from '../stats/median.ts';
 import { greyOpening } from '../grid/opening.ts';
 import { dilate, nearestAdmitted } from './local-ground.ts';
 
@@ -15,6 +16,8 @@ export interface SpotsInput {
   readonly rise?: Float32Array;
   /** 1 where the pixel lies on its own terrace's plane; absent without a height map. */
   readonly onPlane?: Uint8Array;
+  /** 1 where the height was lost and filled: without contact there is no current either, so that none says nothing. Absent without a height map. */
+  readonly lost?: Uint8Array;
   /** Raised flaws found before. */
   readonly raised: Uint8Array;
   /** Decades of two layers (or what the recipe says) above the surroundings. */
@@ -26,6 +29,8 @@ export interface SpotsInput {
   readonly minPixels: number;
   /** Thickness of one layer, metres. */
   readonly layerM: number;
+  /** Standard deviation of the height's noise, metres; absent without a height map. */
+  readonly noiseM?: number;
   /** A pit this deep that conducts goes through the barrier, metres. */
   readonly pitM: number;
 }
@@ -36,6 +41,13 @@ const brightDecades = 0.5;
 const pitLayers = 3.2;
 /** A spot without a pit is no short where raised flaws make up more than this share of its border: they cut it off from ground like itself. */
 const shutInShare = 0.5;
+/** A dead spot borders on ground that carries current; with more than this share of its border at the floor it is the edge of something larger. */
+const darkBorder = 0.25;
+/** Undulation of even ground, metres, and its spread in decades of current (both our judgement of good flakes). */
+const roughM = 0.1e-9;
+const evenDecades = 0.2;
+/** A spot with more than this share of its border at its own current is a corner of that ground. */
+const alikeBorder = 0.15;
 /** Part of a layer's worth of current by which a spot must stand out to be a spot at all. */
 const standOut = 0.3;
 
@@ -70,9 +82,12 @@ export function findShorts(input: SpotsInput): Uint8Array {
     else if (pitM > input.pitM && floor[i] === 0) candidates[i] = 1;
   }
   const { labels, pixels, count: spots } = labelComponents(candidates, columns, rows, 8);
+  if (spots === 0) return candidates;
   const shutIn = shutInSpots(labels, spots, input);
+  const blunt = bluntSpots(labels, spots, pixels, input);
   for (let i = 0; i < count; i++) {
-    if (candidates[i] === 1 && (pixels[labels[i]!]! * input.pixelAreaM2 > input.shortMaxM2 || shutIn[labels[i]!] === 1)) candidates[i] = 0;
+    const label = labels[i]!;
+    if (label > 0 && (pixels[label]! * input.pixelAreaM2 > input.shortMaxM2 || shutIn[label] === 1 || blunt[label] === 1)) candidates[i] = 0;
   }
   return candidates;
 }
@@ -97,6 +112,48 @@ function shutInSpots(labels: Uint32Array, count: number, { columns, rise, raised
   return Uint8Array.from(border, (edges, label) => (beside[label]! > shutInShare * edges && deepest[label]! > -2 * layerM && highest[label]! < 3 * layerM ? 1 : 0));
 }
 
+/**
+ * By spot: 1 where it does not stand out of what borders on it, as ground does whose current changes gradually, or is a corner of ground like itself. An unsaturated spot must lie half of what a short
+ * stands out by above the median of its border. A saturated one hides by how much it stands out: where that could be as little as one layer or two, a
+ * terrace as much thinner explains it, unless its pit is deeper than that terrace and the height's noise at the deepest of its pixels make it.
+ */
+function bluntSpots(labels: Uint32Array, count: number, pixels: Uint32Array, { columns, rows, log10, raised, saturated, rise, noiseM, shortDecades, layerDecades, layerM }: SpotsInput): Uint8Array {
+  const own = Array.from({ length: count + 1 }, (): number[] => []);
+  const border = Array.from({ length: count + 1 }, (): number[] => []);
+  const deepestM = new Float64Array(count + 1);
+  const clipped = new Uint8Array(count + 1);
+  for (let i = 0; i < labels.length; i++) {
+    const label = labels[i]!;
+    if (label === 0) continue;
+    own[label]!.push(log10[i]!);
+    if (saturated[i] === 1) clipped[label] = 1;
+    if (rise && -rise[i]! > deepestM[label]!) deepestM[label] = -rise[i]!;
+    const c = i % columns;
+    const r = (i - c) / columns;
+    for (let y = Math.max(0, r - 1); y <= Math.min(rows - 1, r + 1); y++) {
+      for (let x = Math.max(0, c - 1); x <= Math.min(columns - 1, c + 1); x++) {
+        const k = y * columns + x;
+        if (labels[k] === 0 && raised[k] === 0 && log10[k] === log10[k]) border[label]!.push(log10[k]!);
+      }
+    }
+  }
+  return Uint8Array.from(own, (values, label) => {
+    if (label === 0 || border[label]!.length === 0) return 0;
+    const level = median(values);
+    const above = level - median(border[label]!);
+    if (shareNear(border[label]!, level, standOut * layerDecades) > alikeBorder) return 1;
+    if (above >= shortDecades - evenDecades) return 0;
+    if (clipped[label] === 0) return above < shortDecades / 2 ? 1 : 0;
+    const layers = Math.max(1, Math.ceil(above / layerDecades));
+    const spreadM = Math.hypot(noiseM ?? 0, roughM) * (1.2 + Math.sqrt(2 * Math.log(pixels[label]!)));
+    return deepestM[label]! < layers * layerM + spreadM ? 1 : 0;
+  });
+}
+
+function shareNear(values: readonly number[], level: number, within: number): number {
+  return values.filter((value) => Math.abs(value - level) < within).length / values.length;
+}
+
 /** 1 within one opening width of saturated ground larger than the largest short. */
 function nearLargeSaturated(input: SpotsInput, width: number): Uint8Array {
   const { columns, rows, saturated } = input;
@@ -117,6 +174,8 @@ function openingWidth(input: SpotsInput): number {
  * Opens: patches at the floor, smaller than a terrace, that no raised flaw explains and whose surroundings carry at least 0.8 of a layer (and half
  * a decade) more than the floor. Floor pixels that touch a raised flaw belong to it and are returned apart.
  *
+ * A patch that hangs together with as much ground at the floor as makes a terrace, or that has a good part of its border with it, is the edge of that terrace.
+ *
  * Patches of fewer than `minPixels` could be noise of dim ground: they are open only where all of the up to eight neighbours of each of their
  * pixels that are not of the patch are measured and carry half a decade more than the floor. The floor lies three standard
  * deviations of the noise above zero, so noise would have to take 6.5 of them off (√10 − 1 times three) to make such a pixel. On
@@ -127,7 +186,7 @@ export function findOpens(input: SpotsInput): { opens: Uint8Array; belongToRaise
   const candidates = new Uint8Array(log10.length);
   const outside = new Uint8Array(log10.length);
   for (let i = 0; i < candidates.length; i++) {
-    if (floor[i] === 1 && raised[i] === 0 && input.onPlane?.[i] !== 1) candidates[i] = 1;
+    if (floor[i] === 1 && raised[i] === 0 && input.onPlane?.[i] !== 1 && input.lost?.[i] !== 1) candidates[i] = 1;
     outside[i] = floor[i] === 0 && raised[i] === 0 && !Number.isNaN(log10[i]!) ? 1 : 0;
   }
   const nearest = nearestAdmitted(outside, columns, rows);
@@ -141,6 +200,7 @@ export function findOpens(input: SpotsInput): { opens: Uint8Array; belongToRaise
     if (touchesMask(raised, columns, rows, i)) touches[label] = 1;
   }
   const small = (label: number): boolean => pixels[label]! < input.minPixels;
+  const ofTerrace = edgesOfTerraces(labels, count, input);
   const dim = new Uint8Array(count + 1);
   for (let i = 0; i < labels.length; i++) if (labels[i]! > 0 && small(labels[i]!) && !brightAround(log10, labels, columns, rows, i)) dim[labels[i]!] = 1;
   const opens = new Uint8Array(log10.length);
@@ -150,9 +210,31 @@ export function findOpens(input: SpotsInput): { opens: Uint8Array; belongToRaise
     const label = labels[i]!;
     if (label === 0 || pixels[label]! * input.pixelAreaM2 >= input.terraceMinM2 || sum[label]! / pixels[label]! < least) continue;
     if (touches[label] === 1) belongToRaised[i] = 1;
-    else if (dim[label] === 0) opens[i] = 1;
+    else if (dim[label] === 0 && ofTerrace[label] === 0) opens[i] = 1;
   }
   return { opens, belongToRaised };
+}
+
+/** By patch: 1 where it is a piece of a larger dark ground. */
+function edgesOfTerraces(labels: Uint32Array, count: number, { columns, rows, raised, floor, pixelAreaM2, terraceMinM2 }: SpotsInput): Uint8Array {
+  const dark = new Uint8Array(labels.length);
+  for (let i = 0; i < dark.length; i++) if (floor[i] === 1 && raised[i] === 0) dark[i] = 1;
+  const grounds = labelComponents(dark, columns, rows, 8);
+  const [border, beside] = [new Float64Array(count + 1), new Float64Array(count + 1)];
+  const edge = new Uint8Array(count + 1);
+  for (let i = 0; i < labels.length; i++) {
+    const label = labels[i]!;
+    if (label === 0) continue;
+    if (grounds.pixels[grounds.labels[i]!]! * pixelAreaM2 >= terraceMinM2) edge[label] = 1;
+    const c = i % columns;
+    for (const j of [c > 0 ? i - 1 : -1, c + 1 < columns ? i + 1 : -1, i - columns, i + columns]) {
+      if (j < 0 || j >= labels.length || labels[j] === label) continue;
+      border[label]!++;
+      beside[label]! += dark[j]!;
+    }
+  }
+  for (let n = 1; n <= count; n++) if (beside[n]! > darkBorder * border[n]!) edge[n] = 1;
+  return edge;
 }
 
 function touchesMask(mask: Uint8Array, columns: number, rows: number, i: number): boolean {
