@@ -1,5 +1,8 @@
 /** Round domes, also where other things lean on them or run through them. */
-import { squaredDistance } from '../grid/distance.ts';
+import { breakAlong, circleThrough, edgeAlong } from './dome-rim.ts';
+import type { Point } from './dome-rim.ts';
+import { domeStarts } from './dome-starts.ts';
+import type { DomeStart } from './dome-starts.ts';
 
 export interface DomeInput {
   readonly columns: number;
@@ -19,8 +22,6 @@ export interface Domes {
   readonly count: number;
 }
 
-/** A dome of a smaller radius has too few pixels for its outline to tell a circle, pixels. */
-const leastRadiusPx = 3;
 /** Directions in which a circle is compared with the outline. */
 const directions = 48;
 /** Share of a circle's directions in which the flawed ground ends with it; the two sides of a fold are never more than 0.45 of a circle between them. */
@@ -28,6 +29,17 @@ const leastFree = 0.52;
 /** Less will do, down to this share, for a dome that clearly rises out of what runs through it: by this factor over what lies just outside the circle. */
 const leastFreeIfHigh = 0.33;
 const standsOut = 1.35;
+/** A rim told by breaks of slope: on this share of the circle at least, with flawed ground ending on at least this share of it. */
+const leastRim = 0.65;
+const leastFreeIfBroken = 0.2;
+/** Where the ground ends this near to such a circle, in parts of its radius, it must end with it in this share of those directions: particles have lobes. */
+const endsWithin = 0.5;
+const mostlyFree = 0.85;
+/** Such a circle with less free than this leans on something. */
+const leaningFree = 0.75;
+/** A circle that the map's border cuts must have this share of its directions on the map, and show its rim in this share of those. */
+const leastOnMap = 0.3;
+const leastFreeIfCut = 0.75;
 /** What goes on outside a small circle at this part of its height or more is the same fold, of which the circle is the end; radius in pixels. */
 const goesOnPart = 0.7;
 const smallPx = 6;
@@ -37,41 +49,28 @@ const strayPx = 1.2;
 /** Largest rms deviation from a paraboloid, as a share of its height, beyond the noise. */
 const mostDeviation = 0.12;
 
-interface Circle {
-  readonly xM: number;
-  readonly yM: number;
+interface Ring extends Point {
   readonly radiusM: number;
+}
+
+interface Circle extends Ring {
   /** By direction: the flawed ground ends here with the circle. */
   readonly free: readonly boolean[];
+  /** It stands on the flank of something whose own fall adds to the dome's: that makes it more pointed. */
+  readonly leaning: boolean;
 }
 
 /**
- * Finds domes: circles that the outline of the flawed ground follows over more than half of their directions, and inside which, towards those directions, the
- * height is a paraboloid h(1 − ρ²) rather than a block h(1 − ρ⁴) or a cone h(1 − ρ) (least squares for each). Centres are sought at the maxima of the
- * distance to the outline (the inscribed circles), largest first. What overlaps a dome adds to its height only in the other directions, so it does
- * not spoil the comparison. A dome cut by the map's border is not found here.
+ * Finds domes: circles that the outline of the flawed ground follows over more than half of their directions, or on which the slope breaks where the flawed
+ * ground goes on, and inside which, towards the directions where it ends, the height is a paraboloid h(1 − ρ²) rather than a block h(1 − ρ⁴) or a cone h(1 − ρ)
+ * (least squares for each). Candidates are the largest inscribed circles, circles about summits, and caps at the map's border, the largest first. What
+ * overlaps a dome adds to its height only in the other directions, so it does not spoil the comparison.
  */
 export function findDomes(input: DomeInput): Domes {
-  const { columns, rows, pitchXM, pitchYM, mask } = input;
-  const labels = new Uint32Array(mask.length);
-  const distance2 = squaredDistance(mask, columns, rows, { pitchX: pitchXM, pitchY: pitchYM });
-  const pixelM = Math.max(pitchXM, pitchYM);
-  const candidates: number[] = [];
-  for (let r = 1; r + 1 < rows; r++) {
-    for (let c = 1; c + 1 < columns; c++) {
-      const i = r * columns + c;
-      const here = distance2[i]!;
-      if (here < (leastRadiusPx * pixelM) ** 2) continue;
-      let highest = true;
-      for (const step of [-columns - 1, -columns, -columns + 1, -1, 1, columns - 1, columns, columns + 1]) if (distance2[i + step]! > here) highest = false;
-      if (highest) candidates.push(i);
-    }
-  }
-  candidates.sort((a, b) => distance2[b]! - distance2[a]! || a - b);
+  const labels = new Uint32Array(input.mask.length);
   let count = 0;
-  for (const i of candidates) {
-    if (labels[i]! > 0) continue;
-    const start = { xM: ((i % columns) + 0.5) * pitchXM, yM: (Math.floor(i / columns) + 0.5) * pitchYM, radiusM: Math.sqrt(distance2[i]!) - 0.5 * Math.sqrt(pitchXM * pitchYM) };
+  for (const start of domeStarts(input)) {
+    if (labels[start.at]! > 0) continue;
     const circle = settle(input, start);
     if (!circle || !isParaboloid(input, circle)) continue;
     count++;
@@ -80,89 +79,101 @@ export function findDomes(input: DomeInput): Domes {
   return { labels, count };
 }
 
-/** Moves a circle on to the outline where that follows it; undefined where it follows too little of it. y runs down here. */
-function settle(input: DomeInput, start: { xM: number; yM: number; radiusM: number }): Circle | undefined {
-  let { xM, yM, radiusM } = start;
+const angles = Array.from({ length: directions }, (_, k) => (2 * Math.PI * k) / directions);
+
+/** Moves a circle on to its rim, which is where its slope breaks or the flawed ground ends; undefined where too little of it is one. y runs down here. */
+function settle(input: DomeInput, start: DomeStart): Circle | undefined {
+  const { breaks } = start;
+  let circle: Ring = start;
   // Most candidates lie on folds and show it at once.
-  let near = 0;
-  for (let k = 0; k < directions; k += 4) if (edgeAlong(input, xM, yM, radiusM, (2 * Math.PI * k) / directions, straysPx[0])) near++;
-  if (near < (leastFreeIfHigh * directions) / 4 - 1) return undefined;
-  for (const strayed of straysPx) {
-    // Outline crossings along the rays, fitted by a circle (Kåsa, IEEE Trans. Instrum. Meas. IM-25, 8, 1976).
-    const edges = Array.from({ length: directions }, (_, k) => edgeAlong(input, xM, yM, radiusM, (2 * Math.PI * k) / directions, strayed));
-    const known = edges.filter((edge) => edge !== undefined);
-    if (known.length < leastFreeIfHigh * directions) return undefined;
-    const fitted = kasa(known);
-    if (!fitted || !(fitted.radiusM > 0.5 * radiusM && fitted.radiusM < 1.6 * radiusM)) return undefined;
-    ({ xM, yM, radiusM } = fitted);
+  const least = leastFreeIfHigh * onMap(input, circle).share * directions;
+  if (!breaks) {
+    let near = 0;
+    for (let k = 0; k < directions; k += 4) if (edgeAlong(input, circle, circle.radiusM, angles[k]!, straysPx[0])) near++;
+    if (near < least / 4 - 1) return undefined;
   }
-  const free = Array.from({ length: directions }, (_, k) => edgeAlong(input, xM, yM, radiusM, (2 * Math.PI * k) / directions, strayPx) !== undefined);
-  const share = free.filter(Boolean).length / directions;
+  for (const strayed of straysPx) {
+    const { radiusM } = circle;
+    const heightM = breaks ? heightOverRim(input, circle) : 0;
+    const rim: Point[] = [];
+    for (const angle of angles) {
+      const point = breaks ? breakNear(input, circle, heightM, angle, strayed) : edgeAlong(input, circle, radiusM, angle, strayed);
+      if (point) rim.push(point);
+    }
+    if (rim.length < least) return undefined;
+    const fitted = circleThrough(rim);
+    if (!fitted || !(fitted.radiusM > 0.5 * radiusM && fitted.radiusM < 1.6 * radiusM)) return undefined;
+    circle = fitted;
+  }
+  return judged(input, circle, breaks);
+}
+
+/** The circle with what is free of it, if enough of it is a rim. */
+function judged(input: DomeInput, circle: Ring, breaks: boolean): Circle | undefined {
+  const { radiusM } = circle;
+  const free = angles.map((angle) => edgeAlong(input, circle, radiusM, angle, strayPx) !== undefined);
+  const on = onMap(input, circle);
+  if (on.share < leastOnMap) return undefined;
+  const share = free.filter(Boolean).length / directions / on.share;
+  const found = { ...circle, free, leaning: breaks && share < leaningFree };
+  if (breaks) {
+    const heightM = heightOverRim(input, circle);
+    const rim = angles.filter((angle) => breakNear(input, circle, heightM, angle, strayPx) !== undefined).length / directions / on.share;
+    const ends = angles.filter((angle) => edgeAlong(input, circle, radiusM, angle, (endsWithin * radiusM) / pixelAlong(input, angle)) !== undefined).length / directions / on.share;
+    return share >= Math.max(leastFreeIfBroken, mostlyFree * ends) && rim >= leastRim && outsideOverInside(input, found) * standsOut <= 1 ? found : undefined;
+  }
+  if (on.share < 1) return share >= leastFreeIfCut ? found : undefined;
   if (share < leastFreeIfHigh) return undefined;
-  const circle = { xM, yM, radiusM, free };
-  const ratio = outsideOverInside(input, circle);
-  if (share < leastFree) return ratio * standsOut <= 1 ? circle : undefined;
+  const ratio = outsideOverInside(input, found);
+  if (share < leastFree) return ratio * standsOut <= 1 ? found : undefined;
   const small = radiusM < smallPx * Math.max(input.pitchXM, input.pitchYM);
-  return small && share < 0.85 && ratio > goesOnPart ? undefined : circle;
+  return small && share < 0.85 && ratio > goesOnPart ? undefined : found;
+}
+
+function breakNear(input: DomeInput, circle: Ring, heightM: number, angle: number, stray: number): Point | undefined {
+  const strayM = stray * pixelAlong(input, angle);
+  return breakAlong(input, circle, heightM, angle, circle.radiusM - strayM, circle.radiusM + strayM);
+}
+
+/** Length of a pixel's step in a direction, metres. */
+function pixelAlong({ pitchXM, pitchYM }: DomeInput, angle: number): number {
+  return Math.hypot(Math.cos(angle) * pitchXM, Math.sin(angle) * pitchYM);
+}
+
+/** Share of a circle's directions in which it lies on the map. */
+function onMap({ columns, rows, pitchXM, pitchYM }: DomeInput, { xM, yM, radiusM }: Ring): { readonly share: number } {
+  const [width, height] = [columns * pitchXM, rows * pitchYM];
+  if (xM - radiusM > pitchXM && yM - radiusM > pitchYM && xM + radiusM < width - pitchXM && yM + radiusM < height - pitchYM) return { share: 1 };
+  const on = angles.filter((angle) => {
+    const [x, y] = [xM + (radiusM + pitchXM) * Math.cos(angle), yM + (radiusM + pitchYM) * Math.sin(angle)];
+    return x > 0 && x < width && y > 0 && y < height;
+  });
+  return { share: on.length / directions };
+}
+
+/** Height at the centre over the lower half of what lies on the circle, metres. */
+function heightOverRim(input: DomeInput, { xM, yM, radiusM }: Ring): number {
+  const rim = angles.map((angle) => riseAt(input, xM + radiusM * Math.cos(angle), yM + radiusM * Math.sin(angle))).filter((value) => value === value).sort((a, b) => a - b);
+  return riseAt(input, xM, yM) - (rim[rim.length >> 1] ?? Number.NaN);
+}
+
+function riseAt({ columns, rows, pitchXM, pitchYM, rise }: DomeInput, xM: number, yM: number): number {
+  const c = Math.floor(xM / pitchXM);
+  const r = Math.floor(yM / pitchYM);
+  return c >= 0 && c < columns && r >= 0 && r < rows ? rise[r * columns + c]! : Number.NaN;
 }
 
 /** Highest rise just outside the circle, in the directions where the flawed ground goes on, over the rise at its centre; 0 where it ends everywhere. */
-function outsideOverInside({ columns, rows, pitchXM, pitchYM, rise }: DomeInput, { xM, yM, radiusM, free }: Circle): number {
-  const at = (x: number, y: number): number => {
-    const c = Math.floor(x / pitchXM);
-    const r = Math.floor(y / pitchYM);
-    return c >= 0 && c < columns && r >= 0 && r < rows ? rise[r * columns + c]! : Number.NaN;
-  };
+function outsideOverInside(input: DomeInput, { xM, yM, radiusM, free }: Circle): number {
   let highest = 0;
   free.forEach((ends, k) => {
     if (ends) return;
-    const [ux, uy] = [Math.cos((2 * Math.PI * k) / directions), Math.sin((2 * Math.PI * k) / directions)];
-    const away = radiusM + 1.5 * Math.hypot(ux * pitchXM, uy * pitchYM);
-    const value = at(xM + away * ux, yM + away * uy);
+    const [ux, uy] = [Math.cos(angles[k]!), Math.sin(angles[k]!)];
+    const away = radiusM + 1.5 * Math.hypot(ux * input.pitchXM, uy * input.pitchYM);
+    const value = riseAt(input, xM + away * ux, yM + away * uy);
     if (value > highest) highest = value;
   });
-  return highest / at(xM, yM);
-}
-
-/** Where the mask ends along a ray, if that is near the circle. */
-function edgeAlong({ columns, rows, pitchXM, pitchYM, mask }: DomeInput, xM: number, yM: number, radiusM: number, angle: number, stray: number): { xM: number; yM: number } | undefined {
-  const [ux, uy] = [Math.cos(angle), Math.sin(angle)];
-  const pixelM = Math.hypot(ux * pitchXM, uy * pitchYM);
-  const from = radiusM - stray * pixelM;
-  for (let at = from; at <= radiusM + stray * pixelM; at += 0.25 * pixelM) {
-    const c = Math.floor((xM + at * ux) / pitchXM);
-    const r = Math.floor((yM + at * uy) / pitchYM);
-    if (c >= 0 && c < columns && r >= 0 && r < rows && mask[r * columns + c] === 1) continue;
-    if (at === from) return undefined;
-    return { xM: xM + (at - 0.125 * pixelM) * ux, yM: yM + (at - 0.125 * pixelM) * uy };
-  }
-  return undefined;
-}
-
-/** Circle through points by linear least squares. */
-function kasa(points: readonly { xM: number; yM: number }[]): { xM: number; yM: number; radiusM: number } | undefined {
-  const n = points.length;
-  let [mx, my] = [0, 0];
-  for (const p of points) {
-    mx += p.xM / n;
-    my += p.yM / n;
-  }
-  let [xx, xy, yy, xz, yz, zz] = [0, 0, 0, 0, 0, 0];
-  for (const p of points) {
-    const [x, y] = [p.xM - mx, p.yM - my];
-    const z = x * x + y * y;
-    xx += x * x;
-    xy += x * y;
-    yy += y * y;
-    xz += x * z;
-    yz += y * z;
-    zz += z / n;
-  }
-  const determinant = xx * yy - xy * xy;
-  if (!(determinant > 0)) return undefined;
-  const a = (xz * yy - yz * xy) / (2 * determinant);
-  const b = (yz * xx - xz * xy) / (2 * determinant);
-  return { xM: mx + a, yM: my + b, radiusM: Math.sqrt(zz + a * a + b * b) };
+  return highest / riseAt(input, xM, yM);
 }
 
 /** Pixels inside the circle with ρ² and direction. */
@@ -205,7 +216,7 @@ function isParaboloid(input: DomeInput, circle: Circle): boolean {
     return { height, rms: Math.sqrt(rss / heights.length) };
   });
   const [dome, block, cone] = fits as [typeof fits[0], typeof fits[0], typeof fits[0]];
-  return dome.height > 0 && dome.rms < block.rms && dome.rms < cone.rms && dome.rms < mostDeviation * dome.height + 2 * noiseM;
+  return dome.height > 0 && dome.rms < block.rms && (circle.leaning || dome.rms < cone.rms) && dome.rms < mostDeviation * dome.height + 2 * noiseM;
 }
 
 /** Gives the dome its pixels: flawed ground within the circle that no larger dome has taken. */

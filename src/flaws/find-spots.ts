@@ -113,9 +113,10 @@ function shutInSpots(labels: Uint32Array, count: number, { columns, rise, raised
 }
 
 /**
- * By spot: 1 where it does not stand out of what borders on it, as ground does whose current changes gradually, or is a corner of ground like itself. An unsaturated spot must lie half of what a short
- * stands out by above the median of its border. A saturated one hides by how much it stands out: where that could be as little as one layer or two, a
- * terrace as much thinner explains it, unless its pit is deeper than that terrace and the height's noise at the deepest of its pixels make it.
+ * By spot: 1 where it does not stand out of what borders on it. A pit deeper than a terrace that carries as much more, and than the height's noise at the
+ * deepest of its pixels makes that, settles it: a short. Without one it is none where a part of its border is like itself (a corner of that ground), where it
+ * lies less than half of what a short stands out by above the median of its border (ground that brightens gradually), and where it saturates and
+ * could lie as little as a layer above its border: a terrace as much thinner explains it.
  */
 function bluntSpots(labels: Uint32Array, count: number, pixels: Uint32Array, { columns, rows, log10, raised, saturated, rise, noiseM, shortDecades, layerDecades, layerM }: SpotsInput): Uint8Array {
   const own = Array.from({ length: count + 1 }, (): number[] => []);
@@ -141,12 +142,12 @@ function bluntSpots(labels: Uint32Array, count: number, pixels: Uint32Array, { c
     if (label === 0 || border[label]!.length === 0) return 0;
     const level = median(values);
     const above = level - median(border[label]!);
-    if (shareNear(border[label]!, level, standOut * layerDecades) > alikeBorder) return 1;
-    if (above >= shortDecades - evenDecades) return 0;
-    if (clipped[label] === 0) return above < shortDecades / 2 ? 1 : 0;
     const layers = Math.max(1, Math.ceil(above / layerDecades));
     const spreadM = Math.hypot(noiseM ?? 0, roughM) * (1.2 + Math.sqrt(2 * Math.log(pixels[label]!)));
-    return deepestM[label]! < layers * layerM + spreadM ? 1 : 0;
+    if (deepestM[label]! >= layers * layerM + spreadM) return 0;
+    if (shareNear(border[label]!, level, standOut * layerDecades) > alikeBorder) return 1;
+    if (above >= shortDecades - evenDecades) return 0;
+    return clipped[label] === 1 || above < shortDecades / 2 ? 1 : 0;
   });
 }
 

@@ -51,3 +51,29 @@ test('labels lie inside the mask and are numbered without gaps; nothing rises, n
   assert.equal(new Set(labels.filter((label) => label > 0)).size, 3);
   assert.equal(findDomes(drawRises(grid, [])).count, 0);
 });
+
+test('a dome on the flank of a fold is found by its rim, where the slope breaks', () => {
+  // The middle of the dome lies beside the crest, so that the largest inscribed circle is displaced towards the fold's far side.
+  const drawn = drawRises(grid, [ridge(-500, 1340, 3100, 1250, 60, 10), dome(1300, 1200, 140, 17)], { seed: 'flank' });
+  for (const [turned, x, y] of [[drawn, 1300, 1200], [mirrored(drawn), 2560 - 1300, 1200], [exchanged(drawn), 1200, 1300]] as const) {
+    const { labels, count } = findDomes(turned);
+    assert.equal(count, 1);
+    const label = labels[turned.at(x, y)]!;
+    assertClose(labels.filter((value) => value === label).length * 400, Math.PI * 140 ** 2, 0.15);
+  }
+  assert.equal(findDomes(drawRises(grid, [ridge(-500, 1340, 3100, 1250, 60, 10)], { seed: 'flank' })).count, 0, 'the fold alone');
+});
+
+test('a dome that the map cuts, with its middle on the map or beyond it', () => {
+  for (const y of [2560 - 100, 2560 + 80]) {
+    const drawn = drawRises(grid, [dome(1300, y, 260, 30)], { seed: 'cut' });
+    for (const turned of [drawn, mirrored(drawn), exchanged(drawn)]) {
+      const { labels, count } = findDomes(turned);
+      assert.equal(count, 1, `middle at ${y} nm`);
+      const cut = turned.mask.reduce((sum, value) => sum + value, 0);
+      assertClose(labels.filter((value) => value === 1).length, cut, 0.06);
+    }
+  }
+  assert.equal(findDomes(drawRises(grid, [ridge(-500, 2540, 3100, 2540, 60, 10)])).count, 0, 'a fold along the border');
+  assert.equal(findDomes(drawRises(grid, [patch(1300, 2560, 260, 2)])).count, 0, 'a patch at the border');
+});
