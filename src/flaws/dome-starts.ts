@@ -21,14 +21,18 @@ const leastRadiusPx = 3;
 const directions = 24;
 /** Nor is a dome about a summit sought beyond this, pixels: larger ones are seldom run through on all sides. */
 const mostRadiusPx = 30;
+/** Nor about one lower than this many standard deviations of the noise: a break of slope must stand out of it. */
+const leastSummit = 60;
 /** A cap cut off by the map's border is at least this wide and this deep, pixels. */
 const leastChordPx = 6;
 const leastDepthPx = 2;
 
-/** Candidates for domes, the largest first: inscribed circles, circles about summits, and caps at the map's border. */
-export function domeStarts(input: DomeInput): DomeStart[] {
-  return [...inscribedCircles(input), ...circlesAboutSummits(input), ...capsAtBorder(input)].sort((a, b) => b.radiusM - a.radiusM || a.at - b.at);
+/** Inscribed circles of the flawed ground, and caps at the map's border, the largest first. */
+export function startsByOutline(input: DomeInput): DomeStart[] {
+  return [...inscribedCircles(input), ...capsAtBorder(input)].sort(largestFirst);
 }
+
+const largestFirst = (a: DomeStart, b: DomeStart): number => b.radiusM - a.radiusM || a.at - b.at;
 
 function startAt({ columns, pitchXM, pitchYM }: DomeInput, at: number, radiusM: number): DomeStart {
   return { at, breaks: false, xM: ((at % columns) + 0.5) * pitchXM, yM: (Math.floor(at / columns) + 0.5) * pitchYM, radiusM };
@@ -43,17 +47,20 @@ function inscribedCircles(input: DomeInput): DomeStart[] {
     .map((at) => startAt(input, at, Math.sqrt(distance2[at]!) - 0.5 * Math.sqrt(pitchXM * pitchYM)));
 }
 
-/** Circles through the breaks of slope about the summits: what runs through a dome moves the inscribed circle off it, but not its rim. */
-function circlesAboutSummits(input: DomeInput): DomeStart[] {
-  const { columns, rows, pitchXM, pitchYM, mask, rise } = input;
+/**
+ * Circles through the breaks of slope about the summits, those in `taken` left out, the largest first: what runs through a dome moves the inscribed circle off
+ * it, but not its rim.
+ */
+export function startsBySummits(input: DomeInput, taken: Uint32Array): DomeStart[] {
+  const { columns, rows, pitchXM, pitchYM, mask, rise, noiseM } = input;
   const pixelM = Math.max(pitchXM, pitchYM);
   const starts: DomeStart[] = [];
-  for (const at of maxima(rise, columns, rows, (_, i) => mask[i] === 1)) {
+  for (const at of maxima(rise, columns, rows, (value, i) => mask[i] === 1 && taken[i] === 0 && value > leastSummit * noiseM)) {
     const centre = startAt(input, at, 0);
     const found = circleThrough(rimAbout(input, centre, rise[at]!, mostRadiusPx * pixelM));
     if (found && found.radiusM >= leastRadiusPx * pixelM && Math.hypot(found.xM - centre.xM, found.yM - centre.yM) < found.radiusM) starts.push({ at, breaks: true, ...found });
   }
-  return starts;
+  return starts.sort(largestFirst);
 }
 
 /** Breaks of slope about a place, those left out that lie more than half as far again as the middle one, or less than half as far. */
@@ -107,9 +114,9 @@ function maxima(values: Float32Array, columns: number, rows: number, admit: (val
       const i = r * columns + c;
       const here = values[i]!;
       if (!admit(here, i)) continue;
-      let highest = true;
-      for (const step of [-columns - 1, -columns, -columns + 1, -1, 1, columns - 1, columns, columns + 1]) if (values[i + step]! > here) highest = false;
-      if (highest) found.push(i);
+      if (values[i - 1]! > here || values[i + 1]! > here || values[i - columns]! > here || values[i + columns]! > here) continue;
+      if (values[i - columns - 1]! > here || values[i - columns + 1]! > here || values[i + columns - 1]! > here || values[i + columns + 1]! > here) continue;
+      found.push(i);
     }
   }
   return found;

@@ -1,7 +1,7 @@
 /** Round domes, also where other things lean on them or run through them. */
 import { breakAlong, circleThrough, edgeAlong } from './dome-rim.ts';
 import type { Point } from './dome-rim.ts';
-import { domeStarts } from './dome-starts.ts';
+import { startsByOutline, startsBySummits } from './dome-starts.ts';
 import type { DomeStart } from './dome-starts.ts';
 
 export interface DomeInput {
@@ -46,6 +46,8 @@ const smallPx = 6;
 /** How far the outline may stray from the circle, pixels, while the circle moves on to it; the last holds for what is found. */
 const straysPx = [3, 2, 1.2, 1.2] as const;
 const strayPx = 1.2;
+/** A dome of which larger ones have taken more than the rest of this share is one of them. */
+const leastOwn = 0.3;
 /** Largest rms deviation from a paraboloid, as a share of its height, beyond the noise. */
 const mostDeviation = 0.12;
 
@@ -63,19 +65,22 @@ interface Circle extends Ring {
 /**
  * Finds domes: circles that the outline of the flawed ground follows over more than half of their directions, or on which the slope breaks where the flawed
  * ground goes on, and inside which, towards the directions where it ends, the height is a paraboloid h(1 − ρ²) rather than a block h(1 − ρ⁴) or a cone h(1 − ρ)
- * (least squares for each). Candidates are the largest inscribed circles, circles about summits, and caps at the map's border, the largest first. What
+ * (least squares for each). Candidates are the largest inscribed circles and caps at the map's border, then circles about the summits that are left, each the largest first. What
  * overlaps a dome adds to its height only in the other directions, so it does not spoil the comparison.
  */
 export function findDomes(input: DomeInput): Domes {
   const labels = new Uint32Array(input.mask.length);
   let count = 0;
-  for (const start of domeStarts(input)) {
-    if (labels[start.at]! > 0) continue;
-    const circle = settle(input, start);
-    if (!circle || !isParaboloid(input, circle)) continue;
-    count++;
-    fill(input, circle, labels, count);
-  }
+  const take = (starts: readonly DomeStart[]): void => {
+    for (const start of starts) {
+      if (labels[start.at]! > 0) continue;
+      const circle = settle(input, start);
+      if (!circle || !isParaboloid(input, circle)) continue;
+      if (fill(input, circle, labels, count + 1)) count++;
+    }
+  };
+  take(startsByOutline(input));
+  take(startsBySummits(input, labels));
   return { labels, count };
 }
 
@@ -219,11 +224,18 @@ function isParaboloid(input: DomeInput, circle: Circle): boolean {
   return dome.height > 0 && dome.rms < block.rms && (circle.leaning || dome.rms < cone.rms) && dome.rms < mostDeviation * dome.height + 2 * noiseM;
 }
 
-/** Gives the dome its pixels: flawed ground within the circle that no larger dome has taken. */
-function fill(input: DomeInput, circle: Circle, labels: Uint32Array, label: number): void {
+/** Gives the dome its pixels: flawed ground within the circle that no larger dome has taken. False, and nothing is taken, where little of it is left: it is the same dome. */
+function fill(input: DomeInput, circle: Circle, labels: Uint32Array, label: number): boolean {
   const marginM = 0.5 * Math.sqrt(input.pitchXM * input.pitchYM);
   const most = ((circle.radiusM + marginM) / circle.radiusM) ** 2;
+  const free: number[] = [];
+  let all = 0;
   forEachInside(input, circle, (i, rho2) => {
-    if (rho2 <= most && input.mask[i] === 1 && labels[i] === 0) labels[i] = label;
+    if (rho2 > most || input.mask[i] === 0) return;
+    all++;
+    if (labels[i] === 0) free.push(i);
   });
+  if (free.length < leastOwn * all) return false;
+  for (const i of free) labels[i] = label;
+  return true;
 }

@@ -35,6 +35,9 @@ const bridgePx = 6;
 const leastBridged = 60;
 /** Half-width of remains that are a fold's own flank, pixels. */
 const sliverHalfPx = 2;
+/** The foot of a fold goes on for so many of its widths to each side, below this part of its crest's height. */
+const footWidths = 2;
+const footPart = 0.16;
 /** Share of the border of remains that a fold must make up for them to belong to it. */
 const mostlyBordered = 0.62;
 
@@ -49,8 +52,7 @@ export function partRegions(input: PartInput): Parts {
     if (domes.labels[i]! > 0) ridges[i] = 0;
     else rest[i] = mask[i] === 1 && ridges[i] === 0 ? 1 : 0;
   }
-  giveBackFringes(domes.labels, rest, input);
-  giveBackSlivers(ridges, rest, input);
+  giveBackRemains(domes.labels, ridges, rest, input);
   bridgeFolds(ridges, rest, input);
   const blobs = partByPeaks({ ...input, mask: rest });
   blobs.count = peelParts({ ...input, labels: blobs.labels, count: blobs.count });
@@ -77,70 +79,82 @@ function ridgeGround(input: PartInput, withoutDomes: Uint8Array): Uint8Array {
     const at = nearest[i]!;
     const dx = ((i % columns) - (at % columns)) * pitchXM;
     const dy = (Math.floor(i / columns) - Math.floor(at / columns)) * pitchYM;
-    // What stands higher than the crest beside it belongs to something that leans on the fold.
     const away = Math.hypot(dx, dy);
-    if (rise[i]! > 1.5 * rise[at]! || away > halfWidths * widthM[at]! + pixelM) continue;
+    const halfM = halfWidths * widthM[at]!;
     // A fold's foot goes on beyond where it stops the current; without a current to follow, the fold ends where others do.
-    if (byHeight?.[i] === 1 && away > halfWidths * widthM[at]!) mask[i] = 0;
-    else ground[i] = 1;
+    if (byHeight?.[i] === 1 && away > halfM && (away <= halfM + pixelM || (away < footWidths * widthM[at]! && rise[i]! < footPart * rise[at]!))) mask[i] = 0;
+    // What stands higher than the crest beside it belongs to something that leans on the fold.
+    else if (rise[i]! <= 1.5 * rise[at]! && away <= halfM + pixelM) ground[i] = 1;
   }
   return ground;
 }
 
-/** The fringe of a dome that is no perfect circle belongs to the dome: remains that touch one and are nowhere wider than three pixels. Changes both. */
-function giveBackFringes(domes: Uint32Array, rest: Uint8Array, { columns, rows, minPixels }: PartInput): void {
-  const { labels, count, pixels } = labelComponents(rest, columns, rows, 8);
-  const distance2 = squaredDistance(rest, columns, rows, {});
-  const widest = new Float64Array(count + 1);
-  const touched = new Uint32Array(count + 1);
-  for (let i = 0; i < labels.length; i++) {
-    const label = labels[i]!;
-    if (label === 0) continue;
-    if (distance2[i]! > widest[label]!) widest[label] = distance2[i]!;
-    if (touched[label] !== 0) continue;
-    const c = i % columns;
-    touched[label] = (c > 0 ? domes[i - 1]! : 0) || (c + 1 < columns ? domes[i + 1]! : 0) || (domes[i - columns] ?? 0) || (domes[i + columns] ?? 0);
-  }
-  for (let i = 0; i < labels.length; i++) {
-    const label = labels[i]!;
-    if (label === 0 || touched[label] === 0 || (widest[label]! > sliverHalfPx ** 2 && pixels[label]! >= minPixels)) continue;
-    rest[i] = 0;
-    domes[i] = touched[label]!;
-  }
+/** What is known of one piece of ground that is neither dome nor crest. */
+interface Remains {
+  pixels: number;
+  /** Largest squared distance from its outline, pixels². */
+  widest2: number;
+  /** A dome that it touches, 0 for none. */
+  dome: number;
+  /** Edges of pixels on its outline, those along a fold, and the mean rise of the fold there, metres. */
+  border: number;
+  alongFold: number;
+  foldM: number;
+  peakM: number;
 }
 
 /**
- * Remains along a fold belong to it: what is nowhere wider than three pixels, what is smaller than the smallest flaw, and what is as low as the fold and bordered
- * mostly by it (the gaps where folds meet). Changes both masks.
+ * Gives remains back to what they are part of. The fringe of a dome that is no perfect circle belongs to the dome: what touches one and is nowhere wider than three
+ * pixels. So do remains along a fold belong to it: what is nowhere wider, what is smaller than the smallest flaw, and what is as low as the fold
+ * and bordered mostly by it (the gaps where folds meet). What is smaller than the smallest flaw and touches neither is left of a fold's foot, and no flaw. Changes all three, and `mask`.
  */
-function giveBackSlivers(ridges: Uint8Array, rest: Uint8Array, { columns, rows, minPixels, rise }: PartInput): void {
+function giveBackRemains(domes: Uint32Array, ridges: Uint8Array, rest: Uint8Array, input: PartInput): void {
+  const { columns, rows, minPixels, mask } = input;
   const { labels, count, pixels } = labelComponents(rest, columns, rows, 8);
-  const distance2 = squaredDistance(rest, columns, rows, {});
-  const [widest, peak, foldSum, contact, border] = Array.from({ length: 5 }, () => new Float64Array(count + 1)) as [Float64Array, Float64Array, Float64Array, Float64Array, Float64Array];
-  for (let i = 0; i < labels.length; i++) {
-    const label = labels[i]!;
-    if (label === 0) continue;
-    if (distance2[i]! > widest[label]!) widest[label] = distance2[i]!;
-    if (rise[i]! > peak[label]!) peak[label] = rise[i]!;
-    const c = i % columns;
-    for (const j of [c > 0 ? i - 1 : -1, c + 1 < columns ? i + 1 : -1, i - columns, i + columns]) {
-      if (j < 0 || j >= labels.length || labels[j] === label) continue;
-      border[label]!++;
-      if (ridges[j] !== 1) continue;
-      contact[label]!++;
-      foldSum[label]! += rise[j]!;
-    }
-  }
-  const joins = Uint8Array.from(labels.length > 0 ? border : [], (edges, label) => {
-    if (label === 0 || contact[label] === 0) return 0;
-    if (widest[label]! <= sliverHalfPx ** 2 || pixels[label]! < minPixels) return 1;
-    return contact[label]! > mostlyBordered * edges && peak[label]! < 1.4 * (foldSum[label]! / contact[label]!) ? 1 : 0;
+  if (count === 0) return;
+  const pieces = measureRemains(labels, count, pixels, domes, ridges, input);
+  const [toDome, toFold, away] = [1, 2, 3];
+  const goes = Uint8Array.from(pieces, (piece) => {
+    const narrow = piece.widest2 <= sliverHalfPx ** 2 || piece.pixels < minPixels;
+    if (piece.dome > 0 && narrow) return toDome;
+    if (piece.alongFold > 0 && narrow) return toFold;
+    if (piece.alongFold > mostlyBordered * piece.border && piece.peakM < 1.4 * piece.foldM) return toFold;
+    return piece.pixels < minPixels ? away : 0;
   });
   for (let i = 0; i < labels.length; i++) {
-    if (labels[i] === 0 || joins[labels[i]!] === 0) continue;
+    const label = labels[i]!;
+    if (label === 0 || goes[label] === 0) continue;
     rest[i] = 0;
-    ridges[i] = 1;
+    if (goes[label] === toDome) domes[i] = pieces[label]!.dome;
+    else if (goes[label] === toFold) ridges[i] = 1;
+    else mask[i] = 0;
   }
+}
+
+function measureRemains(labels: Uint32Array, count: number, pixels: Uint32Array, domes: Uint32Array, ridges: Uint8Array, { columns, rows, rise }: PartInput): Remains[] {
+  const pieces = Array.from({ length: count + 1 }, (_, label): Remains => ({ pixels: pixels[label]!, widest2: 0, dome: 0, border: 0, alongFold: 0, foldM: 0, peakM: 0 }));
+  const inside = new Uint8Array(labels.length);
+  for (let i = 0; i < labels.length; i++) if (labels[i]! > 0) inside[i] = 1;
+  const distance2 = squaredDistance(inside, columns, rows, {});
+  for (let i = 0; i < labels.length; i++) {
+    if (labels[i] === 0) continue;
+    const piece = pieces[labels[i]!]!;
+    if (distance2[i]! > piece.widest2) piece.widest2 = distance2[i]!;
+    if (rise[i]! > piece.peakM) piece.peakM = rise[i]!;
+    // Inside a piece there is no border.
+    if (distance2[i]! > 1) continue;
+    const c = i % columns;
+    for (const j of [c > 0 ? i - 1 : -1, c + 1 < columns ? i + 1 : -1, i - columns, i + columns]) {
+      if (j < 0 || j >= labels.length || labels[j] === labels[i]) continue;
+      piece.border++;
+      if (piece.dome === 0) piece.dome = domes[j]!;
+      if (ridges[j] !== 1) continue;
+      piece.alongFold++;
+      piece.foldM += rise[j]!;
+    }
+  }
+  for (const piece of pieces) piece.foldM /= piece.alongFold;
+  return pieces;
 }
 
 /**
