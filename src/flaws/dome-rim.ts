@@ -27,16 +27,16 @@ export function edgeAlong({ columns, rows, pitchXM, pitchYM, mask }: DomeInput, 
 
 /**
  * Where the height breaks its slope along a ray, between two distances. A paraboloid h(1 − ρ²) falls with 2h/R at its rim and no longer beyond it, whatever
- * smooth thing it stands on; what breaks by less than 0.4 of that is none. Of several the one with the largest part counts. `heightM` is the height over the rim.
+ * smooth thing it stands on; what breaks by less than 0.4 of that is none. Of several the one with the largest part counts. `heightM` is the height over the rim, `stepPx` how finely is looked.
  */
-export function breakAlong(input: DomeInput, { xM, yM }: Point, heightM: number, angle: number, fromM: number, toM: number): Point | undefined {
+export function breakAlong(input: DomeInput, { xM, yM }: Point, heightM: number, angle: number, fromM: number, toM: number, stepPx = 0.5): Point | undefined {
   const [ux, uy] = [Math.cos(angle), Math.sin(angle)];
   const pixelM = Math.hypot(ux * input.pitchXM, uy * input.pitchYM);
   const height = (at: number): number => heightAt(input, xM + at * ux, yM + at * uy);
   const armM = 2 * pixelM;
   let most = leastBreak * 2 * heightM * armM;
   let rim = Number.NaN;
-  for (let at = fromM; at <= toM; at += 0.5 * pixelM) {
+  for (let at = fromM; at <= toM; at += stepPx * pixelM) {
     const part = at * (height(at - armM) - 2 * height(at) + height(at + armM));
     if (part > most) {
       most = part;

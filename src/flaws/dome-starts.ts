@@ -18,9 +18,9 @@ export interface DomeStart {
 /** A dome of a smaller radius has too few pixels for its outline to tell a circle, pixels. */
 const leastRadiusPx = 3;
 /** Directions in which the ground about a summit is followed. */
-const directions = 24;
+const directions = 16;
 /** Nor is a dome about a summit sought beyond this, pixels: larger ones are seldom run through on all sides. */
-const mostRadiusPx = 30;
+const mostRadiusPx = 24;
 /** Nor about one lower than this many standard deviations of the noise: a break of slope must stand out of it. */
 const leastSummit = 60;
 /** A cap cut off by the map's border is at least this wide and this deep, pixels. */
@@ -56,6 +56,8 @@ export function startsBySummits(input: DomeInput, taken: Uint32Array): DomeStart
   const pixelM = Math.max(pitchXM, pitchYM);
   const starts: DomeStart[] = [];
   for (const at of maxima(rise, columns, rows, (value, i) => mask[i] === 1 && taken[i] === 0 && value > leastSummit * noiseM)) {
+    // Noise makes many a summit on a broad top: one within two pixels is enough.
+    if (!isHighestWithin(rise, columns, rows, at, 2)) continue;
     const centre = startAt(input, at, 0);
     const found = circleThrough(rimAbout(input, centre, rise[at]!, mostRadiusPx * pixelM));
     if (found && found.radiusM >= leastRadiusPx * pixelM && Math.hypot(found.xM - centre.xM, found.yM - centre.yM) < found.radiusM) starts.push({ at, breaks: true, ...found });
@@ -68,10 +70,10 @@ function rimAbout(input: DomeInput, centre: Point, heightM: number, mostM: numbe
   const pixelM = Math.max(input.pitchXM, input.pitchYM);
   const points: { point: Point; awayM: number }[] = [];
   for (let k = 0; k < directions; k++) {
-    const point = breakAlong(input, centre, heightM / 2, (2 * Math.PI * k) / directions, 2 * pixelM, mostM);
+    const point = breakAlong(input, centre, heightM / 2, (2 * Math.PI * k) / directions, 2 * pixelM, mostM, 1);
     if (point) points.push({ point, awayM: Math.hypot(point.xM - centre.xM, point.yM - centre.yM) });
   }
-  if (points.length < directions / 3) return [];
+  if (points.length < directions / 2) return [];
   points.sort((a, b) => a.awayM - b.awayM);
   const middle = points[points.length >> 1]!.awayM;
   return points.filter(({ awayM }) => awayM > middle / 2 && awayM < 1.5 * middle).map(({ point }) => point);
@@ -104,6 +106,15 @@ function capsAtBorder(input: DomeInput): DomeStart[] {
   along(rows, pitchYM, pitchXM, columns, (k, depth) => k * columns + depth, (a, b) => [b, a]);
   along(rows, pitchYM, pitchXM, columns, (k, depth) => k * columns + columns - 1 - depth, (a, b) => [columns * pitchXM - b, a]);
   return starts;
+}
+
+function isHighestWithin(values: Float32Array, columns: number, rows: number, at: number, half: number): boolean {
+  const c = at % columns;
+  const r = (at - c) / columns;
+  for (let y = Math.max(0, r - half); y <= Math.min(rows - 1, r + half); y++) {
+    for (let x = Math.max(0, c - half); x <= Math.min(columns - 1, c + half); x++) if (values[y * columns + x]! > values[at]!) return false;
+  }
+  return true;
 }
 
 /** Pixels off the border that none of their eight neighbours exceeds. */

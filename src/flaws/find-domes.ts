@@ -92,11 +92,10 @@ function settle(input: DomeInput, start: DomeStart): Circle | undefined {
   let circle: Ring = start;
   // Most candidates lie on folds and show it at once.
   const least = leastFreeIfHigh * onMap(input, circle).share * directions;
-  if (!breaks) {
-    let near = 0;
-    for (let k = 0; k < directions; k += 4) if (edgeAlong(input, circle, circle.radiusM, angles[k]!, straysPx[0])) near++;
-    if (near < least / 4 - 1) return undefined;
-  }
+  let near = 0;
+  const firstM = breaks ? heightOverRim(input, circle) : 0;
+  for (let k = 0; k < directions; k += 4) if (breaks ? breakNear(input, circle, firstM, angles[k]!, straysPx[0]) : edgeAlong(input, circle, circle.radiusM, angles[k]!, straysPx[0])) near++;
+  if (near < (breaks ? leastRim * directions : least) / 4 - 1) return undefined;
   for (const strayed of straysPx) {
     const { radiusM } = circle;
     const heightM = breaks ? heightOverRim(input, circle) : 0;

@@ -111,7 +111,9 @@ export function findRaised(input: RaisedInput): Raised {
  */
 function decideSaturated(mask: Uint8Array, undecided: Uint8Array, columns: number, rows: number): void {
   if (!undecided.includes(1)) return;
-  const lost = withoutSpecks(mask.map((value, i) => value & (1 - undecided[i]!)), columns, rows, leastLost);
+  const decided = new Uint8Array(mask.length);
+  for (let i = 0; i < mask.length; i++) decided[i] = mask[i]! & (1 - undecided[i]!);
+  const lost = withoutSpecks(decided, columns, rows, leastLost);
   const near = dilate(lost, columns, rows, reachPx);
   for (let i = 0; i < mask.length; i++) if (undecided[i] === 1 && near[i] === 1) mask[i] = 0;
 }

@@ -44,7 +44,8 @@ export function findRidges(input: RidgeInput): Ridges {
     for (let c = 0; c < columns; c++) {
       const i = r * columns + c;
       if (mask[i] === 0) continue;
-      const here = rise[i]!;
+      // Most flawed ground is slope in every direction: no crest, whichever way lies across.
+      if (!isCrestSomeWay(rise, columns, i)) continue;
       let across = Number.POSITIVE_INFINITY;
       let acrossAt = 0;
       let along = 0;
@@ -57,15 +58,25 @@ export function findRidges(input: RidgeInput): Ridges {
         if (sum > along) along = sum;
       }
       if (!(across < widestM && along >= longerThanWide * across)) continue;
-      const [dc, dr] = directions[acrossAt]!;
-      const step = dr * columns + dc;
-      const inside = (at: number): number => (at >= 0 && at < rise.length ? rise[at]! : Number.NEGATIVE_INFINITY);
-      if (here < inside(i + step) || here < inside(i - step)) continue;
+      if (!isCrestAlong(rise, columns, i, acrossAt)) continue;
       crest[i] = 1;
       widthM[i] = across;
     }
   }
   return withoutShort(crest, widthM, input);
+}
+
+/** Neither neighbour in a direction is higher; beyond the map nothing is. */
+function isCrestAlong(rise: Float32Array, columns: number, i: number, k: number): boolean {
+  const [dc, dr] = directions[k]!;
+  const step = dr * columns + dc;
+  const here = rise[i]!;
+  return !(i + step >= 0 && i + step < rise.length && here < rise[i + step]!) && !(i - step >= 0 && i - step < rise.length && here < rise[i - step]!);
+}
+
+function isCrestSomeWay(rise: Float32Array, columns: number, i: number): boolean {
+  for (let k = 0; k < directions.length; k++) if (isCrestAlong(rise, columns, i, k)) return true;
+  return false;
 }
 
 interface Reach {

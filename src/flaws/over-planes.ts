@@ -35,7 +35,8 @@ export interface OverPlanes {
 export function overPlanes(height: HeightGround, columns: number, rows: number, floor: Uint8Array | undefined, terraceMinPixels: number, layerM: number): OverPlanes {
   const heights = height.levelled.data;
   const { plane } = height;
-  const off = heights.map((value, i) => value - plane[i]!);
+  const off = new Float32Array(heights.length);
+  for (let i = 0; i < off.length; i++) off[i] = heights[i]! - plane[i]!;
   const centre = mostCommon(subSample(off, columns, rows, Math.max(1, Math.floor(columns / 200))));
   const reach = Math.max(onPlaneM, 4 * height.noiseM);
   const onPlane = new Uint8Array(off.length);
@@ -48,8 +49,11 @@ export function overPlanes(height: HeightGround, columns: number, rows: number, 
   const zero = Number.isNaN(centre) ? 0 : centre;
   const lent = new Float32Array(nearest.length);
   for (let i = 0; i < lent.length; i++) lent[i] = nearest[i]! < 0 ? 0 : plane[nearest[i]!]!;
-  if (floor) lendFloorPlanes(lent, heights.map((value) => value - zero), onPlane, core, floor, plane, columns, rows, reach);
-  return { over: heights.map((value, i) => value - zero - lent[i]!), onPlane };
+  const over = new Float32Array(heights.length);
+  for (let i = 0; i < over.length; i++) over[i] = heights[i]! - zero;
+  if (floor) lendFloorPlanes(lent, over, onPlane, core, floor, plane, columns, rows, reach);
+  for (let i = 0; i < over.length; i++) over[i]! -= lent[i]!;
+  return { over, onPlane };
 }
 
 /** 1 on ground well inside a terrace: no place within two pixels lies on another plane or on none. */
@@ -75,7 +79,7 @@ function cores(onPlane: Uint8Array, plane: Float32Array, columns: number, rows: 
  * may be a far lower terrace. Changes `lent` and `onPlane`.
  */
 function lendFloorPlanes(lent: Float32Array, heights: Float32Array, onPlane: Uint8Array, core: Uint8Array, floor: Uint8Array, plane: Float32Array, columns: number, rows: number, reach: number): void {
-  const dark = core.map((value, i) => value & floor[i]!);
+  const dark = bothOf(core, floor);
   if (!dark.includes(1)) return;
   const nearest = nearestAdmitted(dark, columns, rows);
   for (let i = 0; i < lent.length; i++) {
@@ -88,10 +92,18 @@ function lendFloorPlanes(lent: Float32Array, heights: Float32Array, onPlane: Uin
   }
 }
 
+function bothOf(a: Uint8Array, b: Uint8Array): Uint8Array {
+  const both = new Uint8Array(a.length);
+  for (let i = 0; i < both.length; i++) both[i] = a[i]! & b[i]!;
+  return both;
+}
+
 function dropSmallPatches(onPlane: Uint8Array, floor: Uint8Array, plane: Float32Array, columns: number, rows: number, least: number, layerM: number): void {
-  const { labels, pixels, count } = labelComponents(onPlane.map((value, i) => value & floor[i]!), columns, rows, 8);
+  const { labels, pixels, count } = labelComponents(bothOf(onPlane, floor), columns, rows, 8);
   if (!pixels.some((size, label) => label > 0 && size < least)) return;
-  const nearest = nearestAdmitted(onPlane.map((value, i) => value & (1 - floor[i]!)), columns, rows);
+  const lit = new Uint8Array(onPlane.length);
+  for (let i = 0; i < lit.length; i++) lit[i] = onPlane[i]! & (1 - floor[i]!);
+  const nearest = nearestAdmitted(lit, columns, rows);
   const above = new Float64Array(count + 1);
   for (let i = 0; i < labels.length; i++) {
     const label = labels[i]!;

@@ -46,7 +46,9 @@ export function partRegions(input: PartInput): Parts {
   const { columns, rows, mask } = input;
   const domes = findDomes(input);
   // A fold ends for the eye where it runs under a dome, and a dome has no crest.
-  const ridges = ridgeGround(input, mask.map((value, i) => (domes.labels[i]! > 0 ? 0 : value)));
+  const withoutDomes = new Uint8Array(mask.length);
+  for (let i = 0; i < mask.length; i++) withoutDomes[i] = domes.labels[i]! > 0 ? 0 : mask[i]!;
+  const ridges = ridgeGround(input, withoutDomes);
   const rest = new Uint8Array(mask.length);
   for (let i = 0; i < rest.length; i++) {
     if (domes.labels[i]! > 0) ridges[i] = 0;
