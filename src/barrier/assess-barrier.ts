@@ -108,5 +108,9 @@ export function assessBarrier(
 }
 
 function rebased(terraces: Terraces, origin: number): Int8Array {
-  return terraces.steps.map((step) => (step === unknownStep ? unknownStep : Math.max(-127, Math.min(127, step - origin))));
+  // By step + 128.
+  const moved = Int8Array.from({ length: 256 }, (_, place) => (place - 128 === unknownStep ? unknownStep : Math.max(-127, Math.min(127, place - 128 - origin))));
+  const steps = terraces.steps.slice();
+  for (let i = 0; i < steps.length; i++) steps[i] = moved[steps[i]! + 128]!;
+  return steps;
 }

@@ -48,7 +48,8 @@ export function settleTerraces(input: SettleInput): Int16Array {
   const every = Math.max(1, Math.floor(Math.min(columns, rows) / enoughSide));
   const grid = { columns, rows, pitchXM: 1, pitchYM: 1 };
   const coarse = thinGrid(grid, every);
-  const at = (i: number): number => Math.min(coarse.rows - 1, Math.floor(Math.floor(i / columns) / every)) * coarse.columns + Math.min(coarse.columns - 1, Math.floor((i % columns) / every));
+  const columnAt = Uint32Array.from({ length: columns }, (_, c) => Math.min(coarse.columns - 1, Math.floor(c / every)));
+  const rowStart = (r: number): number => Math.min(coarse.rows - 1, Math.floor(r / every)) * coarse.columns;
   const thinLog = thin(log10, grid, every);
   const { labels, medians, rungs } = stretches({ ...input, levelled: thin(input.levelled, grid, every), log10: thinLog, measured: thin(measured, grid, every), columns: coarse.columns });
 
@@ -65,27 +66,39 @@ export function settleTerraces(input: SettleInput): Int16Array {
   const around = boxMean(settledLog, coarse.columns, coarse.rows, aroundPx);
   // A few odd pixels inside a stretch are scatter too.
   const odd = new Uint8Array(log10.length);
-  const own = new Uint8Array(log10.length);
-  for (let i = 0; i < odd.length; i++) {
-    if (measured[i] === 0) continue;
-    const k = at(i);
-    if (settled[k] === 1 && Math.abs(log10[i]! - medians[labels[k]!]!) < reach) own[i] = 1;
-    else odd[i] = 1;
-  }
+  // NaN where the pixel beside is settled on no stretch, so that the comparison fails.
+  const levels = new Float64Array(labels.length);
+  for (let k = 0; k < levels.length; k++) levels[k] = settled[k] === 1 ? medians[labels[k]!]! : Number.NaN;
+  for (let r = 0; r < rows; r++) markOdd(log10, measured, r * columns, levels, rowStart(r), columnAt, reach, odd);
   const patches = labelComponents(odd, columns, rows, 8);
   const out = new Int16Array(log10.length);
-  for (let i = 0; i < out.length; i++) {
-    if (measured[i] === 0) continue;
-    const from = nearest[at(i)]!;
+  // Most pixels are not odd: they take the rung of the nearest stretch, whose pixel lies beside them.
+  const rungAt = new Int16Array(labels.length);
+  for (let k = 0; k < rungAt.length; k++) rungAt[k] = nearest[k]! < 0 ? 0 : rungs[labels[nearest[k]!]!]!;
+  for (let r = 0; r < rows; r++) takeRungs(rungAt, rowStart(r), columnAt, measured, r * columns, out);
+  for (let i = odd.indexOf(1); i >= 0; i = odd.indexOf(1, i + 1)) {
+    const from = nearest[rowStart(Math.floor(i / columns)) + columnAt[i % columns]!]!;
     if (from < 0) {
       out[i] = place(log10[i]!);
       continue;
     }
-    const off = own[i] === 1 ? 0 : (around[from]! - log10[i]!) / stepDecades;
-    const scatter = patches.labels[i]! > 0 && patches.pixels[patches.labels[i]!]! < leastOdd && Math.abs(off) < mostScatter;
-    out[i] = rungs[labels[from]!]! + (scatter ? 0 : Math.round(off));
+    const off = (around[from]! - log10[i]!) / stepDecades;
+    const scatter = patches.pixels[patches.labels[i]!]! < leastOdd && Math.abs(off) < mostScatter;
+    if (!scatter) out[i]! += Math.round(off);
   }
   return out;
+}
+
+/** Marks the measured pixels of a row that lie off the level of the stretch that the pixel beside them, of the coarser map, belongs to. */
+function markOdd(log10: Float32Array, measured: Uint8Array, start: number, levels: Float64Array, coarse: number, columnAt: Uint32Array, reach: number, odd: Uint8Array): void {
+  for (let c = 0; c < columnAt.length; c++) {
+    const i = start + c;
+    if (measured[i] !== 0 && !(Math.abs(log10[i]! - levels[coarse + columnAt[c]!]!) < reach)) odd[i] = 1;
+  }
+}
+
+function takeRungs(rungAt: Int16Array, coarse: number, columnAt: Uint32Array, measured: Uint8Array, start: number, out: Int16Array): void {
+  for (let c = 0; c < columnAt.length; c++) if (measured[start + c] !== 0) out[start + c] = rungAt[coarse + columnAt[c]!]!;
 }
 
 /** Stretches of terrace with their median log current (NaN for those that tell nothing) and rung. */

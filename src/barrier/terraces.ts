@@ -7,7 +7,7 @@ import type { LadderHeight } from '../ground/ladder.ts';
 import { settleTerraces } from './settle-terraces.ts';
 import { layersPerGap } from './layers-per-gap.ts';
 import { median } from '../stats/median.ts';
-import { scaledMad } from '../stats/mad.ts';
+import { madScale, medianAbsoluteDeviation } from '../stats/mad.ts';
 
 /** Unknown place on the ladder: no current here, or a flaw. */
 export const unknownStep = -128;
@@ -43,13 +43,17 @@ export function findTerraces(current: CurrentGround, ground: (index: number) => 
   const saturated = current.saturated.data;
   const floor = current.floor.data;
   const quantified = Math.log10(current.floorA * quantifiedOverFloor);
-  const ladder = measureLadder(log10, (i) => ground(i) && saturated[i] === 0 && log10[i]! >= quantified, height);
+  // 0 beside the ground, 1 on ground, 2 where its current is neither saturated nor too near the floor.
+  const admitted = new Uint8Array(log10.length);
+  for (let i = 0; i < admitted.length; i++) if (ground(i)) admitted[i] = saturated[i] === 0 && log10[i]! >= quantified ? 2 : 1;
+  const onGround = (i: number): boolean => admitted[i] !== 0;
+  const ladder = measureLadder(log10, (i) => admitted[i] === 2, height);
   const measured = ladder.stepDecades !== undefined;
   const modelStepDecades = fallback.from === 'model' ? fallback.stepDecades : undefined;
-  const heightLayers = measured && height ? heightPerGap(height.levelled, log10, height.columns, ladder.peaks, ladder.stepDecades!, ground) / height.layerM : undefined;
+  const heightLayers = measured && height ? heightPerGap(height.levelled, log10, height.columns, ladder.peaks, ladder.stepDecades!, onGround) / height.layerM : undefined;
   const perGap = measured ? layersPerGap({ stepDecades: ladder.stepDecades!, modelStepDecades, heightLayers }) : 1;
   const stepDecades = measured ? ladder.stepDecades! / perGap : fallback.stepDecades;
-  const centres = rungCentres(ladder.peaks.map((peak) => ({ log10: peak.log10, rung: peak.rung * perGap })), log10, ground);
+  const centres = rungCentres(ladder.peaks.map((peak) => ({ log10: peak.log10, rung: peak.rung * perGap })), log10, onGround);
   const place = placer(centres, stepDecades);
   const thinnest = current.saturationA === undefined ? -127 : Math.max(-127, firstBeyond(centres, stepDecades, Math.log10(current.saturationA), -1));
   const thickest = Math.min(127, firstBeyond(centres, stepDecades, Math.log10(current.floorA), 1));
@@ -57,16 +61,15 @@ export function findTerraces(current: CurrentGround, ground: (index: number) => 
   const steps = new Int8Array(log10.length).fill(unknownStep);
   const exact = new Uint8Array(log10.length);
   for (let i = 0; i < steps.length; i++) {
-    const value = log10[i]!;
-    if (Number.isNaN(value) || !ground(i)) continue;
+    if (admitted[i] === 0 || log10[i] !== log10[i]) continue;
     if (saturated[i] === 0 && floor[i] === 0) exact[i] = 1;
     steps[i] = saturated[i] === 1 ? thinnest : thickest;
   }
   const settled = height && settleTerraces({ ...height, log10, measured: exact, stepDecades, place });
-  for (let i = 0; i < steps.length; i++) {
-    // A single noisy pixel must not leave the ladder beyond its censored ends.
-    if (exact[i] === 1) steps[i] = Math.min(thickest, Math.max(thinnest, settled ? settled[i]! : place(log10[i]!)));
-  }
+  // A single noisy pixel must not leave the ladder beyond its censored ends.
+  const within = (rung: number): number => Math.min(thickest, Math.max(thinnest, rung));
+  if (settled) for (let i = 0; i < steps.length; i++) if (exact[i] === 1) steps[i] = within(settled[i]!);
+  if (!settled) for (let i = 0; i < steps.length; i++) if (exact[i] === 1) steps[i] = within(place(log10[i]!));
   return {
     steps,
     stepDecades,
@@ -151,11 +154,12 @@ function summarise(steps: Int8Array, current: CurrentGround, thinnest: number, t
     const censored = known.length < 0.5 * total;
     const bound = !censored ? 'exact' : step === thinnest ? 'at-most' : step === thickest ? 'at-least' : 'exact';
     const fallback = bound === 'at-most' ? Math.log10(current.saturationA ?? Number.NaN) : Math.log10(current.floorA);
+    const { median: middle, mad } = medianAbsoluteDeviation(known);
     return [{
       step,
       pixels: total,
-      medianLog10: censored ? fallback : median(known),
-      scatterDecades: known.length > 1 ? scaledMad(known) : 0,
+      medianLog10: censored ? fallback : middle,
+      scatterDecades: known.length > 1 ? madScale * mad : 0,
       bound,
     } satisfies MeasuredRung];
   });

@@ -49,24 +49,26 @@ export function thicknessMap(current: CurrentGround, terraces: Terraces, origin:
   const scanReference = scanTable && anchored ? scanTable.log10Density(anchored.thicknessM) : Number.NaN;
   const deviceReference = deviceTable && anchored ? deviceTable.log10Density(anchored.thicknessM) : Number.NaN;
 
+  const known = { ...(layers ? { layers } : {}), ...(thickness ? { thickness } : {}), log10Relative: relative };
+  // Without a ladder there are no whole layers to go by: then every pixel speaks for itself.
+  if (withinTerrace === 'contact' && terraces.from !== 'assumed' && !Number.isNaN(question.referenceLog10)) {
+    const ofStep = new Float64Array(256);
+    for (const rung of question.rungs) ofStep[rung.step + origin + 128] = byStep(rung.step);
+    fillByStep(terraces.steps, ofStep, relative);
+    if (layers) fillByStep(terraces.steps, layersOf, layers);
+    if (thickness && anchor) fillByStep(terraces.steps, Float64Array.from(layersOf, (whole) => whole * anchor.layerM), thickness);
+    return known;
+  }
   for (let i = 0; i < count; i++) {
     const step = terraces.steps[i]!;
     if (step === unknownStep) continue;
-    const k = step - origin;
     if (Number.isNaN(question.referenceLog10)) {
       // No reference: all that is known is on which side of the amplifier's range the ground lies.
       relative[i] = current.saturated.data[i] === 1 ? Number.POSITIVE_INFINITY : Number.NEGATIVE_INFINITY;
       continue;
     }
-    const whole = layersOf[step + 128]!;
-    if (layers) layers[i] = whole;
+    if (layers) layers[i] = layersOf[step + 128]!;
     const difference = log10[i]! - question.referenceLog10;
-    // Without a ladder there are no whole layers to go by: then every pixel speaks for itself.
-    if (withinTerrace === 'contact' && terraces.from !== 'assumed') {
-      relative[i] = byStep(k);
-      if (thickness && anchor) thickness[i] = whole * anchor.layerM;
-      continue;
-    }
     if (!scanTable) {
       relative[i] = difference;
       continue;
@@ -75,20 +77,18 @@ export function thicknessMap(current: CurrentGround, terraces: Terraces, origin:
     if (thickness) thickness[i] = own;
     relative[i] = deviceTable ? deviceTable.log10Density(own) - deviceReference : difference;
   }
-  return { ...(layers ? { layers } : {}), ...(thickness ? { thickness } : {}), log10Relative: relative };
+  return known;
+}
+
+/** Sets every pixel of known step to its step's value; `values` by step + 128. */
+function fillByStep(steps: Int8Array, values: Float64Array | Uint8Array, into: Float32Array | Uint8Array): void {
+  for (let i = 0; i < into.length; i++) if (steps[i] !== unknownStep) into[i] = values[steps[i]! + 128]!;
 }
 
 /** Relative density of a whole terrace k layers from the reference. */
 function relativeByStep(question: MapQuestion, sameBias: boolean): (k: number) => number {
   const { anchor, anchored, deviceBiasV } = question;
-  const cache = new Map<number, number>();
   const measured = new Map(question.rungs.map((rung) => [rung.step, rung.medianLog10 - question.referenceLog10]));
   const lnAt = (layers: number): number => anchor!.model.lnDensity({ ...anchor!.material, thicknessM: layers * anchor!.layerM }, anchor!.acrossV(deviceBiasV!));
-  return (k) => {
-    const known = cache.get(k);
-    if (known !== undefined) return known;
-    const value = sameBias || !anchored ? (k === 0 ? 0 : measured.get(k) ?? Number.NaN) : (lnAt(layersAt(anchored.layers, k)) - lnAt(anchored.layers)) / Math.LN10;
-    cache.set(k, value);
-    return value;
-  };
+  return (k) => (sameBias || !anchored ? (k === 0 ? 0 : measured.get(k) ?? Number.NaN) : (lnAt(layersAt(anchored.layers, k)) - lnAt(anchored.layers)) / Math.LN10);
 }

@@ -26,17 +26,25 @@ const least = { px: 0.5, errors: 3 } as const;
  * @returns undefined where the maps do not show enough of the same flaws.
  */
 export function shiftAgainstHeight(levelled: Float32Array, log10: Float32Array, floorLog: number, columns: number, rows: number): Shift | undefined {
-  const raised = (i: number): number => share((levelled[i]! - blocking.from) / (blocking.to - blocking.from));
-  const lost = (i: number): number => 1 - share((log10[i]! - floorLog) / blockedDecades);
+  const raised = (start: number, row: Float64Array): void => {
+    for (let c = 0; c < row.length; c++) row[c] = share((levelled[start + c]! - blocking.from) / (blocking.to - blocking.from));
+  };
+  const lost = (start: number, row: Float64Array): void => {
+    for (let c = 0; c < row.length; c++) row[c] = 1 - share((log10[start + c]! - floorLog) / blockedDecades);
+  };
   return shiftBetween(raised, lost, columns, rows);
 }
 
 /** Shift of one map against another of the same quantity, as return against forward scan. */
 export function shiftBetweenDirections(reference: Float32Array, moved: Float32Array, columns: number, rows: number): Shift | undefined {
-  return shiftBetween((i) => reference[i]!, (i) => moved[i]!, columns, rows);
+  const plain = (map: Float32Array): RowReader => (start, row) => row.set(map.subarray(start, start + row.length));
+  return shiftBetween(plain(reference), plain(moved), columns, rows);
 }
 
-function shiftBetween(reference: (i: number) => number, moved: (i: number) => number, columns: number, rows: number): Shift | undefined {
+/** Fills a row with what is compared, from the pixel `start` on. */
+type RowReader = (start: number, row: Float64Array) => void;
+
+function shiftBetween(reference: RowReader, moved: RowReader, columns: number, rows: number): Shift | undefined {
   const step = Math.max(1, Math.ceil(Math.max(columns, rows) / comparedSide));
   const [across, down] = [Math.floor(columns / step), Math.floor(rows / step)];
   const found = registerMaps(smoothed(reference, columns, across, down, step), smoothed(moved, columns, across, down, step), across, down);
@@ -65,18 +73,26 @@ function share(value: number): number {
 }
 
 /** Means over squares of `step`, then over three by three: an edge is as soft as a registration needs. NaN spreads. */
-function smoothed(value: (i: number) => number, columns: number, across: number, down: number, step: number): Float32Array {
+function smoothed(read: RowReader, columns: number, across: number, down: number, step: number): Float32Array {
   const means = new Float32Array(across * down);
+  const row = new Float64Array(across * step);
+  const sums = new Float64Array(across);
   for (let v = 0; v < down; v++) {
-    for (let u = 0; u < across; u++) {
-      let sum = 0;
-      for (let y = 0; y < step; y++) for (let x = 0; x < step; x++) sum += value((v * step + y) * columns + u * step + x);
-      means[v * across + u] = sum / (step * step);
+    sums.fill(0);
+    for (let y = 0; y < step; y++) {
+      read((v * step + y) * columns, row);
+      addGroups(row, step, sums);
     }
+    for (let u = 0; u < across; u++) means[v * across + u] = sums[u]! / (step * step);
   }
   const rowMeans = means.slice();
   for (let i = 1; i + 1 < means.length; i++) rowMeans[i] = (means[i - 1]! + means[i]! + means[i + 1]!) / 3;
   const out = rowMeans.slice();
   for (let i = across; i + across < out.length; i++) out[i] = (rowMeans[i - across]! + rowMeans[i]! + rowMeans[i + across]!) / 3;
   return out;
+}
+
+/** Adds the values of each `step` neighbours to the sum of their group, one after the other. */
+function addGroups(row: Float64Array, step: number, sums: Float64Array): void {
+  for (let u = 0, at = 0; u < sums.length; u++) for (let x = 0; x < step; x++) sums[u]! += row[at++]!;
 }

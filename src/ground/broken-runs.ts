@@ -47,6 +47,8 @@ function markRow(values: Float32Array, marks: Uint8Array, columns: number, rows:
   let last = 0;
   let agreeing = 0;
   for (let c = 0; c <= columns; c++) {
+    // Outside a run nothing happens at pixels that agree with both lines beside them, which are nearly all.
+    if (start < 0 && r > 0 && r + 1 < rows) c = firstUnsettled(values, columns, r * columns + c, (r + 1) * columns, 6 * rule.noise) - r * columns;
     let s = c < columns ? breakSign(values, columns, rows, r, c, rule.noise) : 0;
     if (s === 1 && rule.only === 'below') s = 0;
     if (start >= 0 && s === sign) {
@@ -65,6 +67,15 @@ function markRow(values: Float32Array, marks: Uint8Array, columns: number, rows:
     last = c;
     agreeing = 0;
   }
+}
+
+/** The first pixel from `i` on that differs from the line before or after by more than `least`, or where one of the three is missing; `end` without any. */
+function firstUnsettled(values: Float32Array, columns: number, i: number, end: number, least: number): number {
+  for (; i < end; i++) {
+    const value = values[i]!;
+    if (!(Math.abs(value - values[i - columns]!) <= least && Math.abs(value - values[i + columns]!) <= least)) return i;
+  }
+  return end;
 }
 
 /** A run goes on at its ends where the lines around it disagree too much to tell, as beside a terrace, and the line itself goes on as it was. */
@@ -155,7 +166,7 @@ export function markSpikes(values: Float32Array, marks: Uint8Array, columns: num
  */
 export function fillFromNeighbours(values: Float32Array, marks: Uint8Array, columns: number, rows: number, tolerance: number, markedTolerance = tolerance): Uint8Array {
   const filled = new Uint8Array(values.length);
-  const source = Float32Array.from(values);
+  const source = values.slice();
   const valueAt = (r: number, c: number): number =>
     (r >= 0 && r < rows && c >= 0 && c < columns && marks[r * columns + c] === 0 ? source[r * columns + c]! : Number.NaN);
   for (let r = 0; r < rows; r++) {

@@ -9,6 +9,7 @@ import { movedBack, shiftAgainstHeight } from './align-current.ts';
 import type { Shift } from './align-current.ts';
 import { fillFromNeighbours, markBrokenRuns } from './broken-runs.ts';
 import { quantifiedOverFloor } from './current-limits.ts';
+import { censoredLog, lessOffset, markCensored, markRepaired, undoWear, withRepairs } from './censored-maps.ts';
 import { currentFloor } from './current-floor.ts';
 import type { CurrentGround, RoughHeight } from './ground.ts';
 import { clippedFrom, readAmplifier, runLength, runNoiseDecades } from './read-amplifier.ts';
@@ -59,15 +60,14 @@ export function conditionCurrent(channel: Channel, grid: Grid, section: GroundSe
   if (zero.from === 'assumed') warnings.push(notice('current-offset-assumed', {}));
   if (lag) warnings.push(notice('current-lag', { px: lag.px, sePx: lag.sePx }));
   const saturationNet = clippedFrom(saturation) - zero.offset;
-  const offsetFree = turned.map((value) => value - zero.offset);
-  let unlagged = lag ? amplifier.values.map((value) => value - zero.offset) : offsetFree;
+  const offsetFree = lessOffset(turned, zero.offset);
+  let unlagged = lag ? lessOffset(amplifier.values, zero.offset) : offsetFree;
   let blind = amplifier.blind;
   const { floorA, floorSeA } = currentFloor(zero, scan.floorA, offsetFree);
   if (zero.quantum !== undefined) warnings.push(notice('current-quantised', { step: zero.quantum, floor: floorA, unit }));
   const floorLog = Math.log10(floorA);
-  const censored = (value: number): number => (Number.isNaN(value) ? Number.NaN : Math.log10(Math.min(Math.max(value, floorA), saturationNet)));
 
-  let log10 = unlagged.map(censored);
+  let log10 = censoredLog(unlagged, floorA, saturationNet);
   const shift = levelled && shiftAgainstHeight(levelled, log10, floorLog, columns, rows);
   if (section.align && shift && (shift.undoneXPx !== 0 || shift.undoneYPx !== 0)) {
     unlagged = movedBack(unlagged, columns, shift, Number.NaN);
@@ -78,17 +78,7 @@ export function conditionCurrent(channel: Channel, grid: Grid, section: GroundSe
 
   const saturated = new Uint8Array(count);
   const floor = new Uint8Array(count);
-  let saturatedPixels = 0;
-  for (let i = 0; i < count; i++) {
-    const value = unlagged[i]!;
-    const hidden = blind?.[i] ?? 0;
-    if (value <= hidden && hidden > floorA) log10[i] = Math.log10(hidden);
-    if (value <= Math.max(hidden, floorA)) floor[i] = 1;
-    else if (value >= saturationNet) {
-      saturated[i] = 1;
-      saturatedPixels++;
-    }
-  }
+  const saturatedPixels = markCensored(unlagged, blind, floorA, saturationNet, { log10, floor, saturated });
   if (saturatedPixels >= 0.99 * count) throw new Problem('current-saturated', { file: channel.source, share: saturatedPixels / count });
 
   let repaired: Uint8Array = new Uint8Array(count);
@@ -97,32 +87,16 @@ export function conditionCurrent(channel: Channel, grid: Grid, section: GroundSe
     const marks = markBrokenRuns(log10, columns, rows, { noise: runNoiseDecades, minLength: runLength, only: 'below' });
     repaired = fillFromNeighbours(log10, marks, columns, rows, agreeDecades);
   }
-  let repairedPixels = 0;
-  const saturationLog = Math.log10(saturationNet);
-  for (let i = 0; i < count; i++) {
-    // Censored like its neighbours: a run filled from saturated ones is as saturated as they are.
-    if (log10[i]! <= floorLog + 1e-6) floor[i] = 1;
-    else if (log10[i]! >= saturationLog - 1e-6) saturated[i] = 1;
-    else if (repaired[i] === 1 || Number.isNaN(log10[i]!)) floor[i] = saturated[i] = 0;
-    repairedPixels += repaired[i]!;
-  }
+  const repairedPixels = markRepaired(repaired, floorLog + 1e-6, Math.log10(saturationNet) - 1e-6, { log10, floor, saturated });
 
   // What is seen but not measured well would be cut off from below and hide a trend.
   const measuredFrom = Math.log10(floorA * quantifiedOverFloor);
   const drift = findDrift(log10, columns, rows, (i) => floor[i] === 0 && saturated[i] === 0 && log10[i]! > measuredFrom && !tall?.(i), slowUp, (rows * grid.pitchYM) / (columns * grid.pitchXM));
   const worn = isWear(drift, beside.returned);
   warnings.push(...wearNotices(drift, worn, section.wear, beside.returned));
-  const conditioned = new Float32Array(count);
-  for (let i = 0; i < count; i++) conditioned[i] = repaired[i] === 1 ? 10 ** log10[i]! : Number.isNaN(log10[i]!) ? Number.NaN : unlagged[i]!;
-  if (section.wear && worn) {
-    const perRow = wearPerRow(drift.decades, rows, slowUp);
-    // A bound moves with the wear like a value: what an unworn tip would have shown lies as much higher.
-    for (let i = 0; i < count; i++) {
-      const shiftBy = perRow[(i / columns) | 0]!;
-      conditioned[i]! *= 10 ** shiftBy;
-      log10[i]! += shiftBy;
-    }
-  }
+  const conditioned = withRepairs(unlagged, repaired, log10);
+  // A bound moves with the wear like a value: what an unworn tip would have shown lies as much higher.
+  if (section.wear && worn) undoWear(wearPerRow(drift.decades, rows, slowUp), columns, conditioned, log10);
   return {
     current: {
       unit, ...(channel.biasV === undefined ? {} : { biasV: channel.biasV }),

@@ -1,5 +1,5 @@
 /** What levelling took out of a height, in numbers that a person can judge. */
-import { formSurface } from './form.ts';
+import { formRange } from './form.ts';
 import type { Form } from './form.ts';
 import type { SpotFit } from './fit-spots.ts';
 import type { RefinedLevels } from './refine-levels.ts';
@@ -33,7 +33,7 @@ export function describeLevels(levels: RefinedLevels, byHand: SpotFit | undefine
   const { form, lines, plane } = levels;
   return {
     formFrom: byHand ? 'spots' : 'ground', order: byHand?.order ?? form.order, ...(byHand ? { spotsUsed: byHand.used } : {}),
-    tiltM: peakToPeak(part(form, (term) => term === 1 || term === 2), columns, rows), bowM: peakToPeak(part(form, (term) => term > 2), columns, rows),
+    tiltM: coarseRange(part(form, (term) => term === 1 || term === 2), columns, rows), bowM: coarseRange(part(form, (term) => term > 2), columns, rows),
     ...(hasLines ? linesOf(lines) : {}),
     planesM: planesOf(plane),
   };
@@ -43,16 +43,9 @@ function part(form: Form, keep: (term: number) => boolean): Form {
   return { order: form.order, coefficients: form.coefficients.map((value, term) => (keep(term) ? value : 0)) };
 }
 
-function peakToPeak(form: Form, columns: number, rows: number): number {
-  // A form is smooth: a coarse look at it, corners included, is enough.
-  const surface = formSurface(form, Math.min(columns, 65), Math.min(rows, 65));
-  let low = Number.POSITIVE_INFINITY;
-  let high = Number.NEGATIVE_INFINITY;
-  for (const value of surface) {
-    if (value < low) low = value;
-    if (value > high) high = value;
-  }
-  return high - low;
+/** A form is smooth: a coarse look at it, corners included, is enough. */
+function coarseRange(form: Form, columns: number, rows: number): number {
+  return formRange(form, Math.min(columns, 65), Math.min(rows, 65));
 }
 
 function linesOf(lines: Float64Array): Pick<LevelsFound, 'lineRmsM' | 'lineMostM'> {
@@ -69,11 +62,16 @@ function linesOf(lines: Float64Array): Pick<LevelsFound, 'lineRmsM' | 'lineMostM
 function planesOf(plane: Float32Array): number[] {
   const counts = new Map<number, number>();
   let known = 0;
-  for (const height of plane) {
-    if (height !== height) continue;
-    known++;
-    const bin = Math.round(height / binM);
-    counts.set(bin, (counts.get(bin) ?? 0) + 1);
+  // Neighbours mostly lie on one plane: a run of them is counted at once.
+  for (let i = 0; i < plane.length;) {
+    const height = plane[i]!;
+    const end = runEnd(plane, i);
+    if (height === height) {
+      const bin = Math.round(height / binM);
+      counts.set(bin, (counts.get(bin) ?? 0) + end - i);
+      known += end - i;
+    }
+    i = end;
   }
   const found: { heightM: number; pixels: number }[] = [];
   for (const [bin, pixels] of [...counts].sort((a, b) => b[1] - a[1] || a[0] - b[0])) {
@@ -83,4 +81,12 @@ function planesOf(plane: Float32Array): number[] {
   }
   const heights = found.filter(({ pixels }) => pixels >= leastShare * known).map(({ heightM }) => heightM).sort((a, b) => a - b);
   return heights.map((height) => height - heights[0]!);
+}
+
+/** One past the last of the pixels from `i` on that hold the same value. */
+function runEnd(values: Float32Array, i: number): number {
+  const value = values[i]!;
+  let end = i + 1;
+  while (end < values.length && values[end] === value) end++;
+  return end;
 }

@@ -1,6 +1,6 @@
 /** Fits a form to a map, or to the ground under features, on a sample of its pixels. */
 import { solveBand } from '../stats/cholesky.ts';
-import { lowerScatter, mostCommon } from './centre.ts';
+import { centreAndScatter } from './centre.ts';
 import { axisTable } from './form.ts';
 import type { Form } from './form.ts';
 
@@ -21,7 +21,7 @@ interface FormSample {
  */
 export function fitForm(values: Float32Array, columns: number, rows: number, order: number, use: (index: number) => boolean): Form {
   const sample = takeSample(values, columns, rows, order, use);
-  return { order, coefficients: solve(sample, undefined) };
+  return { order, coefficients: solve(sample, new Uint8Array(sample.values.length).fill(1)) };
 }
 
 /**
@@ -37,14 +37,17 @@ export function fitGroundForm(values: Float32Array, columns: number, rows: numbe
   let previous = Number.NaN;
   for (let round = 0; round < 15; round++) {
     const residual = residuals(sample, coefficients);
-    const centre = mostCommon(residual);
-    const scatter = lowerScatter(residual, centre);
-    for (let k = 0; k < kept.length; k++) kept[k] = residual[k]! >= centre - 4 * scatter && residual[k]! <= centre + 3 * scatter ? 1 : 0;
+    const { centre, scatter } = centreAndScatter(residual);
+    markBetween(residual, centre - 4 * scatter, centre + 3 * scatter, kept);
     coefficients = solve(sample, kept);
     if (Math.abs(scatter - previous) <= 1e-3 * scatter) break;
     previous = scatter;
   }
   return { order, coefficients };
+}
+
+function markBetween(values: Float64Array, low: number, high: number, marks: Uint8Array): void {
+  for (let k = 0; k < marks.length; k++) marks[k] = values[k]! >= low && values[k]! <= high ? 1 : 0;
 }
 
 /** Distance between sampled pixels, the same in both directions, for a map of which `present` pixels count. */
@@ -97,20 +100,31 @@ function takeSample(values: Float32Array, columns: number, rows: number, order: 
   return { order, terms, values: taken.subarray(0, count), basis };
 }
 
-function solve({ terms, values, basis }: FormSample, kept: Uint8Array | undefined): Float64Array {
+function solve(sample: FormSample, kept: Uint8Array): Float64Array {
+  const { terms } = sample;
   const normal = new Float64Array(terms * terms);
   const right = new Float64Array(terms);
-  for (let k = 0, at = 0; k < values.length; k++, at += terms) {
-    if (kept && kept[k] === 0) continue;
-    const value = values[k]!;
-    for (let i = 0; i < terms; i++) {
-      const bi = basis[at + i]!;
-      right[i]! += bi * value;
-      for (let j = 0; j <= i; j++) normal[i * terms + (i - j)]! += bi * basis[at + j]!;
-    }
-  }
+  for (let i = 0; i < terms; i++) sumTerm(sample, kept, i, normal, right);
   for (let i = 0; i < terms; i++) normal[i * terms]! += 1e-12 * (normal[0] || 1);
   return solveBand(normal, terms - 1, right);
+}
+
+/** The part of the normal equations that belongs to one term: term by term, the sums stay in registers. */
+function sumTerm({ terms, values, basis }: FormSample, kept: Uint8Array, i: number, normal: Float64Array, right: Float64Array): void {
+  right[i] = productSum(basis, i, values, terms, kept);
+  for (let j = 0; j <= i; j++) normal[i * terms + (i - j)] = pairSum(basis, i, j, terms, kept);
+}
+
+function productSum(basis: Float64Array, i: number, values: Float64Array, terms: number, kept: Uint8Array): number {
+  let sum = 0;
+  for (let k = 0, at = i; k < kept.length; k++, at += terms) if (kept[k] === 1) sum += basis[at]! * values[k]!;
+  return sum;
+}
+
+function pairSum(basis: Float64Array, i: number, j: number, terms: number, kept: Uint8Array): number {
+  let sum = 0;
+  for (let k = 0, at = 0; k < kept.length; k++, at += terms) if (kept[k] === 1) sum += basis[at + i]! * basis[at + j]!;
+  return sum;
 }
 
 function residuals({ terms, values, basis }: FormSample, coefficients: Float64Array): Float64Array {

@@ -35,9 +35,8 @@ export function flatSegments(rest: Float32Array, columns: number, rows: number, 
  */
 export function terraceSegments(height: Float32Array, log10: Float32Array, use: Uint8Array, columns: number, rows: number, layerM: number, layerDecades: number): Components {
   // What a flaw shows beside the ground must not blur the ground's own border.
-  const only = (map: Float32Array): Float32Array => map.map((value, i) => (use[i] === 1 ? value : Number.NaN));
-  const flat = flatPlaces(boxMean(only(height), columns, rows, smoothPx), columns, rows, flatPart * layerM);
-  const even = flatPlaces(boxMean(only(log10), columns, rows, smoothPx), columns, rows, flatPart * layerDecades);
+  const flat = flatPlaces(boxMean(only(height, use), columns, rows, smoothPx), columns, rows, flatPart * layerM);
+  const even = flatPlaces(boxMean(only(log10, use), columns, rows, smoothPx), columns, rows, flatPart * layerDecades);
   for (let i = 0; i < flat.length; i++) flat[i] = flat[i]! & even[i]! & use[i]!;
   // Stretches hang together by more than a pixel or two.
   const inside = squaredDistance(flat, columns, rows, {});
@@ -45,49 +44,82 @@ export function terraceSegments(height: Float32Array, log10: Float32Array, use: 
   return labelComponents(flat, columns, rows, 4);
 }
 
+function only(map: Float32Array, use: Uint8Array): Float32Array {
+  const out = map.slice();
+  for (let i = 0; i < out.length; i++) if (use[i] !== 1) out[i] = Number.NaN;
+  return out;
+}
+
 /** 1 where a smoothed map does not change by `least` or more between the places to either side, along both axes. */
 function flatPlaces(smooth: Float32Array, columns: number, rows: number, least: number): Uint8Array {
   const flat = new Uint8Array(smooth.length);
-  for (let r = 0, i = 0; r < rows; r++) {
-    const up = Math.max(0, r - asidePx) * columns;
-    const down = Math.min(rows - 1, r + asidePx) * columns;
-    for (let c = 0; c < columns; c++, i++) {
-      const along = Math.abs(smooth[i - c + Math.min(columns - 1, c + asidePx)]! - smooth[i - c + Math.max(0, c - asidePx)]!);
-      // What is missing beside it says nothing against a place.
-      if (smooth[i] === smooth[i] && !(along >= least) && !(Math.abs(smooth[down + c]! - smooth[up + c]!) >= least)) flat[i] = 1;
-    }
+  const left = Int32Array.from({ length: columns }, (_, c) => Math.max(0, c - asidePx));
+  const right = Int32Array.from({ length: columns }, (_, c) => Math.min(columns - 1, c + asidePx));
+  for (let r = 0; r < rows; r++) {
+    markFlat(smooth, r * columns, Math.max(0, r - asidePx) * columns, Math.min(rows - 1, r + asidePx) * columns, left, right, least, flat);
   }
   return flat;
 }
 
+function markFlat(smooth: Float32Array, start: number, up: number, down: number, left: Int32Array, right: Int32Array, least: number, flat: Uint8Array): void {
+  for (let c = 0; c < left.length; c++) {
+    const own = smooth[start + c]!;
+    // What is missing beside it says nothing against a place.
+    if (own === own && !(Math.abs(smooth[start + right[c]!]! - smooth[start + left[c]!]!) >= least) && !(Math.abs(smooth[down + c]! - smooth[up + c]!) >= least)) flat[start + c] = 1;
+  }
+}
+
 /** Mean of the finite values in a square of half-width `half` around each pixel, cut off at borders; NaN where there is none. */
 export function boxMean(values: Float32Array, columns: number, rows: number, half: number): Float32Array {
-  const sums = new Float64Array(columns + 1);
-  const counts = new Int32Array(columns + 1);
   const columnSums = new Float64Array(columns);
   const columnCounts = new Int32Array(columns);
+  // Sums over the columns before each.
+  const sums = new Float64Array(columns + 1);
+  const counts = new Int32Array(columns + 1);
   const out = new Float32Array(values.length);
-  const take = (r: number, sign: 1 | -1): void => {
-    for (let c = 0, i = r * columns; c < columns; c++, i++) {
-      const value = values[i]!;
-      if (value !== value) continue;
-      columnSums[c]! += sign * value;
-      columnCounts[c]! += sign;
-    }
-  };
-  for (let r = 0; r < Math.min(half, rows); r++) take(r, 1);
+  for (let r = 0; r < Math.min(half, rows); r++) addRow(values, r * columns, columnSums, columnCounts);
   for (let r = 0; r < rows; r++) {
-    if (r + half < rows) take(r + half, 1);
-    if (r - half > 0) take(r - half - 1, -1);
-    for (let c = 0; c < columns; c++) {
-      sums[c + 1] = sums[c]! + columnSums[c]!;
-      counts[c + 1] = counts[c]! + columnCounts[c]!;
-    }
-    for (let c = 0; c < columns; c++) {
-      const left = Math.max(0, c - half);
-      const right = Math.min(columns, c + half + 1);
-      out[r * columns + c] = (sums[right]! - sums[left]!) / (counts[right]! - counts[left]!);
-    }
+    if (r + half < rows) addRow(values, (r + half) * columns, columnSums, columnCounts);
+    if (r - half > 0) dropRow(values, (r - half - 1) * columns, columnSums, columnCounts);
+    addUp(columnSums, columnCounts, sums, counts);
+    writeMeans(sums, counts, half, out.subarray(r * columns, (r + 1) * columns));
   }
   return out;
+}
+
+function addRow(values: Float32Array, start: number, sums: Float64Array, counts: Int32Array): void {
+  for (let c = 0; c < sums.length; c++) {
+    const value = values[start + c]!;
+    if (value !== value) continue;
+    sums[c]! += value;
+    counts[c]!++;
+  }
+}
+
+function dropRow(values: Float32Array, start: number, sums: Float64Array, counts: Int32Array): void {
+  for (let c = 0; c < sums.length; c++) {
+    const value = values[start + c]!;
+    if (value !== value) continue;
+    sums[c]! -= value;
+    counts[c]!--;
+  }
+}
+
+function addUp(columnSums: Float64Array, columnCounts: Int32Array, sums: Float64Array, counts: Int32Array): void {
+  let sum = 0;
+  let count = 0;
+  for (let c = 0; c < columnSums.length; c++) {
+    sum += columnSums[c]!;
+    count += columnCounts[c]!;
+    sums[c + 1] = sum;
+    counts[c + 1] = count;
+  }
+}
+
+function writeMeans(sums: Float64Array, counts: Int32Array, half: number, row: Float32Array): void {
+  for (let c = 0; c < row.length; c++) {
+    const left = Math.max(0, c - half);
+    const right = Math.min(row.length, c + half + 1);
+    row[c] = (sums[right]! - sums[left]!) / (counts[right]! - counts[left]!);
+  }
 }

@@ -46,14 +46,37 @@ export function formSurface(form: Form, columns: number, rows: number): Float64A
   const px = axisTable(columns, form.order);
   const alongRow = rowPolynomials(form, rows);
   const surface = new Float64Array(columns * rows);
+  for (let r = 0; r < rows; r++) fillRow(surface, r * columns, columns, alongRow.subarray(r * terms, (r + 1) * terms), px);
+  return surface;
+}
+
+/** Difference between the highest and the lowest value of the form over all pixels; no surface is kept. */
+export function formRange(form: Form, columns: number, rows: number): number {
+  const terms = form.order + 1;
+  const px = axisTable(columns, form.order);
+  const alongRow = rowPolynomials(form, rows);
+  const row = new Float64Array(columns);
+  let low = Number.POSITIVE_INFINITY;
+  let high = Number.NEGATIVE_INFINITY;
   for (let r = 0; r < rows; r++) {
+    fillRow(row, 0, columns, alongRow.subarray(r * terms, (r + 1) * terms), px);
     for (let c = 0; c < columns; c++) {
-      let sum = 0;
-      for (let n = 0; n < terms; n++) sum += alongRow[r * terms + n]! * px[c * terms + n]!;
-      surface[r * columns + c] = sum;
+      const value = row[c]!;
+      if (value < low) low = value;
+      if (value > high) high = value;
     }
   }
-  return surface;
+  return high - low;
+}
+
+/** One row of a form from its polynomial there. */
+function fillRow(into: Float64Array, start: number, columns: number, polynomial: Float64Array, px: Float64Array): void {
+  const terms = polynomial.length;
+  for (let c = 0, at = 0; c < columns; c++) {
+    let sum = 0;
+    for (let n = 0; n < terms; n++) sum += polynomial[n]! * px[at++]!;
+    into[start + c] = sum;
+  }
 }
 
 /** `values − form`; NaN stays NaN. Computed by the kernel where one is installed, with the same result. */

@@ -24,10 +24,8 @@ export function heightPerGap(
     return Number.NaN;
   };
   const steps: number[] = [];
-  for (let i = 0; i + apartPx < levelled.length; i++) {
-    if (i % columns >= columns - apartPx) continue;
-    // Cheap test first: most pairs stand on one terrace.
-    if (!(Math.abs(log10[i + apartPx]! - log10[i]!) > 0.5 * stepDecades)) continue;
+  // Most pairs stand on one terrace.
+  for (let i = nextPair(log10, columns, 0, 0.5 * stepDecades); i >= 0; i = nextPair(log10, columns, i + 1, 0.5 * stepDecades)) {
     const gaps = place(i + apartPx) - place(i);
     const step = (levelled[i + apartPx]! - levelled[i]!) / gaps;
     if (Number.isFinite(step)) steps.push(step);
@@ -51,8 +49,7 @@ export function layersBetween(
   };
   const least = Math.min(...reach);
   const steps: number[][] = peaks.slice(1).map(() => []);
-  for (let i = 0; i + apartPx < levelled.length; i++) {
-    if (i % columns >= columns - apartPx || !(Math.abs(log10[i + apartPx]! - log10[i]!) > least)) continue;
+  for (let i = nextPair(log10, columns, 0, least); i >= 0; i = nextPair(log10, columns, i + 1, least)) {
     const here = place(i);
     const there = place(i + apartPx);
     if (here < 0 || there < 0 || Math.abs(there - here) !== 1) continue;
@@ -66,4 +63,12 @@ export function layersBetween(
     if (Math.abs(layers) > farLayers) return Math.round(layers);
     return Math.abs(layers - Math.round(layers)) < wholePart ? Math.round(layers) : undefined;
   });
+}
+
+/** The first pixel from `i` on whose log current differs from that of its partner on the same line by more than `least`; −1 without any. */
+function nextPair(log10: Float32Array, columns: number, i: number, least: number): number {
+  for (let lineEnd = (Math.floor(i / columns) + 1) * columns; i < log10.length; i = lineEnd, lineEnd += columns) {
+    for (const last = lineEnd - apartPx; i < last; i++) if (Math.abs(log10[i + apartPx]! - log10[i]!) > least) return i;
+  }
+  return -1;
 }

@@ -27,7 +27,9 @@ export function layerPlanes(current: CurrentGround, rough: Float32Array, columns
   const least = Math.log10(current.floorA * quantifiedOverFloor);
   const { data: saturated } = current.saturated;
   const { data: floor } = current.floor;
-  const use = (i: number): boolean => saturated[i] === 0 && floor[i] === 0 && log10[i]! >= least && !(rough[i]! > flatM);
+  const admitted = new Uint8Array(log10.length);
+  for (let i = 0; i < admitted.length; i++) if (saturated[i] === 0 && floor[i] === 0 && log10[i]! >= least && !(rough[i]! > flatM)) admitted[i] = 1;
+  const use = (i: number): boolean => admitted[i] === 1;
   const ladder = measureLadder(log10, use, { levelled: rough, columns, layerM });
   if (ladder.peaks.length === 0) return undefined;
   const step = ladder.stepDecades;
@@ -36,19 +38,21 @@ export function layerPlanes(current: CurrentGround, rough: Float32Array, columns
   const gapM = Number.isNaN(layers) ? layerM : Math.abs(layers - Math.round(layers)) < wholePart ? Math.round(layers) * layerM : measuredM;
 
   const reach = step === undefined ? withinDecades : withinPart * step;
-  const centres = allRungs(ladder);
+  const rungs = allRungs(ladder);
+  const planes = planesAt(log10, admitted, Float64Array.from(rungs, (rung) => rung.log10), Float64Array.from(rungs, ({ rung }) => rung * gapM), reach);
+  return { planes, ladder, gapM };
+}
+
+/** The height that belongs to the first centre within reach, at admitted pixels; NaN elsewhere. */
+function planesAt(log10: Float32Array, admitted: Uint8Array, centres: Float64Array, heights: Float64Array, reach: number): Float32Array {
   const planes = new Float32Array(log10.length).fill(Number.NaN);
   for (let i = 0; i < planes.length; i++) {
-    if (!use(i)) continue;
-    const value = log10[i]!;
-    for (const { log10: centre, rung } of centres) {
-      if (Math.abs(value - centre) < reach) {
-        planes[i] = rung * gapM;
-        break;
-      }
-    }
+    if (admitted[i] === 0) continue;
+    let k = 0;
+    while (k < centres.length && !(Math.abs(log10[i]! - centres[k]!) < reach)) k++;
+    if (k < centres.length) planes[i] = heights[k]!;
   }
-  return { planes, ladder, gapM };
+  return planes;
 }
 
 /** The measured rungs, those missing in between, and one beyond each end. */

@@ -1,14 +1,16 @@
 import type { Grid, ScalarMap } from '../grid/maps.ts';
 import { maskMap, scalarMap } from '../grid/maps.ts';
 import { fillFromNeighbours, markBrokenRuns, markSpikes } from './broken-runs.ts';
-import { lowerScatter, mostCommon } from './centre.ts';
+import { centreAndScatter } from './centre.ts';
 import { fitGroundForm, presentCount, sampleStep, subSample } from './fit-form.ts';
-import { formSurface, subtractForm } from './form.ts';
+import { formRange, subtractForm } from './form.ts';
 import type { HeightGround } from './ground.ts';
 import { lineOffsets } from './lines.ts';
 import { pixelNoise } from './noise.ts';
+import { takeLines } from './plane-maps.ts';
 import type { GroundSection } from './recipe.ts';
 import type { Levels, RefinedLevels } from './refine-levels.ts';
+import { within } from './within.ts';
 
 /** Shortest broken run that is repaired, pixels along the fast axis. */
 const runLength = 8;
@@ -27,12 +29,12 @@ export function firstLevels(height: ScalarMap, { columns, rows }: Grid, section:
   const form = fitGroundForm(raw, columns, rows, section.order);
   if (!section.lines) return { form, lines: new Float64Array(rows) };
   const values = subtractForm(raw, form, columns, rows);
-  const isGround = groundTest(values, columns, rows);
+  const { isGround } = groundTest(values, columns, rows);
   if (!linesOff(values, isGround, columns, rows)) return { form, lines: lineOffsets(values, columns, rows, isGround) };
   // Lines that jump by more than the scatter are no ground by this test: they are brought near first, by all of their pixels.
   const coarse = lineOffsets(values, columns, rows, () => true);
-  for (let r = 0, i = 0; r < rows; r++) for (let c = 0; c < columns; c++, i++) values[i]! -= coarse[r]!;
-  const fine = lineOffsets(values, columns, rows, groundTest(values, columns, rows));
+  takeLines(values, coarse, columns);
+  const fine = lineOffsets(values, columns, rows, groundTest(values, columns, rows).isGround);
   return { form, lines: coarse.map((offset, r) => offset + fine[r]!) };
 }
 
@@ -55,11 +57,12 @@ function linesOff(values: Float32Array, isGround: (index: number) => boolean, co
 /** Height without form and line offsets, metres. */
 export function withoutLevels(raw: Float32Array, { columns, rows }: Grid, levels: Levels): Float32Array {
   const values = subtractForm(raw, levels.form, columns, rows);
-  for (let r = 0, i = 0; r < rows; r++) {
-    const line = levels.lines[r]!;
-    for (let c = 0; c < columns; c++, i++) values[i]! -= line;
-  }
+  takeLines(values, levels.lines, columns);
   return values;
+}
+
+function lowerBy(values: Float32Array, by: number): void {
+  for (let i = 0; i < values.length; i++) values[i]! -= by;
 }
 
 /**
@@ -86,34 +89,30 @@ export function levelHeight(height: ScalarMap, grid: Grid, section: GroundSectio
     }
   }
   const ground = within(values, inside);
-  const isGround = groundTest(ground, columns, rows);
-  const zero = mostCommon(sampled(ground, columns, rows));
-  for (let i = 0; i < values.length; i++) values[i]! -= zero;
-
-  let repairedPixels = 0;
-  for (const mark of repaired) repairedPixels += mark;
+  const { isGround, centre } = groundTest(ground, columns, rows);
+  lowerBy(values, centre);
   return {
     levelled: scalarMap(grid, values),
     repaired: maskMap(grid, repaired),
-    repairedPixels,
+    repairedPixels: sumOf(repaired),
     noiseM: pixelNoise(values, columns, rows, isGround),
     plane: levels.plane,
-    tiltM: peakToPeak(formSurface(levels.form, columns, rows)),
+    tiltM: formRange(levels.form, columns, rows),
   };
 }
 
-function within(map: Float32Array, inside: Uint8Array | undefined): Float32Array {
-  return inside ? map.map((value, i) => (inside[i] === 1 ? value : Number.NaN)) : map;
+function sumOf(marks: Uint8Array): number {
+  let sum = 0;
+  for (let i = 0; i < marks.length; i++) sum += marks[i]!;
+  return sum;
 }
 
-/** A pixel is ground when it lies within the scatter around the most common height. */
-function groundTest(values: Float32Array, columns: number, rows: number): (index: number) => boolean {
-  const sample = sampled(values, columns, rows);
-  const centre = mostCommon(sample);
-  const scatter = lowerScatter(sample, centre);
+/** A pixel is ground when it lies within the scatter around the most common height, the centre. */
+function groundTest(values: Float32Array, columns: number, rows: number): { isGround: (index: number) => boolean; centre: number } {
+  const { centre, scatter } = centreAndScatter(sampled(values, columns, rows));
   const low = centre - 4 * scatter;
   const high = centre + 3 * scatter;
-  return (i) => values[i]! >= low && values[i]! <= high;
+  return { isGround: (i) => values[i]! >= low && values[i]! <= high, centre };
 }
 
 /** Finite values, thinned evenly to what a level needs. */
@@ -130,14 +129,4 @@ function repairHeight(values: Float32Array, columns: number, rows: number, noise
   // With nothing beside it to fill it from, what was measured stands.
   for (let i = 0; i < values.length; i++) if (Number.isNaN(values[i]!)) values[i] = before[i]!;
   return filled;
-}
-
-function peakToPeak(surface: Float64Array): number {
-  let low = Number.POSITIVE_INFINITY;
-  let high = Number.NEGATIVE_INFINITY;
-  for (const value of surface) {
-    if (value < low) low = value;
-    if (value > high) high = value;
-  }
-  return high - low;
 }

@@ -7,13 +7,13 @@ import type { Components } from '../grid/label-components.ts';
 import { pixelAreaM2 } from '../grid/maps.ts';
 import type { Grid, MaskMap, ScalarMap } from '../grid/maps.ts';
 import { traceOutline } from '../grid/trace-outline.ts';
-import { solveBand } from '../stats/cholesky.ts';
-import { madScale } from '../stats/mad.ts';
 import { median } from '../stats/median.ts';
 import { mostCommon } from './centre.ts';
 import { sampleStep, subSample } from './fit-form.ts';
 import type { BareGround, CurrentGround, FootprintProposal } from './ground.ts';
 import { lineDifferencesSolved } from './lines.ts';
+import { takeLines } from './plane-maps.ts';
+import { slopeForm } from './slope-form.ts';
 
 /** Ground this far below the most common one is looked at: more than four layers, so that a terrace or two below are not. */
 const lowM = 1.5e-9;
@@ -46,7 +46,7 @@ const crossingShare = 0.05;
 export function proposeFootprint(height: ScalarMap, repaired: MaskMap, current: CurrentGround | undefined, grid: Grid, order: number): FootprintProposal | undefined {
   const { columns, rows } = grid;
   if (columns < 32 || rows < 32) return undefined;
-  const h = Float32Array.from(height.data);
+  const h = height.data.slice();
   for (let i = 0; i < h.length; i++) if (repaired.data[i] === 1) h[i] = Number.NaN;
   levelOnDifferences(h, columns, rows, order);
   fillShortGaps(h, columns);
@@ -95,75 +95,25 @@ function levelOnDifferences(h: Float32Array, columns: number, rows: number, orde
   for (let total = 1; total <= order; total++) for (let j = 0; j <= total; j++) powers.push([total - j, j]);
   const form = slopeForm(h, columns, rows, powers);
   const byRow = new Float64Array(order + 1);
-  for (let r = 0, i = 0; r < rows; r++) {
+  for (let r = 0; r < rows; r++) {
     const v = (2 * r) / (rows - 1) - 1;
     byRow.fill(0);
     powers.forEach(([p, q], k) => { byRow[p]! += form[k]! * v ** q; });
-    for (let c = 0; c < columns; c++, i++) {
-      const u = (2 * c) / (columns - 1) - 1;
-      let sum = 0;
-      for (let p = order; p >= 0; p--) sum = sum * u + byRow[p]!;
-      h[i]! -= sum;
-    }
+    takePolynomial(h, r * columns, columns, byRow);
   }
-  const lines = lineDifferencesSolved(h, columns, rows, () => true, lowM);
-  for (let i = 0; i < h.length; i++) h[i]! -= lines[(i / columns) | 0]!;
+  takeLines(h, lineDifferencesSolved(h, columns, rows, () => true, lowM), columns);
   const zero = mostCommon(subSample(h, columns, rows, sampleStep(columns * rows)));
   for (let i = 0; i < h.length; i++) h[i]! -= zero;
 }
 
-/**
- * Coefficients of u^p·v^q, u and v from −1 to 1, by least squares on differences with Tukey's biweight, which leaves out the few that
- * cross a step (Beaton & Tukey, Technometrics 16, 147, 1974; constant 4.685 by Holland & Welsch, Commun. Stat. A6, 813, 1977).
- */
-function slopeForm(values: Float32Array, columns: number, rows: number, powers: readonly (readonly [number, number])[]): Float64Array {
-  const n = powers.length;
-  const lagC = Math.max(2, Math.round(columns / 32));
-  const lagR = Math.max(2, Math.round(rows / 32));
-  const step = Math.max(1, Math.floor(Math.sqrt((columns * rows) / 8000)));
-  const basis: number[] = [];
-  const differences: number[] = [];
-  const add = (r0: number, c0: number, r1: number, c1: number) => {
-    const difference = values[r1 * columns + c1]! - values[r0 * columns + c0]!;
-    if (Number.isNaN(difference)) return;
-    differences.push(difference);
-    const [u0, v0, u1, v1] = [(2 * c0) / (columns - 1) - 1, (2 * r0) / (rows - 1) - 1, (2 * c1) / (columns - 1) - 1, (2 * r1) / (rows - 1) - 1];
-    for (const [p, q] of powers) basis.push(u1 ** p * v1 ** q - u0 ** p * v0 ** q);
-  };
-  for (let r = step >> 1; r < rows; r += step) {
-    for (let c = step >> 1; c < columns; c += step) {
-      if (c + lagC < columns) add(r, c, r, c + lagC);
-      if (r + lagR < rows) add(r, c, r + lagR, c);
-    }
+/** Takes a polynomial in u, from −1 to 1 along the row, off one row. */
+function takePolynomial(h: Float32Array, start: number, columns: number, coefficients: Float64Array): void {
+  for (let c = 0; c < columns; c++) {
+    const u = (2 * c) / (columns - 1) - 1;
+    let sum = 0;
+    for (let p = coefficients.length - 1; p >= 0; p--) sum = sum * u + coefficients[p]!;
+    h[start + c]! -= sum;
   }
-  let form: Float64Array = new Float64Array(n);
-  const residual = Float64Array.from(differences);
-  let weights = new Float64Array(residual.length).fill(1);
-  for (let round = 0; round < 15; round++) {
-    const normal = new Float64Array(n * n);
-    const right = new Float64Array(n);
-    for (let e = 0; e < residual.length; e++) {
-      const w = weights[e]!;
-      if (w === 0) continue;
-      for (let i = 0; i < n; i++) {
-        const wb = w * basis[e * n + i]!;
-        right[i]! += wb * differences[e]!;
-        for (let j = 0; j <= i; j++) normal[i * n + (i - j)]! += wb * basis[e * n + j]!;
-      }
-    }
-    const next = solveBand(normal, n - 1, right);
-    // Too few differences to tell: the form found so far is kept.
-    if (next.some(Number.isNaN)) break;
-    form = next;
-    for (let e = 0; e < residual.length; e++) {
-      let fit = 0;
-      for (let i = 0; i < n; i++) fit += form[i]! * basis[e * n + i]!;
-      residual[e] = differences[e]! - fit;
-    }
-    const reach = 4.685 * Math.max(1e-12, madScale * median(residual.map(Math.abs)));
-    weights = residual.map((d) => (Math.abs(d) < reach ? (1 - (d / reach) ** 2) ** 2 : 0));
-  }
-  return form;
 }
 
 /** Missing pixels take the value above, three lines far at most: a broken run must not cut a region in two. Changes `h`. */
@@ -279,16 +229,23 @@ function bareMask(h: Float32Array, regions: Components, grid: Grid, currents: Ce
 /** The largest connected part of what is not bare, its small gaps filled. */
 function mainPatch(bare: Uint8Array, grid: Grid): Uint8Array {
   const { columns, rows } = grid;
-  const rest = labelComponents(bare.map((value) => 1 - value), columns, rows, 4);
+  const rest = labelComponents(turned(bare), columns, rows, 4);
   let largest = 1;
   for (let k = 2; k <= rest.count; k++) if (rest.pixels[k]! > rest.pixels[largest]!) largest = k;
-  const patch = bare.map((_, i) => (rest.labels[i] === largest ? 1 : 0));
-  const gaps = labelComponents(patch.map((value) => 1 - value), columns, rows, 8);
+  const patch = new Uint8Array(bare.length);
+  for (let i = 0; i < patch.length; i++) if (rest.labels[i] === largest) patch[i] = 1;
+  const gaps = labelComponents(turned(patch), columns, rows, 8);
   const outside = touching(gaps.labels, columns, rows, gaps.count);
   return patch.map((value, i) => {
     const gap = gaps.labels[i]!;
     return gap !== 0 && outside[gap] === 0 && gaps.pixels[gap]! * pixelAreaM2(grid) < holeM2 ? 1 : value;
   });
+}
+
+function turned(mask: Uint8Array): Uint8Array {
+  const out = new Uint8Array(mask.length);
+  for (let i = 0; i < out.length; i++) out[i] = 1 - mask[i]!;
+  return out;
 }
 
 function areaOf(mask: Uint8Array, grid: Grid): number {

@@ -1,14 +1,17 @@
 /** Form and line offsets of a height whose terraces are taken as parallel planes. */
 import type { Grid } from '../grid/maps.ts';
 import { median, medianInPlace } from '../stats/median.ts';
-import { lowerScatter, mostCommon } from './centre.ts';
+import { centreAndScatter, mostCommon } from './centre.ts';
 import { fitForm, presentCount, sampleStep, subSample } from './fit-form.ts';
+import { columnsOf, inNone, widened } from './fewer-columns.ts';
 import type { Form } from './form.ts';
 import { subtractForm } from './form.ts';
 import { removeTrend } from './lines.ts';
+import { loseUntold, mapThrough, movePlanes, raisePlanes, takeLines, takePlanes, takeRaise, zeroWhereMissing } from './plane-maps.ts';
 import type { GroundSection } from './recipe.ts';
 import { levelSegments } from './segment-levels.ts';
 import { solvePlanes } from './solve-planes.ts';
+import { within } from './within.ts';
 
 /** What is taken out of a height: a form, and one offset per row. */
 export interface Levels {
@@ -42,8 +45,6 @@ const streakTimes = 1.5;
 const streakM = 0.03e-9;
 /** A noiseless map still has rounding: less scatter than this is none, metres. */
 const leastScatterM = 1e-13;
-/** Mark of pixels in no segment. */
-const inNone = 2;
 
 /**
  * Refines levels found without knowledge of terraces. The height is taken as form + line offset + plane + ground: the plane is the current's where that
@@ -58,7 +59,7 @@ const inNone = 2;
  */
 export function refineLevels(height: Float32Array, grid: Grid, section: GroundSection, help: RefineHelp): RefinedLevels {
   const { inside, planes } = help;
-  const raw = inside ? height.map((value, i) => (inside[i] === 1 ? value : Number.NaN)) : height;
+  const raw = within(height, inside);
   const every = Math.max(1, Math.floor(grid.columns / enoughColumns));
   if (every === 1) {
     const found = refine(raw, grid, section, help, planes);
@@ -69,9 +70,9 @@ export function refineLevels(height: Float32Array, grid: Grid, section: GroundSe
   const narrow = { columns: Math.floor(grid.columns / every), rows: grid.rows, pitchXM: grid.pitchXM * every, pitchYM: grid.pitchYM };
   const narrowPlanes = planes && columnsOf(planes, grid, every);
   const found = refine(columnsOf(raw, grid, every), narrow, section, help, narrowPlanes);
-  const { plane, terrace } = widened(found, narrowPlanes, planes, grid, every);
+  const { plane, terrace } = widened({ ...found, planes: narrowPlanes }, planes, grid, every);
   const flat = raw.slice();
-  takeAway(flat, plane, found.lines, grid.columns, grid.rows);
+  takePlanes(flat, plane, found.lines, grid.columns);
   const form = fitForm(flat, grid.columns, grid.rows, section.order, (i) => found.ground[Math.floor(i / grid.columns) * narrow.columns + Math.min(narrow.columns - 1, Math.floor((i % grid.columns) / every))] === 1);
   dropFilms(plane, terrace, grid.columns);
   return { form, lines: found.lines, plane };
@@ -84,7 +85,7 @@ interface Found extends RefinedLevels {
 
 function refine(raw: Float32Array, grid: Grid, section: GroundSection, help: RefineHelp, planes: Float32Array | undefined): Found {
   const { columns, rows } = grid;
-  const known = planes ? planes.map((value) => (value === value ? value : 0)) : new Float32Array(raw.length);
+  const known = planes ? zeroWhereMissing(planes) : new Float32Array(raw.length);
   const plane = known.slice();
   const level = new Uint16Array(raw.length);
   const terrace = new Uint8Array(raw.length);
@@ -92,40 +93,34 @@ function refine(raw: Float32Array, grid: Grid, section: GroundSection, help: Ref
   let levels = 0;
   let { form, lines } = help.start;
   for (let round = 0; round < rounds; round++) {
-    const rest = overKnown(raw, form, lines, plane, columns, rows);
-    // Twice, because the first look is through lines and a form that lean on the steps.
-    if (round < 2) {
-      const over = round === 0 ? rest : overKnown(raw, form, lines, known, columns, rows);
-      const found = levelSegments(over, grid, help.layerM, planes);
+    // Segments are sought twice, because the first look is through lines and a form that lean on the steps.
+    const seeks = round < 2;
+    const rest = overKnown(raw, form, lines, seeks ? known : plane, columns, rows);
+    if (seeks) {
+      const found = levelSegments(rest, grid, help.layerM, planes);
       levels = 0;
       // With neither a segment nor a current all of the map is taken for one plane.
       const told = planes !== undefined || found.levelM.length > 1;
       const numbers = Uint16Array.from(found.levelM, (height) => (height === height ? 0 : ++levels));
-      for (let i = 0; i < plane.length; i++) {
-        const segment = found.segment[i]!;
-        const height = found.levelM[segment]!;
-        level[i] = numbers[segment]!;
-        terrace[i] = segment === 0 ? inNone : found.terrace[segment]!;
-        // Neither current nor segment: nothing is known of this ground.
-        const lost = segment === 0 && told && !(planes && planes[i] === planes[i]);
-        plane[i] = lost ? Number.NaN : known[i]! + (height === height ? height : 0);
-        rest[i] = over[i]! - (plane[i]! - known[i]!);
-      }
+      const marks = found.terrace.slice();
+      marks[0] = inNone;
+      mapThrough(found.segment, numbers, level);
+      mapThrough(found.segment, marks, terrace);
+      raisePlanes(found.segment, found.levelM, known, plane);
+      if (told) loseUntold(found.segment, planes, plane);
+      takeRaise(rest, plane, known);
     }
     ground = groundOf(rest, columns, rows, level, levels);
     const change = solvePlanes({ rest, ground, columns, rows, order: section.order, lines: section.lines, level, levels });
     const moved = subtractForm(rest, change.form, columns, rows);
-    for (let i = 0; i < plane.length; i++) {
-      const move = change.levelM[level[i]!]!;
-      plane[i]! += move;
-      moved[i]! -= move;
-    }
+    movePlanes(plane, moved, level, change.levelM);
     if (section.lines) lines = lineMedians(moved, groundOf(moved, columns, rows, level, 0), columns, rows, lines);
     const flat = raw.slice();
-    takeAway(flat, plane, lines, columns, rows);
+    takePlanes(flat, plane, lines, columns);
     const admitted = ground;
-    if (round === rounds - 1 && section.lines && streaks(withoutLines(subtractForm(raw, form, columns, rows), lines, columns), columns, rows, lines, help.start.lines)) {
-      for (let r = 0, i = 0; r < rows; r++) for (let c = 0; c < columns; c++, i++) flat[i]! += lines[r]! - help.start.lines[r]!;
+    if (round === rounds - 1 && section.lines && streaks(overLines(raw, form, lines, columns, rows), columns, rows, lines, help.start.lines)) {
+      const start = help.start.lines;
+      takeLines(flat, start.map((offset, r) => offset - lines[r]!), columns);
       lines = help.start.lines;
     }
     form = fitForm(flat, columns, rows, section.order, (i) => admitted[i] === 1);
@@ -133,9 +128,10 @@ function refine(raw: Float32Array, grid: Grid, section: GroundSection, help: Ref
   return { form, lines, plane, terrace, ground };
 }
 
-function withoutLines(values: Float32Array, lines: Float64Array, columns: number): Float32Array {
-  for (let r = 0, i = 0; i < values.length; r++) for (let c = 0; c < columns; c++, i++) values[i]! -= lines[r]!;
-  return values;
+function overLines(raw: Float32Array, form: Form, lines: Float64Array, columns: number, rows: number): Float32Array {
+  const over = subtractForm(raw, form, columns, rows);
+  takeLines(over, lines, columns);
+  return over;
 }
 
 /**
@@ -161,37 +157,6 @@ function streaks(over: Float32Array, columns: number, rows: number, lines: Float
   return own.length > 0 && median(own) > streakTimes * median(others) + streakM;
 }
 
-/** Every n-th column, from the middle of each group of n. */
-function columnsOf(values: Float32Array, { columns, rows }: Grid, every: number): Float32Array {
-  const narrow = Math.floor(columns / every);
-  const out = new Float32Array(narrow * rows);
-  for (let r = 0, k = 0; r < rows; r++) for (let c = 0; c < narrow; c++, k++) out[k] = values[r * columns + c * every + (every >> 1)]!;
-  return out;
-}
-
-/** Planes and marks of every pixel from those of every n-th column: a pixel takes over by how much the plane beside it was moved, where both are known to the current or neither is. */
-function widened({ plane, terrace }: Found, narrowPlanes: Float32Array | undefined, planes: Float32Array | undefined, { columns, rows }: Grid, every: number): { plane: Float32Array; terrace: Uint8Array } {
-  const narrow = Math.floor(columns / every);
-  const out = new Float32Array(columns * rows);
-  const marks = new Uint8Array(out.length);
-  for (let r = 0, i = 0; r < rows; r++) {
-    for (let c = 0; c < columns; c++, i++) {
-      const k = r * narrow + Math.min(narrow - 1, Math.floor(c / every));
-      const own = planes ? planes[i]! : Number.NaN;
-      const beside = narrowPlanes ? narrowPlanes[k]! : Number.NaN;
-      const known = own === own;
-      if (known !== (beside === beside)) {
-        out[i] = own;
-        marks[i] = inNone;
-        continue;
-      }
-      out[i] = known ? own + (plane[k]! - beside) : plane[k]!;
-      marks[i] = terrace[k]!;
-    }
-  }
-  return { plane: out, terrace: marks };
-}
-
 /** Films lie on planes too, and help to level; but they are no terraces: their planes, and those of the same height that reach out from them to their rims, become unknown. */
 function dropFilms(plane: Float32Array, terrace: Uint8Array, columns: number): void {
   const queue: number[] = [];
@@ -209,15 +174,8 @@ function dropFilms(plane: Float32Array, terrace: Uint8Array, columns: number): v
 
 function overKnown(raw: Float32Array, form: Form, lines: Float64Array, known: Float32Array, columns: number, rows: number): Float32Array {
   const over = subtractForm(raw, form, columns, rows);
-  takeAway(over, known, lines, columns, rows);
+  takePlanes(over, known, lines, columns);
   return over;
-}
-
-function takeAway(values: Float32Array, plane: Float32Array, lines: Float64Array, columns: number, rows: number): void {
-  for (let r = 0, i = 0; r < rows; r++) {
-    const line = lines[r]!;
-    for (let c = 0; c < columns; c++, i++) values[i] = values[i]! - line - plane[i]!;
-  }
 }
 
 /**
@@ -227,8 +185,9 @@ function takeAway(values: Float32Array, plane: Float32Array, lines: Float64Array
 function groundOf(rest: Float32Array, columns: number, rows: number, level: Uint16Array, levels: number): Uint8Array {
   const present = presentCount(rest);
   const sample = subSample(rest, columns, rows, (present > 20_000 ? 2 : 1) * sampleStep(present));
-  const centre = mostCommon(sample);
-  const scatter = Math.max(leastScatterM, lowerScatter(sample, centre));
+  const found = centreAndScatter(sample);
+  const { centre } = found;
+  const scatter = Math.max(leastScatterM, found.scatter);
   const centres = new Float64Array(levels + 1).fill(centre);
   if (levels > 0) {
     const lists: number[][] = Array.from({ length: levels + 1 }, () => []);
@@ -237,11 +196,23 @@ function groundOf(rest: Float32Array, columns: number, rows: number, level: Uint
     for (let k = 1; k <= levels; k++) if (lists[k]!.length > 0) centres[k] = mostCommon(Float64Array.from(lists[k]!));
   }
   const out = new Uint8Array(rest.length);
-  for (let i = 0; i < out.length; i++) {
-    const off = rest[i]! - centres[levels > 0 ? level[i]! : 0]!;
-    if (off >= -4 * scatter && off <= 3 * scatter) out[i] = 1;
-  }
+  if (levels > 0) markNearLevel(rest, level, centres, -4 * scatter, 3 * scatter, out);
+  else markNear(rest, centre, -4 * scatter, 3 * scatter, out);
   return out;
+}
+
+function markNear(rest: Float32Array, centre: number, low: number, high: number, out: Uint8Array): void {
+  for (let i = 0; i < out.length; i++) {
+    const off = rest[i]! - centre;
+    if (off >= low && off <= high) out[i] = 1;
+  }
+}
+
+function markNearLevel(rest: Float32Array, level: Uint16Array, centres: Float64Array, low: number, high: number, out: Uint8Array): void {
+  for (let i = 0; i < out.length; i++) {
+    const off = rest[i]! - centres[level[i]!]!;
+    if (off >= low && off <= high) out[i] = 1;
+  }
 }
 
 /**

@@ -53,21 +53,29 @@ export function registerMaps(reference: Float32Array, moved: Float32Array, colum
 function changingPixels(reference: Float32Array, columns: number, rows: number, margin: number): Uint32Array {
   let largest = 0;
   const sampleRow = Math.max(1, Math.floor(rows / 64));
-  for (let r = margin; r < rows - margin; r += sampleRow) {
-    for (let c = margin; c < columns - margin; c++) {
-      const change = Math.abs(reference[r * columns + c + 1]! - reference[r * columns + c - 1]!);
-      if (change > largest) largest = change;
-    }
+  for (let r = margin; r < rows - margin; r += sampleRow) largest = Math.max(largest, largestChange(reference, r * columns + margin, (r + 1) * columns - margin));
+  const found = new Uint32Array(reference.length);
+  let count = 0;
+  for (let r = margin; r < rows - margin; r++) count = noteChanging(reference, columns, r * columns + margin, (r + 1) * columns - margin, 0.05 * largest, found, count);
+  const stride = Math.max(1, count / mostPixels);
+  return Uint32Array.from({ length: Math.floor(count / stride) }, (_, k) => found[Math.floor(k * stride)]!);
+}
+
+function largestChange(values: Float32Array, from: number, to: number): number {
+  let largest = 0;
+  for (let i = from; i < to; i++) {
+    const change = Math.abs(values[i + 1]! - values[i - 1]!);
+    if (change > largest) largest = change;
   }
-  const found: number[] = [];
-  for (let r = margin; r < rows - margin; r++) {
-    for (let c = margin; c < columns - margin; c++) {
-      const i = r * columns + c;
-      if (Math.abs(reference[i + 1]! - reference[i - 1]!) + Math.abs(reference[i + columns]! - reference[i - columns]!) > 0.05 * largest) found.push(i);
-    }
+  return largest;
+}
+
+/** Adds those of a row's pixels that change by more than `least` to the list; returns its new length. */
+function noteChanging(values: Float32Array, columns: number, from: number, to: number, least: number, found: Uint32Array, count: number): number {
+  for (let i = from; i < to; i++) {
+    if (Math.abs(values[i + 1]! - values[i - 1]!) + Math.abs(values[i + columns]! - values[i - columns]!) > least) found[count++] = i;
   }
-  const stride = Math.max(1, found.length / mostPixels);
-  return Uint32Array.from({ length: Math.floor(found.length / stride) }, (_, k) => found[Math.floor(k * stride)]!);
+  return count;
 }
 
 function wholeShift(reference: Float32Array, moved: Float32Array, columns: number, places: Uint32Array, reach: number): { dx: number; dy: number } | undefined {
@@ -76,23 +84,7 @@ function wholeShift(reference: Float32Array, moved: Float32Array, columns: numbe
   let highest = 0;
   for (let dy = -reach; dy <= reach; dy++) {
     for (let dx = -reach; dx <= reach; dx++) {
-      let n = 0;
-      let [sa, sb, saa, sbb, sab] = [0, 0, 0, 0, 0];
-      for (let k = 0; k < places.length; k += stride) {
-        const i = places[k]!;
-        const a = reference[i]!;
-        const b = moved[i + dy * columns + dx]!;
-        // NaN in either fails here.
-        if (!(a * b === a * b)) continue;
-        n++;
-        sa += a;
-        sb += b;
-        saa += a * a;
-        sbb += b * b;
-        sab += a * b;
-      }
-      if (n < leastPixels) continue;
-      const correlation = (sab - (sa * sb) / n) / Math.sqrt((saa - (sa * sa) / n) * (sbb - (sb * sb) / n));
+      const correlation = correlationAt(reference, moved, places, stride, dy * columns + dx);
       if (correlation > highest) {
         highest = correlation;
         best = { dx, dy };
@@ -100,4 +92,28 @@ function wholeShift(reference: Float32Array, moved: Float32Array, columns: numbe
     }
   }
   return best;
+}
+
+/** Correlation of the reference with the other map `offset` pixels on, over every `stride`-th place; NaN where too few can be compared. */
+function correlationAt(reference: Float32Array, moved: Float32Array, places: Uint32Array, stride: number, offset: number): number {
+  let n = 0;
+  let sa = 0;
+  let sb = 0;
+  let saa = 0;
+  let sbb = 0;
+  let sab = 0;
+  for (let k = 0; k < places.length; k += stride) {
+    const i = places[k]!;
+    const a = reference[i]!;
+    const b = moved[i + offset]!;
+    // NaN in either fails here.
+    if (!(a * b === a * b)) continue;
+    n++;
+    sa += a;
+    sb += b;
+    saa += a * a;
+    sbb += b * b;
+    sab += a * b;
+  }
+  return n < leastPixels ? Number.NaN : (sab - (sa * sb) / n) / Math.sqrt((saa - (sa * sa) / n) * (sbb - (sb * sb) / n));
 }

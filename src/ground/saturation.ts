@@ -6,14 +6,21 @@
  * @returns the clipping level, or undefined when the map does not show one.
  */
 export function findSaturation(values: Float32Array): number | undefined {
-  let top = Number.NEGATIVE_INFINITY;
-  for (const value of values) if (value > top) top = value;
+  const top = largestOf(values);
   if (!(top > 0) || !Number.isFinite(top)) return undefined;
-  let at = 0;
-  let near = 0;
-  for (const value of values) {
-    if (value >= top * (1 - 1e-4)) at++;
-    else if (value >= top * (1 - 1e-2)) near++;
-  }
+  const at = countFrom(values, top * (1 - 1e-4));
+  const near = countFrom(values, top * (1 - 1e-2)) - at;
   return at >= 6 && at > 0.2 * near ? top : undefined;
+}
+
+function largestOf(values: Float32Array): number {
+  let top = Number.NEGATIVE_INFINITY;
+  for (let i = 0; i < values.length; i++) if (values[i]! > top) top = values[i]!;
+  return top;
+}
+
+function countFrom(values: Float32Array, least: number): number {
+  let count = 0;
+  for (let i = 0; i < values.length; i++) if (values[i]! >= least) count++;
+  return count;
 }

@@ -114,26 +114,34 @@ function numberSegments(
 ): { segment: Uint16Array; count: number; known: Uint8Array; pixels: Uint32Array; rung: Float64Array } {
   const { labels, count } = flatSegments(rest, columns, rows, layerM);
   const pixels = new Uint32Array(2 * count + 2);
-  for (let i = 0; i < labels.length; i++) {
-    if (labels[i] === 0) continue;
-    labels[i] = 2 * labels[i]! + (planes && planes[i] === planes[i] ? 1 : 0);
-    pixels[labels[i]!]!++;
-  }
+  partByKnown(labels, planes, pixels);
   const bySize = [...pixels.keys()].filter((label) => label > 1 && pixels[label]! >= leastSegment * labels.length).sort((a, b) => pixels[b]! - pixels[a]!).slice(0, mostSegments);
   const numbers = new Uint16Array(pixels.length);
   bySize.forEach((label, k) => { numbers[label] = k + 1; });
   const segment = new Uint16Array(labels.length);
+  for (let i = 0; i < labels.length; i++) segment[i] = numbers[labels[i]!]!;
   // Height by the current: of a segment over several rungs any of its pixels will do, as a border would have parted it.
   const rung = new Float64Array(bySize.length + 1);
-  for (let i = 0; i < labels.length; i++) {
-    segment[i] = numbers[labels[i]!]!;
-    const plane = planes?.[i];
-    if (plane !== undefined && plane === plane) rung[segment[i]!] = plane;
-  }
+  if (planes) noteRungs(segment, planes, rung);
   return {
     segment, count: bySize.length, known: Uint8Array.from([0, ...bySize.map((label) => label % 2)]),
     pixels: Uint32Array.from([0, ...bySize.map((label) => pixels[label]!)]), rung,
   };
+}
+
+/** Doubles all labels, makes those of pixels with known planes odd, and counts the pixels of each. */
+function partByKnown(labels: Uint32Array, planes: Float32Array | undefined, pixels: Uint32Array): void {
+  const known = planes ?? new Float32Array(labels.length).fill(Number.NaN);
+  for (let i = 0; i < labels.length; i++) {
+    if (labels[i] === 0) continue;
+    const label = 2 * labels[i]! + (known[i] === known[i] ? 1 : 0);
+    labels[i] = label;
+    pixels[label]!++;
+  }
+}
+
+function noteRungs(segment: Uint16Array, planes: Float32Array, rung: Float64Array): void {
+  for (let i = 0; i < segment.length; i++) if (planes[i] === planes[i]) rung[segment[i]!] = planes[i]!;
 }
 
 interface Step {
@@ -145,19 +153,13 @@ interface Step {
 function stepsBetween(rest: Float32Array, segment: Uint16Array, count: number, columns: number, rows: number): (Step | undefined)[] {
   const size = count + 1;
   const lists: (number[] | undefined)[] = Array.from({ length: size * size });
-  const add = (i: number, j: number): void => {
-    const a = segment[i]!;
-    const b = segment[j]!;
-    if (a === b || a === 0 || b === 0) return;
-    const [from, to, up] = a < b ? [a, b, rest[j]! - rest[i]!] : [b, a, rest[i]! - rest[j]!];
-    if (up !== up) return;
-    const list = (lists[from * size + to] ??= []);
-    if (list.length < mostPairs) list.push(up);
-  };
-  for (let r = 0, i = 0; r < rows; r++) {
-    for (let c = 0; c < columns; c++, i++) {
-      if (c + apartPx < columns) add(i, i + apartPx);
-      if (r + apartPx < rows) add(i, i + apartPx * columns);
+  for (let r = 0; r < rows; r++) {
+    const start = r * columns;
+    const lastAlong = start + columns - apartPx;
+    const lastDown = r + apartPx < rows ? start + columns : start;
+    for (let i = nextPair(segment, start, lastAlong, lastDown, columns, start + columns); i < start + columns; i = nextPair(segment, i + 1, lastAlong, lastDown, columns, start + columns)) {
+      if (i < lastAlong) addStep(lists, size, rest, segment, i, i + apartPx);
+      if (i < lastDown) addStep(lists, size, rest, segment, i, i + apartPx * columns);
     }
   }
   const steps: (Step | undefined)[] = Array.from({ length: size * size });
@@ -168,4 +170,26 @@ function stepsBetween(rest: Float32Array, segment: Uint16Array, count: number, c
     steps[(at % size) * size + Math.floor(at / size)] = { upM: -upM, pairs: list.length };
   });
   return steps;
+}
+
+/** The next pixel from `i` on that lies in another segment than one of its partners along the line and down the column; `end` without any. */
+function nextPair(segment: Uint16Array, i: number, lastAlong: number, lastDown: number, columns: number, end: number): number {
+  for (; i < end; i++) {
+    const own = segment[i]!;
+    if (own === 0) continue;
+    if (i < lastAlong && segment[i + apartPx] !== own && segment[i + apartPx] !== 0) return i;
+    if (i < lastDown && segment[i + apartPx * columns] !== own && segment[i + apartPx * columns] !== 0) return i;
+  }
+  return end;
+}
+
+/** Notes the rise from one pixel to another, where they lie in two segments, under the lower number first. */
+function addStep(lists: (number[] | undefined)[], size: number, rest: Float32Array, segment: Uint16Array, i: number, j: number): void {
+  const a = segment[i]!;
+  const b = segment[j]!;
+  if (a === b || a === 0 || b === 0) return;
+  const up = a < b ? rest[j]! - rest[i]! : rest[i]! - rest[j]!;
+  if (up !== up) return;
+  const list = (lists[Math.min(a, b) * size + Math.max(a, b)] ??= []);
+  if (list.length < mostPairs) list.push(up);
 }

@@ -10,8 +10,9 @@ export function shiftStep(reference: Float32Array, moved: Float32Array, columns:
   const normal = new Float64Array(unknowns * unknowns);
   const right = new Float64Array(unknowns);
   const row = new Float64Array(unknowns);
+  const shift = interpolation(columns, dx, dy);
   for (const i of places) {
-    const value = designAt(reference, moved, columns, i, dx, dy, row);
+    const value = designAt(reference, moved, columns, i, shift, row);
     if (Number.isNaN(value)) continue;
     for (let a = 0; a < unknowns; a++) {
       right[a]! += row[a]! * value;
@@ -31,9 +32,10 @@ export function covarianceOfShift(reference: Float32Array, moved: Float32Array, 
   const normal = new Float64Array(unknowns * unknowns);
   const right = new Float64Array(unknowns);
   const row = new Float64Array(unknowns);
+  const shift = interpolation(columns, dx, dy);
   let [n, s, ss] = [0, 0, 0];
   for (const i of places) {
-    const value = designAt(reference, moved, columns, i, dx, dy, row);
+    const value = designAt(reference, moved, columns, i, shift, row);
     if (Number.isNaN(value)) continue;
     n++;
     s += value;
@@ -50,7 +52,7 @@ export function covarianceOfShift(reference: Float32Array, moved: Float32Array, 
   const scores = new Map<number, Float64Array>();
   let residual = 0;
   for (const i of places) {
-    const value = designAt(reference, moved, columns, i, dx, dy, row);
+    const value = designAt(reference, moved, columns, i, shift, row);
     if (Number.isNaN(value)) continue;
     let rest = value;
     for (let a = 0; a < unknowns; a++) rest -= row[a]! * solution[a]!;
@@ -76,19 +78,33 @@ export function covarianceOfShift(reference: Float32Array, moved: Float32Array, 
 }
 
 /** Fills one row of the design (gradient in x, in y, reference, 1) and returns the moved map's value there; NaN where anything is missing. */
-function designAt(reference: Float32Array, moved: Float32Array, columns: number, i: number, dx: number, dy: number, row: Float64Array): number {
-  row[0] = (reference[i + 1]! - reference[i - 1]!) / 2;
-  row[1] = (reference[i + columns]! - reference[i - columns]!) / 2;
-  row[2] = reference[i]!;
+function designAt(reference: Float32Array, moved: Float32Array, columns: number, i: number, shift: Interpolation, row: Float64Array): number {
+  const x = (reference[i + 1]! - reference[i - 1]!) / 2;
+  const y = (reference[i + columns]! - reference[i - columns]!) / 2;
+  const value = reference[i]!;
+  row[0] = x;
+  row[1] = y;
+  row[2] = value;
   row[3] = 1;
-  return row[0] * row[1] * row[2] === row[0] * row[1] * row[2] ? cubicAt(moved, columns, i, dx, dy) : Number.NaN;
+  return x * y * value === x * y * value ? cubicAt(moved, columns, i, shift) : Number.NaN;
+}
+
+/** Where the sixteen pixels begin, from a pixel, that a shifted value is read from, and their weights along x and y. */
+interface Interpolation {
+  readonly offset: number;
+  readonly wx: Float64Array;
+  readonly wy: Float64Array;
+}
+
+function interpolation(columns: number, dx: number, dy: number): Interpolation {
+  const wholeX = Math.floor(dx);
+  const wholeY = Math.floor(dy);
+  return { offset: wholeY * columns + wholeX, wx: weights(dx - wholeX), wy: weights(dy - wholeY) };
 }
 
 /** Catmull–Rom interpolation (Keys, IEEE Trans. Acoust. 29, 1153, 1981, a = −1/2) of the map beside pixel `i`. */
-function cubicAt(map: Float32Array, columns: number, i: number, dx: number, dy: number): number {
-  const [wholeX, wholeY] = [Math.floor(dx), Math.floor(dy)];
-  const start = i + wholeY * columns + wholeX;
-  const [wx, wy] = [weights(dx - wholeX), weights(dy - wholeY)];
+function cubicAt(map: Float32Array, columns: number, i: number, { offset, wx, wy }: Interpolation): number {
+  const start = i + offset;
   let sum = 0;
   for (let v = 0; v < 4; v++) {
     const at = start + (v - 1) * columns - 1;
@@ -97,8 +113,8 @@ function cubicAt(map: Float32Array, columns: number, i: number, dx: number, dy: 
   return sum;
 }
 
-function weights(t: number): readonly number[] {
-  return [((2 - t) * t - 1) * t / 2, ((3 * t - 5) * t * t + 2) / 2, ((4 - 3 * t) * t + 1) * t / 2, ((t - 1) * t * t) / 2];
+function weights(t: number): Float64Array {
+  return Float64Array.of(((2 - t) * t - 1) * t / 2, ((3 * t - 5) * t * t + 2) / 2, ((4 - 3 * t) * t + 1) * t / 2, ((t - 1) * t * t) / 2);
 }
 
 function times(matrix: Float64Array, vector: Float64Array): Float64Array {

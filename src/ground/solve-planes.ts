@@ -34,7 +34,7 @@ const tie = 2;
  * mean), so that levels and form are found whatever the lines' offsets are. What only varies from row to row is left at zero.
  */
 export function solvePlanes(input: PlanesInput): PlanesChange {
-  const { rest, ground, columns, rows, order, lines, level, levels } = input;
+  const { columns, rows, order, lines, levels } = input;
   const terms = ((order + 1) * (order + 2)) / 2;
   const size = terms + levels;
   const normal = new Float64Array(size * size);
@@ -43,21 +43,14 @@ export function solvePlanes(input: PlanesInput): PlanesChange {
   const py = axisTable(rows, order);
   const step = Math.max(1, Math.round((columns * rows) / mostPixels));
 
-  const basis = new Float64Array(terms);
-  let row = new RowSums(terms, levels);
+  const sums = new Float64Array(size + 2);
+  const equations = { terms, size, normal, right, sums, basis: new Float64Array(terms) };
   for (let r = 0; r < rows; r++) {
-    for (let c = r % step; c < columns; c += step) {
-      const i = r * columns + c;
-      if (ground[i] === 0) continue;
-      let k = 0;
-      for (let total = 0; total <= order; total++) {
-        for (let j = 0; j <= total; j++) basis[k++] = px[c * (order + 1) + total - j]! * py[r * (order + 1) + j]!;
-      }
-      row.add(basis, rest[i]!, level[i]!, normal, right, size);
-    }
+    const ofRow = py.subarray(r * (order + 1), (r + 1) * (order + 1));
+    addRow(equations, input, order, px, ofRow, r * columns, r % step, step);
     if (!lines && r + 1 < rows) continue;
-    row.eliminate(normal, right, size);
-    row = new RowSums(terms, levels);
+    eliminate(equations);
+    sums.fill(0);
   }
   // The lower band of the symmetric matrix, as the solver takes it.
   const band = new Float64Array(size * size);
@@ -70,47 +63,66 @@ export function solvePlanes(input: PlanesInput): PlanesChange {
   return { form: { order, coefficients: solved.slice(0, terms) }, levelM };
 }
 
-/** Sums over the pixels that share an offset. */
-class RowSums {
-  private pixels = 0;
-  private sum = 0;
-  private readonly basis: Float64Array;
-  private readonly inLevel: Float64Array;
-  private readonly terms: number;
+interface Equations {
+  readonly terms: number;
+  readonly size: number;
+  readonly normal: Float64Array;
+  readonly right: Float64Array;
+  /** Over the pixels that share an offset: sums of the terms, pixels by level, and at the end the number of pixels and the sum of their values. */
+  readonly sums: Float64Array;
+  readonly basis: Float64Array;
+}
 
-  constructor(terms: number, levels: number) {
-    this.terms = terms;
-    this.basis = new Float64Array(terms);
-    this.inLevel = new Float64Array(levels + 1);
+/** Adds the ground of one row, from column `from` in steps, to the equations. */
+function addRow(
+  equations: Equations, { rest, ground, columns, level }: PlanesInput, order: number, px: Float64Array, py: Float64Array, start: number, from: number, step: number,
+): void {
+  const { basis, sums, size } = equations;
+  for (let c = from; c < columns; c += step) {
+    const i = start + c;
+    if (ground[i] === 0) continue;
+    fillBasis(basis, order, px, c * (order + 1), py);
+    sums[size]!++;
+    sums[size + 1]! += rest[i]!;
+    addPixel(equations, rest[i]!);
+    if (level[i] !== 0) addToLevel(equations, level[i]!, rest[i]!);
   }
+}
 
-  add(basis: Float64Array, value: number, level: number, normal: Float64Array, right: Float64Array, size: number): void {
-    const { terms } = this;
-    this.pixels++;
-    this.sum += value;
-    this.inLevel[level]!++;
-    for (let a = 0; a < terms; a++) {
-      const ba = basis[a]!;
-      this.basis[a]! += ba;
-      right[a]! += ba * value;
-      for (let b = 0; b <= a; b++) normal[a * size + b]! += ba * basis[b]!;
-    }
-    if (level === 0) return;
-    const at = terms + level - 1;
-    right[at]! += value;
-    normal[at * size + at]!++;
-    for (let b = 0; b < terms; b++) normal[at * size + b]! += basis[b]!;
+function fillBasis(basis: Float64Array, order: number, px: Float64Array, at: number, py: Float64Array): void {
+  let k = 0;
+  for (let total = 0; total <= order; total++) {
+    for (let j = 0; j <= total; j++) basis[k++] = px[at + total - j]! * py[j]!;
   }
+}
 
-  /** Takes the common offset out of the equations: the products of the sums over the number of pixels. */
-  eliminate(normal: Float64Array, right: Float64Array, size: number): void {
-    const { terms, pixels, sum, inLevel } = this;
-    if (pixels === 0) return;
-    const present = [...this.basis.keys(), ...[...inLevel.keys()].filter((level) => level > 0 && inLevel[level]! > 0).map((level) => terms + level - 1)];
-    const total = (at: number): number => (at < terms ? this.basis[at]! : inLevel[at - terms + 1]!);
-    for (const a of present) {
-      right[a]! -= (total(a) * sum) / pixels;
-      for (const b of present) if (b <= a) normal[a * size + b]! -= (total(a) * total(b)) / pixels;
-    }
+function addPixel({ terms, size, normal, right, sums, basis }: Equations, value: number): void {
+  for (let a = 0; a < terms; a++) {
+    const ba = basis[a]!;
+    sums[a]! += ba;
+    right[a]! += ba * value;
+    for (let b = 0; b <= a; b++) normal[a * size + b]! += ba * basis[b]!;
+  }
+}
+
+function addToLevel({ terms, size, normal, right, sums, basis }: Equations, level: number, value: number): void {
+  const at = terms + level - 1;
+  sums[at]!++;
+  right[at]! += value;
+  normal[at * size + at]!++;
+  for (let b = 0; b < terms; b++) normal[at * size + b]! += basis[b]!;
+}
+
+/** Takes the common offset out of the equations: the products of the sums over the number of pixels. */
+function eliminate({ terms, size, normal, right, sums }: Equations): void {
+  const pixels = sums[size]!;
+  const sum = sums[size + 1]!;
+  if (pixels === 0) return;
+  for (let a = 0; a < size; a++) {
+    const total = sums[a]!;
+    // A level without a pixel on the row is not touched by it.
+    if (a >= terms && total === 0) continue;
+    right[a]! -= (total * sum) / pixels;
+    for (let b = 0; b <= a; b++) if (b < terms || sums[b] !== 0) normal[a * size + b]! -= (total * sums[b]!) / pixels;
   }
 }

@@ -1,6 +1,7 @@
 /** The peak of readings that an amplifier's noise makes around one level. */
 import { madScale } from '../stats/mad.ts';
 import { medianInPlace } from '../stats/median.ts';
+import { selectInPlace } from '../stats/select.ts';
 
 export interface Peak {
   readonly centre: number;
@@ -22,9 +23,10 @@ const errors = { median: 1.2533, mad: 1.167 } as const;
 /** Finite values of admitted pixels, thinned to at most about 100 000. */
 export function thinned(values: Float32Array, use: (index: number) => boolean): Float64Array {
   const step = Math.max(1, Math.floor(values.length / 100_000));
-  const out: number[] = [];
-  for (let i = 0; i < values.length; i += step) if (!Number.isNaN(values[i]!) && use(i)) out.push(values[i]!);
-  return Float64Array.from(out);
+  const out = new Float64Array(Math.ceil(values.length / step));
+  let count = 0;
+  for (let i = 0; i < values.length; i += step) if (!Number.isNaN(values[i]!) && use(i)) out[count++] = values[i]!;
+  return out.slice(0, count);
 }
 
 /**
@@ -39,18 +41,34 @@ export function peakOf(sample: Float64Array, quantum = 0): Peak {
   let width = 0;
   let count = 0;
   let below = 0;
+  const buffer = new Float64Array(sample.length);
   for (let round = 0; round < 6; round++) {
-    const under = sample.filter((v) => v <= centre + quantum / 2).map((v) => Math.abs(centre - v)).sort();
-    const near = under.filter((d) => width === 0 || d < 4 * width);
-    width = Math.max(rounding, near.length === 0 ? 0 : madScale * near[near.length >> 1]!);
-    below = near.length;
-    const around = sample.filter((v) => Math.abs(v - centre) < Math.max(3 * width, 1.5 * quantum));
-    count = around.length;
+    below = distancesBelow(sample, centre, quantum / 2, width === 0 ? Number.POSITIVE_INFINITY : 4 * width, buffer);
+    width = Math.max(rounding, below === 0 ? 0 : madScale * selectInPlace(buffer, below >> 1, below));
+    count = valuesAround(sample, centre, Math.max(3 * width, 1.5 * quantum), buffer);
     if (count === 0) break;
-    if (quantum > 0) ({ centre, width } = moments(around, rounding));
-    else centre = medianInPlace(around, count);
+    if (quantum > 0) ({ centre, width } = moments(buffer.subarray(0, count), rounding));
+    else centre = medianInPlace(buffer, count);
   }
   return { centre, centreSe: (errors.median * width) / Math.sqrt(count), width, widthSe: (errors.mad * width) / Math.sqrt(below), count };
+}
+
+/** Distances from the centre, those below `limit`, of the values up to `above` over it, into the buffer; returns how many. */
+function distancesBelow(sample: Float64Array, centre: number, above: number, limit: number, into: Float64Array): number {
+  let count = 0;
+  for (let k = 0; k < sample.length; k++) {
+    const value = sample[k]!;
+    const distance = Math.abs(centre - value);
+    if (value <= centre + above && distance < limit) into[count++] = distance;
+  }
+  return count;
+}
+
+/** The values nearer to the centre than `reach`, into the buffer; returns how many. */
+function valuesAround(sample: Float64Array, centre: number, reach: number, into: Float64Array): number {
+  let count = 0;
+  for (let k = 0; k < sample.length; k++) if (Math.abs(sample[k]! - centre) < reach) into[count++] = sample[k]!;
+  return count;
 }
 
 function moments(around: Float64Array, rounding: number): { centre: number; width: number } {
@@ -62,7 +80,7 @@ function moments(around: Float64Array, rounding: number): { centre: number; widt
 }
 
 function densest(sample: Float64Array): number {
-  const sorted = Float64Array.from(sample).sort();
+  const sorted = sample.slice().sort();
   const n = Math.min(sorted.length, Math.max(leastPixels, Math.ceil(denseShare * sorted.length)));
   let best = 0;
   for (let i = 0; i + n <= sorted.length; i++) if (sorted[i + n - 1]! - sorted[i]! < sorted[best + n - 1]! - sorted[best]!) best = i;

@@ -13,6 +13,13 @@ export function codeOf(cause: Cause): number {
   return causes.indexOf(cause);
 }
 
+/** 1 where a pixel has the code. */
+export function maskOfCode(codes: Uint8Array, code: number): Uint8Array {
+  const mask = new Uint8Array(codes.length);
+  for (let i = 0; i < mask.length; i++) if (codes[i] === code) mask[i] = 1;
+  return mask;
+}
+
 export interface BookingInput {
   readonly grid: Grid;
   readonly footprint: Uint8Array;
@@ -40,7 +47,7 @@ export interface BookingInput {
  * - Stray: what is left in band in a patch (4-connected) below `strayMinM2`, or unconnected.
  */
 export function bookCauses(input: BookingInput): Uint8Array {
-  const { grid, footprint, flawLabels, flawCauses } = input;
+  const { grid, footprint, flawLabels, flawCauses, log10Relative, unmeasured: notMeasured, starved: starvedAt } = input;
   const count = footprint.length;
   const codes = new Uint8Array(count);
   const flawCodes = Uint8Array.from(flawCauses, (cause) => (cause ? codeOf(cause) : 0));
@@ -54,15 +61,15 @@ export function bookCauses(input: BookingInput): Uint8Array {
       codes[i] = flaw;
       continue;
     }
-    if (input.unmeasured[i] === 1) codes[i] = unmeasured;
+    if (notMeasured[i] === 1) codes[i] = unmeasured;
     else if (flaw === open) codes[i] = open;
-    else if (!input.log10Relative) codes[i] = usable;
+    else if (!log10Relative) codes[i] = usable;
     else {
-      const relative = input.log10Relative[i]!;
+      const relative = log10Relative[i]!;
       if (Number.isNaN(relative)) codes[i] = unmeasured;
       else if (relative > band) codes[i] = thin;
       else if (relative < -band) codes[i] = thick;
-      else codes[i] = input.starved?.[i] === 1 ? starved : usable;
+      else codes[i] = starvedAt && starvedAt[i] === 1 ? starved : usable;
     }
   }
   if (input.rimM > 0) bookNear(codes, footprint, grid, input.rimM, true);
@@ -126,6 +133,6 @@ function bookStray(codes: Uint8Array, input: BookingInput, areaM2: number): void
   const stray = codeOf('stray');
   if (input.unconnected) for (let i = 0; i < codes.length; i++) if (codes[i] === usable && input.unconnected[i] === 1) codes[i] = stray;
   if (!(input.strayMinM2 > 0)) return;
-  const { labels, pixels } = labelComponents(codes.map((code) => (code === usable ? 1 : 0)), input.grid.columns, input.grid.rows, 4);
+  const { labels, pixels } = labelComponents(maskOfCode(codes, usable), input.grid.columns, input.grid.rows, 4);
   for (let i = 0; i < codes.length; i++) if (labels[i]! > 0 && pixels[labels[i]!]! * areaM2 < input.strayMinM2) codes[i] = stray;
 }

@@ -1,4 +1,4 @@
-import { median } from '../stats/median.ts';
+import { medianInPlace } from '../stats/median.ts';
 import { codeOf } from './book-causes.ts';
 import type { Cause } from './ledger.ts';
 import { causes } from './ledger.ts';
@@ -14,14 +14,23 @@ export function glowMap(codes: Uint8Array, density: Float32Array | undefined, me
   const outside = codeOf('outside');
   const dark = flagsOf(['bubble', 'short', 'residue', 'open']);
   const unknown = flagsOf(['wrinkle', 'unmeasured', 'outside']);
-  const norm = density ? median(density.filter((value, i) => codes[i] === usable && !Number.isNaN(value))) : Number.NaN;
+  const norm = density ? medianInPlace(valuesOf(density, codes, usable)) : Number.NaN;
   const glow = new Float32Array(codes.length).fill(Number.NaN);
-  for (let i = 0; i < glow.length; i++) {
-    const code = codes[i]!;
-    if (dark[code] === 1 || (metal?.[i] === 1 && code !== outside)) glow[i] = 0;
-    else if (unknown[code] === 0 && density && Number.isFinite(density[i]!)) glow[i] = density[i]! / (norm > 0 ? norm : 1);
+  if (density) {
+    const one = norm > 0 ? norm : 1;
+    for (let i = 0; i < glow.length; i++) if (unknown[codes[i]!] === 0 && Number.isFinite(density[i]!)) glow[i] = density[i]! / one;
   }
+  for (let i = 0; i < glow.length; i++) if (dark[codes[i]!] === 1) glow[i] = 0;
+  if (metal) for (let i = 0; i < glow.length; i++) if (metal[i] === 1 && codes[i] !== outside) glow[i] = 0;
   return glow;
+}
+
+/** The known values of the pixels with a code. */
+function valuesOf(values: Float32Array, codes: Uint8Array, code: number): Float64Array {
+  const out = new Float64Array(values.length);
+  let count = 0;
+  for (let i = 0; i < values.length; i++) if (codes[i] === code && values[i] === values[i]) out[count++] = values[i]!;
+  return out.subarray(0, count);
 }
 
 /** One flag per code. */

@@ -8,7 +8,7 @@ import type { CurrentGround, Ground } from '../ground/ground.ts';
 import { layerMask } from '../read/footprint.ts';
 import type { Sample } from '../read/sample.ts';
 import type { Sheet } from '../sheet/sheet.ts';
-import { bookCauses, codeOf } from './book-causes.ts';
+import { bookCauses, codeOf, maskOfCode } from './book-causes.ts';
 import { glowMap } from './glow-map.ts';
 import { layerCostSpread } from './layer-cost-spread.ts';
 import type { Cause, Ledger, LedgerRow, Usable } from './ledger.ts';
@@ -56,7 +56,7 @@ export function keepLedger(input: LedgerInput): Ledger {
 
   const areaM2 = pixelAreaM2(grid);
   const pixels = new Uint32Array(causes.length);
-  for (const code of codes) pixels[code]!++;
+  for (let i = 0; i < count; i++) pixels[codes[i]!]!++;
   const footprintPixels = count - pixels[0]!;
   const rows: LedgerRow[] = causes.slice(1).map((cause, k) => ({
     code: k + 1, cause, pixels: pixels[k + 1]!, areaM2: pixels[k + 1]! * areaM2,
@@ -95,7 +95,7 @@ function usableOf(input: LedgerInput, codes: Uint8Array, pixels: number, footpri
   const { sample, ground, barrier } = input;
   const { columns, rows } = sample.grid;
   const usableCode = codeOf('usable');
-  const patches = labelComponents(codes.map((code) => (code === usableCode ? 1 : 0)), columns, rows, 4);
+  const patches = labelComponents(maskOfCode(codes, usableCode), columns, rows, 4);
   let largest = 0;
   for (let n = 1; n <= patches.count; n++) largest = Math.max(largest, patches.pixels[n]!);
   const interval = usableInterval({ grid: sample.grid, codes, usablePixels: pixels, footprintPixels, ...(barrier && ground.current ? { density: densityOf(input, barrier, ground.current) } : {}) });
@@ -176,5 +176,8 @@ function metalOf({ grid, outlines }: Sample): Uint8Array | undefined {
 
 /** Without a sheet stage the density is that of the barrier alone. */
 function relativeOf(barrier: Barrier | undefined): Float32Array | undefined {
-  return barrier?.log10Relative.data.map((value) => 10 ** value);
+  if (!barrier) return undefined;
+  const out = barrier.log10Relative.data.slice();
+  for (let i = 0; i < out.length; i++) out[i] = 10 ** out[i]!;
+  return out;
 }

@@ -18,27 +18,37 @@ const clippedShare = 0.005;
  * spread ones; NaN and infinite values are skipped. Undefined when there is no value at all.
  */
 export function displayRange(values: Float32Array): DisplayRange | undefined {
-  let least = Infinity;
-  let most = -Infinity;
-  let missingPixels = 0;
-  // An odd stride does not fall in step with the usual even line lengths.
-  const stride = Math.ceil(values.length / sampleSize) | 1;
-  const kept: number[] = [];
-  for (let i = 0; i < values.length; i++) {
-    const value = values[i] ?? Number.NaN;
-    if (!Number.isFinite(value)) {
-      missingPixels++;
-      continue;
-    }
-    least = Math.min(least, value);
-    most = Math.max(most, value);
-    if (i % stride === 0) kept.push(value);
-  }
+  const { least, most, missingPixels } = extremes(values);
   if (missingPixels === values.length) return undefined;
-  const sorted = Float64Array.from(kept).sort();
+  const sorted = evenlySpread(values).sort();
   const low = sorted[Math.floor(clippedShare * (sorted.length - 1))] ?? least;
   const high = sorted[Math.ceil((1 - clippedShare) * (sorted.length - 1))] ?? most;
   return { low, high, clipsLow: least < low, clipsHigh: most > high, missingPixels };
+}
+
+function extremes(values: Float32Array): { least: number; most: number; missingPixels: number } {
+  let least = Infinity;
+  let most = -Infinity;
+  let missingPixels = 0;
+  for (let i = 0; i < values.length; i++) {
+    const value = values[i]!;
+    // Neither a missing nor an infinite value less itself is 0.
+    if (value - value !== 0) missingPixels++;
+    else {
+      if (value < least) least = value;
+      if (value > most) most = value;
+    }
+  }
+  return { least, most, missingPixels };
+}
+
+function evenlySpread(values: Float32Array): Float64Array {
+  // An odd stride does not fall in step with the usual even line lengths.
+  const stride = Math.ceil(values.length / sampleSize) | 1;
+  const kept = new Float64Array(Math.ceil(values.length / stride));
+  let count = 0;
+  for (let i = 0; i < values.length; i += stride) if (Number.isFinite(values[i]!)) kept[count++] = values[i]!;
+  return kept.subarray(0, count);
 }
 
 /** Round numbers from `low` to `high`, three to eight of them; the value itself when the range is empty. */

@@ -1,6 +1,6 @@
 /** Maps as small pictures: one palette entry per pixel, ready for PNG or for a canvas. */
 import { encode } from 'fast-png';
-import { appearanceByCode, isHatchInk } from './appearance.ts';
+import { appearanceByCode, hatchPeriod, isHatchInk } from './appearance.ts';
 import { base64 } from './base64.ts';
 import { cividis, cividisLength } from './cividis.ts';
 
@@ -31,15 +31,20 @@ const smallestCausePicture = 640;
 export function valuePicture(values: Float32Array, extent: Extent, low: number, high: number): Picture {
   const width = Math.min(extent.columns, largestPicture);
   const height = Math.min(extent.rows, largestPicture);
-  const indices = new Uint8Array(width * height);
-  const means = meanInBoxes(values, extent, width, height);
-  const span = high > low ? high - low : 1;
-  for (let i = 0; i < indices.length; i++) {
-    const share = ((means[i] ?? Number.NaN) - low) / span;
-    indices[i] = Number.isNaN(share) ? missingIndex : Math.round(Math.min(1, Math.max(0, share)) * (levels - 1));
-  }
+  const whole = width === extent.columns && height === extent.rows;
+  const indices = indicesOf(whole ? values : meanInBoxes(values, extent, width, height), low, high > low ? high - low : 1);
   const ramp = Array.from({ length: levels }, (_, level) => cividis(Math.round((level / (levels - 1)) * (cividisLength - 1))));
   return { width, height, indices, palette: [...ramp, missingColour] };
+}
+
+/** Place in the palette of every value. */
+function indicesOf(values: Float32Array | Float64Array, low: number, span: number): Uint8Array {
+  const indices = new Uint8Array(values.length);
+  for (let i = 0; i < indices.length; i++) {
+    const share = (values[i]! - low) / span;
+    indices[i] = share !== share ? missingIndex : Math.round(Math.min(1, Math.max(0, share)) * (levels - 1));
+  }
+  return indices;
 }
 
 /**
@@ -53,13 +58,26 @@ export function causePicture(codes: Uint8Array, extent: Extent, aspect: number):
   const height = Math.max(1, Math.round(aspect >= 1 ? longer / aspect : longer));
   const common = modeInBoxes(codes, extent, width, height);
   const indices = new Uint8Array(width * height);
-  for (let i = 0; i < indices.length; i++) {
-    const code = common[i] ?? 0;
-    const look = appearanceByCode[code];
-    const ink = look !== undefined && isHatchInk(look.hatch, i % width, Math.floor(i / width));
-    indices[i] = code * 2 + (ink ? 1 : 0);
-  }
+  const ink = hatchTable();
+  for (let y = 0; y < height; y++) hatchRow(common, y * width, width, ink, (y % hatchPeriod) * hatchPeriod, indices);
   return { width, height, indices, palette: appearanceByCode.flatMap(({ fill, ink }) => [rgb(fill), rgb(ink)]) };
+}
+
+/** 1 where the hatch's line lies: by code, then row and column within a period. */
+function hatchTable(): Uint8Array {
+  const period = hatchPeriod * hatchPeriod;
+  return Uint8Array.from({ length: appearanceByCode.length * period }, (_, at) => {
+    const { hatch } = appearanceByCode[Math.floor(at / period)]!;
+    return isHatchInk(hatch, at % hatchPeriod, Math.floor((at % period) / hatchPeriod)) ? 1 : 0;
+  });
+}
+
+function hatchRow(codes: Uint8Array, start: number, width: number, ink: Uint8Array, row: number, indices: Uint8Array): void {
+  const period = hatchPeriod * hatchPeriod;
+  for (let x = 0; x < width; x++) {
+    const code = codes[start + x]!;
+    indices[start + x] = code * 2 + ink[code * period + row + (x % hatchPeriod)]!;
+  }
 }
 
 /** A one-line picture of the colour scale, low on the left. */

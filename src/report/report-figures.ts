@@ -105,5 +105,7 @@ function aspectOf(grid: Grid): number {
 }
 
 function inNm(map: ScalarMap): Float32Array {
-  return map.data.map((metres) => metres * 1e9);
+  const nm = new Float32Array(map.data.length);
+  for (let i = 0; i < nm.length; i++) nm[i] = map.data[i]! * 1e9;
+  return nm;
 }

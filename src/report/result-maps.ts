@@ -40,5 +40,7 @@ export function resultMaps({ sample: { grid }, ground, flaws, barrier, ledger }:
 }
 
 function inNm(metres: Float32Array): Float32Array {
-  return metres.map((value) => value * 1e9);
+  const nm = new Float32Array(metres.length);
+  for (let i = 0; i < nm.length; i++) nm[i] = metres[i]! * 1e9;
+  return nm;
 }
