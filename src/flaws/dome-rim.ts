@@ -6,12 +6,22 @@ export interface Point {
   readonly yM: number;
 }
 
+/** Unit vector of a ray; y runs down. */
+export interface Direction {
+  readonly ux: number;
+  readonly uy: number;
+}
+
+/** Rays evenly around. */
+export function directionsAround(count: number): readonly Direction[] {
+  return Array.from({ length: count }, (_, k) => ({ ux: Math.cos((2 * Math.PI * k) / count), uy: Math.sin((2 * Math.PI * k) / count) }));
+}
+
 /** The break of slope is at least this part of that at the rim of a paraboloid of the same height and radius. */
 const leastBreak = 0.4;
 
 /** Where the mask ends along a ray, if that is within `stray` pixels of the radius. Off the map nothing ends. */
-export function edgeAlong({ columns, rows, pitchXM, pitchYM, mask }: DomeInput, { xM, yM }: Point, radiusM: number, angle: number, stray: number): Point | undefined {
-  const [ux, uy] = [Math.cos(angle), Math.sin(angle)];
+export function edgeAlong({ columns, rows, pitchXM, pitchYM, mask }: DomeInput, { xM, yM }: Point, radiusM: number, { ux, uy }: Direction, stray: number): Point | undefined {
   const pixelM = Math.hypot(ux * pitchXM, uy * pitchYM);
   const from = radiusM - stray * pixelM;
   for (let at = from; at <= radiusM + stray * pixelM; at += 0.25 * pixelM) {
@@ -29,8 +39,7 @@ export function edgeAlong({ columns, rows, pitchXM, pitchYM, mask }: DomeInput, 
  * Where the height breaks its slope along a ray, between two distances. A paraboloid h(1 − ρ²) falls with 2h/R at its rim and no longer beyond it, whatever
  * smooth thing it stands on; what breaks by less than 0.4 of that is none. Of several the one with the largest part counts. `heightM` is the height over the rim, `stepPx` how finely is looked.
  */
-export function breakAlong(input: DomeInput, { xM, yM }: Point, heightM: number, angle: number, fromM: number, toM: number, stepPx = 0.5): Point | undefined {
-  const [ux, uy] = [Math.cos(angle), Math.sin(angle)];
+export function breakAlong(input: DomeInput, { xM, yM }: Point, heightM: number, { ux, uy }: Direction, fromM: number, toM: number, stepPx = 0.5): Point | undefined {
   const pixelM = Math.hypot(ux * input.pitchXM, uy * input.pitchYM);
   const height = (at: number): number => heightAt(input, xM + at * ux, yM + at * uy);
   const armM = 2 * pixelM;

@@ -1,6 +1,6 @@
 /** Circles from which domes are sought. */
 import { squaredDistance } from '../grid/distance.ts';
-import { breakAlong, circleThrough } from './dome-rim.ts';
+import { breakAlong, circleThrough, directionsAround } from './dome-rim.ts';
 import type { Point } from './dome-rim.ts';
 import type { DomeInput } from './find-domes.ts';
 
@@ -18,7 +18,7 @@ export interface DomeStart {
 /** A dome of a smaller radius has too few pixels for its outline to tell a circle, pixels. */
 const leastRadiusPx = 3;
 /** Directions in which the ground about a summit is followed. */
-const directions = 16;
+const around = directionsAround(16);
 /** Nor is a dome about a summit sought beyond this, pixels: larger ones are seldom run through on all sides. */
 const mostRadiusPx = 24;
 /** Nor about one lower than this many standard deviations of the noise: a break of slope must stand out of it. */
@@ -69,11 +69,11 @@ export function startsBySummits(input: DomeInput, taken: Uint32Array): DomeStart
 function rimAbout(input: DomeInput, centre: Point, heightM: number, mostM: number): Point[] {
   const pixelM = Math.max(input.pitchXM, input.pitchYM);
   const points: { point: Point; awayM: number }[] = [];
-  for (let k = 0; k < directions; k++) {
-    const point = breakAlong(input, centre, heightM / 2, (2 * Math.PI * k) / directions, 2 * pixelM, mostM, 1);
+  for (const direction of around) {
+    const point = breakAlong(input, centre, heightM / 2, direction, 2 * pixelM, mostM, 1);
     if (point) points.push({ point, awayM: Math.hypot(point.xM - centre.xM, point.yM - centre.yM) });
   }
-  if (points.length < directions / 2) return [];
+  if (points.length < around.length / 2) return [];
   points.sort((a, b) => a.awayM - b.awayM);
   const middle = points[points.length >> 1]!.awayM;
   return points.filter(({ awayM }) => awayM > middle / 2 && awayM < 1.5 * middle).map(({ point }) => point);

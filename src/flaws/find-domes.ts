@@ -1,6 +1,6 @@
 /** Round domes, also where other things lean on them or run through them. */
-import { breakAlong, circleThrough, edgeAlong } from './dome-rim.ts';
-import type { Point } from './dome-rim.ts';
+import { breakAlong, circleThrough, directionsAround, edgeAlong } from './dome-rim.ts';
+import type { Direction, Point } from './dome-rim.ts';
 import { startsByOutline, startsBySummits } from './dome-starts.ts';
 import type { DomeStart } from './dome-starts.ts';
 
@@ -84,7 +84,7 @@ export function findDomes(input: DomeInput): Domes {
   return { labels, count };
 }
 
-const angles = Array.from({ length: directions }, (_, k) => (2 * Math.PI * k) / directions);
+const around = directionsAround(directions);
 
 /** Moves a circle on to its rim, which is where its slope breaks or the flawed ground ends; undefined where too little of it is one. y runs down here. */
 function settle(input: DomeInput, start: DomeStart): Circle | undefined {
@@ -94,14 +94,14 @@ function settle(input: DomeInput, start: DomeStart): Circle | undefined {
   const least = leastFreeIfHigh * onMap(input, circle).share * directions;
   let near = 0;
   const firstM = breaks ? heightOverRim(input, circle) : 0;
-  for (let k = 0; k < directions; k += 4) if (breaks ? breakNear(input, circle, firstM, angles[k]!, straysPx[0]) : edgeAlong(input, circle, circle.radiusM, angles[k]!, straysPx[0])) near++;
+  for (let k = 0; k < directions; k += 4) if (breaks ? breakNear(input, circle, firstM, around[k]!, straysPx[0]) : edgeAlong(input, circle, circle.radiusM, around[k]!, straysPx[0])) near++;
   if (near < (breaks ? leastRim * directions : least) / 4 - 1) return undefined;
   for (const strayed of straysPx) {
     const { radiusM } = circle;
     const heightM = breaks ? heightOverRim(input, circle) : 0;
     const rim: Point[] = [];
-    for (const angle of angles) {
-      const point = breaks ? breakNear(input, circle, heightM, angle, strayed) : edgeAlong(input, circle, radiusM, angle, strayed);
+    for (const direction of around) {
+      const point = breaks ? breakNear(input, circle, heightM, direction, strayed) : edgeAlong(input, circle, radiusM, direction, strayed);
       if (point) rim.push(point);
     }
     if (rim.length < least) return undefined;
@@ -115,15 +115,15 @@ function settle(input: DomeInput, start: DomeStart): Circle | undefined {
 /** The circle with what is free of it, if enough of it is a rim. */
 function judged(input: DomeInput, circle: Ring, breaks: boolean): Circle | undefined {
   const { radiusM } = circle;
-  const free = angles.map((angle) => edgeAlong(input, circle, radiusM, angle, strayPx) !== undefined);
+  const free = around.map((direction) => edgeAlong(input, circle, radiusM, direction, strayPx) !== undefined);
   const on = onMap(input, circle);
   if (on.share < leastOnMap) return undefined;
   const share = free.filter(Boolean).length / directions / on.share;
   const found = { ...circle, free, leaning: breaks && share < leaningFree };
   if (breaks) {
     const heightM = heightOverRim(input, circle);
-    const rim = angles.filter((angle) => breakNear(input, circle, heightM, angle, strayPx) !== undefined).length / directions / on.share;
-    const ends = angles.filter((angle) => edgeAlong(input, circle, radiusM, angle, (endsWithin * radiusM) / pixelAlong(input, angle)) !== undefined).length / directions / on.share;
+    const rim = around.filter((direction) => breakNear(input, circle, heightM, direction, strayPx) !== undefined).length / directions / on.share;
+    const ends = around.filter((direction) => edgeAlong(input, circle, radiusM, direction, (endsWithin * radiusM) / pixelAlong(input, direction)) !== undefined).length / directions / on.share;
     return share >= Math.max(leastFreeIfBroken, mostlyFree * ends) && rim >= leastRim && outsideOverInside(input, found) * standsOut <= 1 ? found : undefined;
   }
   if (on.share < 1) return share >= leastFreeIfCut ? found : undefined;
@@ -134,22 +134,22 @@ function judged(input: DomeInput, circle: Ring, breaks: boolean): Circle | undef
   return small && share < 0.85 && ratio > goesOnPart ? undefined : found;
 }
 
-function breakNear(input: DomeInput, circle: Ring, heightM: number, angle: number, stray: number): Point | undefined {
-  const strayM = stray * pixelAlong(input, angle);
-  return breakAlong(input, circle, heightM, angle, circle.radiusM - strayM, circle.radiusM + strayM);
+function breakNear(input: DomeInput, circle: Ring, heightM: number, direction: Direction, stray: number): Point | undefined {
+  const strayM = stray * pixelAlong(input, direction);
+  return breakAlong(input, circle, heightM, direction, circle.radiusM - strayM, circle.radiusM + strayM);
 }
 
 /** Length of a pixel's step in a direction, metres. */
-function pixelAlong({ pitchXM, pitchYM }: DomeInput, angle: number): number {
-  return Math.hypot(Math.cos(angle) * pitchXM, Math.sin(angle) * pitchYM);
+function pixelAlong({ pitchXM, pitchYM }: DomeInput, { ux, uy }: Direction): number {
+  return Math.hypot(ux * pitchXM, uy * pitchYM);
 }
 
 /** Share of a circle's directions in which it lies on the map. */
 function onMap({ columns, rows, pitchXM, pitchYM }: DomeInput, { xM, yM, radiusM }: Ring): { readonly share: number } {
   const [width, height] = [columns * pitchXM, rows * pitchYM];
   if (xM - radiusM > pitchXM && yM - radiusM > pitchYM && xM + radiusM < width - pitchXM && yM + radiusM < height - pitchYM) return { share: 1 };
-  const on = angles.filter((angle) => {
-    const [x, y] = [xM + (radiusM + pitchXM) * Math.cos(angle), yM + (radiusM + pitchYM) * Math.sin(angle)];
+  const on = around.filter(({ ux, uy }) => {
+    const [x, y] = [xM + (radiusM + pitchXM) * ux, yM + (radiusM + pitchYM) * uy];
     return x > 0 && x < width && y > 0 && y < height;
   });
   return { share: on.length / directions };
@@ -157,7 +157,7 @@ function onMap({ columns, rows, pitchXM, pitchYM }: DomeInput, { xM, yM, radiusM
 
 /** Height at the centre over the lower half of what lies on the circle, metres. */
 function heightOverRim(input: DomeInput, { xM, yM, radiusM }: Ring): number {
-  const rim = angles.map((angle) => riseAt(input, xM + radiusM * Math.cos(angle), yM + radiusM * Math.sin(angle))).filter((value) => value === value).sort((a, b) => a - b);
+  const rim = around.map(({ ux, uy }) => riseAt(input, xM + radiusM * ux, yM + radiusM * uy)).filter((value) => value === value).sort((a, b) => a - b);
   return riseAt(input, xM, yM) - (rim[rim.length >> 1] ?? Number.NaN);
 }
 
@@ -172,7 +172,7 @@ function outsideOverInside(input: DomeInput, { xM, yM, radiusM, free }: Circle):
   let highest = 0;
   free.forEach((ends, k) => {
     if (ends) return;
-    const [ux, uy] = [Math.cos(angles[k]!), Math.sin(angles[k]!)];
+    const { ux, uy } = around[k]!;
     const away = radiusM + 1.5 * Math.hypot(ux * input.pitchXM, uy * input.pitchYM);
     const value = riseAt(input, xM + away * ux, yM + away * uy);
     if (value > highest) highest = value;

@@ -38,8 +38,9 @@ export interface RefineHelp {
 const rounds = 3;
 /** A line with less ground than this takes its offset from the lines beside it. */
 const leastInLine = 24;
-/** Columns that are enough to refine by; of maps with twice as many or more every second, third … is taken. */
-const enoughColumns = 320;
+/** Columns that are enough to refine by; of maps with two and a half times as many or more every second, third … is taken. */
+const enoughColumns = 256;
+const manyColumns = 640;
 /** Jumps that many times those of the differences, and this many metres more, are streaks. */
 const streakTimes = 1.5;
 const streakM = 0.03e-9;
@@ -60,7 +61,7 @@ const leastScatterM = 1e-13;
 export function refineLevels(height: Float32Array, grid: Grid, section: GroundSection, help: RefineHelp): RefinedLevels {
   const { inside, planes } = help;
   const raw = within(height, inside);
-  const every = Math.max(1, Math.floor(grid.columns / enoughColumns));
+  const every = grid.columns < manyColumns ? 1 : Math.floor(grid.columns / enoughColumns);
   if (every === 1) {
     const found = refine(raw, grid, section, help, planes);
     dropFilms(found.plane, found.terrace, grid.columns);

@@ -22,15 +22,17 @@ const levels = 255;
 const missingIndex = levels;
 export const missingColour = [226, 230, 233] as const;
 const largestPicture = 1024;
+/** A figure is half a page wide: more pixels than this are not seen, and the maps themselves lie beside the report as GeoTIFF. */
+const largestValuePicture = 768;
 const smallestCausePicture = 640;
 
 /**
  * Values in cividis between `low` and `high` (clipped outside), missing ones in light grey. Maps larger
- * than 1024 pixels on a side are reduced to it: each pixel is the mean of the values present in its box.
+ * than 768 pixels on a side are reduced by a whole number: each pixel is the mean of the values present in its box.
  */
 export function valuePicture(values: Float32Array, extent: Extent, low: number, high: number): Picture {
-  const width = Math.min(extent.columns, largestPicture);
-  const height = Math.min(extent.rows, largestPicture);
+  const width = Math.ceil(extent.columns / Math.ceil(extent.columns / largestValuePicture));
+  const height = Math.ceil(extent.rows / Math.ceil(extent.rows / largestValuePicture));
   const whole = width === extent.columns && height === extent.rows;
   const indices = indicesOf(whole ? values : meanInBoxes(values, extent, width, height), low, high > low ? high - low : 1);
   const ramp = Array.from({ length: levels }, (_, level) => cividis(Math.round((level / (levels - 1)) * (cividisLength - 1))));
