@@ -1,4 +1,5 @@
 import ndarray from 'ndarray';
+import { pairDistancePx } from '../ground/gap-height.ts';
 import type { Grid, MaskMap } from '../grid/maps.ts';
 import { pixelAreaM2, scalarMap } from '../grid/maps.ts';
 import type { CurrentGround } from '../ground/ground.ts';
@@ -51,7 +52,7 @@ export function assessBarrier(
   const fallbackStep = anchor?.modelStepDecades;
   const terraces = findTerraces(current, (i) => inside[i] === 1 && labels[i] === 0, {
     stepDecades: fallbackStep ?? 1, from: fallbackStep === undefined ? 'assumed' : 'model',
-  }, levelled && { levelled, columns: grid.columns, layerM: section.layerNm * 1e-9 });
+  }, levelled && { levelled, columns: grid.columns, layerM: section.layerNm * 1e-9, apartPx: pairDistancePx(grid.pitchXM, grid.columns) });
 
   const area = pixelAreaM2(grid);
   const candidates: Candidate[] = terraces.rungs.map((rung) => ({ ...rung, areaM2: rung.pixels * area }));

@@ -50,7 +50,7 @@ export function findTerraces(current: CurrentGround, ground: (index: number) => 
   const ladder = measureLadder(log10, (i) => admitted[i] === 2, height);
   const measured = ladder.stepDecades !== undefined;
   const modelStepDecades = fallback.from === 'model' ? fallback.stepDecades : undefined;
-  const heightLayers = measured && height ? heightPerGap(height.levelled, log10, height.columns, ladder.peaks, ladder.stepDecades!, onGround) / height.layerM : undefined;
+  const heightLayers = measured && height ? heightPerGap(height.levelled, log10, height.columns, ladder.peaks, ladder.stepDecades!, onGround, height.apartPx) / height.layerM : undefined;
   const perGap = measured ? layersPerGap({ stepDecades: ladder.stepDecades!, modelStepDecades, heightLayers }) : 1;
   const stepDecades = measured ? ladder.stepDecades! / perGap : fallback.stepDecades;
   const centres = rungCentres(ladder.peaks.map((peak) => ({ log10: peak.log10, rung: peak.rung * perGap })), log10, onGround);

@@ -5,7 +5,8 @@ import type { Grid } from '../grid/maps.ts';
 import type { CurrentGround } from '../ground/ground.ts';
 import type { Flaw, FlawCause, Flaws } from './flaws.ts';
 import type { PixelBox, Point } from './correction-shapes.ts';
-import { boxAround, pixelAt } from './correction-shapes.ts';
+import { pixelAt } from '../grid/pixel-at.ts';
+import { boxAround } from './correction-shapes.ts';
 
 /** A flaw while it is corrected. */
 export interface DraftFlaw {

@@ -1,6 +1,7 @@
 /** Pixels and links that a stroke, an outline or a line drawn on the map means. Points are in metres, x right, y up, origin at the map's lower-left corner. */
 import type { Grid } from '../grid/maps.ts';
 import { pixelCount } from '../grid/maps.ts';
+import { pixelAt } from '../grid/pixel-at.ts';
 import { fillPolygon } from '../read/footprint.ts';
 
 export type Point = readonly [xM: number, yM: number];
@@ -12,13 +13,6 @@ export interface PixelBox {
   right: number;
   top: number;
   bottom: number;
-}
-
-/** Index of the pixel that holds a point, undefined beside the map. A point on the map's far edge still belongs to the last pixel. */
-export function pixelAt({ columns, rows, pitchXM, pitchYM }: Grid, [xM, yM]: Point): number | undefined {
-  const [u, v] = [xM / pitchXM, yM / pitchYM];
-  if (!(u >= 0 && u <= columns && v >= 0 && v <= rows)) return undefined;
-  return (rows - 1 - Math.min(rows - 1, Math.floor(v))) * columns + Math.min(columns - 1, Math.floor(u));
 }
 
 /** Pixels of the map whose centre lies no further than `reachM` from the box around some points. */

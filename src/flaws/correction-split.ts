@@ -3,7 +3,8 @@ import type { Components } from '../grid/label-components.ts';
 import type { Draft } from './correction-draft.ts';
 import { piecesOf, standApart } from './correction-draft.ts';
 import type { Path, Point } from './correction-shapes.ts';
-import { alongPath, crosses, pixelAt, prolonged, strokePixels } from './correction-shapes.ts';
+import { pixelAt } from '../grid/pixel-at.ts';
+import { alongPath, crosses, prolonged, strokePixels } from './correction-shapes.ts';
 
 /** A flaw that has outgrown the line (at other thresholds) is still parted when the line, longer by this share at both ends, does it. */
 const prolongedBy = 0.25;

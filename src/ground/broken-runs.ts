@@ -1,5 +1,5 @@
 /**
- * Broken runs: stretches of one or two scan lines where the probe lost contact or the signal. They are long
+ * Broken runs: stretches of one to three scan lines where the probe lost contact or the signal. They are long
  * along the fast axis, sharp across it, and the lines on both sides agree.
  */
 
@@ -28,16 +28,17 @@ export interface RunRule {
 export function markBrokenRuns(values: Float32Array, columns: number, rows: number, rule: RunRule): Uint8Array {
   const marks = new Uint8Array(values.length);
   for (let r = 0; r < rows; r++) markRow(values, marks, columns, rows, r, rule);
-  markBetween(values, marks, columns, rows, rule.noise);
+  markBetween(values, marks, columns, rows, rule);
   return marks;
 }
 
 /** A line between two broken ones is broken too where it stands off the lines beyond them. */
-function markBetween(values: Float32Array, marks: Uint8Array, columns: number, rows: number, noise: number): void {
+function markBetween(values: Float32Array, marks: Uint8Array, columns: number, rows: number, { noise, only }: RunRule): void {
   for (let i = 2 * columns; i + 2 * columns < rows * columns; i++) {
     if (marks[i] === 1 || marks[i - columns] === 0 || marks[i + columns] === 0) continue;
     const [above, below] = [values[i - 2 * columns]!, values[i + 2 * columns]!];
-    if (Math.abs(above - below) <= 6 * noise && Math.abs(values[i]! - (above + below) / 2) > 6 * noise) marks[i] = 1;
+    const off = values[i]! - (above + below) / 2;
+    if (Math.abs(above - below) <= 6 * noise && Math.abs(off) > 6 * noise && !(only === 'below' && off > 0)) marks[i] = 1;
   }
 }
 

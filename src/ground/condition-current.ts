@@ -39,7 +39,7 @@ export interface BesideCurrent {
 
 /**
  * Conditions a current map: turns it by the bias's sign, removes the offset, undoes the amplifier's lag and a shift against the height, marks what is
- * censored (saturated, floor), repairs broken runs of one or two lines between agreeing neighbours, and undoes tip wear as a factor per
+ * censored (saturated, floor), repairs broken runs of one to three lines between agreeing neighbours, and undoes tip wear as a factor per
  * line. A current is never levelled like a height: only an offset, a time constant and a factor are physical.
  *
  * @param channel current in A, or relative units; NaN missing.

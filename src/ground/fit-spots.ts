@@ -1,5 +1,6 @@
 /** Form of a height through spots of ground that a person picked. */
 import type { Grid } from '../grid/maps.ts';
+import { pixelAt } from '../grid/pixel-at.ts';
 import { solveBand } from '../stats/cholesky.ts';
 import { medianInPlace } from '../stats/median.ts';
 import { axisTable } from './form.ts';
@@ -57,10 +58,12 @@ interface Spot {
 }
 
 /** The spot's pixel and the median height around it; undefined beside the map and where too little was measured. */
-function spotAt(height: Float32Array, { columns, rows, pitchXM, pitchYM }: Grid, xM: number, yM: number, lines: Float64Array): Spot | undefined {
-  const column = Math.floor(xM / pitchXM);
-  const row = rows - 1 - Math.floor(yM / pitchYM);
-  if (!(column >= 0 && column < columns && row >= 0 && row < rows)) return undefined;
+function spotAt(height: Float32Array, grid: Grid, xM: number, yM: number, lines: Float64Array): Spot | undefined {
+  const at = pixelAt(grid, [xM, yM]);
+  if (at === undefined) return undefined;
+  const { columns, rows } = grid;
+  const column = at % columns;
+  const row = (at - column) / columns;
   const valueAt = (c: number, r: number): number => (c >= 0 && c < columns && r >= 0 && r < rows ? height[r * columns + c]! - lines[r]! : Number.NaN);
   const found = new Float64Array((2 * radiusPx + 1) ** 2);
   let count = 0;

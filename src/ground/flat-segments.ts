@@ -19,10 +19,11 @@ const range = { lowM: -3e-9, highM: 4e-9 } as const;
  * parts them.
  *
  * @param rest metres, roughly levelled, most common height near 0; NaN missing.
+ * @param every the columns are every so many-th of a map: along the lines everything spans as much fewer of them.
  */
-export function flatSegments(rest: Float32Array, columns: number, rows: number, layerM: number): Components {
-  const smooth = boxMean(rest, columns, rows, smoothPx);
-  const flat = flatPlaces(smooth, columns, rows, flatPart * layerM);
+export function flatSegments(rest: Float32Array, columns: number, rows: number, layerM: number, every = 1): Components {
+  const smooth = boxMean(rest, columns, rows, smoothPx, fewer(smoothPx, every));
+  const flat = flatPlaces(smooth, columns, rows, flatPart * layerM, fewer(asidePx, every));
   for (let i = 0; i < flat.length; i++) if (!(smooth[i]! > range.lowM && smooth[i]! < range.highM)) flat[i] = 0;
   return labelComponents(flat, columns, rows, 4);
 }
@@ -44,6 +45,11 @@ export function terraceSegments(height: Float32Array, log10: Float32Array, use: 
   return labelComponents(flat, columns, rows, 4);
 }
 
+/** A distance over columns of which only every so many-th is there. */
+export function fewer(px: number, every: number): number {
+  return Math.max(1, Math.round(px / every));
+}
+
 function only(map: Float32Array, use: Uint8Array): Float32Array {
   const out = map.slice();
   for (let i = 0; i < out.length; i++) if (use[i] !== 1) out[i] = Number.NaN;
@@ -51,10 +57,10 @@ function only(map: Float32Array, use: Uint8Array): Float32Array {
 }
 
 /** 1 where a smoothed map does not change by `least` or more between the places to either side, along both axes. */
-function flatPlaces(smooth: Float32Array, columns: number, rows: number, least: number): Uint8Array {
+function flatPlaces(smooth: Float32Array, columns: number, rows: number, least: number, asideColumns = asidePx): Uint8Array {
   const flat = new Uint8Array(smooth.length);
-  const left = Int32Array.from({ length: columns }, (_, c) => Math.max(0, c - asidePx));
-  const right = Int32Array.from({ length: columns }, (_, c) => Math.min(columns - 1, c + asidePx));
+  const left = Int32Array.from({ length: columns }, (_, c) => Math.max(0, c - asideColumns));
+  const right = Int32Array.from({ length: columns }, (_, c) => Math.min(columns - 1, c + asideColumns));
   for (let r = 0; r < rows; r++) {
     markFlat(smooth, r * columns, Math.max(0, r - asidePx) * columns, Math.min(rows - 1, r + asidePx) * columns, left, right, least, flat);
   }
@@ -69,8 +75,8 @@ function markFlat(smooth: Float32Array, start: number, up: number, down: number,
   }
 }
 
-/** Mean of the finite values in a square of half-width `half` around each pixel, cut off at borders; NaN where there is none. */
-export function boxMean(values: Float32Array, columns: number, rows: number, half: number): Float32Array {
+/** Mean of the finite values in a rectangle of half-height `half` and half-width `halfColumns` around each pixel, cut off at borders; NaN where there is none. */
+export function boxMean(values: Float32Array, columns: number, rows: number, half: number, halfColumns = half): Float32Array {
   const columnSums = new Float64Array(columns);
   const columnCounts = new Int32Array(columns);
   // Sums over the columns before each.
@@ -82,7 +88,7 @@ export function boxMean(values: Float32Array, columns: number, rows: number, hal
     if (r + half < rows) addRow(values, (r + half) * columns, columnSums, columnCounts);
     if (r - half > 0) dropRow(values, (r - half - 1) * columns, columnSums, columnCounts);
     addUp(columnSums, columnCounts, sums, counts);
-    writeMeans(sums, counts, half, out.subarray(r * columns, (r + 1) * columns));
+    writeMeans(sums, counts, halfColumns, out.subarray(r * columns, (r + 1) * columns));
   }
   return out;
 }

@@ -23,7 +23,7 @@ export interface LadderPeak {
 const smoothDecades = 0.05;
 /** Two peaks on one level are one terrace when they lie nearer than this part of the widest gap. */
 const sameTerracePart = 0.75;
-/** Or this part, where no border between them is seen at all. */
+/** Or this part, where hardly a border between them is seen: one terrace whose contact varies slowly. */
 const borderlessPart = 0.4;
 /** A small peak that lies more layers than this from its neighbour is a film. */
 const mostLayers = 3;
@@ -37,6 +37,8 @@ export interface LadderHeight {
   readonly levelled: Float32Array;
   readonly columns: number;
   readonly layerM: number;
+  /** Columns between the pixels of a pair (`pairDistancePx`). */
+  readonly apartPx?: number;
 }
 
 /**
@@ -53,7 +55,7 @@ export function measureLadder(log10: Float32Array, use: (index: number) => boole
   let found = histogramPeaks(log10, use, rule).map(({ at, share }) => ({ log10: at, share })).reverse();
   for (;;) {
     if (found.length < 2) return { peaks: found.map((peak) => ({ ...peak, rung: 0 })) };
-    const layers = height ? layersBetween(height.levelled, log10, height.columns, found.map((peak) => peak.log10), height.layerM, use) : found.slice(1).map(() => undefined);
+    const layers = height ? layersBetween(height.levelled, log10, height.columns, found.map((peak) => peak.log10), height.layerM, use, height.apartPx) : found.slice(1).map(() => undefined);
     const film = layers.findIndex((n, k) => n !== undefined && Math.abs(n) > mostLayers && Math.min(found[k]!.share, found[k + 1]!.share) < filmShare);
     if (film >= 0) {
       const drop = found[film]!.share < found[film + 1]!.share ? film : film + 1;

@@ -1,6 +1,6 @@
 /** How high each pixel's terrace lies by its current: terraces are parallel planes a whole number of layers apart. */
 import { quantifiedOverFloor } from './current-limits.ts';
-import { heightPerGap } from './gap-height.ts';
+import { heightPerGap, leastApartPx, pairDistancePx } from './gap-height.ts';
 import type { CurrentGround, LayerPlanes } from './ground.ts';
 import { measureLadder } from './ladder.ts';
 import type { LadderFit } from './ladder.ts';
@@ -11,6 +11,9 @@ const flatM = 2.5e-9;
 const withinPart = 0.35;
 /** The same in decades where the map shows one terrace only. */
 const withinDecades = 0.4;
+/** A gap between level and nearly a layer is one layer over a border too wide for the pairs, in layers. */
+const levelPart = 0.3;
+const hardlyPart = 0.65;
 /** A measured gap this near to whole layers, in layers, is taken to be whole. */
 const wholePart = 0.35;
 
@@ -19,10 +22,10 @@ const wholePart = 0.35;
  * layers where it is near to that; without enough borders it is one layer.
  *
  * @param rough height in metres, levelled without knowledge of terraces; NaN missing.
- * @param layerM thickness of one layer.
+ * @param layerM thickness of one layer; @param pitchXM of the columns, metres.
  * @returns undefined where no terrace's current can be measured (all of it censored).
  */
-export function layerPlanes(current: CurrentGround, rough: Float32Array, columns: number, layerM: number): LayerPlanes | undefined {
+export function layerPlanes(current: CurrentGround, rough: Float32Array, columns: number, layerM: number, pitchXM?: number): LayerPlanes | undefined {
   const log10 = current.log10.data;
   const least = Math.log10(current.floorA * quantifiedOverFloor);
   const { data: saturated } = current.saturated;
@@ -30,12 +33,13 @@ export function layerPlanes(current: CurrentGround, rough: Float32Array, columns
   const admitted = new Uint8Array(log10.length);
   for (let i = 0; i < admitted.length; i++) if (saturated[i] === 0 && floor[i] === 0 && log10[i]! >= least && !(rough[i]! > flatM)) admitted[i] = 1;
   const use = (i: number): boolean => admitted[i] === 1;
-  const ladder = measureLadder(log10, use, { levelled: rough, columns, layerM });
+  const apartPx = pitchXM === undefined ? leastApartPx : pairDistancePx(pitchXM, columns);
+  const ladder = measureLadder(log10, use, { levelled: rough, columns, layerM, apartPx });
   if (ladder.peaks.length === 0) return undefined;
   const step = ladder.stepDecades;
-  const measuredM = step === undefined ? Number.NaN : heightPerGap(rough, log10, columns, ladder.peaks, step, use);
+  const measuredM = step === undefined ? Number.NaN : heightPerGap(rough, log10, columns, ladder.peaks, step, use, apartPx);
   const layers = measuredM / layerM;
-  const gapM = Number.isNaN(layers) ? layerM : Math.abs(layers - Math.round(layers)) < wholePart ? Math.round(layers) * layerM : measuredM;
+  const gapM = Number.isNaN(layers) || (layers > levelPart && layers < hardlyPart) ? layerM : Math.abs(layers - Math.round(layers)) < wholePart ? Math.round(layers) * layerM : measuredM;
 
   const reach = step === undefined ? withinDecades : withinPart * step;
   const rungs = allRungs(ladder);

@@ -61,7 +61,7 @@ function levelInside(sample: Sample, section: GroundSection, scan: ScanSection, 
   const read = backCurrent && readReturnCurrent(backCurrent, grid, section, scan, rough ?? back, slowUp);
   const conditioned = currentChannel && conditionCurrent(currentChannel, grid, section, scan, { height: rough, inside, slowUp, returned: read?.drift });
   const returned = compareReturn(grid, { height: rough, current: conditioned?.current }, { height: back, current: read });
-  const layers = rough && conditioned && layerPlanes(conditioned.current, rough.levelled.data, grid.columns, layerM);
+  const layers = rough && conditioned && layerPlanes(conditioned.current, rough.levelled.data, grid.columns, layerM, grid.pitchXM);
   const levels = values && first && refineLevels(values.data, grid, section, { start: first, inside, planes: layers?.planes, layerM });
   const byHand = values && levels && section.spots.length > 0 ? fitSpots(values.data, grid, section, levels.lines) : undefined;
   const used = levels && byHand ? { ...levels, form: byHand.form } : levels;

@@ -120,11 +120,13 @@ function fitShape({ lags, covariance, pairs }: LineAutocorrelation, window: numb
     let [cross, norm, misfit] = [0, 0, 0];
     const expected = (k: number): number => correlationAt(shape, (lags[k]! * pitchM) / correlationM) - taken.lines - taken.form;
     for (let k = 0; k < window; k++) {
+      // Distances at which the mask has no pair say nothing.
+      if (pairs[k] === 0) continue;
       cross += pairs[k]! * covariance[k]! * expected(k);
       norm += pairs[k]! * expected(k) ** 2;
     }
     const variance = Math.max(0, cross / norm);
-    for (let k = 0; k < window; k++) misfit += pairs[k]! * (covariance[k]! - variance * expected(k)) ** 2;
+    for (let k = 0; k < window; k++) if (pairs[k]! > 0) misfit += pairs[k]! * (covariance[k]! - variance * expected(k)) ** 2;
     return { shape, correlationM, variance, misfit, atLimit: log >= high };
   };
   const low = Math.log(0.3 * pitchM);

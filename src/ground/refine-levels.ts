@@ -41,6 +41,8 @@ const leastInLine = 24;
 /** Columns that are enough to refine by; of maps with two and a half times as many or more every second, third … is taken. */
 const enoughColumns = 256;
 const manyColumns = 640;
+/** But no fewer than every fourth: narrower terraces would be lost between them. */
+const fewestEvery = 4;
 /** Jumps that many times those of the differences, and this many metres more, are streaks. */
 const streakTimes = 1.5;
 const streakM = 0.03e-9;
@@ -61,7 +63,7 @@ const leastScatterM = 1e-13;
 export function refineLevels(height: Float32Array, grid: Grid, section: GroundSection, help: RefineHelp): RefinedLevels {
   const { inside, planes } = help;
   const raw = within(height, inside);
-  const every = grid.columns < manyColumns ? 1 : Math.floor(grid.columns / enoughColumns);
+  const every = grid.columns < manyColumns ? 1 : Math.min(fewestEvery, Math.floor(grid.columns / enoughColumns));
   if (every === 1) {
     const found = refine(raw, grid, section, help, planes);
     dropFilms(found.plane, found.terrace, grid.columns);
@@ -70,7 +72,7 @@ export function refineLevels(height: Float32Array, grid: Grid, section: GroundSe
   // A line's offset and a terrace's plane are as well known from some hundred columns; only the result is needed at every pixel.
   const narrow = { columns: Math.floor(grid.columns / every), rows: grid.rows, pitchXM: grid.pitchXM * every, pitchYM: grid.pitchYM };
   const narrowPlanes = planes && columnsOf(planes, grid, every);
-  const found = refine(columnsOf(raw, grid, every), narrow, section, help, narrowPlanes);
+  const found = refine(columnsOf(raw, grid, every), narrow, section, help, narrowPlanes, every);
   const { plane, terrace } = widened({ ...found, planes: narrowPlanes }, planes, grid, every);
   const flat = raw.slice();
   takePlanes(flat, plane, found.lines, grid.columns);
@@ -84,7 +86,7 @@ interface Found extends RefinedLevels {
   readonly ground: Uint8Array;
 }
 
-function refine(raw: Float32Array, grid: Grid, section: GroundSection, help: RefineHelp, planes: Float32Array | undefined): Found {
+function refine(raw: Float32Array, grid: Grid, section: GroundSection, help: RefineHelp, planes: Float32Array | undefined, every = 1): Found {
   const { columns, rows } = grid;
   const known = planes ? zeroWhereMissing(planes) : new Float32Array(raw.length);
   const plane = known.slice();
@@ -98,7 +100,7 @@ function refine(raw: Float32Array, grid: Grid, section: GroundSection, help: Ref
     const seeks = round < 2;
     const rest = overKnown(raw, form, lines, seeks ? known : plane, columns, rows);
     if (seeks) {
-      const found = levelSegments(rest, grid, help.layerM, planes);
+      const found = levelSegments(rest, grid, help.layerM, planes, every);
       levels = 0;
       // With neither a segment nor a current all of the map is taken for one plane.
       const told = planes !== undefined || found.levelM.length > 1;

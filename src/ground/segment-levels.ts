@@ -1,7 +1,7 @@
 /** Which plane each segment of flat ground lies on, from the steps at their common borders. */
 import type { Grid } from '../grid/maps.ts';
 import { medianInPlace } from '../stats/median.ts';
-import { flatSegments } from './flat-segments.ts';
+import { fewer, flatSegments } from './flat-segments.ts';
 
 export interface LevelledSegments {
   /** Number of the segment per pixel from 1; 0 between segments, on features and on segments too small to tell. */
@@ -18,6 +18,8 @@ const leastSegment = 0.0005;
 const mostSegments = 80;
 /** Places compared across a border are this far apart, pixels: wider than the band that parts two segments, nearer than the ground undulates. */
 const apartPx = 10;
+/** And at least so many of the columns that are there. */
+const leastApartColumns = 3;
 /** Fewer places say nothing about a border. */
 const leastPairs = 24;
 /** Enough for a median. */
@@ -35,11 +37,12 @@ const mostLayers = 2.5;
  * segment whose plane the current tells, or else the largest, is the one that the others are measured against.
  *
  * @param rest metres over form, lines and known planes; NaN missing. @param planes the current's planes, NaN where it tells none.
+ * @param every the columns are every so many-th of a map.
  */
-export function levelSegments(rest: Float32Array, grid: Grid, layerM: number, planes: Float32Array | undefined): LevelledSegments {
+export function levelSegments(rest: Float32Array, grid: Grid, layerM: number, planes: Float32Array | undefined, every = 1): LevelledSegments {
   const { columns, rows } = grid;
-  const { segment, count, known, pixels, rung } = numberSegments(rest, columns, rows, layerM, planes);
-  const steps = stepsBetween(rest, segment, count, columns, rows);
+  const { segment, count, known, pixels, rung } = numberSegments(rest, columns, rows, layerM, planes, every);
+  const steps = stepsBetween(rest, segment, count, columns, rows, Math.max(leastApartColumns, fewer(apartPx, every)));
   const levelM = new Float64Array(count + 1).fill(Number.NaN);
   levelM[0] = 0;
   const terrace = new Uint8Array(count + 1).fill(1);
@@ -110,9 +113,9 @@ function dropUnlinked(
 
 /** Numbers flat segments from 1 by size; a segment with and without known planes counts as two, so that what is known is not moved by what is not. */
 function numberSegments(
-  rest: Float32Array, columns: number, rows: number, layerM: number, planes: Float32Array | undefined,
+  rest: Float32Array, columns: number, rows: number, layerM: number, planes: Float32Array | undefined, every: number,
 ): { segment: Uint16Array; count: number; known: Uint8Array; pixels: Uint32Array; rung: Float64Array } {
-  const { labels, count } = flatSegments(rest, columns, rows, layerM);
+  const { labels, count } = flatSegments(rest, columns, rows, layerM, every);
   const pixels = new Uint32Array(2 * count + 2);
   partByKnown(labels, planes, pixels);
   const bySize = [...pixels.keys()].filter((label) => label > 1 && pixels[label]! >= leastSegment * labels.length).sort((a, b) => pixels[b]! - pixels[a]!).slice(0, mostSegments);
@@ -150,15 +153,15 @@ interface Step {
 }
 
 /** By `from * (count + 1) + to`: the median rise from one segment to another. */
-function stepsBetween(rest: Float32Array, segment: Uint16Array, count: number, columns: number, rows: number): (Step | undefined)[] {
+function stepsBetween(rest: Float32Array, segment: Uint16Array, count: number, columns: number, rows: number, apartColumns: number): (Step | undefined)[] {
   const size = count + 1;
   const lists: (number[] | undefined)[] = Array.from({ length: size * size });
   for (let r = 0; r < rows; r++) {
     const start = r * columns;
-    const lastAlong = start + columns - apartPx;
+    const lastAlong = start + columns - apartColumns;
     const lastDown = r + apartPx < rows ? start + columns : start;
     for (let i = nextPair(segment, start, lastAlong, lastDown, columns, start + columns); i < start + columns; i = nextPair(segment, i + 1, lastAlong, lastDown, columns, start + columns)) {
-      if (i < lastAlong) addStep(lists, size, rest, segment, i, i + apartPx);
+      if (i < lastAlong) addStep(lists, size, rest, segment, i, i + apartColumns);
       if (i < lastDown) addStep(lists, size, rest, segment, i, i + apartPx * columns);
     }
   }
@@ -174,10 +177,11 @@ function stepsBetween(rest: Float32Array, segment: Uint16Array, count: number, c
 
 /** The next pixel from `i` on that lies in another segment than one of its partners along the line and down the column; `end` without any. */
 function nextPair(segment: Uint16Array, i: number, lastAlong: number, lastDown: number, columns: number, end: number): number {
+  const apartColumns = end - lastAlong;
   for (; i < end; i++) {
     const own = segment[i]!;
     if (own === 0) continue;
-    if (i < lastAlong && segment[i + apartPx] !== own && segment[i + apartPx] !== 0) return i;
+    if (i < lastAlong && segment[i + apartColumns] !== own && segment[i + apartColumns] !== 0) return i;
     if (i < lastDown && segment[i + apartPx * columns] !== own && segment[i + apartPx * columns] !== 0) return i;
   }
   return end;

@@ -99,7 +99,7 @@ export function isNoise(values: Float32Array, columns: number, peak: Peak, use: 
   const limit = Math.max(3 * peak.width, quantum);
   const top = peak.centre + quantum / 2;
   const inHalf = (value: number): boolean => value <= top && value >= peak.centre - limit;
-  const middle = quantum > 0 ? meanWhere(values, inHalf) : peak.centre - Math.sqrt(2 / Math.PI) * peak.width;
+  const middle = quantum > 0 ? meanWhere(values, inHalf, use) : peak.centre - Math.sqrt(2 / Math.PI) * peak.width;
   for (let i = columns; i < values.length; i++) {
     const here = values[i]!;
     const there = values[i - columns]!;
@@ -114,12 +114,12 @@ export function isNoise(values: Float32Array, columns: number, peak: Peak, use: 
 }
 
 /** Deviations are from the mean of the lower half: 0.8 standard deviations below the centre for a normal peak, but anywhere for a few levels. */
-function meanWhere(values: Float32Array, admitted: (value: number) => boolean): number {
+function meanWhere(values: Float32Array, admitted: (value: number) => boolean, use: (index: number) => boolean): number {
   let sum = 0;
   let n = 0;
-  for (const value of values) {
-    if (!admitted(value)) continue;
-    sum += value;
+  for (let i = 0; i < values.length; i++) {
+    if (!admitted(values[i]!) || !use(i)) continue;
+    sum += values[i]!;
     n++;
   }
   return sum / n;

@@ -7,7 +7,7 @@ export const usage = `npm run accuracy [-- OPTIONS]
   --quick        a tenth of the scenes
   --kind NAME    scenes of one kind only
   --scenes N     so many scenes of each kind
-  --seed N       another set of scenes (default 2026); "fresh" draws one
+  --seed N       another set of scenes (default 8128); "fresh" draws one
   --shared       the scenes beside the project instead of painted ones
   --worst        then every scene with its confusion counts, the worst first
   --jobs N       threads (default 2)`;

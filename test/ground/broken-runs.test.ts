@@ -121,3 +121,14 @@ test('spikes up and down, but no pit that a probe could reach into, and no featu
   markSpikes(values, marks, columns, rows, noise, 6);
   assert.deepEqual([...marks.keys()].filter((i) => marks[i] === 1), [at(20, 10), at(40, 10)]);
 });
+
+test('where only losses count, a gain on the line between two broken ones stands: it may be a short', () => {
+  const lost: Run[] = [{ r: 10, from: 20, to: 60, off: -4 }, { r: 12, from: 20, to: 60, off: -4 }];
+  for (const only of ['below', undefined] as const) {
+    const values = map(lost);
+    for (let c = 30; c < 33; c++) values[11 * columns + c]! += 2;
+    const marks = markBrokenRuns(values, columns, rows, { ...rule, ...(only ? { only } : {}) });
+    assert.equal(marks[11 * columns + 31], only ? 0 : 1);
+    assert.equal(marks[10 * columns + 40], 1);
+  }
+});

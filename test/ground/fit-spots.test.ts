@@ -2,6 +2,7 @@ import assert from 'node:assert/strict';
 import { test } from 'node:test';
 import type { Grid } from '../../src/grid/maps.ts';
 import { fitSpots } from '../../src/ground/fit-spots.ts';
+import { pixelAt } from '../../src/grid/pixel-at.ts';
 import { formSurface } from '../../src/ground/form.ts';
 import { levelGround } from '../../src/ground/level-ground.ts';
 import { seededRandom } from '../../src/stats/random.ts';
@@ -63,6 +64,16 @@ test('spots beside the map and on missing ground do not count; fewer than three 
   assert.equal(fitSpots(holed, grid, { order: 1, spots: corners }, noLines), undefined);
   assert.equal(fitSpots(holed, grid, { order: 1, spots: [...corners.slice(1), { xUm: -1, yUm: 1 }] }, noLines), undefined);
   const found = fitSpots(holed, grid, { order: 1, spots: [...corners, spot(85, 60)] }, noLines)!;
+  assert.equal(found.used, 3);
+  assert.ok(offNm(found.form, plane) < 1e-4);
+});
+
+test('a spot on the far edge of the map belongs to its last pixels', () => {
+  const wide = { xUm: columns * 0.02, yUm: rows * 0.03 };
+  const edges = [{ xUm: columns * 0.02, yUm: 0.9 }, { xUm: 0.4, yUm: rows * 0.03 }, spot(20, 50)];
+  assert.deepEqual(edges.map(({ xUm, yUm }) => pixelAt(grid, [xUm * 1e-6, yUm * 1e-6]) !== undefined), [true, true, true]);
+  assert.equal(pixelAt(grid, [wide.xUm * 1e-6, wide.yUm * 1e-6]), columns - 1);
+  const found = fitSpots(map(plane), grid, { order: 1, spots: edges }, noLines)!;
   assert.equal(found.used, 3);
   assert.ok(offNm(found.form, plane) < 1e-4);
 });

@@ -1,6 +1,6 @@
 import assert from 'node:assert/strict';
 import { test } from 'node:test';
-import { heightPerGap } from '../../src/ground/gap-height.ts';
+import { heightPerGap, layersBetween, pairDistancePx } from '../../src/ground/gap-height.ts';
 import { seededRandom } from '../../src/stats/random.ts';
 import { assertClose } from '../fixtures/assert-close.ts';
 
@@ -37,4 +37,27 @@ test('missing values and ground that is not admitted take no part; fewer than th
   // Six pairs on each line.
   const few = scan(4, 1, 0.333);
   assert.ok(Number.isNaN(heightPerGap(few.levelled, few.log10, columns, peaks, 0.6, always)));
+});
+
+test('a border that runs along the lines is there, though the height over it tells nothing; a slow change of the contact is no border', () => {
+  const random = seededRandom('along');
+  const rows = 90;
+  const levels = [-9, -9.6, -11.4];
+  const level = (at: number): number => levels[Math.min(2, Math.floor((at * levels.length) / rows))]!;
+  const flat = Float32Array.from({ length: rows * columns }, () => 0.08e-9 * random.normal());
+  const striped = Float32Array.from({ length: rows * columns }, (_, i) => level(Math.floor(i / columns)) + 0.02 * random.normal());
+  assert.deepEqual(layersBetween(flat, striped, columns, levels, 0.333e-9, always), [undefined, undefined]);
+  // From −9 to −9.6 over thirty lines, without a jump.
+  const gradual = Float32Array.from({ length: rows * columns }, (_, i) => {
+    const r = Math.floor(i / columns);
+    return (r < 30 ? -9 : r < 60 ? -9 - 0.02 * (r - 30) : -9.6) + 0.02 * random.normal();
+  });
+  assert.ok(Number.isNaN(layersBetween(flat, gradual, columns, [-9, -9.6], 0.333e-9, always)[0]!));
+});
+
+test('pairs stand 60 nm apart, at least six columns and at most a sixteenth of a line', () => {
+  assert.equal(pairDistancePx(20e-9, 512), 6);
+  assert.equal(pairDistancePx(10e-9, 512), 6);
+  assert.equal(pairDistancePx(2e-9, 1024), 30);
+  assert.equal(pairDistancePx(2e-9, 320), 20);
 });

@@ -132,3 +132,10 @@ test('autocovariance by hand: pairs across a gap count, pairs with a missing end
   assert.equal(found.pixels, 6);
   assertClose(found.variance, 22 / 6, 1e-12);
 });
+
+test('a mask without pairs at some distances gives numbers all the same', () => {
+  const height = levelled(createRoughSurface('gaps', size, size, 6, 'gaussian', 300).map((value, i) => value + 0.1 * Math.sin(i)));
+  const mask = Uint8Array.from(all, (_, i) => (i % 8 < 3 ? 1 : 0));
+  const found = levellingBias(height, grid, mask, { order: 2, lines: true });
+  if (typeof found !== 'string') for (const [name, value] of Object.entries(found)) if (typeof value === 'number') assert.ok(Number.isFinite(value), `${name} ${value}`);
+});

@@ -40,7 +40,7 @@ export const heightTopics: readonly Topic[] = [
       <p>Steps of whole layers are no roughness. Where the current tells the layer (see its ladder), the height of the terrace is that many layers; the height of one step is measured at the borders, from pairs of places a few pixels apart on one line, and rounded to whole layers where it comes near to them.</p>
       <p>Where the current does not tell, because it is at the floor, saturated, or not measured, connected stretches of flat ground get one unknown level each, linked by the steps at their common borders. Small patches at no whole step that may be films help to level but are no terraces.</p>`,
     formulas: ['plane = (rung of the ladder) × (height of one step)'],
-    limits: 'A terrace narrower than about ten pixels gets no plane. Whole layers are assumed within a third of a layer; a stack of two materials with other spacings keeps its measured steps.',
+    limits: 'A terrace narrower than about ten pixels gets no plane; on maps of 640 columns and more, where every second to fourth column is taken, one that lies across the lines and is narrower than about thirty columns. Whole layers are assumed within a third of a layer; a stack of two materials with other spacings keeps its measured steps.',
   },
   {
     id: 'repair', title: 'Repair of broken runs, spikes and single missing points', settings: ['ground.repair'],
