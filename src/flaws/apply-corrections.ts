@@ -88,6 +88,8 @@ function merge(draft: Draft, found: readonly number[]): Idle {
   const kept = members.filter(({ flaw }) => raised || flaw.byHand || !isRaised(flaw.cause)).reduce((a, b) => (b.pixels.length > a.pixels.length ? b : a)).flaw;
   const { cause, confidence, reason, byHand } = kept;
   Object.assign(one!.flaw, { cause, confidence, reason, byHand });
+  // Folds together are a fold, with anything else they are whatever their shape says.
+  if (!members.every(({ flaw }) => flaw.kind === 'ridge')) delete one!.flaw.kind;
   for (const { label, pixels } of others) {
     give(draft, one!.label, pixels);
     draft.flaws[label] = undefined;

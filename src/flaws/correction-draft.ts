@@ -4,8 +4,8 @@ import type { Components } from '../grid/label-components.ts';
 import type { Grid } from '../grid/maps.ts';
 import type { CurrentGround } from '../ground/ground.ts';
 import type { Flaw, FlawCause, Flaws } from './flaws.ts';
-import type { PixelBox, Point } from './correction-shapes.ts';
 import { pixelAt } from '../grid/pixel-at.ts';
+import type { PixelBox, Point } from './correction-shapes.ts';
 import { boxAround } from './correction-shapes.ts';
 
 /** A flaw while it is corrected. */
@@ -17,6 +17,8 @@ export interface DraftFlaw {
   reason: string;
   /** The class was set by hand and is not to be decided anew. */
   byHand: boolean;
+  /** A fold stays one whatever part of it is left. */
+  kind?: 'ridge';
   /** Its extent is no longer the one that was measured. */
   changed: boolean;
   /** Holds all its pixels, and may be larger. */
@@ -36,7 +38,7 @@ export interface Draft {
 export function draftOf({ labels, list, rise, drop }: Flaws, current: CurrentGround | undefined, grid: Grid, footprint: Uint8Array): Draft {
   const own = labels.data.slice();
   const flaws: (DraftFlaw | undefined)[] = [undefined, ...list.map((flaw): DraftFlaw => ({
-    before: flaw, cause: flaw.cause, confidence: flaw.confidence, reason: flaw.reason, byHand: flaw.byHand === true, changed: false, box: emptyBox(),
+    before: flaw, cause: flaw.cause, confidence: flaw.confidence, reason: flaw.reason, byHand: flaw.byHand === true, ...(flaw.kind === 'ridge' ? { kind: flaw.kind } : {}), changed: false, box: emptyBox(),
   }))];
   for (let r = 0, i = 0; r < grid.rows; r++) for (let c = 0; c < grid.columns; c++, i++) if (own[i] !== 0) include(flaws[own[i]!]!.box, c, r);
   return {

@@ -31,7 +31,7 @@ function finished(draft: Draft, { before, changed, cause, confidence, reason, by
  */
 export function measureFlaw({ grid, labels, flaws, maps }: Draft, label: number): Region {
   const { columns, rows, pitchXM, pitchYM } = grid;
-  const { box } = flaws[label]!;
+  const { box, kind } = flaws[label]!;
   const [left, top] = [Math.max(0, box.left - 1), Math.max(0, box.top - 1)];
   const [width, height] = [Math.min(columns - 1, box.right + 1) - left + 1, Math.min(rows - 1, box.bottom + 1) - top + 1];
   const part = <T extends Float32Array | Uint8Array | Uint32Array>(map: T, empty: T): T => {
@@ -46,5 +46,5 @@ export function measureFlaw({ grid, labels, flaws, maps }: Draft, label: number)
     ...(rise ? { rise: part(rise, new Float32Array(count)) } : {}), ...(drop ? { drop: part(drop, new Float32Array(count)) } : {}),
     ...(log10 ? { log10: part(log10, new Float32Array(count)) } : {}), ...(floor ? { floor: part(floor, new Uint8Array(count)) } : {}),
   })[0]!;
-  return { ...region, xM: region.xM + left * pitchXM, yM: region.yM + (rows - top - height) * pitchYM };
+  return { ...region, ...(kind ? { kind } : {}), xM: region.xM + left * pitchXM, yM: region.yM + (rows - top - height) * pitchYM };
 }

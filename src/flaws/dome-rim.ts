@@ -6,23 +6,28 @@ export interface Point {
   readonly yM: number;
 }
 
-/** Unit vector of a ray; y runs down. */
-export interface Direction {
+/** A ray along a unit vector; y runs down. */
+export interface Ray {
   readonly ux: number;
   readonly uy: number;
+  /** Length of a pixel's step along it, metres. */
+  readonly pixelM: number;
 }
 
 /** Rays evenly around. */
-export function directionsAround(count: number): readonly Direction[] {
-  return Array.from({ length: count }, (_, k) => ({ ux: Math.cos((2 * Math.PI * k) / count), uy: Math.sin((2 * Math.PI * k) / count) }));
+export function raysAround(count: number, { pitchXM, pitchYM }: DomeInput): readonly Ray[] {
+  return Array.from({ length: count }, (_, k) => {
+    const ux = Math.cos((2 * Math.PI * k) / count);
+    const uy = Math.sin((2 * Math.PI * k) / count);
+    return { ux, uy, pixelM: Math.hypot(ux * pitchXM, uy * pitchYM) };
+  });
 }
 
 /** The break of slope is at least this part of that at the rim of a paraboloid of the same height and radius. */
 const leastBreak = 0.4;
 
 /** Where the mask ends along a ray, if that is within `stray` pixels of the radius. Off the map nothing ends. */
-export function edgeAlong({ columns, rows, pitchXM, pitchYM, mask }: DomeInput, { xM, yM }: Point, radiusM: number, { ux, uy }: Direction, stray: number): Point | undefined {
-  const pixelM = Math.hypot(ux * pitchXM, uy * pitchYM);
+export function edgeAlong({ columns, rows, pitchXM, pitchYM, mask }: DomeInput, { xM, yM }: Point, radiusM: number, { ux, uy, pixelM }: Ray, stray: number): Point | undefined {
   const from = radiusM - stray * pixelM;
   for (let at = from; at <= radiusM + stray * pixelM; at += 0.25 * pixelM) {
     const c = Math.floor((xM + at * ux) / pitchXM);
@@ -39,14 +44,14 @@ export function edgeAlong({ columns, rows, pitchXM, pitchYM, mask }: DomeInput, 
  * Where the height breaks its slope along a ray, between two distances. A paraboloid h(1 − ρ²) falls with 2h/R at its rim and no longer beyond it, whatever
  * smooth thing it stands on; what breaks by less than 0.4 of that is none. Of several the one with the largest part counts. `heightM` is the height over the rim, `stepPx` how finely is looked.
  */
-export function breakAlong(input: DomeInput, { xM, yM }: Point, heightM: number, { ux, uy }: Direction, fromM: number, toM: number, stepPx = 0.5): Point | undefined {
-  const pixelM = Math.hypot(ux * input.pitchXM, uy * input.pitchYM);
-  const height = (at: number): number => heightAt(input, xM + at * ux, yM + at * uy);
+export function breakAlong(input: DomeInput, { xM, yM }: Point, heightM: number, { ux, uy, pixelM }: Ray, fromM: number, toM: number, stepPx = 0.5): Point | undefined {
   const armM = 2 * pixelM;
   let most = leastBreak * 2 * heightM * armM;
   let rim = Number.NaN;
   for (let at = fromM; at <= toM; at += stepPx * pixelM) {
-    const part = at * (height(at - armM) - 2 * height(at) + height(at + armM));
+    const before = heightAt(input, xM + (at - armM) * ux, yM + (at - armM) * uy);
+    const beyond = heightAt(input, xM + (at + armM) * ux, yM + (at + armM) * uy);
+    const part = at * (before - 2 * heightAt(input, xM + at * ux, yM + at * uy) + beyond);
     if (part > most) {
       most = part;
       rim = at;
@@ -62,7 +67,8 @@ function heightAt({ columns, rows, pitchXM, pitchYM, rise }: DomeInput, xM: numb
   const c = Math.floor(x);
   const r = Math.floor(y);
   if (c < 0 || r < 0 || c + 1 >= columns || r + 1 >= rows) return Number.NaN;
-  const [fx, fy] = [x - c, y - r];
+  const fx = x - c;
+  const fy = y - r;
   const i = r * columns + c;
   return (1 - fy) * ((1 - fx) * rise[i]! + fx * rise[i + 1]!) + fy * ((1 - fx) * rise[i + columns]! + fx * rise[i + columns + 1]!);
 }

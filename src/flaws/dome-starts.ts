@@ -1,8 +1,9 @@
 /** Circles from which domes are sought. */
 import { squaredDistance } from '../grid/distance.ts';
-import { breakAlong, circleThrough, directionsAround } from './dome-rim.ts';
-import type { Point } from './dome-rim.ts';
+import { breakAlong, circleThrough, raysAround } from './dome-rim.ts';
+import type { Point, Ray } from './dome-rim.ts';
 import type { DomeInput } from './find-domes.ts';
+import { pixelsOf } from './mask-pixels.ts';
 
 export interface DomeStart {
   /** Pixel of the centre, or the one nearest to it on the map. */
@@ -18,7 +19,7 @@ export interface DomeStart {
 /** A dome of a smaller radius has too few pixels for its outline to tell a circle, pixels. */
 const leastRadiusPx = 3;
 /** Directions in which the ground about a summit is followed. */
-const around = directionsAround(16);
+const rays = 16;
 /** Nor is a dome about a summit sought beyond this, pixels: larger ones are seldom run through on all sides. */
 const mostRadiusPx = 24;
 /** Nor about one lower than this many standard deviations of the noise: a break of slope must stand out of it. */
@@ -43,7 +44,7 @@ function inscribedCircles(input: DomeInput): DomeStart[] {
   const { columns, rows, pitchXM, pitchYM, mask } = input;
   const distance2 = squaredDistance(mask, columns, rows, { pitchX: pitchXM, pitchY: pitchYM });
   const least = (leastRadiusPx * Math.max(pitchXM, pitchYM)) ** 2;
-  return maxima(distance2, columns, rows, (value) => value >= least)
+  return maxima(distance2, columns, rows, pixelsOf(mask), least)
     .map((at) => startAt(input, at, Math.sqrt(distance2[at]!) - 0.5 * Math.sqrt(pitchXM * pitchYM)));
 }
 
@@ -55,22 +56,25 @@ export function startsBySummits(input: DomeInput, taken: Uint32Array): DomeStart
   const { columns, rows, pitchXM, pitchYM, mask, rise, noiseM } = input;
   const pixelM = Math.max(pitchXM, pitchYM);
   const starts: DomeStart[] = [];
-  for (const at of maxima(rise, columns, rows, (value, i) => mask[i] === 1 && taken[i] === 0 && value > leastSummit * noiseM)) {
+  const around = raysAround(rays, input);
+  const least = leastSummit * noiseM;
+  for (const at of maxima(rise, columns, rows, pixelsOf(mask), least)) {
+    if (taken[at]! > 0 || rise[at] === least) continue;
     // Noise makes many a summit on a broad top: one within two pixels is enough.
     if (!isHighestWithin(rise, columns, rows, at, 2)) continue;
     const centre = startAt(input, at, 0);
-    const found = circleThrough(rimAbout(input, centre, rise[at]!, mostRadiusPx * pixelM));
+    const found = circleThrough(rimAbout(input, around, centre, rise[at]!, mostRadiusPx * pixelM));
     if (found && found.radiusM >= leastRadiusPx * pixelM && Math.hypot(found.xM - centre.xM, found.yM - centre.yM) < found.radiusM) starts.push({ at, breaks: true, ...found });
   }
   return starts.sort(largestFirst);
 }
 
 /** Breaks of slope about a place, those left out that lie more than half as far again as the middle one, or less than half as far. */
-function rimAbout(input: DomeInput, centre: Point, heightM: number, mostM: number): Point[] {
+function rimAbout(input: DomeInput, around: readonly Ray[], centre: Point, heightM: number, mostM: number): Point[] {
   const pixelM = Math.max(input.pitchXM, input.pitchYM);
   const points: { point: Point; awayM: number }[] = [];
-  for (const direction of around) {
-    const point = breakAlong(input, centre, heightM / 2, direction, 2 * pixelM, mostM, 1);
+  for (const ray of around) {
+    const point = breakAlong(input, centre, heightM / 2, ray, 2 * pixelM, mostM, 1);
     if (point) points.push({ point, awayM: Math.hypot(point.xM - centre.xM, point.yM - centre.yM) });
   }
   if (points.length < around.length / 2) return [];
@@ -117,18 +121,20 @@ function isHighestWithin(values: Float32Array, columns: number, rows: number, at
   return true;
 }
 
-/** Pixels off the border that none of their eight neighbours exceeds. */
-function maxima(values: Float32Array, columns: number, rows: number, admit: (value: number, i: number) => boolean): number[] {
+/** Those of the listed pixels off the border that are at least so high and that none of their eight neighbours exceeds. */
+function maxima(values: Float32Array, columns: number, rows: number, pixels: Int32Array, least: number): number[] {
   const found: number[] = [];
-  for (let r = 1; r + 1 < rows; r++) {
-    for (let c = 1; c + 1 < columns; c++) {
-      const i = r * columns + c;
-      const here = values[i]!;
-      if (!admit(here, i)) continue;
-      if (values[i - 1]! > here || values[i + 1]! > here || values[i - columns]! > here || values[i + columns]! > here) continue;
-      if (values[i - columns - 1]! > here || values[i - columns + 1]! > here || values[i + columns - 1]! > here || values[i + columns + 1]! > here) continue;
-      found.push(i);
-    }
+  for (let n = 0; n < pixels.length; n++) {
+    const i = pixels[n]!;
+    const here = values[i]!;
+    if (!(here >= least) || i < columns || i >= (rows - 1) * columns) continue;
+    const c = i % columns;
+    if (c > 0 && c + 1 < columns && isMaximum(values, columns, i, here)) found.push(i);
   }
   return found;
+}
+
+function isMaximum(values: Float32Array, columns: number, i: number, here: number): boolean {
+  if (values[i - 1]! > here || values[i + 1]! > here || values[i - columns]! > here || values[i + columns]! > here) return false;
+  return !(values[i - columns - 1]! > here || values[i - columns + 1]! > here || values[i + columns - 1]! > here || values[i + columns + 1]! > here);
 }

@@ -1,6 +1,8 @@
 /** Round domes, also where other things lean on them or run through them. */
-import { breakAlong, circleThrough, directionsAround, edgeAlong } from './dome-rim.ts';
-import type { Direction, Point } from './dome-rim.ts';
+import { directions, flawedInside, isParaboloid } from './dome-pixels.ts';
+import type { Circle, Ring } from './dome-pixels.ts';
+import { breakAlong, circleThrough, edgeAlong, raysAround } from './dome-rim.ts';
+import type { Point, Ray } from './dome-rim.ts';
 import { startsByOutline, startsBySummits } from './dome-starts.ts';
 import type { DomeStart } from './dome-starts.ts';
 
@@ -22,8 +24,6 @@ export interface Domes {
   readonly count: number;
 }
 
-/** Directions in which a circle is compared with the outline. */
-const directions = 48;
 /** Share of a circle's directions in which the flawed ground ends with it; the two sides of a fold are never more than 0.45 of a circle between them. */
 const leastFree = 0.52;
 /** Less will do, down to this share, for a dome that clearly rises out of what runs through it: by this factor over what lies just outside the circle. */
@@ -48,19 +48,6 @@ const straysPx = [3, 2, 1.2, 1.2] as const;
 const strayPx = 1.2;
 /** A dome of which larger ones have taken more than the rest of this share is one of them. */
 const leastOwn = 0.3;
-/** Largest rms deviation from a paraboloid, as a share of its height, beyond the noise. */
-const mostDeviation = 0.12;
-
-interface Ring extends Point {
-  readonly radiusM: number;
-}
-
-interface Circle extends Ring {
-  /** By direction: the flawed ground ends here with the circle. */
-  readonly free: readonly boolean[];
-  /** It stands on the flank of something whose own fall adds to the dome's: that makes it more pointed. */
-  readonly leaning: boolean;
-}
 
 /**
  * Finds domes: circles that the outline of the flawed ground follows over more than half of their directions, or on which the slope breaks where the flawed
@@ -69,62 +56,75 @@ interface Circle extends Ring {
  * overlaps a dome adds to its height only in the other directions, so it does not spoil the comparison.
  */
 export function findDomes(input: DomeInput): Domes {
-  const labels = new Uint32Array(input.mask.length);
-  let count = 0;
-  const take = (starts: readonly DomeStart[]): void => {
-    for (const start of starts) {
-      if (labels[start.at]! > 0) continue;
-      const circle = settle(input, start);
-      if (!circle || !isParaboloid(input, circle)) continue;
-      if (fill(input, circle, labels, count + 1)) count++;
-    }
-  };
-  take(startsByOutline(input));
-  take(startsBySummits(input, labels));
-  return { labels, count };
+  const { columns, rows, pitchXM, pitchYM, mask, rise, noiseM } = input;
+  const search: Search = { columns, rows, pitchXM, pitchYM, mask, rise, noiseM, rays: raysAround(directions, input) };
+  const labels = new Uint32Array(mask.length);
+  const count = takeDomes(search, startsByOutline(input), labels, 0);
+  return { labels, count: takeDomes(search, startsBySummits(input, labels), labels, count) };
 }
 
-const around = directionsAround(directions);
+/** Labels the domes that come of the starts, from `count` + 1 on. @returns the new count. */
+function takeDomes(input: Search, starts: readonly DomeStart[], labels: Uint32Array, count: number): number {
+  let found = count;
+  for (const start of starts) {
+    if (labels[start.at]! > 0) continue;
+    const circle = settle(input, start);
+    if (!circle || !isParaboloid(input, circle)) continue;
+    if (fill(input, circle, labels, found + 1)) found++;
+  }
+  return found;
+}
+
+interface Search extends DomeInput {
+  readonly rays: readonly Ray[];
+}
 
 /** Moves a circle on to its rim, which is where its slope breaks or the flawed ground ends; undefined where too little of it is one. y runs down here. */
-function settle(input: DomeInput, start: DomeStart): Circle | undefined {
+function settle(input: Search, start: DomeStart): Circle | undefined {
   const { breaks } = start;
   let circle: Ring = start;
   // Most candidates lie on folds and show it at once.
   const least = leastFreeIfHigh * onMap(input, circle).share * directions;
-  let near = 0;
-  const firstM = breaks ? heightOverRim(input, circle) : 0;
-  for (let k = 0; k < directions; k += 4) if (breaks ? breakNear(input, circle, firstM, around[k]!, straysPx[0]) : edgeAlong(input, circle, circle.radiusM, around[k]!, straysPx[0])) near++;
-  if (near < (breaks ? leastRim * directions : least) / 4 - 1) return undefined;
+  if (!rimOf(input, circle, breaks, straysPx[0], 4, (breaks ? leastRim * directions : least) / 4 - 1)) return undefined;
   for (const strayed of straysPx) {
     const { radiusM } = circle;
-    const heightM = breaks ? heightOverRim(input, circle) : 0;
-    const rim: Point[] = [];
-    for (const direction of around) {
-      const point = breaks ? breakNear(input, circle, heightM, direction, strayed) : edgeAlong(input, circle, radiusM, direction, strayed);
-      if (point) rim.push(point);
-    }
-    if (rim.length < least) return undefined;
-    const fitted = circleThrough(rim);
+    const rim = rimOf(input, circle, breaks, strayed, 1, least);
+    const fitted = rim && circleThrough(rim);
     if (!fitted || !(fitted.radiusM > 0.5 * radiusM && fitted.radiusM < 1.6 * radiusM)) return undefined;
     circle = fitted;
   }
   return judged(input, circle, breaks);
 }
 
+/** Points of the rim near a circle, along every `each`-th ray; undefined where fewer than `least` show one. */
+function rimOf(input: Search, circle: Ring, breaks: boolean, stray: number, each: number, least: number): Point[] | undefined {
+  const heightM = breaks ? heightOverRim(input, circle) : 0;
+  const rim: Point[] = [];
+  for (let k = 0; k < directions; k += each) {
+    const ray = input.rays[k]!;
+    const point = breaks ? breakNear(input, circle, heightM, ray, stray) : edgeAlong(input, circle, circle.radiusM, ray, stray);
+    if (point) rim.push(point);
+    // Not even all rays to come would do.
+    if (rim.length + (directions - 1 - k) / each < least) return undefined;
+  }
+  return rim.length < least ? undefined : rim;
+}
+
 /** The circle with what is free of it, if enough of it is a rim. */
-function judged(input: DomeInput, circle: Ring, breaks: boolean): Circle | undefined {
+function judged(input: Search, circle: Ring, breaks: boolean): Circle | undefined {
   const { radiusM } = circle;
-  const free = around.map((direction) => edgeAlong(input, circle, radiusM, direction, strayPx) !== undefined);
+  const free = input.rays.map((ray) => edgeAlong(input, circle, radiusM, ray, strayPx) !== undefined);
   const on = onMap(input, circle);
   if (on.share < leastOnMap) return undefined;
   const share = free.filter(Boolean).length / directions / on.share;
   const found = { ...circle, free, leaning: breaks && share < leaningFree };
   if (breaks) {
+    if (share < leastFreeIfBroken) return undefined;
     const heightM = heightOverRim(input, circle);
-    const rim = around.filter((direction) => breakNear(input, circle, heightM, direction, strayPx) !== undefined).length / directions / on.share;
-    const ends = around.filter((direction) => edgeAlong(input, circle, radiusM, direction, (endsWithin * radiusM) / pixelAlong(input, direction)) !== undefined).length / directions / on.share;
-    return share >= Math.max(leastFreeIfBroken, mostlyFree * ends) && rim >= leastRim && outsideOverInside(input, found) * standsOut <= 1 ? found : undefined;
+    const rim = input.rays.filter((ray) => breakNear(input, circle, heightM, ray, strayPx) !== undefined).length / directions / on.share;
+    if (rim < leastRim) return undefined;
+    const ends = input.rays.filter((ray) => edgeAlong(input, circle, radiusM, ray, (endsWithin * radiusM) / ray.pixelM) !== undefined).length / directions / on.share;
+    return share >= mostlyFree * ends && outsideOverInside(input, found) * standsOut <= 1 ? found : undefined;
   }
   if (on.share < 1) return share >= leastFreeIfCut ? found : undefined;
   if (share < leastFreeIfHigh) return undefined;
@@ -134,21 +134,17 @@ function judged(input: DomeInput, circle: Ring, breaks: boolean): Circle | undef
   return small && share < 0.85 && ratio > goesOnPart ? undefined : found;
 }
 
-function breakNear(input: DomeInput, circle: Ring, heightM: number, direction: Direction, stray: number): Point | undefined {
-  const strayM = stray * pixelAlong(input, direction);
-  return breakAlong(input, circle, heightM, direction, circle.radiusM - strayM, circle.radiusM + strayM);
-}
-
-/** Length of a pixel's step in a direction, metres. */
-function pixelAlong({ pitchXM, pitchYM }: DomeInput, { ux, uy }: Direction): number {
-  return Math.hypot(ux * pitchXM, uy * pitchYM);
+function breakNear(input: Search, circle: Ring, heightM: number, ray: Ray, stray: number): Point | undefined {
+  const strayM = stray * ray.pixelM;
+  return breakAlong(input, circle, heightM, ray, circle.radiusM - strayM, circle.radiusM + strayM);
 }
 
 /** Share of a circle's directions in which it lies on the map. */
-function onMap({ columns, rows, pitchXM, pitchYM }: DomeInput, { xM, yM, radiusM }: Ring): { readonly share: number } {
-  const [width, height] = [columns * pitchXM, rows * pitchYM];
+function onMap({ columns, rows, pitchXM, pitchYM, rays }: Search, { xM, yM, radiusM }: Ring): { readonly share: number } {
+  const width = columns * pitchXM;
+  const height = rows * pitchYM;
   if (xM - radiusM > pitchXM && yM - radiusM > pitchYM && xM + radiusM < width - pitchXM && yM + radiusM < height - pitchYM) return { share: 1 };
-  const on = around.filter(({ ux, uy }) => {
+  const on = rays.filter(({ ux, uy }) => {
     const [x, y] = [xM + (radiusM + pitchXM) * ux, yM + (radiusM + pitchYM) * uy];
     return x > 0 && x < width && y > 0 && y < height;
   });
@@ -156,9 +152,15 @@ function onMap({ columns, rows, pitchXM, pitchYM }: DomeInput, { xM, yM, radiusM
 }
 
 /** Height at the centre over the lower half of what lies on the circle, metres. */
-function heightOverRim(input: DomeInput, { xM, yM, radiusM }: Ring): number {
-  const rim = around.map(({ ux, uy }) => riseAt(input, xM + radiusM * ux, yM + radiusM * uy)).filter((value) => value === value).sort((a, b) => a - b);
-  return riseAt(input, xM, yM) - (rim[rim.length >> 1] ?? Number.NaN);
+function heightOverRim(input: Search, { xM, yM, radiusM }: Ring): number {
+  const rim = new Float64Array(directions);
+  let count = 0;
+  for (const { ux, uy } of input.rays) {
+    const value = riseAt(input, xM + radiusM * ux, yM + radiusM * uy);
+    if (value === value) rim[count++] = value;
+  }
+  const known = rim.subarray(0, count).sort();
+  return riseAt(input, xM, yM) - (known[count >> 1] ?? Number.NaN);
 }
 
 function riseAt({ columns, rows, pitchXM, pitchYM, rise }: DomeInput, xM: number, yM: number): number {
@@ -168,73 +170,23 @@ function riseAt({ columns, rows, pitchXM, pitchYM, rise }: DomeInput, xM: number
 }
 
 /** Highest rise just outside the circle, in the directions where the flawed ground goes on, over the rise at its centre; 0 where it ends everywhere. */
-function outsideOverInside(input: DomeInput, { xM, yM, radiusM, free }: Circle): number {
+function outsideOverInside(input: Search, { xM, yM, radiusM, free }: Circle): number {
   let highest = 0;
-  free.forEach((ends, k) => {
-    if (ends) return;
-    const { ux, uy } = around[k]!;
-    const away = radiusM + 1.5 * Math.hypot(ux * input.pitchXM, uy * input.pitchYM);
+  for (const [k, { ux, uy, pixelM }] of input.rays.entries()) {
+    if (free[k]) continue;
+    const away = radiusM + 1.5 * pixelM;
     const value = riseAt(input, xM + away * ux, yM + away * uy);
     if (value > highest) highest = value;
-  });
-  return highest / riseAt(input, xM, yM);
-}
-
-/** Pixels inside the circle with ρ² and direction. */
-function forEachInside({ columns, rows, pitchXM, pitchYM }: DomeInput, { xM, yM, radiusM }: Circle, visit: (i: number, rho2: number, direction: number) => void): void {
-  const firstRow = Math.max(0, Math.floor((yM - radiusM) / pitchYM - 1));
-  const lastRow = Math.min(rows - 1, Math.ceil((yM + radiusM) / pitchYM + 1));
-  const firstColumn = Math.max(0, Math.floor((xM - radiusM) / pitchXM - 1));
-  const lastColumn = Math.min(columns - 1, Math.ceil((xM + radiusM) / pitchXM + 1));
-  for (let r = firstRow; r <= lastRow; r++) {
-    for (let c = firstColumn; c <= lastColumn; c++) {
-      const dx = (c + 0.5) * pitchXM - xM;
-      const dy = (r + 0.5) * pitchYM - yM;
-      const rho2 = (dx * dx + dy * dy) / (radiusM * radiusM);
-      const direction = Math.round(((Math.atan2(dy, dx) / (2 * Math.PI) + 1) % 1) * directions) % directions;
-      visit(r * columns + c, rho2, direction);
-    }
   }
-}
-
-function isParaboloid(input: DomeInput, circle: Circle): boolean {
-  const { rise, noiseM } = input;
-  const heights: number[] = [];
-  const shapes: [number, number, number][] = [];
-  forEachInside(input, circle, (i, rho2, direction) => {
-    if (rho2 > 1 || circle.free[direction] !== true || rise[i] !== rise[i]) return;
-    heights.push(rise[i]!);
-    shapes.push([1 - rho2, 1 - rho2 * rho2, 1 - Math.sqrt(rho2)]);
-  });
-  if (heights.length < 12) return false;
-  const fits = [0, 1, 2].map((k) => {
-    let both = 0;
-    let square = 0;
-    heights.forEach((h, n) => {
-      both += h * shapes[n]![k]!;
-      square += shapes[n]![k]! ** 2;
-    });
-    const height = both / square;
-    let rss = 0;
-    heights.forEach((h, n) => { rss += (h - height * shapes[n]![k]!) ** 2; });
-    return { height, rms: Math.sqrt(rss / heights.length) };
-  });
-  const [dome, block, cone] = fits as [typeof fits[0], typeof fits[0], typeof fits[0]];
-  return dome.height > 0 && dome.rms < block.rms && (circle.leaning || dome.rms < cone.rms) && dome.rms < mostDeviation * dome.height + 2 * noiseM;
+  return highest / riseAt(input, xM, yM);
 }
 
 /** Gives the dome its pixels: flawed ground within the circle that no larger dome has taken. False, and nothing is taken, where little of it is left: it is the same dome. */
 function fill(input: DomeInput, circle: Circle, labels: Uint32Array, label: number): boolean {
   const marginM = 0.5 * Math.sqrt(input.pitchXM * input.pitchYM);
-  const most = ((circle.radiusM + marginM) / circle.radiusM) ** 2;
-  const free: number[] = [];
-  let all = 0;
-  forEachInside(input, circle, (i, rho2) => {
-    if (rho2 > most || input.mask[i] === 0) return;
-    all++;
-    if (labels[i] === 0) free.push(i);
-  });
-  if (free.length < leastOwn * all) return false;
+  const inside = flawedInside(input, circle, ((circle.radiusM + marginM) / circle.radiusM) ** 2);
+  const free = inside.filter((i) => labels[i] === 0);
+  if (free.length < leastOwn * inside.length) return false;
   for (const i of free) labels[i] = label;
   return true;
 }

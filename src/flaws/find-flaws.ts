@@ -13,6 +13,7 @@ import { findRaised } from './find-raised.ts';
 import { flawOf } from './flaw-of.ts';
 import type { Flaw, Flaws, LayerSource } from './flaws.ts';
 import { riseAboveGround } from './local-ground.ts';
+import { addMask, countOf, keepBoth, pixelsOf, takeMask } from './mask-pixels.ts';
 import { overPlanes } from './over-planes.ts';
 import { partRegions } from './part-regions.ts';
 import { measureRegions } from './measure.ts';
@@ -79,17 +80,13 @@ export function findFlaws(ground: Ground, grid: Grid, footprint: MaskMap, sectio
     shorts = findShorts(input);
     const found = findOpens(input);
     opens = found.opens;
-    for (let i = 0; i < count; i++) if (found.belongToRaised[i] === 1) raisedMask[i] = 1;
+    addMask(raisedMask, found.belongToRaised);
   }
-  const inside = footprint.data;
-  for (let i = 0; i < count; i++) {
-    if (shorts[i] === 1) raisedMask[i] = 0;
-    if (inside[i] === 0) raisedMask[i] = shorts[i] = opens[i] = 0;
-  }
+  takeMask(raisedMask, shorts);
+  for (const mask of [raisedMask, shorts, opens]) keepBoth(mask, footprint.data);
 
   if (rise) {
-    let gapPixels = 0;
-    for (const mark of tipGaps(raisedMask, rise, columns, rows, grid.pitchXM, grid.pitchYM, assumedTipM)) gapPixels += mark;
+    const gapPixels = countOf(tipGaps(raisedMask, rise, columns, rows, grid.pitchXM, grid.pitchYM, assumedTipM));
     if (gapPixels > 0) warnings.push(notice('tip-gaps', { areaUm2: gapPixels * pixelAreaM2(grid) * 1e12, tipNm: assumedTipM * 1e9 }));
   }
   const labels = new Uint32Array(count);
@@ -98,15 +95,17 @@ export function findFlaws(ground: Ground, grid: Grid, footprint: MaskMap, sectio
     columns, rows, pitchXM: grid.pitchXM, pitchYM: grid.pitchYM,
     ...(rise ? { rise } : {}), ...(current && log10 ? { log10, floor: current.floor.data } : {}), ...(raised?.drop ? { drop: raised.drop } : {}),
   };
-  const add = (found: { labels: Uint32Array; count: number; distance2: Float32Array; kind?: Uint8Array }, classify: (region: Region) => Classified): void => {
+  const add = (found: Numbered, classify: (region: Region) => Classified): void => {
     if (found.count === 0) return;
     const offset = list.length;
     for (const region of measureRegions({ ...shared, ...found })) list.push(flawOf(region, offset + region.label, classify(region)));
-    for (let i = 0; i < count; i++) if (found.labels[i]! > 0) labels[i] = offset + found.labels[i]!;
+    addLabels(labels, found, offset);
   };
-  const spots = (mask: Uint8Array): { labels: Uint32Array; count: number; distance2: Float32Array } => ({
-    ...labelComponents(mask, columns, rows, 8), distance2: squaredDistance(mask, columns, rows, { pitchX: grid.pitchXM, pitchY: grid.pitchYM }),
-  });
+  const spots = (mask: Uint8Array): Numbered => {
+    const found = labelComponents(mask, columns, rows, 8);
+    const pixels = pixelsOf(mask);
+    return { labels: found.labels, count: found.count, pixels, distance2: pixels.length === 0 ? new Float32Array(0) : squaredDistance(mask, columns, rows, { pitchX: grid.pitchXM, pitchY: grid.pitchYM }) };
+  };
   add(spots(shorts), (region) => classifyShort(region, rise !== undefined));
   if (rise && smooth) {
     add(partRegions({
@@ -115,6 +114,21 @@ export function findFlaws(ground: Ground, grid: Grid, footprint: MaskMap, sectio
   }
   add(spots(opens), () => ({ cause: 'open', confidence: 0.8, reason: 'no current, and nothing in the height explains it: open' }));
   return { labels: labelMap(grid, labels), list, warnings, thresholds, ...(rise ? { rise } : {}), ...(raised?.drop ? { drop: raised.drop } : {}) };
+}
+
+/** Things found, numbered from 1. */
+interface Numbered {
+  readonly labels: Uint32Array;
+  readonly count: number;
+  /** Pixels that hold all labelled ones, in raster order. */
+  readonly pixels: Int32Array;
+  readonly distance2: Float32Array;
+  readonly kind?: Uint8Array;
+}
+
+/** Takes over labels, each `offset` higher. */
+function addLabels(labels: Uint32Array, added: Numbered, offset: number): void {
+  for (const i of added.pixels) if (added.labels[i]! > 0) labels[i] = offset + added.labels[i]!;
 }
 
 function classifyShort(region: Region, hasHeight: boolean): Classified {

@@ -2,6 +2,7 @@
 import { squaredDistance } from '../grid/distance.ts';
 import { labelComponents } from '../grid/label-components.ts';
 import { dilate, nearestAdmitted } from './local-ground.ts';
+import { bothOf, countOf, higherThan, knownOutside, maskOf, onlyFirst, pixelsOf, takeMask } from './mask-pixels.ts';
 
 export interface RaisedInput {
   readonly columns: number;
@@ -60,49 +61,60 @@ const stepHalfPx = 1.5;
  * Steps of the barrier are no rises, because the rise is taken over the terraces' planes.
  */
 export function findRaised(input: RaisedInput): Raised {
-  const { columns, rows, rise, onPlane, log10 } = input;
+  const { columns, rows, rise, log10 } = input;
   const edgeM = input.edgeShare * input.startM;
   // Started by a mean over nine pixels, so that no single noisy one starts a flaw.
   const { smooth } = input;
-  const raised = hysteresis(smooth, rise, columns, rows, input.startM, edgeM);
-  if (!log10) return { mask: withoutSpecks(raised, columns, rows, input.minPixels), conductingPixels: 0 };
+  const weak = higherThan(rise, edgeM);
+  if (!log10) return { mask: keepHigh(weak, smooth, input.startM, columns, rows, input.minPixels), conductingPixels: 0 };
+  const raised = keepHigh(weak, smooth, input.startM, columns, rows, 1);
 
   const zone = dilate(raised, columns, rows, reachPx);
-  const outside = new Uint8Array(zone.length);
-  for (let i = 0; i < zone.length; i++) outside[i] = zone[i] === 1 || Number.isNaN(log10[i]!) ? 0 : 1;
-  const nearest = nearestAdmitted(outside, columns, rows);
+  const nearest = nearestAdmitted(knownOutside(zone, log10), columns, rows);
   const mask = new Uint8Array(zone.length);
   const drop = new Float32Array(zone.length);
   const conducting = new Uint8Array(zone.length);
   const undecided = new Uint8Array(zone.length);
   const byHeight = new Uint8Array(zone.length);
-  const dim = (input.floorLog10 ?? Number.NEGATIVE_INFINITY) + input.dropDecades + marginDecades;
-  for (let i = 0; i < zone.length; i++) {
-    if (zone[i] === 0) continue;
-    const from = nearest[i]!;
-    const loss = from < 0 ? Number.NaN : log10[from]! - log10[i]!;
-    drop[i] = loss;
-    if (Number.isNaN(loss)) mask[i] = raised[i]!;
-    else if (loss > input.dropDecades) mask[i] = onPlane[i] === 1 && !(rise[i]! > input.startM) ? 0 : 1;
-    // Beside ground that is saturated, or too dim for a drop to show above the floor, the current cannot be judged: the height alone decides.
-    else if (input.saturated?.[from] === 1 || log10[from]! < dim) {
-      mask[i] = raised[i]!;
-      byHeight[i] = raised[i]!;
-      if (input.saturated?.[i] === 1) undecided[i] = raised[i]!;
-    }
-    else if (raised[i] === 1 && rise[i]! > input.startM) conducting[i] = 1;
-  }
+  const judged = { mask, drop, conducting, undecided, byHeight };
+  judge(pixelsOf(zone), nearest, raised, log10, input, judged);
   decideSaturated(mask, undecided, columns, rows);
   removeSteps(mask, drop, smooth, input);
   // What is left beside a terrace's border does not reach the starting threshold and goes with it.
-  const strong = new Uint8Array(zone.length);
-  for (let i = 0; i < strong.length; i++) strong[i] = mask[i] === 1 && smooth[i]! > input.startM ? 1 : 0;
-  const final = withoutSpecks(keepTouching(mask, strong, columns, rows), columns, rows, input.minPixels);
+  const final = keepHigh(mask, smooth, input.startM, columns, rows, input.minPixels);
   // The flanks of a flaw rise too; only what stands apart from all flaws is a bump of its own.
-  const near = dilate(final, columns, rows, reachPx);
-  let conductingPixels = 0;
-  for (let i = 0; i < near.length; i++) if (conducting[i] === 1 && near[i] === 0) conductingPixels++;
-  return { mask: final, byHeight, drop, conductingPixels };
+  takeMask(conducting, dilate(final, columns, rows, reachPx));
+  return { mask: final, byHeight, drop, conductingPixels: countOf(conducting) };
+}
+
+/** What the current says of each pixel; all maps begin at 0. */
+interface Judged {
+  readonly mask: Uint8Array;
+  readonly drop: Float32Array;
+  readonly conducting: Uint8Array;
+  readonly undecided: Uint8Array;
+  readonly byHeight: Uint8Array;
+}
+
+/** Judges the listed pixels of raised ground and around it by their current against that of the pixels named in `nearest`. */
+function judge(pixels: Int32Array, nearest: Int32Array, raised: Uint8Array, log10: Float32Array, input: RaisedInput, { mask, drop, conducting, undecided, byHeight }: Judged): void {
+  const { rise, onPlane, saturated, startM, dropDecades } = input;
+  const dim = (input.floorLog10 ?? Number.NEGATIVE_INFINITY) + dropDecades + marginDecades;
+  for (let n = 0; n < pixels.length; n++) {
+    const i = pixels[n]!;
+    const from = nearest[i]!;
+    const loss = from < 0 ? Number.NaN : log10[from]! - log10[i]!;
+    drop[i] = loss;
+    if (loss !== loss) mask[i] = raised[i]!;
+    else if (loss > dropDecades) mask[i] = onPlane[i] === 1 && !(rise[i]! > startM) ? 0 : 1;
+    // Beside ground that is saturated, or too dim for a drop to show above the floor, the current cannot be judged: the height alone decides.
+    else if (saturated?.[from] === 1 || log10[from]! < dim) {
+      mask[i] = raised[i]!;
+      byHeight[i] = raised[i]!;
+      if (saturated?.[i] === 1) undecided[i] = raised[i]!;
+    }
+    else if (raised[i] === 1 && rise[i]! > startM) conducting[i] = 1;
+  }
 }
 
 /**
@@ -111,11 +123,9 @@ export function findRaised(input: RaisedInput): Raised {
  */
 function decideSaturated(mask: Uint8Array, undecided: Uint8Array, columns: number, rows: number): void {
   if (!undecided.includes(1)) return;
-  const decided = new Uint8Array(mask.length);
-  for (let i = 0; i < mask.length; i++) decided[i] = mask[i]! & (1 - undecided[i]!);
+  const decided = onlyFirst(mask, undecided);
   const lost = withoutSpecks(decided, columns, rows, leastLost);
-  const near = dilate(lost, columns, rows, reachPx);
-  for (let i = 0; i < mask.length; i++) if (undecided[i] === 1 && near[i] === 1) mask[i] = 0;
+  takeMask(mask, bothOf(undecided, dilate(lost, columns, rows, reachPx)));
 }
 
 /**
@@ -123,58 +133,63 @@ function decideSaturated(mask: Uint8Array, undecided: Uint8Array, columns: numbe
  * current has fallen by as many or is censored where it would have. Changes `mask`.
  */
 function removeSteps(mask: Uint8Array, drop: Float32Array, smooth: Float32Array, { columns, rows, rise, floor, layerM, layerDecades }: RaisedInput): void {
-  const low = new Uint8Array(mask.length);
-  for (let i = 0; i < low.length; i++) if (mask[i] === 1 && smooth[i]! > 0.4 * layerM && smooth[i]! < 2.6 * layerM) low[i] = 1;
+  const strips = pixelsBetween(mask, smooth, 0.4 * layerM, 2.6 * layerM);
+  const low = maskOf(strips, mask.length);
   const { labels, count, pixels } = labelComponents(low, columns, rows, 4);
   if (count === 0) return;
   const widest = new Float64Array(count + 1);
-  const [riseSum, dropSum, dark] = [0, 0, 0].map(() => new Float64Array(count + 1)) as [Float64Array, Float64Array, Float64Array];
+  const [riseSum, risen, dropSum, dropped, dark] = Array.from({ length: 5 }, () => new Float64Array(count + 1)) as [Float64Array, Float64Array, Float64Array, Float64Array, Float64Array];
   const distance2 = squaredDistance(low, columns, rows, {});
-  for (let i = 0; i < labels.length; i++) {
+  for (const i of strips) {
     const n = labels[i]!;
-    if (n === 0) continue;
     if (distance2[i]! > widest[n]!) widest[n] = distance2[i]!;
-    riseSum[n]! += rise[i]!;
-    dropSum[n]! += drop[i] === drop[i] ? drop[i]! : 0;
+    // What is missing takes no part.
+    if (rise[i] === rise[i]) {
+      riseSum[n]! += rise[i]!;
+      risen[n]!++;
+    }
+    if (drop[i] === drop[i]) {
+      dropSum[n]! += drop[i]!;
+      dropped[n]!++;
+    }
     dark[n]! += floor?.[i] ?? 0;
   }
   const step = new Uint8Array(count + 1);
   for (let n = 1; n <= count; n++) {
-    const layers = Math.max(1, Math.round(riseSum[n]! / pixels[n]! / layerM));
-    const lost = dropSum[n]! / pixels[n]! / layerDecades;
+    const up = riseSum[n]! / risen[n]! / layerM;
+    const layers = Math.max(1, Math.round(up));
+    const lost = dropSum[n]! / dropped[n]! / layerDecades;
     const fits = dark[n]! > pixels[n]! / 2 ? lost < layers + 0.35 : Math.abs(lost - layers) < 0.35;
-    step[n] = widest[n]! > stepHalfPx ** 2 && fits && Math.abs(riseSum[n]! / pixels[n]! / layerM - layers) < 0.35 ? 1 : 0;
+    step[n] = widest[n]! > stepHalfPx ** 2 && fits && Math.abs(up - layers) < 0.35 ? 1 : 0;
   }
-  for (let i = 0; i < mask.length; i++) if (step[labels[i]!] === 1) mask[i] = 0;
+  for (const i of strips) if (step[labels[i]!] === 1) mask[i] = 0;
 }
 
-/** Pixels above `low` connected (8) to at least one whose smoothed height is above `high`. */
-function hysteresis(smooth: Float32Array, values: Float32Array, columns: number, rows: number, high: number, low: number): Uint8Array {
-  const weak = new Uint8Array(values.length);
-  const strong = new Uint8Array(values.length);
-  for (let i = 0; i < weak.length; i++) {
-    if (!(values[i]! > low)) continue;
-    weak[i] = 1;
-    if (smooth[i]! > high) strong[i] = 1;
-  }
-  return keepTouching(weak, strong, columns, rows);
+/** What of the mask lies between two values. */
+function pixelsBetween(mask: Uint8Array, values: Float32Array, low: number, high: number): Int32Array {
+  return pixelsOf(mask).filter((i) => values[i]! > low && values[i]! < high);
 }
 
-/** Components (8) of `mask` that share a pixel with `seeds`. */
-function keepTouching(mask: Uint8Array, seeds: Uint8Array, columns: number, rows: number): Uint8Array {
-  const { labels, count } = labelComponents(mask, columns, rows, 8);
+/** Components (8) of at least so many pixels that are higher than `high` in one place at least: hysteresis, where the mask is what is higher than something lower. */
+function keepHigh(mask: Uint8Array, values: Float32Array, high: number, columns: number, rows: number, leastPixels: number): Uint8Array {
+  const { labels, count, pixels } = labelComponents(mask, columns, rows, 8);
   const keep = new Uint8Array(count + 1);
-  for (let i = 0; i < labels.length; i++) if (seeds[i] === 1) keep[labels[i]!] = 1;
-  keep[0] = 0;
-  const out = new Uint8Array(mask.length);
-  for (let i = 0; i < out.length; i++) out[i] = keep[labels[i]!]!;
-  return out;
+  const members = pixelsOf(mask);
+  for (const i of members) if (values[i]! > high) keep[labels[i]!] = 1;
+  for (let n = 1; n <= count; n++) if (pixels[n]! < leastPixels) keep[n] = 0;
+  return kept(labels, members, keep);
 }
 
 /** Drops components (8) of fewer than `least` pixels. */
 function withoutSpecks(mask: Uint8Array, columns: number, rows: number, least: number): Uint8Array {
-  const { labels, pixels } = labelComponents(mask, columns, rows, 8);
-  const out = new Uint8Array(mask.length);
-  for (let i = 0; i < out.length; i++) out[i] = mask[i] === 1 && pixels[labels[i]!]! >= least ? 1 : 0;
+  const { labels, count, pixels } = labelComponents(mask, columns, rows, 8);
+  const keep = new Uint8Array(count + 1);
+  for (let n = 1; n <= count; n++) if (pixels[n]! >= least) keep[n] = 1;
+  return kept(labels, pixelsOf(mask), keep);
+}
+
+function kept(labels: Uint32Array, members: Int32Array, keep: Uint8Array): Uint8Array {
+  const out = new Uint8Array(labels.length);
+  for (const i of members) out[i] = keep[labels[i]!]!;
   return out;
 }

@@ -3,6 +3,7 @@ import { labelComponents } from '../grid/label-components.ts';
 import { median } from '../stats/median.ts';
 import { greyOpening } from '../grid/opening.ts';
 import { dilate, nearestAdmitted } from './local-ground.ts';
+import { knownOutside, onlyFirst, pixelsOf, takeMask } from './mask-pixels.ts';
 
 export interface SpotsInput {
   readonly columns: number;
@@ -61,21 +62,15 @@ const standOut = 0.3;
  */
 export function findShorts(input: SpotsInput): Uint8Array {
   const { columns, rows, log10, raised, saturated, floor, rise } = input;
-  const count = log10.length;
-  const use = new Uint8Array(count);
+  const use = knownOutside(raised, log10);
   // Without a height nothing says which dead ground is a flaw: none of it may serve as surroundings, or every gap between two bubbles would stand out.
-  for (let i = 0; i < count; i++) use[i] = raised[i] === 1 || Number.isNaN(log10[i]!) || (!rise && floor[i] === 1) ? 0 : 1;
-  const nearest = nearestAdmitted(use, columns, rows);
-  const filled = new Float32Array(count);
-  for (let i = 0; i < count; i++) filled[i] = nearest[i]! < 0 ? 0 : log10[nearest[i]!]!;
+  if (!rise) takeMask(use, floor);
   const width = openingWidth(input);
-  const surroundings = greyOpening(filled, columns, rows, width, width);
+  const surroundings = greyOpening(filledFrom(log10, nearestAdmitted(use, columns, rows)), columns, rows, width, width);
   const nearTerrace = nearLargeSaturated(input, width);
-  const candidates = new Uint8Array(count);
-  for (let i = 0; i < count; i++) {
-    if (use[i] === 0) continue;
+  const candidates = new Uint8Array(log10.length);
+  for (const i of standingOut(use, log10, surroundings, standOut * input.layerDecades)) {
     const above = log10[i]! - surroundings[i]!;
-    if (above < standOut * input.layerDecades) continue;
     const pitM = rise ? -rise[i]! : 0;
     if (above >= input.shortDecades) candidates[i] = 1;
     else if (saturated[i] === 1) candidates[i] = nearTerrace[i] === 0 || pitM > pitLayers * input.layerM ? 1 : 0;
@@ -83,32 +78,42 @@ export function findShorts(input: SpotsInput): Uint8Array {
   }
   const { labels, pixels, count: spots } = labelComponents(candidates, columns, rows, 8);
   if (spots === 0) return candidates;
-  const shutIn = shutInSpots(labels, spots, input);
-  const blunt = bluntSpots(labels, spots, pixels, input);
-  for (let i = 0; i < count; i++) {
+  const members = pixelsOf(candidates);
+  const shutIn = shutInSpots(labels, members, spots, input);
+  const blunt = bluntSpots(labels, members, spots, pixels, input);
+  for (const i of members) {
     const label = labels[i]!;
-    if (label > 0 && (pixels[label]! * input.pixelAreaM2 > input.shortMaxM2 || shutIn[label] === 1 || blunt[label] === 1)) candidates[i] = 0;
+    if (pixels[label]! * input.pixelAreaM2 > input.shortMaxM2 || shutIn[label] === 1 || blunt[label] === 1) candidates[i] = 0;
   }
   return candidates;
 }
 
+/** The map with every pixel's value that of the pixel named for it; 0 where none is. */
+function filledFrom(values: Float32Array, nearest: Int32Array): Float32Array {
+  const filled = new Float32Array(values.length);
+  for (let i = 0; i < filled.length; i++) filled[i] = nearest[i]! < 0 ? 0 : values[nearest[i]!]!;
+  return filled;
+}
+
+/** Pixels of a mask that lie at least so far above a map of their surroundings. */
+function standingOut(mask: Uint8Array, values: Float32Array, surroundings: Float32Array, least: number): Int32Array {
+  const found = new Int32Array(values.length);
+  let count = 0;
+  for (let i = 0; i < values.length; i++) if (mask[i] === 1 && !(values[i]! - surroundings[i]! < least)) found[count++] = i;
+  return found.slice(0, count);
+}
+
 /** By spot: 1 where it lies level with the ground and raised flaws make up most of its border. A short inside a bubble lies high up or in a pit. */
-function shutInSpots(labels: Uint32Array, count: number, { columns, rise, raised, layerM }: SpotsInput): Uint8Array {
+function shutInSpots(labels: Uint32Array, members: Int32Array, count: number, { columns, rise, raised, layerM }: SpotsInput): Uint8Array {
   const [border, beside] = [new Float64Array(count + 1), new Float64Array(count + 1)];
   const deepest = new Float64Array(count + 1);
   const highest = new Float64Array(count + 1);
-  for (let i = 0; i < labels.length; i++) {
+  for (const i of members) {
     const label = labels[i]!;
-    if (label === 0) continue;
     if (rise && rise[i]! < deepest[label]!) deepest[label] = rise[i]!;
     if (rise && rise[i]! > highest[label]!) highest[label] = rise[i]!;
-    const c = i % columns;
-    for (const j of [c > 0 ? i - 1 : -1, c + 1 < columns ? i + 1 : -1, i - columns, i + columns]) {
-      if (j < 0 || j >= labels.length || labels[j] === label) continue;
-      border[label]!++;
-      beside[label]! += raised[j]!;
-    }
   }
+  countBorders(labels, members, columns, raised, border, beside);
   return Uint8Array.from(border, (edges, label) => (beside[label]! > shutInShare * edges && deepest[label]! > -2 * layerM && highest[label]! < 3 * layerM ? 1 : 0));
 }
 
@@ -118,14 +123,13 @@ function shutInSpots(labels: Uint32Array, count: number, { columns, rise, raised
  * lies less than half of what a short stands out by above the median of its border (ground that brightens gradually), and where it saturates and
  * could lie as little as a layer above its border: a terrace as much thinner explains it.
  */
-function bluntSpots(labels: Uint32Array, count: number, pixels: Uint32Array, { columns, rows, log10, raised, saturated, rise, noiseM, shortDecades, layerDecades, layerM }: SpotsInput): Uint8Array {
+function bluntSpots(labels: Uint32Array, members: Int32Array, count: number, pixels: Uint32Array, { columns, rows, log10, raised, saturated, rise, noiseM, shortDecades, layerDecades, layerM }: SpotsInput): Uint8Array {
   const own = Array.from({ length: count + 1 }, (): number[] => []);
   const border = Array.from({ length: count + 1 }, (): number[] => []);
   const deepestM = new Float64Array(count + 1);
   const clipped = new Uint8Array(count + 1);
-  for (let i = 0; i < labels.length; i++) {
+  for (const i of members) {
     const label = labels[i]!;
-    if (label === 0) continue;
     own[label]!.push(log10[i]!);
     if (saturated[i] === 1) clipped[label] = 1;
     if (rise && -rise[i]! > deepestM[label]!) deepestM[label] = -rise[i]!;
@@ -161,7 +165,7 @@ function nearLargeSaturated(input: SpotsInput, width: number): Uint8Array {
   const { labels, pixels } = labelComponents(saturated, columns, rows, 8);
   const large = new Uint8Array(saturated.length);
   if (!pixels.some((size, n) => n > 0 && size * input.pixelAreaM2 > input.shortMaxM2)) return large;
-  for (let i = 0; i < large.length; i++) large[i] = saturated[i] === 1 && pixels[labels[i]!]! * input.pixelAreaM2 > input.shortMaxM2 ? 1 : 0;
+  for (const i of pixelsOf(saturated)) large[i] = pixels[labels[i]!]! * input.pixelAreaM2 > input.shortMaxM2 ? 1 : 0;
   return dilate(large, columns, rows, width);
 }
 
@@ -184,32 +188,29 @@ function openingWidth(input: SpotsInput): number {
  */
 export function findOpens(input: SpotsInput): { opens: Uint8Array; belongToRaised: Uint8Array } {
   const { columns, rows, log10, raised, floor } = input;
-  const candidates = new Uint8Array(log10.length);
-  const outside = new Uint8Array(log10.length);
-  for (let i = 0; i < candidates.length; i++) {
-    if (floor[i] === 1 && raised[i] === 0 && input.onPlane?.[i] !== 1 && input.lost?.[i] !== 1) candidates[i] = 1;
-    outside[i] = floor[i] === 0 && raised[i] === 0 && !Number.isNaN(log10[i]!) ? 1 : 0;
-  }
-  const nearest = nearestAdmitted(outside, columns, rows);
+  const dark = onlyFirst(floor, raised);
+  const candidates = dark.slice();
+  for (const explained of [input.onPlane, input.lost]) if (explained) takeMask(candidates, explained);
+  const opens = new Uint8Array(log10.length);
+  const belongToRaised = new Uint8Array(log10.length);
   const { labels, count, pixels } = labelComponents(candidates, columns, rows, 8);
+  if (count === 0) return { opens, belongToRaised };
+  const members = pixelsOf(candidates);
+  const nearest = nearestAdmitted(onlyFirst(knownOutside(raised, log10), floor), columns, rows);
   const sum = new Float64Array(count + 1);
   const touches = new Uint8Array(count + 1);
-  for (let i = 0; i < labels.length; i++) {
+  for (const i of members) {
     const label = labels[i]!;
-    if (label === 0) continue;
     if (nearest[i]! >= 0) sum[label]! += log10[nearest[i]!]! - log10[i]!;
     if (touchesMask(raised, columns, rows, i)) touches[label] = 1;
   }
-  const small = (label: number): boolean => pixels[label]! < input.minPixels;
-  const ofTerrace = edgesOfTerraces(labels, count, input);
+  const ofTerrace = edgesOfTerraces(labels, members, count, dark, input);
   const dim = new Uint8Array(count + 1);
-  for (let i = 0; i < labels.length; i++) if (labels[i]! > 0 && small(labels[i]!) && !brightAround(log10, labels, columns, rows, i)) dim[labels[i]!] = 1;
-  const opens = new Uint8Array(log10.length);
-  const belongToRaised = new Uint8Array(log10.length);
+  for (const i of members) if (pixels[labels[i]!]! < input.minPixels && !brightAround(log10, labels, columns, rows, i)) dim[labels[i]!] = 1;
   const least = Math.max(0.5, 0.8 * input.layerDecades);
-  for (let i = 0; i < labels.length; i++) {
+  for (const i of members) {
     const label = labels[i]!;
-    if (label === 0 || pixels[label]! * input.pixelAreaM2 >= input.terraceMinM2 || sum[label]! / pixels[label]! < least) continue;
+    if (pixels[label]! * input.pixelAreaM2 >= input.terraceMinM2 || sum[label]! / pixels[label]! < least) continue;
     if (touches[label] === 1) belongToRaised[i] = 1;
     else if (dim[label] === 0 && ofTerrace[label] === 0) opens[i] = 1;
   }
@@ -217,25 +218,32 @@ export function findOpens(input: SpotsInput): { opens: Uint8Array; belongToRaise
 }
 
 /** By patch: 1 where it is a piece of a larger dark ground. */
-function edgesOfTerraces(labels: Uint32Array, count: number, { columns, rows, raised, floor, pixelAreaM2, terraceMinM2 }: SpotsInput): Uint8Array {
-  const dark = new Uint8Array(labels.length);
-  for (let i = 0; i < dark.length; i++) if (floor[i] === 1 && raised[i] === 0) dark[i] = 1;
+function edgesOfTerraces(labels: Uint32Array, members: Int32Array, count: number, dark: Uint8Array, { columns, rows, pixelAreaM2, terraceMinM2 }: SpotsInput): Uint8Array {
   const grounds = labelComponents(dark, columns, rows, 8);
   const [border, beside] = [new Float64Array(count + 1), new Float64Array(count + 1)];
   const edge = new Uint8Array(count + 1);
-  for (let i = 0; i < labels.length; i++) {
-    const label = labels[i]!;
-    if (label === 0) continue;
-    if (grounds.pixels[grounds.labels[i]!]! * pixelAreaM2 >= terraceMinM2) edge[label] = 1;
-    const c = i % columns;
-    for (const j of [c > 0 ? i - 1 : -1, c + 1 < columns ? i + 1 : -1, i - columns, i + columns]) {
-      if (j < 0 || j >= labels.length || labels[j] === label) continue;
-      border[label]!++;
-      beside[label]! += dark[j]!;
-    }
-  }
+  for (const i of members) if (grounds.pixels[grounds.labels[i]!]! * pixelAreaM2 >= terraceMinM2) edge[labels[i]!] = 1;
+  countBorders(labels, members, columns, dark, border, beside);
   for (let n = 1; n <= count; n++) if (beside[n]! > darkBorder * border[n]!) edge[n] = 1;
   return edge;
+}
+
+/** Counts by label the edges of pixels on its border, and those of them along a mask. */
+function countBorders(labels: Uint32Array, members: Int32Array, columns: number, mask: Uint8Array, border: Float64Array, along: Float64Array): void {
+  for (const i of members) {
+    const label = labels[i]!;
+    const c = i % columns;
+    if (c > 0) countEdge(labels, label, i - 1, mask, border, along);
+    if (c + 1 < columns) countEdge(labels, label, i + 1, mask, border, along);
+    if (i >= columns) countEdge(labels, label, i - columns, mask, border, along);
+    if (i + columns < labels.length) countEdge(labels, label, i + columns, mask, border, along);
+  }
+}
+
+function countEdge(labels: Uint32Array, label: number, beside: number, mask: Uint8Array, border: Float64Array, along: Float64Array): void {
+  if (labels[beside] === label) return;
+  border[label]!++;
+  along[label]! += mask[beside]!;
 }
 
 function touchesMask(mask: Uint8Array, columns: number, rows: number, i: number): boolean {

@@ -24,5 +24,6 @@ export function flawOf(region: Region, number: number, classified: Classified): 
     heightToRadius: region.peakM / (region.diameterM / 2),
     log10Current: region.log10Current,
     touchesEdge: region.touchesEdge,
+    ...(region.kind ? { kind: region.kind } : {}),
   };
 }

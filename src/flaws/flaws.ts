@@ -35,6 +35,8 @@ export interface Flaw {
   /** Median log10 of the current inside (A, or the file's unit), NaN where no current. */
   readonly log10Current: number;
   readonly touchesEdge: boolean;
+  /** How a raised flaw was told from what touches it (`Region.kind`); absent for spots, and where nobody looked. */
+  readonly kind?: 'blob' | 'ridge' | 'dome';
   /** A person said what it is. */
   readonly byHand?: true;
 }

@@ -99,13 +99,15 @@ function risePlainly(levelled: Float32Array, columns: number, rows: number, wind
 /**
  * For every pixel the index of a nearest admitted pixel (city-block distance), spreading breadth first from the edge of the
  * admitted region; an admitted pixel is its own nearest. −1 where nothing is admitted. Computed by the kernel where one is installed, with the same result.
+ *
+ * @param withinPx further away than this (city-block) nothing is sought: −1 there too. Spares the time where only near ground counts.
  */
-export function nearestAdmitted(use: Uint8Array, columns: number, rows: number): Int32Array {
-  return nearestByKernel(use, columns, rows) ?? nearestPlainly(use, columns, rows);
+export function nearestAdmitted(use: Uint8Array, columns: number, rows: number, withinPx = columns + rows): Int32Array {
+  return nearestByKernel(use, columns, rows, withinPx) ?? nearestPlainly(use, columns, rows, withinPx);
 }
 
 /** The same in plain TypeScript. */
-function nearestPlainly(use: Uint8Array, columns: number, rows: number): Int32Array {
+function nearestPlainly(use: Uint8Array, columns: number, rows: number, withinPx: number): Int32Array {
   const count = columns * rows;
   const nearest = new Int32Array(count).fill(-1);
   const queue = new Int32Array(count);
@@ -120,7 +122,15 @@ function nearestPlainly(use: Uint8Array, columns: number, rows: number): Int32Ar
       if (!inside) queue[tail++] = i;
     }
   }
+  // The queue holds the rim, then what lies one step from it, then two.
+  let steps = 0;
+  let endOfStep = tail;
   for (let head = 0; head < tail; head++) {
+    if (head === endOfStep) {
+      steps++;
+      endOfStep = tail;
+    }
+    if (steps >= withinPx) break;
     const i = queue[head]!;
     const from = nearest[i]!;
     const c = i % columns;

@@ -2,6 +2,7 @@
 import { solveBand } from '../stats/cholesky.ts';
 import { medianInPlace } from '../stats/median.ts';
 import { selectInPlace } from '../stats/select.ts';
+import { membersOf } from './mask-pixels.ts';
 
 /** Marks of `MeasureInput.kind`. */
 export const partKinds = { blob: 0, ridge: 1, dome: 2 } as const;
@@ -57,6 +58,8 @@ export interface MeasureInput {
   readonly floor?: Uint8Array;
   /** Squared distance of each pixel from the outside of the labelled regions, m². */
   readonly distance2: Float32Array;
+  /** Pixels that hold all labelled ones, in raster order; sought where they are not given. */
+  readonly pixels?: Int32Array;
   /** By label: how the region was told (`partKinds`); absent where nobody looked. */
   readonly kind?: Uint8Array;
 }
@@ -70,24 +73,12 @@ export interface MeasureInput {
  * - Heights over the local ground; NaN pixels are left out; volume counts height × pixel area of what is known.
  */
 export function measureRegions(input: MeasureInput): Region[] {
-  const members = membersOf(input);
-  return members.map((indices, k) => measureRegion(input, k + 1, indices));
-}
-
-function membersOf(input: MeasureInput): Int32Array[] {
-  const sizes = new Uint32Array(input.count + 1);
-  for (let i = 0; i < input.labels.length; i++) sizes[input.labels[i]!]!++;
-  const lists = Array.from({ length: input.count }, (_, k) => new Int32Array(sizes[k + 1]!));
-  const used = new Uint32Array(input.count + 1);
-  for (let i = 0; i < input.labels.length; i++) {
-    const label = input.labels[i]!;
-    if (label > 0) lists[label - 1]![used[label]!++] = i;
-  }
-  return lists;
+  const members = membersOf(input.labels, input.count, input.pixels);
+  return members.slice(1).map((indices, k) => measureRegion(input, k + 1, indices));
 }
 
 function measureRegion(input: MeasureInput, label: number, indices: Int32Array): Region {
-  const { columns, rows, pitchXM, pitchYM, labels } = input;
+  const { columns, rows, pitchXM, pitchYM, labels, distance2, floor } = input;
   const n = indices.length;
   let sx = 0;
   let sy = 0;
@@ -95,7 +86,8 @@ function measureRegion(input: MeasureInput, label: number, indices: Int32Array):
   let touchesEdge = false;
   let inscribed2 = 0;
   let atFloor = 0;
-  for (const i of indices) {
+  for (let m = 0; m < indices.length; m++) {
+    const i = indices[m]!;
     const c = i % columns;
     const r = (i - c) / columns;
     sx += (c + 0.5) * pitchXM;
@@ -105,8 +97,8 @@ function measureRegion(input: MeasureInput, label: number, indices: Int32Array):
     if (r === 0 || labels[i - columns] !== label) edgesM += pitchXM;
     if (r === rows - 1 || labels[i + columns] !== label) edgesM += pitchXM;
     if (c === 0 || r === 0 || c === columns - 1 || r === rows - 1) touchesEdge = true;
-    inscribed2 = Math.max(inscribed2, input.distance2[i]!);
-    if (input.floor?.[i] === 1) atFloor++;
+    if (distance2[i]! > inscribed2) inscribed2 = distance2[i]!;
+    if (floor?.[i] === 1) atFloor++;
   }
   const xM = sx / n;
   const yM = sy / n;
@@ -146,7 +138,8 @@ function ellipseOf(input: MeasureInput, indices: Int32Array, xM: number, yM: num
   let xx = (pitchXM * pitchXM) / 12;
   let yy = (pitchYM * pitchYM) / 12;
   let xy = 0;
-  for (const i of indices) {
+  for (let m = 0; m < indices.length; m++) {
+    const i = indices[m]!;
     const c = i % columns;
     const dx = (c + 0.5) * pitchXM - xM;
     const dy = (rows - (i - c) / columns - 0.5) * pitchYM - yM;
@@ -179,7 +172,8 @@ function heights(input: MeasureInput, indices: Int32Array, xM: number, yM: numbe
   let peakM = Number.NEGATIVE_INFINITY;
   let sum = 0;
   let k = 0;
-  for (const i of indices) {
+  for (let m = 0; m < indices.length; m++) {
+    const i = indices[m]!;
     const h = rise[i]!;
     if (Number.isNaN(h)) continue;
     const c = i % columns;
@@ -212,14 +206,18 @@ function paraboloidShare({ columns, rows, pitchXM, pitchYM, rise }: MeasureInput
   const scale = Math.sqrt(indices.length * pitchXM * pitchYM);
   const normal = new Float64Array(16);
   const right = new Float64Array(4);
+  const basis = new Float64Array(4).fill(1);
   let [sum, square, count] = [0, 0, 0];
-  for (const i of indices) {
+  for (let m = 0; m < indices.length; m++) {
+    const i = indices[m]!;
     const h = rise![i]!;
     if (h !== h) continue;
     const c = i % columns;
     const dx = ((c + 0.5) * pitchXM - xM) / scale;
     const dy = ((rows - (i - c) / columns - 0.5) * pitchYM - yM) / scale;
-    const basis = [1, dx, dy, dx * dx + dy * dy];
+    basis[1] = dx;
+    basis[2] = dy;
+    basis[3] = dx * dx + dy * dy;
     for (let a = 0; a < 4; a++) {
       right[a]! += basis[a]! * h;
       for (let b = 0; b <= a; b++) normal[a * 4 + (a - b)]! += basis[a]! * basis[b]!;
@@ -263,7 +261,11 @@ function explainedShare(shape: Float64Array, values: Float64Array, count: number
 function presentOf(map: Float32Array | undefined, indices: Int32Array): { values: Float64Array; count: number } {
   const values = new Float64Array(map ? indices.length : 0);
   let count = 0;
-  if (map) for (const i of indices) if (!Number.isNaN(map[i]!)) values[count++] = map[i]!;
+  if (!map) return { values, count };
+  for (let m = 0; m < indices.length; m++) {
+    const value = map[indices[m]!]!;
+    if (value === value) values[count++] = value;
+  }
   return { values, count };
 }
 

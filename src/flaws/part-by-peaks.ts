@@ -1,4 +1,6 @@
 /** Parts raised ground by its peaks. */
+import { highestFirst } from './highest-first.ts';
+import { pixelsOf } from './mask-pixels.ts';
 
 export interface PeaksInput {
   readonly columns: number;
@@ -23,71 +25,89 @@ const saddleSigmas = 5;
  * fewer than `minPixels` join their neighbour. Neighbours are the eight around.
  */
 export function partByPeaks({ columns, rows, mask, rise, noiseM, minPixels }: PeaksInput): { labels: Uint32Array; count: number } {
-  const members: number[] = [];
-  for (let i = 0; i < mask.length; i++) if (mask[i] === 1) members.push(i);
-  const height = (i: number): number => (rise[i] === rise[i] ? rise[i]! : Number.NEGATIVE_INFINITY);
-  const order = Int32Array.from(members).sort((a, b) => height(b) - height(a) || a - b);
+  const members = pixelsOf(mask);
   const part = new Int32Array(mask.length);
-  const parent: number[] = [0];
-  const peak: number[] = [Number.NaN];
-  const size: number[] = [0];
-  const find = (k: number): number => {
-    let root = k;
-    while (parent[root] !== root) root = parent[root]!;
-    parent[k] = root;
-    return root;
-  };
-  for (const i of order) {
-    const c = i % columns;
-    const r = (i - c) / columns;
-    const here = height(i);
-    let best = 0;
-    for (let dr = -1; dr <= 1; dr++) {
-      for (let dc = -1; dc <= 1; dc++) {
-        if (r + dr < 0 || r + dr >= rows || c + dc < 0 || c + dc >= columns) continue;
-        const j = i + dr * columns + dc;
-        if (part[j] === 0) continue;
-        const other = find(part[j]!);
-        if (best === 0) {
-          best = other;
-          continue;
-        }
-        if (other === best) continue;
-        const [higher, lower] = peak[other]! > peak[best]! ? [other, best] : [best, other];
-        const distinct = here < saddlePart * peak[lower]! && peak[lower]! - here > saddleSigmas * noiseM && size[lower]! >= minPixels;
-        if (!distinct) {
-          parent[lower] = higher;
-          size[higher]! += size[lower]!;
-        }
-        // The pixel itself goes to the part on whose side it lies higher up.
-        best = find(best);
-        if (distinct && nearerTo(i, part, find, rise, best, other, columns, rows)) best = other;
-      }
+  const parts: Parts = { columns, rows, part, rise, parent: new Int32Array(members.length + 1), peak: new Float64Array(members.length + 1), size: new Int32Array(members.length + 1) };
+  let count = 0;
+  for (const i of highestFirst(members, rise)) {
+    let own = joinAround(parts, i, noiseM, minPixels);
+    if (own === 0) {
+      own = ++count;
+      parts.parent[own] = own;
+      parts.peak[own] = heightOf(rise[i]!);
     }
-    if (best === 0) {
-      best = parent.length;
-      parent.push(best);
-      peak.push(here);
-      size.push(0);
-    }
-    part[i] = best;
-    size[best]!++;
+    part[i] = own;
+    parts.size[own]!++;
   }
-  return numbered(part, find, columns, rows, size, minPixels);
+  return numbered(parts, members, minPixels);
+}
+
+/** Parts on their way; peak and size are those of the parts that are their own parent. */
+interface Parts {
+  readonly columns: number;
+  readonly rows: number;
+  readonly rise: Float32Array;
+  /** Part of each pixel from 1, 0 for none yet. */
+  readonly part: Int32Array;
+  readonly parent: Int32Array;
+  readonly peak: Float64Array;
+  readonly size: Int32Array;
+}
+
+function heightOf(rise: number): number {
+  return rise === rise ? rise : Number.NEGATIVE_INFINITY;
+}
+
+function rootOf(parent: Int32Array, k: number): number {
+  let root = k;
+  while (parent[root] !== root) root = parent[root]!;
+  parent[k] = root;
+  return root;
+}
+
+/** The part that a pixel joins, 0 where no neighbour has one. Neighbours' parts that no clear saddle keeps apart become one. */
+function joinAround(parts: Parts, i: number, noiseM: number, minPixels: number): number {
+  const { columns, rows, part, rise, parent, peak, size } = parts;
+  const c = i % columns;
+  const r = (i - c) / columns;
+  const here = heightOf(rise[i]!);
+  let best = 0;
+  for (let y = Math.max(0, r - 1); y <= Math.min(rows - 1, r + 1); y++) {
+    for (let x = Math.max(0, c - 1); x <= Math.min(columns - 1, c + 1); x++) {
+      const beside = part[y * columns + x]!;
+      if (beside === 0) continue;
+      const other = rootOf(parent, beside);
+      if (best === 0) {
+        best = other;
+        continue;
+      }
+      if (other === best) continue;
+      const higher = peak[other]! > peak[best]! ? other : best;
+      const lower = higher === other ? best : other;
+      const distinct = here < saddlePart * peak[lower]! && peak[lower]! - here > saddleSigmas * noiseM && size[lower]! >= minPixels;
+      if (!distinct) {
+        parent[lower] = higher;
+        size[higher]! += size[lower]!;
+      }
+      // The pixel itself goes to the part on whose side it lies higher up.
+      best = rootOf(parent, best);
+      if (distinct && nearerTo(parts, i, best, other)) best = other;
+    }
+  }
+  return best;
 }
 
 /** Whether the highest neighbour of a pixel belongs to `other` rather than to `best`. */
-function nearerTo(i: number, part: Int32Array, find: (k: number) => number, rise: Float32Array, best: number, other: number, columns: number, rows: number): boolean {
+function nearerTo({ columns, rows, part, rise, parent }: Parts, i: number, best: number, other: number): boolean {
   const c = i % columns;
   const r = (i - c) / columns;
   let top = Number.NEGATIVE_INFINITY;
   let owner = best;
-  for (let dr = -1; dr <= 1; dr++) {
-    for (let dc = -1; dc <= 1; dc++) {
-      if (r + dr < 0 || r + dr >= rows || c + dc < 0 || c + dc >= columns) continue;
-      const j = i + dr * columns + dc;
+  for (let y = Math.max(0, r - 1); y <= Math.min(rows - 1, r + 1); y++) {
+    for (let x = Math.max(0, c - 1); x <= Math.min(columns - 1, c + 1); x++) {
+      const j = y * columns + x;
       if (part[j] === 0 || !(rise[j]! > top)) continue;
-      const of = find(part[j]!);
+      const of = rootOf(parent, part[j]!);
       if (of !== best && of !== other) continue;
       top = rise[j]!;
       owner = of;
@@ -96,32 +116,28 @@ function nearerTo(i: number, part: Int32Array, find: (k: number) => number, rise
   return owner === other;
 }
 
-function numbered(part: Int32Array, find: (k: number) => number, columns: number, rows: number, size: number[], minPixels: number): { labels: Uint32Array; count: number } {
+function numbered(parts: Parts, members: Int32Array, minPixels: number): { labels: Uint32Array; count: number } {
+  const { part, parent, size } = parts;
   const labels = new Uint32Array(part.length);
-  const numbers = new Map<number, number>();
-  for (let i = 0; i < part.length; i++) {
-    if (part[i] === 0) continue;
-    let root = find(part[i]!);
-    if (size[root]! < minPixels) root = neighbour(i, root, part, find, columns, rows);
-    let number = numbers.get(root);
-    if (number === undefined) {
-      number = numbers.size + 1;
-      numbers.set(root, number);
-    }
-    labels[i] = number;
+  const numbers = new Uint32Array(parent.length);
+  let count = 0;
+  for (const i of members) {
+    let root = rootOf(parent, part[i]!);
+    if (size[root]! < minPixels) root = neighbour(parts, i, root);
+    if (numbers[root] === 0) numbers[root] = ++count;
+    labels[i] = numbers[root]!;
   }
-  return { labels, count: numbers.size };
+  return { labels, count };
 }
 
 /** Another part beside a pixel of a tiny one, or its own. */
-function neighbour(i: number, own: number, part: Int32Array, find: (k: number) => number, columns: number, rows: number): number {
+function neighbour({ columns, rows, part, parent }: Parts, i: number, own: number): number {
   const c = i % columns;
   const r = (i - c) / columns;
-  for (let dr = -1; dr <= 1; dr++) {
-    for (let dc = -1; dc <= 1; dc++) {
-      if (r + dr < 0 || r + dr >= rows || c + dc < 0 || c + dc >= columns) continue;
-      const j = i + dr * columns + dc;
-      if (part[j] !== 0 && find(part[j]!) !== own) return find(part[j]!);
+  for (let y = Math.max(0, r - 1); y <= Math.min(rows - 1, r + 1); y++) {
+    for (let x = Math.max(0, c - 1); x <= Math.min(columns - 1, c + 1); x++) {
+      const beside = part[y * columns + x]!;
+      if (beside !== 0 && rootOf(parent, beside) !== own) return rootOf(parent, beside);
     }
   }
   return own;

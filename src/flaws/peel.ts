@@ -1,15 +1,20 @@
 /** Parts things that lean on a higher one without a peak of their own: a film beside a bubble, a small dome on the flank of a large one. */
 import { squaredDistance } from '../grid/distance.ts';
 import { labelComponents } from '../grid/label-components.ts';
+import { membersOf } from './mask-pixels.ts';
 
 export interface PeelInput {
   readonly columns: number;
   readonly rows: number;
+  readonly pitchXM: number;
+  readonly pitchYM: number;
   readonly labels: Uint32Array;
   readonly count: number;
   /** Height, lightly smoothed, metres. */
   readonly rise: Float32Array;
   readonly minPixels: number;
+  /** Pixels that hold all labelled ones, in raster order; sought where they are not given. */
+  readonly pixels?: Int32Array;
 }
 
 /** Share of the pixels that stand for the peak, and least number of them. */
@@ -33,7 +38,7 @@ const leastHalfPx = 2;
  */
 export function peelParts(input: PeelInput): number {
   const { labels } = input;
-  const members = membersOf(labels, input.count);
+  const members = membersOf(labels, input.count, input.pixels);
   let count = input.count;
   for (let label = 1; label <= count; label++) {
     for (const remains of remainsOf(input, members[label]!)) {
@@ -47,64 +52,44 @@ export function peelParts(input: PeelInput): number {
   return count;
 }
 
-function membersOf(labels: Uint32Array, count: number): Int32Array[] {
-  const sizes = new Uint32Array(count + 1);
-  for (let i = 0; i < labels.length; i++) sizes[labels[i]!]!++;
-  const lists = Array.from(sizes, (size, label) => new Int32Array(label === 0 ? 0 : size));
-  const used = new Uint32Array(count + 1);
-  for (let i = 0; i < labels.length; i++) {
-    const label = labels[i]!;
-    if (label > 0) lists[label]![used[label]!++] = i;
-  }
-  return lists;
+/** A part's own box: its size, and where in it each of its members lies. */
+interface Box {
+  readonly width: number;
+  readonly height: number;
+  readonly places: Int32Array;
 }
 
-function remainsOf({ columns, rise, minPixels }: PeelInput, members: Int32Array): Int32Array[] {
+function remainsOf({ columns, pitchXM, pitchYM, rise, minPixels }: PeelInput, members: Int32Array): Int32Array[] {
   const least = Math.max(12, minPixels);
   if (members.length < 2 * least) return [];
-  const heights = Float64Array.from(members, (i) => (rise[i] === rise[i] ? rise[i]! : 0)).sort().reverse();
-  const top = Math.max(leastTop, Math.round(topShare * heights.length));
-  let peak = 0;
-  for (let k = 0; k < top; k++) peak += heights[k]! / top;
+  const peak = peakOf(rise, members);
   if (!(peak > 0)) return [];
 
-  let [left, right, upper, lower] = [columns, 0, Number.POSITIVE_INFINITY, 0];
-  for (const i of members) {
-    const c = i % columns;
-    const r = (i - c) / columns;
-    left = Math.min(left, c);
-    right = Math.max(right, c);
-    upper = Math.min(upper, r);
-    lower = Math.max(lower, r);
-  }
-  const width = right - left + 1;
-  const height = lower - upper + 1;
-  const place = (i: number): number => (Math.floor(i / columns) - upper) * width + (i % columns) - left;
+  const { width, height, places } = boxOf(members, columns);
+  // Lengths in units of a pixel of the same area.
+  const pixelM = Math.sqrt(pitchXM * pitchYM);
+  const pitch = { pitchX: pitchXM / pixelM, pitchY: pitchYM / pixelM };
   // Distance from the outline at half height, over the part's own box.
   const beyond = new Uint8Array(width * height).fill(1);
-  let half = 0;
-  let upperHalf = 0;
-  for (const i of members) {
-    if (!(rise[i]! > 0.5 * peak)) continue;
-    beyond[place(i)] = 0;
-    half++;
-    if (rise[i]! > 0.75 * peak) upperHalf++;
-  }
+  const half = clearHigher(rise, members, places, 0.5 * peak, beyond);
   if (half === 0) return [];
   const radius = Math.sqrt(half / Math.PI);
-  const reach = (upperHalf / half < foot.between ? foot.dome : foot.block) * radius + furtherPx;
-  const away = squaredDistance(beyond, width, height, {});
+  const reach = (higherThan(rise, members, 0.75 * peak) / half < foot.between ? foot.dome : foot.block) * radius + furtherPx;
+  const away = squaredDistance(beyond, width, height, pitch);
   const far = new Uint8Array(beyond.length);
   const at = new Int32Array(beyond.length);
-  for (const i of members) {
-    const k = place(i);
-    at[k] = i;
-    if (away[k]! > reach * reach) far[k] = 1;
+  let any = false;
+  for (let n = 0; n < members.length; n++) {
+    const k = places[n]!;
+    at[k] = members[n]!;
+    if (!(away[k]! > reach * reach)) continue;
+    far[k] = 1;
+    any = true;
   }
+  if (!any) return [];
   const parts = labelComponents(far, width, height, 8);
-  if (parts.count === 0) return [];
   const widest = new Float64Array(parts.count + 1);
-  const inside = squaredDistance(far, width, height, {});
+  const inside = squaredDistance(far, width, height, pitch);
   for (let k = 0; k < far.length; k++) if (far[k] === 1 && inside[k]! > widest[parts.labels[k]!]!) widest[parts.labels[k]!] = inside[k]!;
   const out: Int32Array[] = [];
   for (let n = 1; n <= parts.count; n++) {
@@ -114,4 +99,55 @@ function remainsOf({ columns, rise, minPixels }: PeelInput, members: Int32Array)
     out.push(Int32Array.from(list));
   }
   return out;
+}
+
+/** Mean of the highest few, metres; what is missing counts as 0. */
+function peakOf(rise: Float32Array, members: Int32Array): number {
+  const heights = new Float64Array(members.length);
+  for (let n = 0; n < heights.length; n++) {
+    const value = rise[members[n]!]!;
+    heights[n] = value === value ? value : 0;
+  }
+  heights.sort();
+  const top = Math.max(leastTop, Math.round(topShare * heights.length));
+  let peak = 0;
+  for (let k = 1; k <= top; k++) peak += heights[heights.length - k]! / top;
+  return peak;
+}
+
+function boxOf(members: Int32Array, columns: number): Box {
+  let left = columns;
+  let right = 0;
+  for (let n = 0; n < members.length; n++) {
+    const c = members[n]! % columns;
+    if (c < left) left = c;
+    if (c > right) right = c;
+  }
+  // Members are in raster order.
+  const upper = Math.floor(members[0]! / columns);
+  const lower = Math.floor(members[members.length - 1]! / columns);
+  const width = right - left + 1;
+  const places = new Int32Array(members.length);
+  for (let n = 0; n < places.length; n++) {
+    const c = members[n]! % columns;
+    places[n] = ((members[n]! - c) / columns - upper) * width + c - left;
+  }
+  return { width, height: lower - upper + 1, places };
+}
+
+/** Sets the mask of the box to 0 on members higher than `least`. @returns how many there are. */
+function clearHigher(rise: Float32Array, members: Int32Array, places: Int32Array, least: number, mask: Uint8Array): number {
+  let count = 0;
+  for (let n = 0; n < members.length; n++) {
+    if (!(rise[members[n]!]! > least)) continue;
+    mask[places[n]!] = 0;
+    count++;
+  }
+  return count;
+}
+
+function higherThan(rise: Float32Array, members: Int32Array, least: number): number {
+  let count = 0;
+  for (let n = 0; n < members.length; n++) if (rise[members[n]!]! > least) count++;
+  return count;
 }

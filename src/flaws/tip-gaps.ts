@@ -21,6 +21,7 @@ export function tipGaps(raised: Uint8Array, rise: Float32Array, columns: number,
 /** All lines of one direction: `lines` of `length` pixels, `lineStep` apart, with `step` between neighbours. */
 function markAlong(marks: Uint8Array, raised: Uint8Array, rise: Float32Array, lines: number, length: number, lineStep: number, step: number, pitchM: number, tipM: number): void {
   const widest = Math.floor((2 * tipM) / pitchM);
+  const inwards = Math.max(2, Math.round(tipM / pitchM));
   for (let line = 0; line < lines; line++) {
     let last = -1;
     for (let k = 0; k < length; k++) {
@@ -28,7 +29,7 @@ function markAlong(marks: Uint8Array, raised: Uint8Array, rise: Float32Array, li
       if (raised[at] === 0) continue;
       const gap = k - last - 1;
       if (last >= 0 && gap > 0 && gap <= widest) {
-        const edgeM = Math.min(edgeHeight(raised, rise, line * lineStep + last * step, -step, last), edgeHeight(raised, rise, at, step, length - 1 - k));
+        const edgeM = Math.min(edgeHeight(raised, rise, line * lineStep + last * step, -step, Math.min(last, inwards)), edgeHeight(raised, rise, at, step, Math.min(length - 1 - k, inwards)));
         const reach = edgeM >= tipM ? 2 * tipM : 2 * Math.sqrt(Math.max(0, edgeM * (2 * tipM - edgeM)));
         if (gap * pitchM < reach) for (let g = last + 1; g < k; g++) marks[line * lineStep + g * step] = 1;
       }
@@ -37,10 +38,10 @@ function markAlong(marks: Uint8Array, raised: Uint8Array, rise: Float32Array, li
   }
 }
 
-/** Height of the flaw within two pixels from its edge: what the tip leans on. */
+/** Height of the flaw within so many pixels from its edge (a tip's radius, two pixels at least): what the tip leans on. */
 function edgeHeight(raised: Uint8Array, rise: Float32Array, at: number, step: number, room: number): number {
   let highest = 0;
-  for (let n = 0; n <= Math.min(2, room); n++) {
+  for (let n = 0; n <= room; n++) {
     const i = at + n * step;
     if (raised[i] === 0) break;
     if (rise[i]! > highest) highest = rise[i]!;

@@ -23,7 +23,7 @@ export interface KernelExports {
   riseAboveGround(
     values: number, use: number, columns: number, rows: number, half: number, startM: number, rounds: number, sums: number, counts: number, rise: number,
   ): void;
-  nearestAdmitted(use: number, columns: number, rows: number, nearest: number, queue: number): void;
+  nearestAdmitted(use: number, columns: number, rows: number, nearest: number, queue: number, within: number): void;
   dilate(mask: number, columns: number, rows: number, radius: number, along: number, out: number): void;
   subtractSurface(values: number, columns: number, rows: number, terms: number, byRow: number, byColumn: number): void;
   colourMap(

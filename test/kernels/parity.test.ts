@@ -141,13 +141,19 @@ test('a median of differences by hand: the odd one, the mean of the two in the m
   assert.deepEqual([kernel.medians[1], kernel.medians[2], kernel.medians[3], kernel.medians[6], kernel.medians[7]], [0, 16, -12.5, 16, 0]);
 });
 
-test('nearest admitted pixels, ties included', () => {
+test('nearest admitted pixels, ties included, near ones only and all', () => {
   const random = seededRandom('nearest');
   for (const [columns, rows] of shapes) {
     for (const share of shares) {
       const use = randomMask(random, columns * rows, share);
-      const { plain, kernel } = bothWays(() => nearestAdmitted(use, columns, rows), () => nearestByKernel(use, columns, rows));
-      assertSame(kernel, plain, `${columns} × ${rows}, share ${share}`);
+      const whole = nearestAdmitted(use, columns, rows);
+      for (const withinPx of [0, 1, 7, columns + rows]) {
+        const { plain, kernel } = bothWays(() => nearestAdmitted(use, columns, rows, withinPx), () => nearestByKernel(use, columns, rows, withinPx));
+        assertSame(kernel, plain, `${columns} × ${rows}, share ${share}, within ${withinPx}`);
+        // The limit leaves out what is further away, and changes nothing else.
+        const away = (i: number, from: number): number => Math.abs((i % columns) - (from % columns)) + Math.abs(Math.floor(i / columns) - Math.floor(from / columns));
+        assertSame(plain, whole.map((from, i) => (from >= 0 && away(i, from) <= withinPx ? from : -1)), `${columns} × ${rows}, share ${share}, limit ${withinPx}`);
+      }
     }
   }
 });

@@ -2,9 +2,9 @@
 
 /**
  * `use`: columns × rows bytes, 1 = admitted, with 32 bytes before and behind it. `nearest`: as many i32, the result: an admitted pixel's own index, for others
- * that of a nearest admitted one, −1 where there is none. `queue`: as many i32.
+ * that of a nearest admitted one, −1 where there is none at most `within` steps away. `queue`: as many i32.
  */
-export function nearestAdmitted(use: usize, columns: i32, rows: i32, nearest: usize, queue: usize): void {
+export function nearestAdmitted(use: usize, columns: i32, rows: i32, nearest: usize, queue: usize, within: i32): void {
   const count = columns * rows;
   let tail: i32 = 0;
   for (let row: i32 = 0; row < rows; row++) {
@@ -35,7 +35,15 @@ export function nearestAdmitted(use: usize, columns: i32, rows: i32, nearest: us
       }
     }
   }
+  // The queue holds the rim, then what lies one step from it, then two.
+  let steps: i32 = 0;
+  let endOfStep = tail;
   for (let head: i32 = 0; head < tail; head++) {
+    if (head === endOfStep) {
+      steps++;
+      endOfStep = tail;
+    }
+    if (steps >= within) break;
     const i = load<i32>(queue + (<usize>head << 2));
     const from = load<i32>(nearest + (<usize>i << 2));
     const column = i % columns;
