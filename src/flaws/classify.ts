@@ -25,13 +25,13 @@ const coneToDome = 0.45;
 const surelyCone = 0.9;
 /** From so many pixels on a shape can be told from the noise in it. */
 const shapePixels = 12;
-/** A round paraboloid explains this share of a dome's height, wherever it is cut off, and less of what is flat-topped or uneven. */
+/** A round paraboloid explains this share of a dome's height, wherever it is cut off, and less of what is uneven; of a smooth 1 − ρ⁴ it explains 15/16, so that the other looks must tell. */
 const domeFits = 0.92;
 /** Less than this, and no single shape is there. */
 const unevenShare = 0.5;
 /** Less than this, and it is rubble, however peaked. */
 const rubbleShare = 0.3;
-/** The same for `Region.topShare`: 0.55 for a paraboloid, 0.74 for 1 − ρ⁴. */
+/** The same for `Region.topShare`: between the 0.55 of a paraboloid and the 0.71 of 1 − ρ⁴, nearer to the latter because lobes and noise lower a block's. */
 const narrowToWide = 0.645;
 /** Bubbles of smaller height over radius are not known: adhesion is too strong (evidence, not a rule). */
 const flattest = 0.02;

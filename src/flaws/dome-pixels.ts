@@ -1,6 +1,5 @@
 /** The pixels inside a circle, and whether their height is a dome's. */
-import type { Point } from './dome-rim.ts';
-import type { DomeInput } from './find-domes.ts';
+import type { DomeInput, Point } from './dome-rim.ts';
 
 export interface Ring extends Point {
   readonly radiusM: number;

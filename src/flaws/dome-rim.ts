@@ -1,5 +1,16 @@
 /** The rim of a round dome: where flawed ground ends with it, and where the height breaks its slope. */
-import type { DomeInput } from './find-domes.ts';
+
+export interface DomeInput {
+  readonly columns: number;
+  readonly rows: number;
+  readonly pitchXM: number;
+  readonly pitchYM: number;
+  /** 1 on flawed ground. */
+  readonly mask: Uint8Array;
+  /** Height above the local ground, metres; NaN missing. */
+  readonly rise: Float32Array;
+  readonly noiseM: number;
+}
 
 export interface Point {
   readonly xM: number;

@@ -1,8 +1,7 @@
 /** Circles from which domes are sought. */
 import { squaredDistance } from '../grid/distance.ts';
 import { breakAlong, circleThrough, raysAround } from './dome-rim.ts';
-import type { Point, Ray } from './dome-rim.ts';
-import type { DomeInput } from './find-domes.ts';
+import type { DomeInput, Point, Ray } from './dome-rim.ts';
 import { pixelsOf } from './mask-pixels.ts';
 
 export interface DomeStart {

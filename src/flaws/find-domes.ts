@@ -2,21 +2,9 @@
 import { directions, flawedInside, isParaboloid } from './dome-pixels.ts';
 import type { Circle, Ring } from './dome-pixels.ts';
 import { breakAlong, circleThrough, edgeAlong, raysAround } from './dome-rim.ts';
-import type { Point, Ray } from './dome-rim.ts';
+import type { DomeInput, Point, Ray } from './dome-rim.ts';
 import { startsByOutline, startsBySummits } from './dome-starts.ts';
 import type { DomeStart } from './dome-starts.ts';
-
-export interface DomeInput {
-  readonly columns: number;
-  readonly rows: number;
-  readonly pitchXM: number;
-  readonly pitchYM: number;
-  /** 1 on flawed ground. */
-  readonly mask: Uint8Array;
-  /** Height above the local ground, metres; NaN missing. */
-  readonly rise: Float32Array;
-  readonly noiseM: number;
-}
 
 export interface Domes {
   /** Number of the dome per pixel from 1; 0 elsewhere. */

@@ -36,7 +36,7 @@ export interface Raised {
   readonly mask: Uint8Array;
   /** 1 on flawed ground where the current could not be judged, so that the height alone speaks; absent without current. */
   readonly byHeight?: Uint8Array;
-  /** Decades the current lies below that of the nearest undisturbed ground, within three pixels of raised ground; absent without current. */
+  /** Decades the current lies below that of the nearest undisturbed ground, within three pixels of raised ground, 0 elsewhere; absent without current. */
   readonly drop?: Float32Array;
   /** Raised pixels apart from all flaws whose current is in order: worth a note, not a loss. */
   readonly conductingPixels: number;

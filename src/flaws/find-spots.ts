@@ -58,7 +58,7 @@ const standOut = 0.3;
  * (grey opening), raised flaws bridged from their edges. Down to one pixel.
  *
  * Saturation hides by how much a spot stands out. A saturated patch near a larger saturated terrace could be a piece of it, so there the
- * height must show a pit; standing alone it needs none.
+ * height must show a pit; what stands alone is held against its border (`bluntSpots`, `shutInSpots`).
  */
 export function findShorts(input: SpotsInput): Uint8Array {
   const { columns, rows, log10, raised, saturated, floor, rise } = input;
@@ -252,7 +252,7 @@ function touchesMask(mask: Uint8Array, columns: number, rows: number, i: number)
   return (c > 0 && mask[i - 1] === 1) || (c + 1 < columns && mask[i + 1] === 1) || (r > 0 && mask[i - columns] === 1) || (r + 1 < rows && mask[i + columns] === 1);
 }
 
-/** Whether all neighbours (8) of a pixel that are not of its own patch are measured and a decade above it. */
+/** Whether all neighbours (8) of a pixel that are not of its own patch are measured and half a decade above it. */
 function brightAround(log10: Float32Array, labels: Uint32Array, columns: number, rows: number, i: number): boolean {
   const c = i % columns;
   const r = (i - c) / columns;

@@ -17,6 +17,7 @@ export const measures: readonly Measure[] = [
   { name: 'pixels of wrinkles, F1', value: ({ f1 }) => share(f1.wrinkle), family: '≥ 0.85', harder: '≥ 0.75' },
   { name: 'bubbles of radius ≥ 3 px found', value: (pool) => share(pool.bubblesFound), family: '≥ 0.97', harder: '≥ 0.90' },
   { name: 'bubbles reported that are bubbles', value: (pool) => share(pool.bubblesTrue), family: '≥ 0.95', harder: '≥ 0.90' },
+  { name: 'bubbles found and told apart from others', value: (pool) => share(pool.bubblesParted) },
   { name: 'shorts found on unsaturated ground', value: (pool) => share(pool.shortsFound), family: '≥ 0.97', harder: '≥ 0.90' },
   { name: 'shorts reported that are shorts', value: (pool) => share(pool.shortsTrue), family: '≥ 0.95', harder: '≥ 0.90' },
   { name: 'pixels booked to their cause', value: (pool) => share(pool.right, 4) },

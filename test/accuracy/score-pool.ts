@@ -12,6 +12,8 @@ export interface Pool {
   readonly f1: { readonly bubble: number; readonly residue: number; readonly wrinkle: number };
   readonly bubblesFound: number;
   readonly bubblesTrue: number;
+  /** Share of the bubbles there that are found and have a flaw of their own. */
+  readonly bubblesParted: number;
   readonly shortsFound: number;
   readonly shortsTrue: number;
   /** Share of pixels booked to their true cause. */
@@ -41,6 +43,7 @@ export function poolScores(scores: readonly SceneScore[]): Pool {
     f1: { bubble: f1(confusion, codeOf('bubble')), residue: f1(confusion, codeOf('residue')), wrinkle: f1(confusion, codeOf('wrinkle')) },
     bubblesFound: ratio(scores, 'bubbles', 'found', 'there'),
     bubblesTrue: ratio(scores, 'bubbles', 'true', 'claimed'),
+    bubblesParted: ratio(scores, 'bubbles', 'parted', 'there'),
     shortsFound: ratio(scores, 'shorts', 'found', 'there'),
     shortsTrue: ratio(scores, 'shorts', 'true', 'claimed'),
     right: causes.reduce((sum, _, k) => sum + confusion[k * side + k]!, 0) / confusion.reduce((sum, pixels) => sum + pixels, 0),

@@ -11,6 +11,8 @@ export interface Count {
   readonly found: number;
   readonly claimed: number;
   readonly true: number;
+  /** Of those there, found ones of which most of what was found is a flaw of its own: no other object has most of its own in the same flaw. */
+  readonly parted: number;
 }
 
 export interface SceneScore {
@@ -28,6 +30,8 @@ export interface SceneScore {
   readonly interval: readonly [low: number, high: number] | null;
 }
 
+/** Share of unflawed measured ground that may lack a levelled height. */
+const mostMissing = 0.02;
 /** Bubbles are counted from this radius on, along the coarser pitch. */
 export const leastRadiusPx = 3;
 /** And from so many visible pixels, half the disc of that radius: of a sliver behind the map's edge nobody can tell what it is. */
@@ -62,13 +66,19 @@ function countBubbles(answer: Answer, truth: Truth): Count {
   const { grid } = truth;
   const code = codeOf('bubble');
   let [there, found] = [0, 0];
+  const holders = new Map<number, number>();
   for (const pixels of visiblePixels(truth, 'bubble', leastRadiusPx * Math.max(grid.pitchXM, grid.pitchYM))) {
     if (pixels.length < leastVisiblePx) continue;
     there++;
-    if (2 * pixels.filter((i) => answer.codes[i] === code).length >= pixels.length) found++;
+    const booked = pixels.filter((i) => answer.codes[i] === code);
+    if (2 * booked.length < pixels.length) continue;
+    found++;
+    const flaw = mostCommon(booked.map((i) => answer.flawLabels[i]!));
+    holders.set(flaw, (holders.get(flaw) ?? 0) + 1);
   }
+  const parted = [...holders].filter(([flaw, objects]) => flaw > 0 && objects === 1).length;
   const claims = claimedFlaws(answer, truth, 'bubble');
-  return { there, found, claimed: claims.length, true: claims.filter(({ pixels, right }) => 2 * right >= pixels).length };
+  return { there, found, parted, claimed: claims.length, true: claims.filter(({ pixels, right }) => 2 * right >= pixels).length };
 }
 
 /** Pinholes on ground that does not saturate by itself: found when one of their pixels is booked short; a claimed short is true when one of its pixels is. */
@@ -81,7 +91,15 @@ function countShorts(answer: Answer, truth: Truth): Count {
     if (pixels.some((i) => answer.codes[i] === code)) found++;
   }
   const claims = claimedFlaws(answer, truth, 'short');
-  return { there, found, claimed: claims.length, true: claims.filter(({ right }) => right > 0).length };
+  return { there, found, parted: found, claimed: claims.length, true: claims.filter(({ right }) => right > 0).length };
+}
+
+function mostCommon(values: readonly number[]): number {
+  const counts = new Map<number, number>();
+  for (const value of values) counts.set(value, (counts.get(value) ?? 0) + 1);
+  let best = 0;
+  for (const [value, count] of counts) if (count > (counts.get(best) ?? 0)) best = value;
+  return best;
 }
 
 /** Pixels of each round object that carry its code in the truth; where discs overlap a pixel belongs to the one in which it lies deeper. */
@@ -120,5 +138,14 @@ function claimedFlaws(answer: Answer, truth: Truth, cause: 'bubble' | 'short'): 
 function levelRatio({ levelledNm }: Answer, { codes, cleanNm, whiteNm, grid }: Truth): number {
   const flawed = new Set(['bubble', 'residue', 'wrinkle', 'short'].map((cause) => causes.indexOf(cause as (typeof causes)[number])));
   const difference = Float64Array.from(codes, (code, i) => (flawed.has(code) ? Number.NaN : levelledNm[i]! - cleanNm[i]!));
+  // A height that is not given is no perfect one: unflawed ground must be there, but for what the scan itself did not measure.
+  const unmeasured = causes.indexOf('unmeasured');
+  let [there, missing] = [0, 0];
+  for (let i = 0; i < codes.length; i++) {
+    if (flawed.has(codes[i]!) || codes[i] === unmeasured) continue;
+    there++;
+    if (Number.isNaN(levelledNm[i]!)) missing++;
+  }
+  if (missing > mostMissing * there) return Number.POSITIVE_INFINITY;
   return planeResidualRms(difference, grid.columns) / whiteNm;
 }

@@ -103,8 +103,8 @@ test('a known wrong answer scores what a person computes', () => {
     levelledNm: Float64Array.from(codes, (_, i) => 5 + 0.1 * (i % 12) + ((i + Math.floor(i / 12)) % 2 === 0 ? 0.2 : -0.2)),
   };
   const score = scoreScene(answer, truth);
-  assert.deepEqual(score.bubbles, { there: 1, found: 1, claimed: 2, true: 1 });
-  assert.deepEqual(score.shorts, { there: 1, found: 1, claimed: 2, true: 1 });
+  assert.deepEqual(score.bubbles, { there: 1, found: 1, parted: 1, claimed: 2, true: 1 });
+  assert.deepEqual(score.shorts, { there: 1, found: 1, parted: 1, claimed: 2, true: 1 });
   // 32 + 12 bubble pixels there; 22 of them and 2 others booked as bubble.
   const pool = poolScores([score]);
   assert.equal(pool.f1.bubble, (2 * 22) / (44 + 24));
@@ -132,4 +132,19 @@ test('small scenes of the family: usable share within 0.02 of the truth, and mor
     assert.ok(Math.abs(ours.usable[0] - ours.usable[1]) < 0.02, `${seed}: ${ours.usable.join(' for ')}`);
     assert.ok(poolScores([ours]).right > poolScores([plain]).right, seed);
   }
+});
+
+test('one flaw over two bubbles has found both and told neither apart', () => {
+  const { sample: _sample, truth } = paintScene(sized(kindOf('crowded'), 0.5), 'merged');
+  const merged: Answer = { ...perfect(truth), flawLabels: Uint32Array.from(truth.codes, (code) => (code === codeOf('bubble') ? 1 : 0)), flawCauses: [undefined, 'bubble'] };
+  const { bubbles } = scoreScene(merged, truth);
+  assert.ok(bubbles.there > 5);
+  assert.equal(bubbles.found, bubbles.there);
+  assert.equal(bubbles.parted, 0);
+});
+
+test('heights that are left out are no perfect ones', () => {
+  const { truth } = paintScene(sized(kindOf('family'), 0.3), 'holes');
+  const holed: Answer = { ...perfect(truth), levelledNm: Float64Array.from(truth.cleanNm, (height, i) => (i % 3 === 0 ? height : Number.NaN)) };
+  assert.equal(scoreScene(holed, truth).levelRatio, Number.POSITIVE_INFINITY);
 });
