@@ -170,20 +170,24 @@ export function fillFromNeighbours(values: Float32Array, marks: Uint8Array, colu
   const source = values.slice();
   const valueAt = (r: number, c: number): number =>
     (r >= 0 && r < rows && c >= 0 && c < columns && marks[r * columns + c] === 0 ? source[r * columns + c]! : Number.NaN);
-  for (let r = 0; r < rows; r++) {
-    for (let c = 0; c < columns; c++) {
-      const i = r * columns + c;
-      if (marks[i] === 0 && !Number.isNaN(values[i]!)) continue;
-      const within = marks[i] === 1 ? markedTolerance : tolerance;
-      let value = between(valueAt, r, c, 1, 0, within, marks[i] === 1 ? 4 : 3);
-      if (Number.isNaN(value)) value = between(valueAt, r, c, 0, 1, within, 3);
-      if (Number.isNaN(value) && marks[i] === 1) value = oneSide(valueAt, r, c);
-      if (Number.isNaN(value) && marks[i] === 1) value = inwards(valueAt, r, c, rows);
-      values[i] = value;
-      if (!Number.isNaN(value)) filled[i] = 1;
-    }
+  for (let i = nextGap(source, marks, 0); i < source.length; i = nextGap(source, marks, i + 1)) {
+    const c = i % columns;
+    const r = (i - c) / columns;
+    const within = marks[i] === 1 ? markedTolerance : tolerance;
+    let value = between(valueAt, r, c, 1, 0, within, marks[i] === 1 ? 4 : 3);
+    if (Number.isNaN(value)) value = between(valueAt, r, c, 0, 1, within, 3);
+    if (Number.isNaN(value) && marks[i] === 1) value = oneSide(valueAt, r, c);
+    if (Number.isNaN(value) && marks[i] === 1) value = inwards(valueAt, r, c, rows);
+    values[i] = value;
+    if (!Number.isNaN(value)) filled[i] = 1;
   }
   return filled;
+}
+
+/** The first pixel from `i` on that is marked or missing; the number of pixels without any. */
+function nextGap(values: Float32Array, marks: Uint8Array, i: number): number {
+  while (i < values.length && marks[i] === 0 && values[i] === values[i]) i++;
+  return i;
 }
 
 /** Linear interpolation between the nearest usable pixels on both sides, at most `apart` steps apart; NaN if they disagree. */

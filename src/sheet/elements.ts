@@ -16,20 +16,37 @@ export interface Elements {
  */
 export function elementsOf(input: SheetInput, live: Uint8Array): Elements {
   const count = pixelCount(input.grid);
-  const ratio = new Float64Array(count);
   const { shorts } = input;
-  let total = 0;
+  const ratio = powersOfTen(input.log10Relative.data, input.footprint.data, live);
   let inShorts = 0;
-  for (let p = 0; p < count; p++) {
-    const short = shorts !== undefined && shorts.mask.data[p] === 1;
-    const value = input.footprint.data[p] === 1 ? 10 ** (short ? shorts.log10Relative.data[p]! : input.log10Relative.data[p]!) : Number.NaN;
-    ratio[p] = Number.isNaN(value) ? value : value * live[p]!;
-    if (ratio[p]! > 0) {
-      total += ratio[p]!;
-      if (short) inShorts += ratio[p]!;
-    }
+  for (let p = 0; shorts && p < count; p++) {
+    if (shorts.mask.data[p] !== 1) continue;
+    if (input.footprint.data[p] === 1) ratio[p] = 10 ** shorts.log10Relative.data[p]! * live[p]!;
+    if (ratio[p]! > 0) inShorts += ratio[p]!;
   }
-  return { ratio, total, inShorts };
+  return { ratio, total: sumOf(ratio), inShorts };
+}
+
+/** 10 to the power of what lies on the footprint, 0 where it is not live; NaN elsewhere. Most pixels of a terrace have the power of the one before. */
+function powersOfTen(log10: Float32Array, footprint: Uint8Array, live: Uint8Array): Float64Array {
+  const powers = new Float64Array(log10.length).fill(Number.NaN);
+  let of = Number.NaN;
+  let power = Number.NaN;
+  for (let p = 0; p < powers.length; p++) {
+    if (footprint[p] !== 1) continue;
+    if (log10[p] !== of) {
+      of = log10[p]!;
+      power = 10 ** of;
+    }
+    powers[p] = power * live[p]!;
+  }
+  return powers;
+}
+
+function sumOf(ratio: Float64Array): number {
+  let total = 0;
+  for (let p = 0; p < ratio.length; p++) if (ratio[p]! > 0) total += ratio[p]!;
+  return total;
 }
 
 /**
