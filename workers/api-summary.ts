@@ -116,6 +116,9 @@ export interface SampleSummary {
   readonly rows: number;
   readonly widthUm: number;
   readonly heightUm: number;
+  /** Units that the maps were read in, as the recipe spells them. */
+  readonly heightUnit?: string;
+  readonly currentUnit?: string;
   readonly footprintUm2: number;
   readonly ledger: readonly LedgerEntry[];
   readonly usable: {

@@ -67,7 +67,7 @@ export interface PreviewRequest {
   readonly picture?: PictureRequest;
 }
 
-/** Near what the recipe would give, from every `everyPx`-th pixel in each direction; not to be kept. */
+/** Near what the recipe would give: the result on show, moved by what a look at every `everyPx`-th pixel in each direction shows otherwise than the same look at the recipe in force; not to be kept. */
 export interface Preview {
   readonly everyPx: number;
   readonly ledger: readonly LedgerEntry[];

@@ -1,13 +1,13 @@
-/** What a recipe would give while a handle moves: the causes over the map and the areas by cause, over the ground of the last appraisal. */
+/** What a recipe would give while a handle moves: the causes over the map, and the appraisal's areas and counts with what the handle changes of them. */
 import { previewOf, thinnedGround } from '../src/evaluate/preview.ts';
 import type { ThinnedGround } from '../src/evaluate/preview.ts';
 import type { Ground } from '../src/ground/ground.ts';
 import type { Recipe } from '../src/recipe/recipe.ts';
 import type { Appraised } from '../src/report/appraised.ts';
-import { rounded, toUm2 } from '../src/report/units.ts';
-import { flawCounts } from '../src/report/verdict.ts';
 import type { Preview, PreviewRequest } from './api.ts';
 import { drawPicture } from './picture.ts';
+import { looked, movedCounts, movedLedger } from './preview-change.ts';
+import type { Look } from './preview-change.ts';
 import { thresholdsIn } from './summary-ground.ts';
 
 /** Longest side of the map that is looked at: what a tenth of a second is enough for. */
@@ -15,21 +15,32 @@ const side = 256;
 
 const thinned = new WeakMap<Ground, ThinnedGround>();
 
-/** @param recipe whose sections `scan` and `ground` are those of the appraisal, whatever is asked for: they would take a whole appraisal. */
+/** The same look at the recipe in force, by appraisal: what a thinned map shows otherwise than the full one is in both and cancels. */
+const inForce = new WeakMap<Appraised, Look>();
+
+/**
+ * The appraisal's own areas and counts, plus what the look at `recipe` shows otherwise than the look at the recipe in force.
+ *
+ * @param recipe whose sections `scan` and `ground` are those of the appraisal, whatever is asked for: they would take a whole appraisal.
+ */
 export function preview(appraised: Appraised, recipe: Recipe, { picture }: PreviewRequest): Preview {
   const { sample, ground } = appraised;
   const coarse = thinned.get(ground) ?? thinnedGround(sample, ground, side);
   thinned.set(ground, coarse);
-  const { flaws, ledger } = previewOf(coarse, recipe);
-  const full = toUm2(appraised.ledger.footprintM2);
-  const areaUm2 = (share: number): number => rounded(share * full);
+  const own: Recipe = { ...appraised.recipe, format: recipe.format, version: recipe.version, corrections: [...appraised.recipe.corrections] };
+  const before = inForce.get(appraised) ?? looked(previewOf(coarse, own));
+  inForce.set(appraised, before);
+  // Asked for without a picture when a handle is taken, so that the first look that moves need not wait for it.
+  const found = picture === undefined && JSON.stringify(recipe) === JSON.stringify(own) ? undefined : previewOf(coarse, recipe);
+  const now = found ? looked(found) : before;
+  const ledger = movedLedger(appraised.ledger, before, now);
   return {
     everyPx: coarse.step,
-    ledger: ledger.rows.map(({ code, cause, share, pixels, assessed }) => ({ code, cause, areaUm2: areaUm2(share), pixels: pixels * coarse.step ** 2, share: rounded(share), assessed })),
-    usableUm2: areaUm2(ledger.usable.share),
-    flaws: flawCounts(flaws.list),
-    ...(flaws.thresholds ? { thresholds: thresholdsIn(flaws.thresholds) } : {}),
-    ...(picture ? { picture: drawPicture(appraised, picture, fullSize(ledger.codes.data, coarse, sample.grid)) } : {}),
+    ledger,
+    usableUm2: ledger.find(({ cause }) => cause === 'usable')?.areaUm2 ?? 0,
+    flaws: movedCounts(appraised.flaws.list, before, now),
+    ...(now.thresholds ? { thresholds: thresholdsIn(now.thresholds) } : {}),
+    ...(picture && found ? { picture: drawPicture(appraised, picture, fullSize(found.ledger.codes.data, coarse, sample.grid)) } : {}),
   };
 }
 

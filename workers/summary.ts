@@ -3,6 +3,7 @@ import { alternativeOf } from '../src/flaws/alternative.ts';
 import { correctionWords } from '../src/flaws/correction-words.ts';
 import type { Flaw } from '../src/flaws/flaws.ts';
 import { innerPoints } from '../src/flaws/inner-points.ts';
+import { channelOf } from '../src/read/sample.ts';
 import type { Appraised } from '../src/report/appraised.ts';
 import { rounded, toNaPerUm2, toNm, toUm, toUm2 } from '../src/report/units.ts';
 import type { FlawEntry, RecipeData, SampleSummary } from './api.ts';
@@ -16,6 +17,7 @@ export function summaryOf(id: string, appraised: Appraised): SampleSummary {
   return {
     id, name: sample.name, verdict: ledger.verdict, surface: sample.surface,
     columns: grid.columns, rows: grid.rows, widthUm: toUm(grid.columns * grid.pitchXM), heightUm: toUm(grid.rows * grid.pitchYM),
+    ...readUnits(appraised),
     footprintUm2: toUm2(ledger.footprintM2),
     ledger: ledger.rows.map((row) => ({
       code: row.code, cause: row.cause, areaUm2: toUm2(row.areaM2), pixels: row.pixels, share: rounded(row.share), assessed: row.assessed,
@@ -38,6 +40,12 @@ export function summaryOf(id: string, appraised: Appraised): SampleSummary {
     sources: sample.sources.map(({ name, sha256, bytes }) => ({ name, sha256, bytes })),
     timings: { ...appraised.timings },
   };
+}
+
+/** What files, sidecar or recipe state of the units. */
+function readUnits({ sample }: Appraised): Pick<SampleSummary, 'heightUnit' | 'currentUnit'> {
+  const [height, current] = [channelOf(sample, 'height')?.readIn, channelOf(sample, 'current')?.readIn];
+  return { ...(height === undefined ? {} : { heightUnit: height }), ...(current === undefined ? {} : { currentUnit: current }) };
 }
 
 function flawList({ flaws, sample }: Appraised): FlawEntry[] {

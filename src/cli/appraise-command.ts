@@ -36,7 +36,7 @@ export const appraiseCommand: Command = {
     '--jobs N': 'samples worked on at the same time (1)',
     '--resume': 'keeps results whose inputs and recipe have not changed',
     '--shard k/n': 'works on every n-th sample only, starting with the k-th',
-    '--only LIST': `writes only these kinds of files, of ${resultKinds.join(', ')}`,
+    '--only LIST': `writes only these kinds of files, of ${resultKinds.join(', ')}; gds, dxf and svg are accepted, but not written yet`,
   },
   notes: [
     'Files pair by name: S.height.tif with S.current.tif (also _ or -; .tif, .npy, .csv), S.outlines.geojson, and a sidecar S.json with widthUm, heightUnit, currentUnit, biasV …. A manifest is a CSV whose first header is "sample".',
@@ -81,7 +81,8 @@ async function runAppraise({ values, positionals }: Parsed, output: Output): Pro
     const failedInputs = shard.part === 1 ? gathered.failed.map(({ name, problem }) => failedTrayRow(name, problem)) : [];
     const rows: TrayRow[] = [...results.map(({ row }) => row), ...failedInputs];
     await writeTray(resolve(out), rows, app, only ? { only: new Set(only) } : {});
-    output.out(ledgerText(rows));
+    // Inputs that failed have been named on standard error.
+    output.out(ledgerText(results.map(({ row }) => row)));
     for (const { bug } of results) if (bug !== undefined) output.err(`${bug}\n`);
     if (results.some(({ bug }) => bug !== undefined)) return 70;
     return rows.some(isFailed) ? exitCodes.someFailed : exitCodes.good;

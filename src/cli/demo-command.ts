@@ -18,7 +18,7 @@ export const demoCommand: Command = {
   optionText: { '--force': 'replaces files in DIR that differ from the demo’s' },
   notes: [
     'The samples are invented: painted from a seed by the tunnelling model, not measured. Each is NAME.height.tif (nm, as scanned), NAME.current.tif (A) and NAME.json; one has NAME.outlines.geojson.',
-    'Then: evenglow appraise DIR --out RESULTS',
+    'Then: npx evenglow appraise DIR --out RESULTS',
   ],
   run: runDemo,
 };
@@ -46,7 +46,7 @@ async function runDemo({ values, positionals }: Parsed, output: Output): Promise
     const kept = files.length - pending.length;
     output.out(`${name.padEnd(10)} ${title.padEnd(34)} ${pending.length} ${pending.length === 1 ? 'file' : 'files'} written${kept > 0 ? `, ${kept} there already` : ''}\n`);
   }
-  output.out(`\nThe samples are invented, painted from a seed by the tunnelling model; nothing was measured.\nNext: evenglow appraise ${directory} --out RESULTS\n`);
+  output.out(`\nThe samples are invented, painted from a seed by the tunnelling model; nothing was measured.\nNext: npx evenglow appraise ${directory} --out RESULTS\n`);
   return exitCodes.good;
 }
 

@@ -15,7 +15,7 @@ const thinInscribed = 0.6;
 /** Up to about this elongation a row of bubbles that touch has the outline of a ridge: n equal ones are n times as long as wide. */
 const rowOfBubbles = 5;
 /**
- * Bounds of the mean over peak height (`Region.fullness`), which is 0.41 for a cone, 1/2 for a paraboloid (a pressurised membrane is close to one)
+ * Bounds of the measured fullness (`Region.fullness`: 0.95 × mean over the 95 % quantile of the height), which is 0.41 for a cone, 1/2 for a paraboloid (a pressurised membrane is close to one)
  * and near 1 for a plateau. The upper one lies half-way between a dome and what a rounded patch of material shows (about 0.78), the
  * lower one half-way between cone and dome.
  */
@@ -40,8 +40,13 @@ const conductingFloorShare = 0.25;
 const leastDrop = 0.3;
 /** Nothing tunnels through what is thicker than this, metres: a current read there is the amplifier's lag. */
 const blockedFromM = 6e-9;
-/** Confidence at which the other class is named. */
+/** Confidence below which the other class is named. */
 const unsureBelow = 0.65;
+
+/** Whether the other class is named, in the reason as in lists; by the two decimals that are shown, so that word and number agree. */
+export function isUnsure(confidence: number): boolean {
+  return Math.round(confidence * 100) < Math.round(unsureBelow * 100);
+}
 
 /**
  * Class of a raised region. Where parting has told a crest (`kind` ridge) or a round dome, that is the class, and a film is known by a current that is lowered
@@ -65,11 +70,14 @@ export function classifyRaised(region: Region): Classified {
   const { fullness } = region;
   const heightToRadius = region.peakM / (region.diameterM / 2);
   if (Number.isNaN(fullness)) return { cause: 'residue', confidence: 0.5, reason: `height not measured here, ${current}: residue, could be a bubble` };
-  if (region.kind === 'ridge') return { cause: 'wrinkle', confidence: sure((elongation - 1.5) / 3), reason: `crest that falls off on both sides, ${oneDigit(elongation)} times as long as wide, ${current}: wrinkle` };
+  if (region.kind === 'ridge') {
+    const confidence = sure((elongation - 1.5) / 3);
+    return { cause: 'wrinkle', confidence, reason: `crest that falls off on both sides, ${oneDigit(elongation)} times as long as wide, ${current}: wrinkle${orTouching(confidence)}` };
+  }
   if (region.kind === undefined && region.pixels >= shapePixels && roundness < thinRoundness && (inscribed < thinInscribed || elongation > 3)) {
     const row = elongation < rowOfBubbles && fullness < domeToPatch;
     const confidence = Math.min(row ? 0.55 : 1, sure(Math.max((thinRoundness - roundness) / 0.3, (elongation - 3) / 5)));
-    return { cause: 'wrinkle', confidence, reason: `long thin ridge, ${oneDigit(elongation)} times as long as wide, ${current}: wrinkle${row ? ', could be touching bubbles' : ''}` };
+    return { cause: 'wrinkle', confidence, reason: `long thin ridge, ${oneDigit(elongation)} times as long as wide, ${current}: wrinkle${orTouching(confidence)}` };
   }
   if (region.kind === 'dome') {
     return { cause: 'bubble', confidence: sure(0.6 + region.pixels / 250), reason: `round smooth dome, h/R ${twoDigits(heightToRadius)}, ${current}: bubble` };
@@ -87,13 +95,17 @@ export function classifyRaised(region: Region): Classified {
   const isDome = plateau < 0 && !pointed && !rubble;
   const margin = pointed ? (coneToDome - fullness) / 0.09 : rubble ? 1 - region.domeShare / rubbleShare : Math.abs(plateau) / 2;
   const confidence = sure(shaped ? margin : margin / 2);
-  const unsure = confidence < unsureBelow ? (isDome ? ', could be residue' : ', could be a bubble') : '';
+  const unsure = isUnsure(confidence) ? (isDome ? ', could be residue' : ', could be a bubble') : '';
   if (isDome) {
     return { cause: 'bubble', confidence, reason: `smooth dome, h/R ${twoDigits(heightToRadius)}, ${current}: bubble${unsure}` };
   }
   const uneven = shaped && region.domeShare < unevenShare;
   const what = pointed ? 'pointed lump' : uneven ? 'uneven lump' : blocks || Number.isNaN(region.floorShare) ? 'flat-topped lump' : 'flat patch';
   return { cause: 'residue', confidence, reason: `${what}, ${oneDigit(region.peakM * 1e9)} nm high, ${current}: residue${unsure}` };
+}
+
+function orTouching(confidence: number): string {
+  return isUnsure(confidence) ? ', could be touching bubbles' : '';
 }
 
 function clamp(value: number): number {

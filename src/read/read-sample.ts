@@ -98,7 +98,7 @@ function channelFrom(map: Settled, grid: Grid, scan: ScanSection): Channel {
   const biasV = map.biasV === undefined ? undefined : onTip && map.biasV !== 0 ? -map.biasV : map.biasV;
   return {
     quantity, direction: map.direction, source: map.source, values: scalarMap(grid, data),
-    unit: quantity === 'height' ? 'm' : unit.unit === 'relative' ? 'relative' : 'A',
+    unit: quantity === 'height' ? 'm' : unit.unit === 'relative' ? 'relative' : 'A', readIn: unit.unit,
     ...(biasV === undefined || quantity === 'height' ? {} : { biasV }),
   };
 }

@@ -10,10 +10,10 @@ export const scanSection = section({
     title: 'Channel', description: 'Role of a map whose name does not say whether it is a height or a current.', absent: 'taken from the file name',
   }),
   widthUm: optionalNumberField({ above: 0, max: 1e6 }, {
-    title: 'Width', unit: 'µm', description: 'Full width of the map, pixel edge to pixel edge.', absent: 'taken from the file or its sidecar',
+    title: 'Map width', unit: 'µm', description: 'Full width of the map, pixel edge to pixel edge.', absent: 'taken from the file or its sidecar',
   }),
   heightUm: optionalNumberField({ above: 0, max: 1e6 }, {
-    title: 'Height', unit: 'µm', description: 'Full height of the map, pixel edge to pixel edge.', absent: 'taken from the file, its sidecar, or the width with square pixels',
+    title: 'Map height', unit: 'µm', description: 'Full height of the map, pixel edge to pixel edge.', absent: 'taken from the file, its sidecar, or the width with square pixels',
   }),
   biasV: optionalNumberField({ min: -100, max: 100 }, {
     title: 'Scan bias', unit: 'V', description: 'Voltage between tip and sample during the current map.', absent: 'taken from the file name or sidecar; without it no thickness and no density',

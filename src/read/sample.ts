@@ -10,6 +10,8 @@ export interface Channel {
   readonly quantity: Quantity;
   /** `m` for heights; `A` for currents, or `relative` when the file gives no amperes. */
   readonly unit: 'm' | 'A' | 'relative';
+  /** Unit that the values were read in, as the recipe spells it (`nm`); absent where nobody kept it. */
+  readonly readIn?: string;
   readonly direction: Direction;
   /** Bias during this map in volts, absent when nobody stated it. */
   readonly biasV?: number;

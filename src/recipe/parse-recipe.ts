@@ -1,6 +1,7 @@
 /** Recipes from outside: JSON text, `path=value` settings, older versions. */
 import { z } from 'zod';
 import { Problem } from '../problems/problem.ts';
+import { nearestWord } from '../schema/nearest-word.ts';
 import { reasonOf } from '../schema/reason.ts';
 import type { Recipe } from './recipe.ts';
 import { recipeFormat, recipeSchema, recipeVersion } from './recipe.ts';
@@ -94,5 +95,20 @@ function problemOf(error: z.ZodError, value: unknown): Problem {
   const keys = issue.code === 'unrecognized_keys' ? [...issue.path, issue.keys[0]!] : issue.path;
   const path = ['recipe', ...keys.map(String)].join('.');
   const found = JSON.stringify(keys.reduce<unknown>((at, key) => (typeof at === 'object' && at !== null ? (at as Record<PropertyKey, unknown>)[key] : undefined), value));
-  return new Problem('recipe-value', { path, reason: reasonOf(issue, found) });
+  const meant = issue.code === 'unrecognized_keys' ? meantBy(issue.path.map(String), issue.keys[0]!) : undefined;
+  return new Problem('recipe-value', { path, reason: `${reasonOf(issue, found)}${meant === undefined ? '' : `; did you mean ${meant}?`}` });
+}
+
+interface JsonObject {
+  readonly properties?: Readonly<Record<string, JsonObject>>;
+}
+
+/** A setting near the unknown key in its own section, or one of just that name elsewhere; undefined where there is neither. */
+function meantBy(section: readonly string[], key: string): string | undefined {
+  const whole = recipeJsonSchema() as JsonObject;
+  const own = section.reduce<JsonObject | undefined>((at, name) => at?.properties?.[name], whole);
+  const near = nearestWord(key, Object.keys(own?.properties ?? {}));
+  if (near !== undefined) return near;
+  const elsewhere = Object.entries(whole.properties ?? {}).find(([, { properties }]) => properties !== undefined && Object.hasOwn(properties, key));
+  return elsewhere && `${elsewhere[0]}.${key}`;
 }

@@ -43,10 +43,32 @@ export function counted(count: number, one: string, many = `${one}s`): string {
 export function withPrefix(value: number | undefined, unit: string, digits = 3): string {
   if (value === undefined || !Number.isFinite(value)) return missing;
   if (value === 0) return `0${noBreak}${unit}`;
-  // Rounded first, so that 999.6 pA becomes 1.00 nA.
-  const magnitude = Math.floor(Math.log10(Math.abs(Number(value.toPrecision(digits)))));
-  const [exponent, prefix] = prefixes.find(([power]) => power <= magnitude) ?? prefixes[prefixes.length - 1] ?? [0, ''];
+  const [exponent, prefix] = prefixOf(value, digits);
   return `${figure(value / 10 ** exponent, digits)}${noBreak}${prefix}${unit}`;
+}
+
+/**
+ * A value and its standard error in one unit, the error to one digit and the value to the same place: "150.0 ± 0.3 fA". The value alone where the error is missing
+ * or nothing. Without a unit no prefix is taken.
+ */
+export function withError(value: number, error: number | undefined, unit: string): string {
+  if (error === undefined || !Number.isFinite(error) || !(error > 0) || !Number.isFinite(value)) return unit === '' ? figure(value) : withPrefix(value, unit);
+  const larger = Math.max(Math.abs(value), error);
+  const [exponent, prefix] = unit === '' ? [0, ''] : prefixOf(larger, 12);
+  // Rounded first: 0.96 is 1 and has no decimals.
+  const shown = Number((error / 10 ** exponent).toPrecision(1));
+  const decimals = Math.max(0, -Math.floor(Math.log10(shown)));
+  const text = `${fixed(value / 10 ** exponent, decimals)} ± ${fixed(shown, decimals)}`;
+  return unit === '' ? text : `${text}${noBreak}${prefix}${unit}`;
+}
+
+/** A height in nm, no finer than a tenth of the map's noise. */
+export function heightFigure(nm: number | undefined, noiseNm: number | undefined, digits = 3): string {
+  const text = figure(nm, digits);
+  if (nm === undefined || !Number.isFinite(nm) || nm === 0 || noiseNm === undefined || !(noiseNm > 0)) return text;
+  const decimals = Math.max(0, Math.floor(1 - Math.log10(noiseNm) + 1e-9));
+  const own = digits - 1 - Math.floor(Math.log10(Math.abs(nm)));
+  return own > decimals ? fixed(nm, decimals) : text;
 }
 
 /** A current in amperes, or a bare figure when the file gave none. */
@@ -78,6 +100,12 @@ export function niceBelow(value: number): number {
   const power = 10 ** Math.floor(Math.log10(value) + 1e-9);
   const lead = value / power;
   return Number(((lead >= 5 ? 5 : lead >= 2 ? 2 : 1) * power).toPrecision(1));
+}
+
+/** Rounded first, so that 999.6 pA becomes 1.00 nA. */
+function prefixOf(value: number, digits: number): readonly [exponent: number, prefix: string] {
+  const magnitude = Math.floor(Math.log10(Math.abs(Number(value.toPrecision(digits)))));
+  return prefixes.find(([power]) => power <= magnitude) ?? prefixes[prefixes.length - 1] ?? [0, ''];
 }
 
 function signed(text: string): string {

@@ -6,7 +6,7 @@ import type { Appraised } from './appraised.ts';
 import { swatch } from './ledger-figure.ts';
 import { markup } from './markup.ts';
 import type { Markup } from './markup.ts';
-import { counted, figure, fixed, interval, percent, withUnit } from './numbers.ts';
+import { counted, figure, fixed, heightFigure, interval, percent, withUnit } from './numbers.ts';
 import { toNm, toUm, toUm2 } from './units.ts';
 import type { Verdict } from './verdict.ts';
 
@@ -27,7 +27,7 @@ export function flawsPart({ flaws, ground, recipe }: Appraised, verdict: Verdict
 ${verdict.flaws.thresholds ? limitsLine(verdict.flaws.thresholds) : undefined}
 ${shortsLine}
 ${verdict.corrections ? correctionsList(recipe.corrections, verdict.corrections.applied) : undefined}
-${flaws.list.length > 0 ? flawTable(flaws.list) : undefined}</section>`;
+${flaws.list.length > 0 ? flawTable(flaws.list, ground.height && toNm(ground.height.noiseM)) : undefined}</section>`;
 }
 
 /** What the limits in force mean on this map. */
@@ -49,9 +49,9 @@ ${more > 0 ? markup`<p class="note">The first ${shown}; ${more} more are in the 
 }
 
 /** Largest first; equal areas in the order of their numbers. */
-function flawTable(list: readonly Flaw[]): Markup {
+function flawTable(list: readonly Flaw[], noiseNm: number | undefined): Markup {
   const sorted = [...list].sort((a, b) => b.areaM2 - a.areaM2 || a.flaw - b.flaw);
-  const rows = sorted.slice(0, shown).map((flaw) => markup`<tr><td class="n">${flaw.flaw}</td><td>${swatch(flaw.cause)}${flaw.cause}</td><td class="n">${figure(toUm2(flaw.areaM2))}</td><td class="n">${fixed(toUm(flaw.xM), 2)}</td><td class="n">${fixed(toUm(flaw.yM), 2)}</td><td class="n">${figure(toNm(flaw.peakM))}</td><td class="n">${figure(flaw.heightToRadius, 2)}</td><td>${flaw.reason}</td><td class="n">${fixed(flaw.confidence, 2)}</td></tr>`);
+  const rows = sorted.slice(0, shown).map((flaw) => markup`<tr><td class="n">${flaw.flaw}</td><td>${swatch(flaw.cause)}${flaw.cause}</td><td class="n">${figure(toUm2(flaw.areaM2))}</td><td class="n">${fixed(toUm(flaw.xM), 2)}</td><td class="n">${fixed(toUm(flaw.yM), 2)}</td><td class="n">${heightFigure(toNm(flaw.peakM), noiseNm)}</td><td class="n">${figure(flaw.heightToRadius, 2)}</td><td>${flaw.reason}</td><td class="n">${fixed(flaw.confidence, 2)}</td></tr>`);
   const more = sorted.length - shown;
   return markup`<table><thead><tr><th class="n">no.</th><th>cause</th><th class="n">area, µm²</th><th class="n">x, µm</th><th class="n">y, µm</th><th class="n">peak, nm</th><th class="n">h/R</th><th>reason</th><th class="n">confidence</th></tr></thead><tbody>${rows}</tbody></table>
 ${more > 0 ? markup`<p class="note">The ${shown} largest; ${more} more are in flaws.csv.</p>` : undefined}`;

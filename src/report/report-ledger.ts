@@ -1,10 +1,11 @@
 /** The report's first part: the verdict, the ledger as bar and table, and what the interval contains. */
+import type { HeightGround } from '../ground/ground.ts';
 import { orderOfTest } from '../ledger/ledger.ts';
 import type { Appraised } from './appraised.ts';
 import { ledgerBar, swatch } from './ledger-figure.ts';
 import { markup, named } from './markup.ts';
 import type { Markup } from './markup.ts';
-import { counted, decimalsFor, fixed, interval, percent, plain, withUnit } from './numbers.ts';
+import { counted, decimalsFor, fixed, heightFigure, interval, percent, plain, withUnit } from './numbers.ts';
 import { currentLines } from './report-current.ts';
 import { textureLine } from './report-texture.ts';
 import type { Verdict } from './verdict.ts';
@@ -52,6 +53,14 @@ const meaningOf: Readonly<Partial<Record<string, string>>> = {
   stray: 'in band, but too small or cut off',
 };
 
+/** Tilt and bow apart where levelling tells them, as the app does. */
+function formText({ tiltM, noiseM, levels }: HeightGround): string {
+  const nm = (metres: number): string => `${heightFigure(metres * 1e9, noiseM * 1e9)}\u00a0nm`;
+  if (!levels) return `${nm(tiltM)} of tilt and bow`;
+  if (levels.order === 0) return 'only a level';
+  return `${nm(levels.tiltM)} of tilt${levels.order > 1 ? ` and ${nm(levels.bowM)} of ${levels.order > 2 ? 'curvature' : 'bow'}` : ''}`;
+}
+
 /** What was scanned: surface, bias, map, channels and what levelling found. */
 export function scanPart({ sample, ground }: Appraised, verdict: Verdict): Markup {
   const { map } = verdict;
@@ -66,7 +75,7 @@ export function scanPart({ sample, ground }: Appraised, verdict: Verdict): Marku
 <dt>Bias of the scan</dt><dd>${biases.length > 0 ? `${biases.join(', ')} (sample against tip)` : 'not stated'}</dd>
 <dt>Map</dt><dd>${map.columns} × ${map.rows} pixels of ${withUnit(map.pitchXUm * 1000, 'nm')} × ${withUnit(map.pitchYUm * 1000, 'nm')}; ${withUnit(map.columns * map.pitchXUm, 'µm')} × ${withUnit(map.rows * map.pitchYUm, 'µm')}</dd>
 <dt>Channels</dt><dd><ul>${channels}</ul></dd>
-${height ? markup`<dt>Height</dt><dd>${withUnit(height.tiltM * 1e9, 'nm')} of tilt and bow removed, noise ${withUnit(height.noiseM * 1e9, 'nm')}, ${counted(height.repairedPixels, 'pixel')} repaired</dd>` : markup`<dt>Height</dt><dd>not measured: bubbles, residue and wrinkles cannot be seen</dd>`}
+${height ? markup`<dt>Height</dt><dd>${formText(height)} removed, noise ${withUnit(height.noiseM * 1e9, 'nm')}, ${counted(height.repairedPixels, 'pixel')} repaired</dd>` : markup`<dt>Height</dt><dd>not measured: bubbles, residue and wrinkles cannot be seen</dd>`}
 ${textureLine(verdict)}
 ${current ? currentLines(current, ground.returned) : markup`<dt>Current</dt><dd>not measured: shorts, thin and thick ground cannot be seen</dd>`}
 </dl></section>`;

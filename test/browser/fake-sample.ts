@@ -21,7 +21,7 @@ export const flaws: readonly FlawEntry[] = [
 const map = (name: MapInfo['name'], unit: string, low: number, high: number, log = false): MapInfo => ({ name, unit, low, high, least: low - Math.abs(low) * 0.5, most: high * 1.5, log });
 
 export const summary: SampleSummary = {
-  id: 's1', name: 'flake 04', verdict: '40.7 µm² (95 %: 37.9–43.2) of 100 µm² is even barrier, ×/÷3 at 4.0 V; an upper bound, as a bare barrier was scanned.',
+  id: 's1', name: 'flake 04', verdict: '40.7 µm² (95 %: 37.9–43.2) of 100 µm² is even barrier, within a factor of 3 at 4 V; an upper bound, as a bare barrier was scanned.',
   surface: 'barrier', columns: 200, rows: 200, widthUm: 10, heightUm: 10, footprintUm2: 100, ledger,
   usable: { areaUm2: 40.7, share: 0.407, low95Um2: 37.9, high95Um2: 43.2, largestPatchUm2: 22.4, knownToGlow: true, meaning: 'usable' },
   repairedUm2: 0, height: { noiseNm: 0.08, tiltNm: 38, repairedPixels: 7, levels: { formFrom: 'ground', order: 2, tiltNm: 37, bowNm: 2.1, lineRmsNm: 0.12, lineMostNm: 0.4, planesNm: [0, 0.333, 0.666], gapNm: 0.333 } },

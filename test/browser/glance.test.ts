@@ -35,6 +35,7 @@ describe('a held handle', () => {
     handle.dispatchEvent(new Event(type));
   };
   const usable = (): number => place.renderRoot.querySelector<LedgerBar>('eg-ledger-bar')!.entries.find(({ cause }) => cause === 'usable')!.areaUm2;
+  const headline = (): string => (place.renderRoot.querySelector('eg-verdict-line')!.shadowRoot!.querySelector('.look')?.textContent ?? '').replace(/\s+/g, ' ').trim();
   const listen = (): unknown[] => {
     const heard: unknown[] = [];
     place.addEventListener('recipe-change', (event) => { heard.push((event as CustomEvent<{ value: unknown }>).detail.value); });
@@ -43,6 +44,7 @@ describe('a held handle', () => {
 
   it('shows where it would lead on the map and in the areas, and changes no recipe', async () => {
     const changes = listen();
+    const tall = place.renderRoot.querySelector<HTMLElement>('eg-verdict-line')!.offsetHeight;
     slide(250);
     await settled();
     const [asked] = compute.previews;
@@ -50,9 +52,24 @@ describe('a held handle', () => {
     assert.equal(asked!.picture!.map, 'current');
     assert.isUndefined(asked!.picture!.flaw);
     assert.equal(usable(), 42.7);
+    assert.equal(place.renderRoot.querySelector<HTMLElement>('eg-verdict-line')!.offsetHeight, tall, 'nothing moves under the handle');
+    assert.equal(headline(), '42.7 µm² of 100 µm² would be usable a quick look; letting go of the handle computes the result');
     assert.deepEqual(changes, []);
     const words = [...chapter().renderRoot.querySelectorAll<Knob>('eg-knob')].map(({ renderRoot }) => renderRoot.querySelector('.look')?.textContent ?? '').filter((text) => text !== '');
     assert.deepEqual(words.map((text) => text.replace(/\s+/g, ' ')), ['About 42.7 µm² usable; 1 bubble, 2 residue patches; a quick look at every 2nd pixel. Let go for the result.']);
+  });
+
+  it('has the look at the value in force made when it is taken, without a picture', async () => {
+    slider().dispatchEvent(new PointerEvent('pointerdown'));
+    await settled();
+    assert.deepEqual(compute.previews.map(({ recipe, picture }) => [recipe['flaws'], picture]), [[undefined, undefined]]);
+    assert.equal(usable(), 40.7);
+    slider().dispatchEvent(new KeyboardEvent('keydown', { key: 'Tab' }));
+    slider().dispatchEvent(new KeyboardEvent('keyup', { key: 'Tab' }));
+    assert.equal(compute.previews.length, 1);
+    slider().dispatchEvent(new KeyboardEvent('keydown', { key: 'ArrowRight' }));
+    slider().dispatchEvent(new KeyboardEvent('keydown', { key: 'ArrowRight' }));
+    assert.equal(compute.previews.length, 2);
   });
 
   it('asks one question at a time and only the newest next; one that comes after the handle was let go counts no more', async () => {

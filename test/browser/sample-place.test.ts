@@ -41,7 +41,7 @@ describe('the sample’s place', () => {
   it('says the verdict: area, interval, largest patch, bound, remarks', async () => {
     const element = await open();
     const text = textOf(element, 'eg-verdict-line');
-    assert.match(text, /40\.7 µm² of 100 µm² is even barrier, ×\/÷3 at 4\.0 V/);
+    assert.match(text, /40\.7 µm² of 100 µm² is even barrier, within a factor of 3 at 4 V/);
     assert.match(text, /95 %: 37\.9–43\.2 µm² · largest patch 22\.4 µm² · an upper bound, as a bare barrier was scanned · 2 remarks/);
     inside(element, 'eg-verdict-line').shadowRoot.querySelector('button')!.click();
     await settled();
@@ -70,7 +70,7 @@ describe('the sample’s place', () => {
 
   it('warns where a bias is set', async () => {
     const element = await unfolded(['scan', 'glow']);
-    assert.match(textOf(element, 'eg-chapter-glow'), /breaks down near 1\.2 V\/nm.*4\.0 V on the reference is 1\.00 V\/nm.*current limit.*trained staff/);
+    assert.match(textOf(element, 'eg-chapter-glow'), /breaks down near 1\.2 V\/nm.*4 V on the reference is 1\.00 V\/nm.*current limit.*trained staff/);
     assert.match(textOf(element, 'eg-chapter-scan'), /current limit.*trained staff/);
   });
 
@@ -86,6 +86,23 @@ describe('the sample’s place', () => {
     assert.deepEqual(heard, ['undo', 'undo', 'redo']);
   });
 
+  it('closes the remarks with Escape before it means anything else', async () => {
+    const element = await open();
+    const line = inside(element, 'eg-verdict-line');
+    const button = () => line.shadowRoot.querySelector<HTMLButtonElement>('button')!;
+    element.isolated = 3;
+    button().click();
+    await settled();
+    assert.equal(line.shadowRoot.querySelectorAll('#remarks li').length, 2);
+    press('Escape');
+    await settled();
+    assert.equal(line.shadowRoot.querySelectorAll('#remarks').length, 0);
+    assert.equal(button().getAttribute('aria-expanded'), 'false');
+    assert.equal(element.isolated, 3);
+    press('Escape');
+    assert.isUndefined(element.isolated);
+  });
+
   it('has nothing to undo at the first step', async () => {
     const element = await open();
     const heard = listen(element, 'undo', 'redo');
@@ -96,10 +113,16 @@ describe('the sample’s place', () => {
 
   it('shows what the last change did, in its chapter', async () => {
     const element = await open();
-    element.sample = sampleState({ history: [{ recipe: recipe({}), label: '' }, { recipe: recipe({ flaws: { heightNm: 2 } }), label: 'x' }], at: 1, previousUsableUm2: 40.4 });
+    element.sample = sampleState({ history: [{ recipe: recipe({}), label: '' }, { recipe: recipe({ flaws: { heightNm: 2 } }), label: 'x' }], at: 1, previous: { usableUm2: 40.4, ledger: summary.ledger, flaws: summary.flaws } });
     await settled();
-    assert.equal(plainSpaces((inside(element, 'eg-chapter-flaws') as unknown as Chapter).effect), 'This returned 0.300 µm².');
+    assert.equal(plainSpaces((inside(element, 'eg-chapter-flaws') as unknown as Chapter).effect.words), 'This returned 0.300 µm².');
     assert.include(textOf(element, 'eg-chapter-flaws'), 'This returned 0.300 µm².');
+    const colour = () => getComputedStyle(inside(element, 'eg-chapter-flaws').shadowRoot.querySelector('.effect')!).color;
+    const gain = colour();
+    element.sample = { ...element.sample, previous: { usableUm2: 41, ledger: summary.ledger, flaws: summary.flaws } };
+    await settled();
+    assert.include(textOf(element, 'eg-chapter-flaws'), 'This cost 0.300 µm².');
+    assert.notEqual(colour(), gain);
     assert.notInclude(textOf(element, 'eg-verdict-line'), 'returned');
   });
 

@@ -1,8 +1,9 @@
 /** What the Sample place is made of: its words and numbers, its knobs, its table. */
 import { assert } from 'chai';
-import { effectOf, flawsFinding, glowAssumption, glowFinding, groundFinding, scanFinding, verdictRest } from '../../web/sample/findings.ts';
-import { area, confidenceWord, counted, density, figure, ledgerFigure, mapValue, percent, span, tickText, typedNumber, volts, withPrefix } from '../../web/sample/format.ts';
-import { groundFacts } from '../../web/sample/ground-facts.ts';
+import { effectOf } from '../../web/sample/effect.ts';
+import { flawsFinding, glowAssumption, glowFinding, groundFinding, scanFinding, verdictRest } from '../../web/sample/findings.ts';
+import { area, biasText, confidenceWord, counted, density, figure, heightText, ledgerFigure, mapValue, percent, span, tickText, typedNumber, volts, withError, withPrefix } from '../../web/sample/format.ts';
+import { groundFacts, loweredWords } from '../../web/sample/ground-facts.ts';
 import type { RecipeChange } from '../../web/sample/events.ts';
 import { FlawTable } from '../../web/sample/flaw-table.ts';
 import { Knob } from '../../web/sample/knob.ts';
@@ -10,6 +11,7 @@ import { changedPaths, chapterKnobs, chapterOfChange, knobsOf, refusal, stepLabe
 import type { ChapterName } from '../../web/sample/knobs.ts';
 import { dropMeaning, heightMeaning, noiseMeaning } from '../../web/sample/threshold-words.ts';
 import { sortFlaws } from '../../web/sample/sort-flaws.ts';
+import { emptyRecipe, withCorrection } from '../../web/session/recipe.ts';
 import { facts, flaws, mount, summary, unmountAll } from './fake-sample.ts';
 
 const plainSpaces = (text: string | null | undefined): string => (text ?? '').replace(/\s+/g, ' ').trim();
@@ -37,6 +39,21 @@ describe('numbers', () => {
     assert.equal(span(0.9, 40, 2), '0.90–40');
   });
 
+  it('have one unit with their error, which has one digit', () => {
+    const pairs = [[1.5e-13, 2.55e-16], [1.5e-13, 9.6e-15], [9.996e-10, 4e-13], [-2e-16, 3e-14], [1.5e-13, 0], [1.18e-10, 2.3e-11]] as const;
+    assert.deepEqual(pairs.map(([value, error]) => plainSpaces(withError(value, error, 'A'))), ['150.0 ± 0.3 fA', '150 ± 10 fA', '999.6 ± 0.4 pA', '0 ± 30 fA', '150 fA', '118 ± 20 pA']);
+    assert.equal(plainSpaces(withError(1.5e-13, undefined, 'A')), '150 fA');
+  });
+
+  it('are no finer than a tenth of the noise where they are heights', () => {
+    assert.deepEqual([[3.6412, 0.08], [20.24, 0.08], [0.3333, 0.08], [48.2, 3], [0.0004, 0.1], [12345, 0.1], [0.333, undefined]].map(([nm, noise]) => plainSpaces(heightText(nm, noise))),
+      ['3.64 nm', '20.2 nm', '0.33 nm', '48 nm', '0.00 nm', '12345 nm', '0.333 nm']);
+  });
+
+  it('give a proposed bias to three digits and a given one as given', () => {
+    assert.deepEqual([biasText({ biasV: 3.7342, proposed: true }), biasText({ biasV: 3.7342, proposed: false }), biasText({ biasV: 4, proposed: false })].map(plainSpaces), ['3.73 V', '3.7342 V', '4 V']);
+  });
+
   it('are read as typed', () => {
     assert.deepEqual([' 2,5 ', '−3', '1e-12', '10 000'].map(typedNumber), [2.5, -3, 1e-12, 10000]);
     assert.isNaN(typedNumber('two'));
@@ -45,6 +62,8 @@ describe('numbers', () => {
 
   it('have words for how sure and how many', () => {
     assert.deepEqual([1, 0.9, 0.8, 0.5].map(confidenceWord), ['certain', 'certain', 'likely', 'could be another']);
+    // Shown as 0.90 and 0.65, as those are.
+    assert.deepEqual([0.8951, 0.6451, 0.6449].map(confidenceWord), ['certain', 'likely', 'could be another']);
     assert.deepEqual([counted(0, 'short'), counted(1, 'short'), counted(2, 'residue patch', 'residue patches')], ['no shorts', '1 short', '2 residue patches']);
   });
 });
@@ -57,17 +76,21 @@ describe('findings', () => {
   });
 
   it('say what was done to the ground', () => {
-    assert.equal(plainSpaces(groundFinding(summary)), '38 nm of tilt removed, 12 broken pixels repaired, noise 0.080 nm; the tip lost 0.28 decades of conductance (a factor of 1.9).');
+    assert.equal(plainSpaces(groundFinding(summary)), '37 nm of tilt and 2.1 nm of bow removed, 7 pixels repaired in the height, 5 in the current, noise 0.080 nm; the tip lost 0.28 decades of conductance (a factor of 1.9).');
     const { height: _height, ...currentAlone } = summary;
-    assert.equal(plainSpaces(groundFinding({ ...currentAlone, current: { ...summary.current!, repairedPixels: 0, wearDecades: -0.3, wearTold: false } })), 'Nothing to repair; no wear of the tip told from the barrier.');
+    assert.equal(plainSpaces(groundFinding({ ...currentAlone, current: { ...summary.current!, repairedPixels: 0, wearDecades: -0.3, wearTold: false } })), 'Nothing to repair; tip wear cannot be told from the barrier, none undone.');
+    const { levels: _levels, ...roughly } = summary.height!;
+    const { current: _current, ...heightAlone } = summary;
+    assert.equal(plainSpaces(groundFinding({ ...heightAlone, height: roughly, repairedUm2: 0.0123 })), '38 nm of tilt removed, 7 pixels repaired (0.0123 µm²), noise 0.080 nm.');
+    assert.match(plainSpaces(groundFinding({ ...summary, repairedUm2: 0.0881, height: { ...summary.height!, levels: { ...summary.height!.levels!, order: 1 } } })), /^37 nm of tilt removed, 7 pixels repaired in the height, 5 in the current \(0\.0881 µm²\),/);
   });
 
   it('tell of the ground fact by fact, with units and what was done', () => {
     const facts = new Map(groundFacts(summary).map(({ name, value, note = '' }) => [name, `${plainSpaces(value)} | ${plainSpaces(note)}`]));
-    assert.match(facts.get('Form removed')!, /^order 2 \(tilt and bow\): tilt 37\.0 nm, curved part 2\.10 nm, peak to peak \| fitted to ground found automatically/);
+    assert.match(facts.get('Form removed')!, /^order 2 \(tilt and bow\): tilt 37\.0 nm, bow 2\.10 nm, peak to peak \| fitted to ground found automatically/);
     assert.match(facts.get('Line offsets')!, /^0\.12 nm rms, 0\.40 nm at most \|/);
-    assert.match(facts.get('Terraces')!, /^3 heights taken as parallel planes, 0\.67 nm from lowest to highest \| one step of the current’s ladder is 0\.333 nm high/);
-    assert.match(facts.get('Floor')!, /^90\.0 fA ± 300 aA \|/);
+    assert.match(facts.get('Terraces')!, /^3 heights taken as parallel planes, 0\.67 nm from lowest to highest \| one step of the current’s ladder is 0\.33 nm high/);
+    assert.match(facts.get('Floor')!, /^90\.0 ± 0\.3 fA \|/);
     assert.match(facts.get('Wear of the tip')!, /^0\.28 decades lost \(a factor of 1\.9\), undone \| .*0\.28 ± 0\.03 decades \(powers of ten\)/);
     const { height: _height, ...alone } = summary;
     assert.isFalse(groundFacts(alone).some(({ name }) => name === 'Form removed'));
@@ -75,7 +98,14 @@ describe('findings', () => {
     const more = groundFacts({ ...summary, current: { ...summary.current!, lagPx: 1.5, lagSePx: 0.02, shift, wearTold: false } });
     assert.include(plainSpaces(more.find(({ name }) => name === 'Amplifier’s lag')?.value), '1.50 ± 0.02 pixels, undone');
     assert.include(more.find(({ name }) => name === 'Current against height')?.note ?? '', 'moved back by whole pixels: 2 to the left');
-    assert.include(more.find(({ name }) => name === 'Wear of the tip')?.note ?? '', 'not told from the barrier');
+    assert.include(more.find(({ name }) => name === 'Wear of the tip')?.note ?? '', 'cannot be told from the barrier');
+  });
+
+  it('say to what the spots lower the order of the form', () => {
+    assert.equal(loweredWords(2, { order: 1, spotsUsed: 3 }), 'lowered to 1: 3 spots support a tilt only');
+    assert.equal(loweredWords(2, { order: 0, spotsUsed: 4 }), 'lowered to 0: 4 spots in these places support a level only');
+    assert.equal(loweredWords(3, { order: 2, spotsUsed: 7 }), 'lowered to 2: 7 spots support tilt and bow only');
+    assert.equal(loweredWords(1, { order: 1, spotsUsed: 3 }), '');
   });
 
   it('say what a threshold means on this map, and which limit rules', () => {
@@ -98,7 +128,7 @@ describe('findings', () => {
   });
 
   it('say what the reference would carry, or why that is not known', () => {
-    assert.equal(plainSpaces(glowFinding(summary)), 'At 4.0 V the reference (12 layers, 4.00 nm) would carry 6.3 nA/µm² (95 %: 0.90–40).');
+    assert.equal(plainSpaces(glowFinding(summary)), 'At 4 V the reference (12 layers, 4.00 nm) would carry 6.3 nA/µm² (95 %: 0.90–40).');
     const { device: _device, ...without } = summary;
     const { biasV: _biasV, ...noBias } = summary.current!;
     assert.match(glowFinding({ ...without, current: noBias }), /not known without a scan bias\./);
@@ -108,11 +138,26 @@ describe('findings', () => {
   });
 
   it('say what a change returned or cost', () => {
-    assert.deepEqual([effectOf(40, 40.3), effectOf(40, 38.8), effectOf(40, 40), effectOf(undefined, 40)].map(plainSpaces), ['This returned 0.300 µm².', 'This cost 1.20 µm².', 'This changed no usable area.', '']);
+    const steps = [{ recipe: emptyRecipe, label: '' }, { recipe: { ...emptyRecipe, flaws: { heightNm: 2 } }, label: 'x' }];
+    const after = (usableUm2: number, changes: Readonly<Record<string, number>> = {}, history = steps) => {
+      const { words, tone } = effectOf({ previous: { usableUm2: summary.usable.areaUm2, ledger: summary.ledger, flaws: [{ ...flaws[0]!, insideUm: [2, 7] }] }, history, at: 1 }, {
+        usable: { ...summary.usable, areaUm2: usableUm2 }, ledger: summary.ledger.map((entry) => ({ ...entry, areaUm2: entry.areaUm2 + (changes[entry.cause] ?? 0) })),
+      });
+      return [plainSpaces(words), tone];
+    };
+    assert.deepEqual(after(41), ['This returned 0.300 µm².', 'gain']);
+    assert.deepEqual(after(39.5), ['This cost 1.20 µm².', 'cost']);
+    assert.deepEqual(after(40.7), ['This changed no usable area.', 'same']);
+    assert.deepEqual(after(40.7, { bubble: -1.1, residue: 1.1 }), ['This changed no usable area: 1.10 µm² went from bubble to residue.', 'same']);
+    assert.deepEqual(effectOf({ history: steps, at: 1 }, summary), { words: '', tone: 'same' });
+    const dismissed = [{ recipe: emptyRecipe, label: '' }, { recipe: withCorrection(emptyRecipe, { kind: 'dismiss', xUm: 2, yUm: 7 }), label: 'flaw dismissed' }];
+    assert.deepEqual(after(40.7, { bubble: -1.1, thick: 1.1 }, dismissed), ['No flaw any more; 1.10 µm² is now booked thick, because no current flows there.', 'same']);
+    assert.deepEqual(after(41, { bubble: -1.1, usable: 0.3, thin: 0.8 }, dismissed), ['No flaw any more; this returned 0.300 µm²; 0.800 µm² is now booked thin, because too much current flows there.', 'gain']);
+    assert.deepEqual(after(41.8, { bubble: -1.1, usable: 1.1 }, dismissed), ['This returned 1.10 µm².', 'gain']);
   });
 
   it('split the verdict’s sentence', () => {
-    assert.deepEqual(verdictRest(summary.verdict), { what: 'of 100 µm² is even barrier, ×/÷3 at 4.0 V', remarks: 'an upper bound, as a bare barrier was scanned' });
+    assert.deepEqual(verdictRest(summary.verdict), { what: 'of 100 µm² is even barrier, within a factor of 3 at 4 V', remarks: 'an upper bound, as a bare barrier was scanned' });
   });
 });
 

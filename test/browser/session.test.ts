@@ -100,7 +100,7 @@ describe('the session', () => {
   it('remembers the usable area before a change, and keeps the result on show meanwhile', async () => {
     await withReady();
     void session.do(changeRecipe, 'a', 'band.factor', 5, 'band factor 5');
-    assert.equal(sampleA().previousUsableUm2, 40);
+    assert.equal(sampleA().previous?.usableUm2, 40);
     assert.equal(sampleA().summary?.usable.areaUm2, 40);
     assert.equal(sampleA().status, 'working');
   });

@@ -154,7 +154,7 @@ test('missing current is unmeasured, unless a flaw in height explains it; missin
   assert.equal(row(appraisal, 'unmeasured').pixels, 81);
 });
 
-test('a run of one or two lines between agreeing neighbours is repaired, counted and booked by its repaired value', () => {
+test('a run of one to three lines between agreeing neighbours is repaired, counted and booked by its repaired value', () => {
   const broken = [{ r: 60, lines: 1 as const, from: 10, to: 70, current: true }, { r: 100, lines: 2 as const, from: 30, to: 80, current: true }];
   const appraisal = appraise(scene({ broken }));
   assertClose(appraisal.ledger.repairedM2 * 1e12, (60 + 100) * pixelUm2, 1e-9);

@@ -11,10 +11,10 @@ function sentence(usableUm2: number, change: Partial<VerdictInput> = {}): string
   });
 }
 
-test('a given bias is printed as given, a proposed one to a tenth', () => {
-  assert.match(sentence(4), /×\/÷3 at 3\.25 V; 2 shorts seen \(about 6 more expected between the lines\)/);
+test('a given bias is printed as given, a proposed one to three digits', () => {
+  assert.match(sentence(4), /is even barrier, within a factor of 3 at 3\.25 V; 2 shorts seen \(about 6 more expected between the lines\)/);
   assert.match(sentence(4, { biasV: -4 }), /at -4 V/);
-  assert.match(sentence(4, { biasV: 3.374221, proposed: true }), /at 3\.4 V \(proposed\)/);
+  assert.match(sentence(4, { biasV: 3.374221, proposed: true }), /within a factor of 3 at 3\.37 V \(proposed\)/);
 });
 
 test('nothing usable: why, and what good or unknown ground there is', () => {

@@ -1,7 +1,7 @@
 import assert from 'node:assert/strict';
 import { describe, it } from 'node:test';
 import { decadeTicks, displayRange, linearTicks } from '../../src/report/display-range.ts';
-import { counted, decimalsFor, figure, interval, niceBelow, percent, plain, withPrefix, withUnit } from '../../src/report/numbers.ts';
+import { counted, decimalsFor, figure, heightFigure, interval, niceBelow, percent, plain, withError, withPrefix, withUnit } from '../../src/report/numbers.ts';
 
 const spaced = (text: string): string => text.replaceAll('\u00a0', ' ');
 
@@ -22,6 +22,16 @@ describe('numbers for readers', () => {
       assert.equal(plain(value), '–');
       assert.equal(interval(1, value, 'nm'), '–');
     }
+  });
+
+  it('gives value and error one unit, the error one digit, and the value the same place', () => {
+    assert.deepEqual([[1.5e-13, 2.55e-16], [1.5e-13, 9.6e-15], [9.996e-10, 4e-13], [-2e-16, 3e-14], [1.5e-13, 0], [1.5e-13, undefined]].map(([value, error]) => spaced(withError(value!, error, 'A'))),
+      ['150.0 ± 0.3 fA', '150 ± 10 fA', '999.6 ± 0.4 pA', '0 ± 30 fA', '150 fA', '150 fA']);
+    assert.equal(withError(12.345, 0.027, ''), '12.35 ± 0.03');
+  });
+
+  it('shows no height finer than a tenth of the noise', () => {
+    assert.deepEqual([[3.6412, 0.08], [20.24, 0.08], [0.3333, 0.08], [48.2, 3], [0.333, undefined]].map(([nm, noise]) => heightFigure(nm, noise)), ['3.64', '20.2', '0.33', '48', '0.333']);
   });
 
   it('chooses SI prefixes after rounding', () => {

@@ -35,6 +35,16 @@ describe('a quick look', () => {
     await compute.appraise(3, id, {});
   });
 
+  it('shows the result itself where nothing is changed', async () => {
+    for (const request of [{ id, recipe: {} }, { id, recipe: {}, picture: picture() }]) {
+      const look = await compute.preview(request);
+      assert.deepEqual(look.ledger.map(({ cause, areaUm2 }) => [cause, areaUm2.toPrecision(9)]), summary.ledger.map(({ cause, areaUm2 }) => [cause, areaUm2.toPrecision(9)]));
+      assert.equal(look.flaws.bubble, summary.flaws.filter(({ cause }) => cause === 'bubble').length);
+      assert.equal(look.usableUm2, look.ledger.find(({ cause }) => cause === 'usable')!.areaUm2);
+      assert.equal(look.picture !== undefined, 'picture' in request);
+    }
+  });
+
   it('follows a threshold, draws what it found, and changes nothing of what is on show', async () => {
     const shown = await compute.picture(picture());
     const point = await compute.point(id, 1, 1);

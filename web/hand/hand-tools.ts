@@ -5,7 +5,7 @@ import { flawCauses } from '../../workers/api.ts';
 import type { ComputeFacts, FlawEntry } from '../../workers/api.ts';
 import { controlStyles } from '../app/controls.ts';
 import { causeFill, hatchDefinitions } from '../ledger/hatches.ts';
-import { area, counted, fixed, plain, sureness, typedNumber, withUnit } from '../sample/format.ts';
+import { area, counted, fixed, heightText, plain, sureness, typedNumber, withUnit } from '../sample/format.ts';
 import type { DrawnAs, Hand, NamedCorrection } from './hand.ts';
 import { dismissFlaw, firstWidthUm, setCause } from './hand.ts';
 import { handToolsStyles } from './hand-tools-styles.ts';
@@ -14,7 +14,7 @@ const drawnAs: readonly DrawnAs[] = [...flawCauses, 'none'];
 
 export class HandTools extends LitElement {
   static override properties = {
-    flaw: { attribute: false }, hand: { attribute: false }, corrections: { attribute: false }, stale: { type: Boolean }, causes: { attribute: false }, hatchPeriod: { attribute: false }, mapUm: { attribute: false },
+    flaw: { attribute: false }, hand: { attribute: false }, corrections: { attribute: false }, stale: { type: Boolean }, causes: { attribute: false }, hatchPeriod: { attribute: false }, mapUm: { attribute: false }, noiseNm: { attribute: false },
     as: { state: true }, widthUm: { state: true }, problem: { state: true },
   };
 
@@ -29,6 +29,8 @@ export class HandTools extends LitElement {
   declare hatchPeriod: number;
   /** Width of the map. */
   declare mapUm: number;
+  /** Of the height. */
+  declare noiseNm: number | undefined;
   declare as: DrawnAs;
   /** Of the brush, as typed; undefined: what suits the map. */
   declare widthUm: number | undefined;
@@ -62,9 +64,9 @@ export class HandTools extends LitElement {
         <h3>Flaw ${flaw.flaw} is</h3>
         <div class="choice" role="group" aria-label="Flaw ${flaw.flaw} is">${flawCauses.map((cause) => html`
           <button type="button" aria-pressed=${cause === flaw.cause ? 'true' : 'false'} @click=${() => { this.correct(setCause(flaw, cause)); }}>${this.swatch(cause)}${cause}</button>`)}</div>
-        <p class="reason">${flaw.byHand ? '' : `${sureness(flaw)} · `}${flaw.reason}</p>
+        <p class="reason">${flaw.byHand || flaw.other !== undefined ? '' : `${sureness(flaw)} · `}${flaw.reason}</p>
         <p class="measures">${[
-          area(flaw.areaUm2), `${withUnit(flaw.diameterUm, 'µm')} across`, ...(flaw.peakNm === undefined ? [] : [`${withUnit(flaw.peakNm, 'nm')} high`]),
+          area(flaw.areaUm2), `${withUnit(flaw.diameterUm, 'µm')} across`, ...(flaw.peakNm === undefined ? [] : [`${heightText(flaw.peakNm, this.noiseNm)} high`]),
           `x\u00a0${fixed(flaw.xUm, 2)}, y\u00a0${fixed(flaw.yUm, 2)}\u00a0µm`].join(' · ')}</p>
         <div class="row">
           <button type="button" @click=${() => { this.correct(dismissFlaw(flaw)); }}>no flaw</button>

@@ -132,7 +132,7 @@ export class MapPanel extends LitElement {
       </div>
       ${cut?.toUm ? html`<eg-cut-plot .values=${this.profile} .map=${info} .lengthUm=${length} .log=${limits.log} @remove-cut=${() => { this.cut = undefined; }}></eg-cut-plot>` : nothing}
       <div class="side">
-        <eg-readout class="card" .point=${this.point} .maps=${summary.maps}></eg-readout>
+        <eg-readout class="card" .point=${this.point} .maps=${summary.maps} .noiseNm=${summary.height?.noiseNm}></eg-readout>
         ${this.flaw ? this.flawCard(this.flaw) : nothing}
       </div>`;
   }
@@ -253,7 +253,7 @@ export class MapPanel extends LitElement {
   }
 
   private flawCard(flaw: FlawEntry) {
-    return html`<div class="card"><h3>selected flaw ${flaw.flaw} · ${flaw.cause}, ${sureness(flaw)}</h3><p>${flaw.reason}</p><p>${area(flaw.areaUm2)} at x ${flaw.xUm.toFixed(2)}, y ${flaw.yUm.toFixed(2)}\u00a0µm</p></div>`;
+    return html`<div class="card"><h3>selected flaw ${flaw.flaw} · ${flaw.cause}${flaw.other === undefined ? `, ${sureness(flaw)}` : ''}</h3><p>${flaw.reason}</p><p>${area(flaw.areaUm2)} at x ${flaw.xUm.toFixed(2)}, y ${flaw.yUm.toFixed(2)}\u00a0µm</p></div>`;
   }
 
   private get stage(): MapStage | null {

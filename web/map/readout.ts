@@ -1,14 +1,16 @@
 /** Values of all channels under the cursor, in a fixed place. */
 import { LitElement, css, html } from 'lit';
 import type { MapInfo, MapName, PointValues } from '../../workers/api.ts';
-import { fixed, mapValue, sureness } from '../sample/format.ts';
+import { fixed, heightText, mapValue, sureness } from '../sample/format.ts';
 import { mapWords } from './map-words.ts';
 
 export class Readout extends LitElement {
-  static override properties = { point: { attribute: false }, maps: { attribute: false } };
+  static override properties = { point: { attribute: false }, maps: { attribute: false }, noiseNm: { attribute: false } };
 
   declare point: PointValues | undefined;
   declare maps: readonly MapInfo[];
+  /** Of the height. */
+  declare noiseNm: number | undefined;
 
   static override styles = css`
     :host { display: block; font-size: 13px; line-height: 1.5; font-variant-numeric: tabular-nums; }
@@ -42,6 +44,7 @@ export class Readout extends LitElement {
 
   private valueText(name: MapName, unit: string): string {
     const value = this.point?.values[name];
+    if (name === 'height') return heightText(value, this.noiseNm);
     return name === 'layers' ? (value === undefined ? '–' : String(value)) : mapValue(value, unit);
   }
 }

@@ -28,7 +28,16 @@ export const flawTopics: readonly Topic[] = [
   },
   {
     id: 'spots-of-current', title: 'Shorts and opens', settings: ['flaws.shortLayers', 'band.shortMaxUm2', 'band.terraceMinUm2'],
-    what: html`<p>A short is a patch, down to one pixel and up to the stated area, whose current lies the stated number of layers’ worth above its surroundings, or that saturates, or a conducting pit through the barrier. Surroundings are the current with every bright patch narrower than the largest short removed. Near a larger saturated terrace a saturated patch must show a pit, for saturation hides by how much it stands out; and a spot that raised flaws shut in is none without a pit, because they cut it off from ground like itself. Nor is one whose border is partly like itself, or that saturates less than two layers’ worth above its border: the corner of a thinner terrace explains that. An open is a patch at the floor, smaller than a terrace, that nothing in the height explains and whose surroundings carry clearly more; the ragged edge of a terrace at the floor is none, nor a stretch of line that had lost contact.</p>`,
+    what: html`
+      <p>A <em>short</em> is a patch of one pixel up to the stated area. Its current lies the stated number of layers’ worth above its surroundings, or saturates, or it is a pit through the barrier that conducts. Surroundings are the current with every bright patch narrower than the largest short removed.</p>
+      <p>Four bright patches are no shorts:</p>
+      <ul>
+        <li>A saturated one near a larger saturated terrace, unless it shows a pit: saturation hides by how much it stands out.</li>
+        <li>One that raised flaws shut in, unless it shows a pit: they may cut it off from ground like itself.</li>
+        <li>One whose border is partly like itself: the corner of a thinner terrace.</li>
+        <li>One that saturates less than two layers’ worth above its border: a thinner terrace explains that, too.</li>
+      </ul>
+      <p>An <em>open</em> is a patch at the floor, smaller than a terrace, that nothing in the height explains and whose surroundings carry clearly more. The ragged edge of a terrace at the floor is none. Nor is a stretch of line that had lost contact.</p>`,
     formulas: ['short: log₁₀ I − opening(log₁₀ I) ≥ layers × decades per layer'],
     sources: ['Grey-scale opening: J. Serra, Image Analysis and Mathematical Morphology (1982).'],
     limits: 'Scan lines cross only part of all point shorts; how many more to expect is said in the chapter’s first line.',
@@ -50,15 +59,15 @@ export const flawTopics: readonly Topic[] = [
   },
   {
     id: 'measures', title: 'What is measured of a flaw',
-    what: html`<p>Area is pixels times pixel area; the diameter is that of a circle of this area; peak, mean and volume are over the local ground. <em>h/R</em> is the peak height over that circle’s radius: how steep a dome is. <em>Fullness</em> is mean over peak height: 0.41 for a cone, 1/2 for a paraboloid (a pressurised membrane is close to one), near 1 for a plateau. The outline’s length is counted from pixel edges by the rule of Cauchy and Crofton.</p>`,
-    formulas: ['R = √(area ÷ π)', 'outline ≈ π/4 × length of pixel edges', 'roundness = 4π area ÷ outline²'],
+    what: html`<p>Area is pixels times pixel area; the diameter is that of a circle of this area; peak, mean and volume are over the local ground. <em>h/R</em> is the peak height over that circle’s radius: how steep a dome is. <em>Fullness</em> is 0.95 times the mean height divided by the 95 % quantile of the height, which stands in for the peak because noise hardly raises it: 0.41 for a cone (whose mean is a third of its peak), 0.48 to 0.5 for a paraboloid (a pressurised membrane is close to one), near 1 for a plateau. The outline’s length is counted from pixel edges by the rule of Cauchy and Crofton.</p>`,
+    formulas: ['R = √(area ÷ π)', 'fullness = 0.95 × mean height ÷ 95 % quantile of the height', 'outline ≈ π/4 × length of pixel edges', 'roundness = 4π area ÷ outline²'],
     limits: 'The probe’s own width is not taken off: small flaws look wider and pits shallower than they are.',
   },
   {
     id: 'classes', title: 'Classes, and how sure they are',
     what: html`
       <p>In this order. <strong>Wrinkle</strong>: a crest, or an outline long and thin against its own size. <strong>Bubble</strong>: a round dome found by its circle. <strong>Residue, a film</strong>: a patch that lowers the current and does not block it; what is trapped in a bubble blocks. <strong>Bubble</strong>, too: any other smooth dome; three looks are weighed, how full the shape is (1/2 for a paraboloid), how wide its top, and how much of the height a round paraboloid explains. <strong>Residue, a particle</strong>: the rest, uneven, pointed or flat-topped.</p>
-      <p>Confidence runs from 0.5 (could as well be the other class) to 1. It grows with the distance from the border between the two classes, in units of how far apart typical ones lie. Below 0.7 a flaw counts as ambiguous and the list says between what: bubble or residue, wrinkle or bubble. The reason says in words what was seen. Whatever is wrong can be set by hand.</p>`,
+      <p>Confidence runs from 0.5 (could as well be the other class) to 1. It grows with the distance from the border between the two classes, in units of how far apart typical ones lie. Below 0.65 a flaw counts as ambiguous and the list says between what: bubble or residue, wrinkle or bubble. The reason says in words what was seen. Whatever is wrong can be set by hand.</p>`,
     formulas: ['bubble against residue: fullness 0.64 half-way between dome and patch; 0.45 half-way between cone and dome'],
     sources: ['Height over radius is evidence and no rule, because skins of several layers do not keep it (Nat. Commun. 13, 2022, s41467-022-32708-z).'],
     limits: 'Below twelve pixels noise hides the shape. Confidence is a margin and not a probability; where no height is known it is 0.5.',

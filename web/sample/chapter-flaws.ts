@@ -45,12 +45,12 @@ export class ChapterFlaws extends Chapter {
   }
 
   override aboveKnobs() {
-    const { flaws, corrections, recipe, widthUm } = this.summary;
+    const { flaws, corrections, recipe, widthUm, height } = this.summary;
     const stale = JSON.stringify(correctionsOf(recipe)) !== JSON.stringify(correctionsOf(this.recipe));
     return html`
       <eg-hand-tools .flaw=${flaws.find(({ flaw }) => flaw === this.selected)} .hand=${this.hand} .corrections=${corrections} .stale=${stale}
-        .causes=${this.facts.causes} .hatchPeriod=${this.facts.hatchPeriod} .mapUm=${widthUm}></eg-hand-tools>
-      ${flaws.length > 0 ? html`<eg-flaw-table .flaws=${flaws} .selected=${this.selected}></eg-flaw-table>
+        .causes=${this.facts.causes} .hatchPeriod=${this.facts.hatchPeriod} .mapUm=${widthUm} .noiseNm=${height?.noiseNm}></eg-hand-tools>
+      ${flaws.length > 0 ? html`<eg-flaw-table .flaws=${flaws} .noiseNm=${height?.noiseNm} .selected=${this.selected}></eg-flaw-table>
         <p class="note">h/R is a flaw’s peak height over the radius of a circle of its area: how steep it is. Decades are powers of ten of the current: lower by 2 decades is a hundredth.</p>` : nothing}`;
   }
 }

@@ -2,7 +2,7 @@
 import { html, nothing } from 'lit';
 import { Chapter } from './chapter.ts';
 import { glowAssumption, glowFinding } from './findings.ts';
-import { fixed, plain } from './format.ts';
+import { biasText, fixed, plain } from './format.ts';
 
 /** Published breakdown field of hBN along the stacking axis, V/nm: Hattori et al., ACS Nano 9, 916 (2015). */
 const breakdownVPerNm = 1.2;
@@ -30,7 +30,7 @@ export class ChapterGlow extends Chapter {
   private caution(): string {
     const { device, reference } = this.summary;
     const field = device && reference?.thicknessNm ? Math.abs(device.biasV) / reference.thicknessNm : undefined;
-    const here = device && field !== undefined ? ` ${fixed(device.biasV, 1)}\u00a0V on the reference is ${fixed(field, 2)} V/nm${field >= breakdownVPerNm ? ', above that' : ''}.` : '';
+    const here = device && field !== undefined ? ` ${biasText(device)} on the reference is ${fixed(field, 2)} V/nm${field >= breakdownVPerNm ? ', above that' : ''}.` : '';
     return `hBN breaks down near ${breakdownVPerNm} V/nm (Hattori et al., ACS Nano 9, 916, 2015).${here} Set a current limit before a bias is applied; your laboratory’s rules hold, and only trained staff apply it.`;
   }
 }

@@ -7,7 +7,7 @@ import type { Spot } from '../session/recipe.ts';
 import { Chapter } from './chapter.ts';
 import { groundFinding } from './findings.ts';
 import { counted, fixed } from './format.ts';
-import { groundFacts } from './ground-facts.ts';
+import { groundFacts, loweredWords } from './ground-facts.ts';
 
 export class ChapterGround extends Chapter {
   static override properties = { ...Chapter.properties, hand: { attribute: false }, marked: { type: Boolean } };
@@ -45,6 +45,11 @@ export class ChapterGround extends Chapter {
   override alsoChanged(): string {
     const count = spotsOf(this.recipe).length;
     return count === 0 ? '' : `${count} spots by hand`;
+  }
+
+  override meaning(path: string): ((value: number) => string) | undefined {
+    const levels = this.summary.height?.levels;
+    return path === 'ground.order' && levels?.formFrom === 'spots' ? (order) => loweredWords(order, levels) : undefined;
   }
 
   override aboveKnobs() {

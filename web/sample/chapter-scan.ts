@@ -13,10 +13,12 @@ export class ChapterScan extends Chapter {
   }
 
   override found(path: string): string | undefined {
-    const { current, widthUm, heightUm } = this.summary;
+    const { current, widthUm, heightUm, heightUnit, currentUnit } = this.summary;
     if (path === 'scan.biasV') return current?.biasV === undefined ? undefined : plain(current.biasV);
     if (path === 'scan.widthUm') return figure(widthUm, 4);
     if (path === 'scan.heightUm') return figure(heightUm, 4);
+    if (path === 'scan.heightUnit') return heightUnit;
+    if (path === 'scan.currentUnit') return currentUnit;
     return undefined;
   }
 

@@ -4,6 +4,8 @@ import type { TemplateResult } from 'lit';
 import type { FieldInfo, Preview, RecipeData, SampleSummary } from '../../workers/api.ts';
 import { controlStyles } from '../app/controls.ts';
 import { valueAt } from '../session/recipe.ts';
+import { effectStyles, noEffect } from './effect.ts';
+import type { Effect } from './effect.ts';
 import { lookFinding } from './findings.ts';
 import './knob.ts';
 import { changedPaths, knobsOf, liveChapters } from './knobs.ts';
@@ -17,12 +19,12 @@ export abstract class Chapter extends LitElement {
   /** Sparse recipe in force. */
   declare recipe: RecipeData;
   /** "This returned 0.3 µm²." when the last change was made here. */
-  declare effect: string;
+  declare effect: Effect;
   /** Where a held handle would lead. */
   declare look: Preview | undefined;
   declare open: boolean;
 
-  static override styles = [controlStyles, css`
+  static override styles = [controlStyles, effectStyles, css`
     :host { display: block; border-bottom: 1px solid var(--line, #25313b); }
     summary { display: grid; grid-template-columns: 1fr auto; gap: 2px 12px; padding: 12px 16px; cursor: pointer; list-style: none; }
     summary::-webkit-details-marker { display: none; }
@@ -35,7 +37,7 @@ export abstract class Chapter extends LitElement {
     .finding { grid-column: 1 / -1; margin: 0; font-size: 0.9375rem; line-height: 1.45; }
     .body { padding: 0 16px 14px; max-width: 38rem; }
     .finding { max-width: 62ch; }
-    .effect { grid-column: 1 / -1; margin: 0; color: var(--good, #7fd6bb); font-size: 0.875rem; }
+    .effect { grid-column: 1 / -1; margin: 0; font-size: 0.875rem; }
     .how { padding-left: 0; font-size: 0.8125rem; }
     .note { margin: 6px 0; color: var(--dim, #8fa0af); font-size: 0.8125rem; line-height: 1.45; }
     .caution { margin: 6px 0; padding: 6px 10px; border-left: 3px solid var(--bad, #ff9a76); background: var(--panel, #141b21); font-size: 0.8125rem; line-height: 1.45; }
@@ -44,7 +46,7 @@ export abstract class Chapter extends LitElement {
 
   constructor() {
     super();
-    this.effect = '';
+    this.effect = noEffect;
     this.open = false;
   }
 
@@ -84,7 +86,7 @@ export abstract class Chapter extends LitElement {
         <summary>
           <h2>${this.heading}</h2><span class="count">${count === '' ? 'all by default' : count}</span>
           <p class="finding">${this.finding()}</p>
-          <p class="effect" role="status">${this.effect}</p>
+          <p class="effect ${this.effect.tone}" role="status">${this.effect.words}</p>
         </summary>
         ${this.open ? this.renderBody() : nothing}
       </details>`;

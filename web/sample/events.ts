@@ -13,6 +13,8 @@ export interface RecipeChange {
 
 /** Event `recipe-change`; it crosses shadow roots. */
 
+/** Event `recipe-take`, without detail; it crosses shadow roots: a handle has been taken and may move. */
+
 /** A handle that is held has come to a value; undefined: it was let go where it was taken. */
 export interface RecipePreview {
   readonly path: string;

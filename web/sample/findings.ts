@@ -1,6 +1,7 @@
 /** What each chapter found, in one or two plain sentences composed from the summary. */
 import type { Preview, SampleSummary } from '../../workers/api.ts';
-import { area, counted, density, densitySpan, figure, fixed, percent, volts, withUnit } from './format.ts';
+import { area, biasText, counted, density, densitySpan, figure, fixed, heightText, percent, volts, withUnit } from './format.ts';
+import { curveWord } from './ground-facts.ts';
 
 /** "Bare barrier, height and current, 5.9 V between tip and sample; 512 × 512 pixels on 10.0 × 10.0 µm." */
 export function scanFinding(summary: SampleSummary): string {
@@ -10,17 +11,31 @@ export function scanFinding(summary: SampleSummary): string {
   return `${surface}, ${channels}${bias}; ${summary.columns} × ${summary.rows} pixels on ${figure(summary.widthUm)} × ${withUnit(summary.heightUm, 'µm')}.`;
 }
 
-/** "38 nm of tilt removed, 12 broken pixels repaired, noise 0.08 nm; the tip lost 0.28 decades." */
+/** "20 nm of tilt and 3.6 nm of bow removed, 625 pixels repaired in the height, 285 in the current (0.0881 µm²), noise 0.08 nm; the tip lost 0.28 decades." */
 export function groundFinding({ height, current, repairedUm2 }: SampleSummary): string {
   const parts: string[] = [];
-  const repaired = (height?.repairedPixels ?? 0) + (current?.repairedPixels ?? 0);
-  if (height) parts.push(`${withUnit(height.tiltNm, 'nm', 2)} of tilt removed`);
-  parts.push(repaired === 0 ? 'nothing to repair' : `${counted(repaired, 'broken pixel')} repaired${repairedUm2 > 0 ? ` (${area(repairedUm2)}${height && current ? ' in the current' : ''})` : ''}`);
+  if (height) parts.push(`${formWords(height)} removed`);
+  parts.push(repairedWords(height?.repairedPixels, current?.repairedPixels, repairedUm2));
   if (height) parts.push(`noise ${withUnit(height.noiseNm, 'nm', 2)}`);
   const first = capital(parts.join(', '));
   if (!current) return `${first}.`;
-  const wear = current.wearTold ? `the tip lost ${fixed(current.wearDecades, 2)} decades of conductance (a factor of ${figure(10 ** current.wearDecades, 2)})` : 'no wear of the tip told from the barrier';
+  const wear = current.wearTold ? `the tip lost ${fixed(current.wearDecades, 2)} decades of conductance (a factor of ${figure(10 ** current.wearDecades, 2)})` : 'tip wear cannot be told from the barrier, none undone';
   return `${first}; ${wear}.`;
+}
+
+/** From the same numbers as the table of facts below. */
+function formWords({ tiltNm, noiseNm, levels }: NonNullable<SampleSummary['height']>): string {
+  if (!levels) return `${heightText(tiltNm, noiseNm, 2)} of tilt`;
+  if (levels.order === 0) return 'only a level';
+  return `${heightText(levels.tiltNm, noiseNm, 2)} of tilt${levels.order > 1 ? ` and ${heightText(levels.bowNm, noiseNm, 2)} of ${curveWord(levels.order)}` : ''}`;
+}
+
+/** The area is that of the current where there is one, for that is what is booked. */
+function repairedWords(height: number | undefined, current: number | undefined, um2: number): string {
+  if ((height ?? 0) + (current ?? 0) === 0) return 'nothing to repair';
+  const booked = um2 > 0 ? ` (${area(um2)})` : '';
+  if (height === undefined || current === undefined) return `${counted(height ?? current ?? 0, 'pixel')} repaired${booked}`;
+  return `${counted(height, 'pixel')} repaired in the height, ${current === 0 ? 'none' : String(current)} in the current${booked}`;
 }
 
 /** Where a held handle would lead: "about 40.2 µm² usable; 34 bubbles, 9 residue patches …, from every 2nd pixel". */
@@ -52,7 +67,7 @@ export function glowFinding(summary: SampleSummary): string {
   if (!current) return 'Nothing is known of the barrier without a current map.';
   if (device) {
     const known = [reference?.layers === undefined ? '' : counted(reference.layers, 'layer'), reference?.thicknessNm === undefined ? '' : withUnit(reference.thicknessNm, 'nm')].filter((part) => part !== '');
-    return `At ${device.proposed ? `${fixed(device.biasV, 1)}\u00a0V (proposed)` : volts(device.biasV)} the reference${known.length > 0 ? ` (${known.join(', ')})` : ''} would carry ${density(device.medianNaPerUm2)} (95 %: ${densitySpan(device.medianNaPerUm2, device.low95NaPerUm2, device.high95NaPerUm2)}).`;
+    return `At ${biasText(device)}${device.proposed ? ' (proposed)' : ''} the reference${known.length > 0 ? ` (${known.join(', ')})` : ''} would carry ${density(device.medianNaPerUm2)} (95 %: ${densitySpan(device.medianNaPerUm2, device.low95NaPerUm2, device.high95NaPerUm2)}).`;
   }
   const share = reference ? ` The reference is ${percent(reference.shareOfUnflawed)} of the unflawed ground.` : '';
   if (current.unit !== 'A') return `Density is not known: the current has no scale in amperes.${share}`;
@@ -69,14 +84,6 @@ export function glowAssumption(summary: SampleSummary, value: (path: string) => 
     ? `a probe contact of ${withUnit(number('barrier.tipAreaNm2'), 'nm²', 2)}, known to about a decade`
     : `${counted(number('barrier.referenceLayers') ?? 0, 'layer')} on the reference, as given`;
   return `Assumes ${anchor}, a barrier of ${withUnit(number('barrier.heightEv'), 'eV')} and a mass of ${figure(number('barrier.massRatio'), 2)}; extrapolated in field from the probe to the device.`;
-}
-
-/** Effect of the last change in µm²; empty when there is nothing to compare with. */
-export function effectOf(before: number | undefined, now: number | undefined): string {
-  if (before === undefined || now === undefined) return '';
-  const gained = now - before;
-  if (Math.abs(gained) < 5e-4) return 'This changed no usable area.';
-  return gained > 0 ? `This returned ${area(gained)}.` : `This cost ${area(-gained)}.`;
 }
 
 /** The verdict's sentence without its leading area and interval, which are shown on their own; split at the first semicolon. */

@@ -3,7 +3,7 @@ import { LitElement, css, html, nothing } from 'lit';
 import type { PropertyValues } from 'lit';
 import type { FlawEntry } from '../../workers/api.ts';
 import { controlStyles } from '../app/controls.ts';
-import { figure, fixed, sureness } from './format.ts';
+import { figure, fixed, heightFigure, sureness } from './format.ts';
 import { sortFlaws } from './sort-flaws.ts';
 import type { FlawColumn } from './sort-flaws.ts';
 
@@ -14,10 +14,12 @@ const columns: readonly { readonly column: FlawColumn; readonly title: string; r
 ];
 
 export class FlawTable extends LitElement {
-  static override properties = { flaws: { attribute: false }, selected: { attribute: false }, column: { state: true }, ascending: { state: true }, all: { state: true } };
+  static override properties = { flaws: { attribute: false }, selected: { attribute: false }, noiseNm: { attribute: false }, column: { state: true }, ascending: { state: true }, all: { state: true } };
 
   declare flaws: readonly FlawEntry[];
   declare selected: number | undefined;
+  /** Of the height. */
+  declare noiseNm: number | undefined;
   declare column: FlawColumn;
   declare ascending: boolean;
   declare all: boolean;
@@ -84,13 +86,14 @@ export class FlawTable extends LitElement {
       <tr aria-current=${selected ? 'true' : nothing} @click=${() => { this.select(selected ? undefined : flaw.flaw); }}>
         <td><button type="button" aria-label="flaw ${flaw.flaw}, ${flaw.cause}: show on the map" aria-pressed=${selected ? 'true' : 'false'}>${flaw.flaw}</button></td>
         <td>${flaw.other === undefined ? flaw.cause : `${flaw.cause} or ${flaw.other}`}</td><td class="sure">${flaw.other === undefined ? sureness(flaw) : 'ambiguous'} ${flaw.byHand ? '' : html`<span class="figure">${fixed(flaw.confidence, 2)}</span>`}</td>
-        <td class="number">${figure(flaw.areaUm2)}</td><td class="number">${figure(flaw.peakNm)}</td><td class="number">${figure(flaw.heightToRadius, 2)}</td>
+        <td class="number">${figure(flaw.areaUm2)}</td><td class="number">${heightFigure(flaw.peakNm, this.noiseNm)}</td><td class="number">${figure(flaw.heightToRadius, 2)}</td>
       </tr>
       <tr class="reason ${selected ? 'whole' : ''}"><td colspan=${columns.length} title=${selected ? nothing : flaw.reason} @click=${() => { this.select(selected ? undefined : flaw.flaw); }}>${flaw.reason}</td></tr>`;
   }
 
   private sortBy(column: FlawColumn, number: boolean): void {
-    this.ascending = column === this.column ? !this.ascending : !number && column !== 'confidence';
+    // Words from A on, the least sure first, numbers from the largest down.
+    this.ascending = column === this.column ? !this.ascending : !number;
     this.column = column;
   }
 

@@ -50,10 +50,36 @@ export function withUnit(value: number | undefined, unit: string, digits = 3): s
 export function withPrefix(value: number | undefined, unit: string, digits = 3): string {
   if (value === undefined || !Number.isFinite(value)) return missing;
   if (value === 0) return joined('0', unit);
-  // Rounded first, so that 999.6 pA becomes 1.00 nA and not 1000 pA.
-  const exponent = Number(value.toExponential(digits - 1).split('e')[1] ?? '0');
-  const power = Math.min(9, Math.max(-18, Math.floor(exponent / 3) * 3));
+  const power = prefixPower(value, digits);
   return joined(figure(value / 10 ** power, digits), `${prefixes[power] ?? ''}${unit}`);
+}
+
+/**
+ * A value and its standard error in one unit, the error to one digit and the value to the same place: "150.0 ± 0.3 fA". The value alone, to three digits, where
+ * the error is missing or nothing.
+ */
+export function withError(value: number, error: number | undefined, unit: string): string {
+  if (error === undefined || !Number.isFinite(error) || !(error > 0) || !Number.isFinite(value)) return withPrefix(value, unit);
+  const power = unit === '' ? 0 : prefixPower(Math.max(Math.abs(value), error), 12);
+  const inUnit = error / 10 ** power;
+  // Rounded first: 0.96 is 1 and has no decimals.
+  const place = Math.floor(Math.log10(Number(inUnit.toPrecision(1))));
+  const decimals = Math.max(0, -place);
+  return joined(`${fixed(value / 10 ** power, decimals)} ± ${fixed(Number(inUnit.toPrecision(1)), decimals)}`, `${prefixes[power] ?? ''}${unit}`);
+}
+
+/** A height of the map in nm: `digits` significant digits, but no finer than a tenth of the map's noise. */
+export function heightText(nm: number | undefined, noiseNm: number | undefined, digits = 3): string {
+  return joined(heightFigure(nm, noiseNm, digits), 'nm');
+}
+
+/** The same without its unit. */
+export function heightFigure(nm: number | undefined, noiseNm: number | undefined, digits = 3): string {
+  const text = figure(nm, digits);
+  if (nm === undefined || !Number.isFinite(nm) || nm === 0 || noiseNm === undefined || !(noiseNm > 0)) return text;
+  const decimals = Math.max(0, Math.floor(1 - Math.log10(noiseNm) + 1e-9));
+  const own = digits - 1 - Math.floor(Math.log10(Math.abs(nm)));
+  return own > decimals ? fixed(nm, decimals) : text;
 }
 
 /** An area in µm². */
@@ -85,6 +111,11 @@ export function volts(value: number | undefined): string {
   return joined(fixed(rounded, Number.isInteger(Math.round(rounded * 1000) / 100) ? 1 : 2), 'V');
 }
 
+/** A device's bias: as given, or to three digits where it is proposed; the verdict's sentence prints it so too. */
+export function biasText({ biasV, proposed }: { readonly biasV: number; readonly proposed: boolean }): string {
+  return joined(plain(proposed ? Number(biasV.toPrecision(3)) : biasV), 'V');
+}
+
 /** A share as per cent: one decimal below ten, "<0.1 %" for what rounds to nothing. */
 export function percent(share: number | undefined): string {
   if (share === undefined || !Number.isFinite(share)) return missing;
@@ -114,9 +145,10 @@ export function tickText(value: number, unit: string): string {
   return mapValue(value, unit).replace(/(\.\d*?)0+(?=\D|$)/, '$1').replace(/\.(?=\D|$)/, '');
 }
 
-/** How sure a class is, in a word: from 0.5 (as likely another) to 1. */
+/** How sure a class is, in a word: from 0.5 (as likely another) to 1. By the two decimals that are shown, so that word and number never disagree. */
 export function confidenceWord(confidence: number): 'certain' | 'likely' | 'could be another' {
-  return confidence >= 0.9 ? 'certain' : confidence >= 0.7 ? 'likely' : 'could be another';
+  const shown = Math.round(confidence * 100);
+  return shown >= 90 ? 'certain' : shown >= 65 ? 'likely' : 'could be another';
 }
 
 /** The same for a flaw, or that a person said so; an ambiguous one says what else it could be. */
@@ -133,6 +165,12 @@ export function counted(count: number, one: string, many = `${one}s`): string {
 export function typedNumber(text: string): number {
   const cleaned = text.replaceAll(/\s/g, '').replace('−', '-').replace(',', '.');
   return cleaned === '' ? Number.NaN : Number(cleaned);
+}
+
+/** Power of ten of the prefix that leaves 1–999 before it. Rounded first, so that 999.6 pA becomes 1.00 nA and not 1000 pA. */
+function prefixPower(value: number, digits = 3): number {
+  const exponent = Number(value.toExponential(digits - 1).split('e')[1] ?? '0');
+  return Math.min(9, Math.max(-18, Math.floor(exponent / 3) * 3));
 }
 
 function joined(text: string, unit: string): string {

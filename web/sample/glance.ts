@@ -6,6 +6,7 @@ import type { MapPanel } from '../map/map-panel.ts';
 export class Glance {
   /** The newest answer, while the handle is held and until the new result is there. */
   now: Preview | undefined;
+  private readonly compute: () => Compute;
   private readonly panel: () => MapPanel | null;
   private readonly changed: () => void;
   private readonly asked: Latest<PreviewRequest, Preview>;
@@ -13,10 +14,16 @@ export class Glance {
 
   /** @param panel the map that shows it; @param changed is told when `now` is another. */
   constructor(compute: () => Compute, panel: () => MapPanel | null, changed: () => void) {
+    this.compute = compute;
     this.panel = panel;
     this.changed = changed;
     // A look that fails is left out: letting go computes the real result, which says why.
     this.asked = new Latest((request) => compute().preview(request), (request, preview) => { this.show(request, preview); }, () => undefined);
+  }
+
+  /** A handle has been taken: looks are held against one at the recipe in force, which is had ready meanwhile. */
+  take(id: string, recipe: RecipeData): void {
+    this.compute().preview({ id, recipe }).catch(() => undefined);
   }
 
   look(id: string, recipe: RecipeData): void {

@@ -1,6 +1,6 @@
 /** What was found of the ground, fact by fact, in plain words: before any knob is shown. */
 import type { SampleSummary, ShiftSummary } from '../../workers/api.ts';
-import { counted, figure, fixed, percent, withPrefix, withUnit } from './format.ts';
+import { counted, figure, fixed, heightText, percent, withError, withPrefix, withUnit } from './format.ts';
 
 export interface GroundFact {
   readonly name: string;
@@ -18,36 +18,53 @@ export function groundFacts(summary: SampleSummary): readonly GroundFact[] {
 /** Polynomials are named by what they do to a surface. */
 const orderWords = ['a level only', 'tilt', 'tilt and bow', 'up to third powers', 'up to fourth powers', 'up to fifth powers'] as const;
 
+/** What of an order of the form the spots picked by hand support: "lowered to 1: 3 spots support a tilt only". Empty where they support it. */
+export function loweredWords(order: number, { order: used, spotsUsed = 0 }: { readonly order: number; readonly spotsUsed?: number }): string {
+  return order <= used ? '' : `lowered to ${used}: ${counted(spotsUsed, 'spot')} ${spotsUsed < termsOf(used + 1) ? '' : 'in these places '}support ${onlyWords[used] ?? 'no more'}`;
+}
+
+const onlyWords = ['a level only', 'a tilt only', 'tilt and bow only', 'third powers at most', 'fourth powers at most'] as const;
+
+/** Terms of a polynomial of x and y, and with them the least number of spots. */
+function termsOf(order: number): number {
+  return ((order + 1) * (order + 2)) / 2;
+}
+
+/** What a form of that order takes out besides tilt. */
+export function curveWord(order: number): string {
+  return order > 2 ? 'curvature' : 'bow';
+}
+
 function heightFacts({ height, texture }: SampleSummary): GroundFact[] {
   if (!height) return [];
   const { levels } = height;
   return [
-    ...(levels ? levelFacts(levels) : [{ name: 'Form removed', value: `${withUnit(height.tiltNm, 'nm')} from end to end`, topic: 'form' }]),
+    ...(levels ? levelFacts(levels, height.noiseNm) : [{ name: 'Form removed', value: `${heightText(height.tiltNm, height.noiseNm)} from end to end`, topic: 'form' }]),
     { name: 'Repaired in the height', value: counted(height.repairedPixels, 'pixel'), note: 'spikes, and broken runs of one to three lines, filled from agreeing neighbours', topic: 'repair' },
     { name: 'Noise of the height', value: withUnit(height.noiseNm, 'nm', 2), note: 'standard deviation from pixel to pixel on flat ground', topic: 'noise' },
     ...(texture ? [textureFact(texture)] : []),
   ];
 }
 
-function levelFacts(levels: NonNullable<NonNullable<SampleSummary['height']>['levels']>): GroundFact[] {
+function levelFacts(levels: NonNullable<NonNullable<SampleSummary['height']>['levels']>, noiseNm: number): GroundFact[] {
   const { formFrom, order, spotsUsed, tiltNm, bowNm, lineRmsNm, lineMostNm, planesNm, gapNm } = levels;
   const highest = planesNm[planesNm.length - 1];
   return [
     {
       name: 'Form removed', topic: 'form',
-      value: `order ${order} (${orderWords[order] ?? 'higher powers'}): tilt ${withUnit(tiltNm, 'nm')}${order > 1 ? `, curved part ${withUnit(bowNm, 'nm')}` : ''}, peak to peak`,
+      value: `order ${order} (${orderWords[order] ?? 'higher powers'}): tilt ${heightText(tiltNm, noiseNm)}${order > 1 ? `, ${curveWord(order)} ${heightText(bowNm, noiseNm)}` : ''}, peak to peak`,
       note: formFrom === 'spots' ? `fitted to ${counted(spotsUsed ?? 0, 'spot')} picked by hand` : 'fitted to ground found automatically, flaws left out',
     },
     lineRmsNm === undefined
       ? { name: 'Line offsets', value: 'left as they are', topic: 'lines' }
       : {
-        name: 'Line offsets', value: `${withUnit(lineRmsNm, 'nm', 2)} rms, ${withUnit(lineMostNm, 'nm', 2)} at most`, topic: 'lines',
+        name: 'Line offsets', value: `${heightText(lineRmsNm, noiseNm, 2)} rms, ${heightText(lineMostNm, noiseNm, 2)} at most`, topic: 'lines',
         note: 'each line’s median ground over the terraces’ planes, so that steps do not pull it; first found from differences between lines near each other',
       },
     planesNm.length > 1 && highest !== undefined
       ? {
-        name: 'Terraces', value: `${planesNm.length} heights taken as parallel planes, ${withUnit(highest, 'nm', 2)} from lowest to highest`, topic: 'planes',
-        ...(gapNm === undefined ? {} : { note: `one step of the current’s ladder is ${withUnit(gapNm, 'nm')} high` }),
+        name: 'Terraces', value: `${planesNm.length} heights taken as parallel planes, ${heightText(highest, noiseNm, 2)} from lowest to highest`, topic: 'planes',
+        ...(gapNm === undefined ? {} : { note: `one step of the current’s ladder is ${heightText(gapNm, noiseNm)} high` }),
       }
       : { name: 'Terraces', value: 'one plane', note: 'nothing told a step of whole layers in the height', topic: 'planes' },
   ];
@@ -77,12 +94,12 @@ function currentFacts({ current }: SampleSummary): GroundFact[] {
   if (!current) return [{ name: 'Current', value: 'not measured', topic: 'zero' }];
   const { unit, offsetA, offsetSeA, offsetFrom, noiseA, floorA, floorSeA, stepA, saturationA, saturatedPixels, repairedPixels } = current;
   const amount = (value: number): string => (unit === 'A' ? withPrefix(value, 'A') : `${figure(value)} (file’s unit)`);
-  const plusMinus = (error: number | undefined): string => (error === undefined ? '' : ` ± ${amount(error)}`);
+  const measured = (value: number, error: number | undefined): string => (error === undefined ? amount(value) : unit === 'A' ? withError(value, error, 'A') : `${figure(value)} ± ${figure(error, 1)} (file’s unit)`);
   return [
-    { name: 'Current offset', value: `${amount(offsetA)}${plusMinus(offsetSeA)}`, topic: 'zero', ...(offsetFrom === undefined ? {} : { note: offsetWords[offsetFrom] ?? offsetFrom }) },
+    { name: 'Current offset', value: measured(offsetA, offsetSeA), topic: 'zero', ...(offsetFrom === undefined ? {} : { note: offsetWords[offsetFrom] ?? offsetFrom }) },
     { name: 'Noise of the current', value: amount(noiseA), note: 'standard deviation where no current flows', topic: 'noise' },
     {
-      name: 'Floor', value: `${amount(floorA)}${plusMinus(floorSeA)}`, topic: 'zero',
+      name: 'Floor', value: measured(floorA, floorSeA), topic: 'zero',
       note: `below it a current cannot be told from none: three times the noise${stepA === undefined ? '' : `, or two of the steps of ${amount(stepA)} in which the current is digitised`}, or as given`,
     },
     {
@@ -92,7 +109,7 @@ function currentFacts({ current }: SampleSummary): GroundFact[] {
     { name: 'Repaired in the current', value: counted(repairedPixels, 'pixel'), topic: 'repair' },
     wearFact(current),
     current.lagPx === 0
-      ? { name: 'Amplifier’s lag', value: 'none told', topic: 'lag' }
+      ? { name: 'Amplifier’s lag', value: 'none found', topic: 'lag' }
       : { name: 'Amplifier’s lag', value: `${fixed(current.lagPx, 2)}${current.lagSePx === undefined ? '' : ` ± ${fixed(Math.max(0.01, current.lagSePx), 2)}`} pixels, undone`, note: 'time constant along the lines, from the tails behind sharp edges', topic: 'lag' },
     current.shift ? shiftFact('Current against height', current.shift) : { name: 'Current against height', value: 'the maps do not tell', topic: 'alignment' },
   ];
@@ -100,7 +117,7 @@ function currentFacts({ current }: SampleSummary): GroundFact[] {
 
 function wearFact({ wearTold, wearDecades, driftDecades, driftSeDecades }: NonNullable<SampleSummary['current']>): GroundFact {
   const trend = driftDecades === undefined ? undefined : `the terraces’ current falls by ${fixed(driftDecades, 2)}${driftSeDecades === undefined ? '' : ` ± ${fixed(driftSeDecades, 2)}`} decades (powers of ten) from the first line to the last`;
-  if (!wearTold) return { name: 'Wear of the tip', value: 'none undone', topic: 'wear', ...(trend === undefined ? {} : { note: `${trend}, which is not told from the barrier’s own variation` }) };
+  if (!wearTold) return { name: 'Wear of the tip', value: 'none undone', topic: 'wear', ...(trend === undefined ? {} : { note: `${trend}, which cannot be told from the barrier’s own variation` }) };
   return {
     name: 'Wear of the tip', value: `${fixed(wearDecades, 2)} decades lost (a factor of ${figure(10 ** wearDecades, 2)}), undone`, topic: 'wear',
     note: `${trend === undefined ? 'told on the terraces, line by line' : trend}; scan again with a fresh tip if the verdict hangs on it`,

@@ -9,6 +9,8 @@ import { refusal, stepLabel } from './knobs.ts';
 import type { Slider } from './knobs.ts';
 
 const sliderSteps = 400;
+/** Keys that move a slider. */
+const sliderKeys = /^(Arrow|Page|Home$|End$)/;
 
 export class Knob extends LitElement {
   static override properties = {
@@ -113,7 +115,7 @@ export class Knob extends LitElement {
         return html`<input id="control" type="checkbox" .checked=${now === true} aria-describedby="hint" @change=${(event: Event) => { this.send((event.target as HTMLInputElement).checked); }}>`;
       case 'choice':
         return html`<select id="control" aria-describedby="hint" .value=${String(now ?? '')} @change=${(event: Event) => { this.send((event.target as HTMLSelectElement).value || undefined); }}>
-          ${field.fallback === undefined ? html`<option value="" ?selected=${now === undefined}>not set</option>` : nothing}
+          ${field.fallback === undefined ? html`<option value="" ?selected=${now === undefined}>${this.found === undefined ? 'not set' : `from the file: ${this.found}`}</option>` : nothing}
           ${(field.choices ?? []).map((choice) => html`<option value=${choice} ?selected=${choice === now}>${choice}</option>`)}
         </select>`;
       case 'word':
@@ -139,8 +141,18 @@ export class Knob extends LitElement {
     const shown = this.draft ?? (typeof now === 'number' ? now : undefined);
     return html`<input type="range" min="0" max=${sliderSteps} aria-label="${field.title}, slider" aria-valuetext=${this.withUnit(shown)} .value=${String(this.toSlider(shown, slider))}
       @input=${(event: Event) => { this.onSlide(this.fromSlider(event, slider)); }} @change=${(event: Event) => { this.onLeft(this.fromSlider(event, slider)); }}
-      @keydown=${() => { this.keyDown = true; }} @keyup=${this.onKeyUp} @blur=${this.onKeyUp}>`;
+      @pointerdown=${this.onTaken} @keydown=${this.onKeyDown} @keyup=${this.onKeyUp} @blur=${this.onKeyUp}>`;
   }
+
+  private readonly onTaken = (): void => {
+    if (this.live) this.tell('recipe-take', undefined);
+  };
+
+  private readonly onKeyDown = (event: KeyboardEvent): void => {
+    // Tab passes by and takes nothing.
+    if (!this.keyDown && sliderKeys.test(event.key)) this.onTaken();
+    this.keyDown = true;
+  };
 
   private onSlide(value: number): void {
     this.draft = value;

@@ -18,8 +18,6 @@ export const samplePlaceStyles = css`
   eg-map-panel { padding: 12px 18px 4px 24px; }
   .chapters { border-left: 1px solid var(--line, #25313b); overflow: auto; scrollbar-gutter: stable; }
   .stale .result { opacity: 0.72; }
-  /* The verdict is not that of what the bar shows while a handle is held. */
-  .looking eg-verdict-line { filter: grayscale(1); }
   .result { transition: opacity 200ms; }
   .empty { padding: 2rem 24px; }
   @media (max-width: 1180px) and (min-width: 901px) { .main { grid-template-columns: fit-content(calc(100% - 22rem)) minmax(22rem, 1fr); } }

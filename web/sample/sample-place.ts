@@ -11,20 +11,22 @@ import type { IsolateEvent } from '../ledger/ledger-bar.ts';
 import '../map/map-panel.ts';
 import type { MapPanel } from '../map/map-panel.ts';
 import { isBusy } from '../session/actions/appraise.ts';
-import { recipeOf, spotsOf, valueAt, withValue } from '../session/recipe.ts';
+import { correctionsOf, recipeOf, spotsOf, valueAt, withValue } from '../session/recipe.ts';
 import type { SampleState } from '../session/state.ts';
 import './chapter-flaws.ts';
 import './chapter-glow.ts';
 import './chapter-ground.ts';
 import './chapter-scan.ts';
 import type { CorrectionEvent, FlawSelectEvent, HandEvent, MarkRepairedEvent, RecipePreviewEvent } from './events.ts';
-import { effectOf } from './findings.ts';
+import { effectOf, noEffect } from './effect.ts';
+import type { Effect } from './effect.ts';
 import { Glance } from './glance.ts';
 import { chapterOfChange } from './knobs.ts';
 import type { ChapterName } from './knobs.ts';
 import './progress-line.ts';
 import { samplePlaceStyles } from './sample-place-styles.ts';
 import './verdict-line.ts';
+import type { VerdictLine } from './verdict-line.ts';
 
 export class SamplePlace extends LitElement {
   static override properties = {
@@ -79,7 +81,7 @@ export class SamplePlace extends LitElement {
     // Flaws are numbered anew by every appraisal.
     if (before.summary !== this.sample.summary) {
       if (this.hand?.tool === 'merge') this.hand = undefined;
-      if (this.flaw !== undefined) this.flaw = sameFlaw(before.summary, this.flaw, this.sample.summary);
+      if (this.flaw !== undefined) this.flaw = sameFlaw(before.summary, this.flaw, this.sample.summary, correctionsOf(to).at(-1)?.kind === 'split');
       const entry = this.sample.summary?.ledger.find(({ code }) => code === this.isolated);
       if (!entry || entry.areaUm2 === 0) this.isolated = undefined;
     }
@@ -90,11 +92,11 @@ export class SamplePlace extends LitElement {
     const { summary, status } = sample;
     const working = status === 'working' || status === 'waiting';
     if (!summary || !facts) return this.renderWithout(working);
-    const effect = working ? '' : effectOf(sample.previousUsableUm2, summary.usable.areaUm2);
+    const effect = working ? noEffect : effectOf(sample, summary);
     return html`
-      <div class="top ${working ? 'stale' : ''} ${this.glance.now ? 'looking' : ''}">
+      <div class="top ${working ? 'stale' : ''}">
         <div class="headline">
-          <eg-verdict-line class="result" .summary=${summary} .effect=${this.touched === undefined ? effect : ''}></eg-verdict-line>
+          <eg-verdict-line class="result" .summary=${summary} .effect=${this.touched === undefined ? effect : noEffect} .look=${this.glance.now}></eg-verdict-line>
           ${this.renderSteps()}
         </div>
         <eg-ledger-bar class="result" .entries=${this.glance.now?.ledger ?? summary.ledger} .causes=${facts.causes} .hatchPeriod=${facts.hatchPeriod} .isolated=${this.isolated}
@@ -102,7 +104,7 @@ export class SamplePlace extends LitElement {
         ${working ? html`<eg-progress-line .progress=${sample.progress}></eg-progress-line>` : nothing}
         ${this.renderError()}
       </div>
-      <div class="main ${working ? 'stale' : ''}" @recipe-preview=${this.onPreview} @recipe-change=${() => { this.glance.stop(); }}
+      <div class="main ${working ? 'stale' : ''}" @recipe-take=${this.onTake} @recipe-preview=${this.onPreview} @recipe-change=${() => { this.glance.stop(); }}
         @mark-repaired=${(event: MarkRepairedEvent) => { this.repaired = event.detail.on; }} @flaw-select=${(event: FlawSelectEvent) => { this.selectFlaw(event.detail.flaw, true); }}
         @hand=${(event: HandEvent) => { this.take(event.detail.hand); }} @correction=${this.onCorrection}>
         <eg-map-panel class="result" .summary=${summary} .facts=${facts} .compute=${this.compute} .isolated=${this.isolated} .flaw=${this.selected} .bandFactor=${this.bandFactor(summary)} .hand=${this.hand} .spots=${spotsOf(recipeOf(sample)).map(({ xUm, yUm }) => [xUm, yUm])} ?repaired=${this.repaired}
@@ -112,10 +114,10 @@ export class SamplePlace extends LitElement {
       </div>`;
   }
 
-  private renderChapters(summary: SampleSummary, facts: ComputeFacts, effect: string) {
+  private renderChapters(summary: SampleSummary, facts: ComputeFacts, effect: Effect) {
     const { fields } = facts;
     const recipe = recipeOf(this.sample);
-    const of = (chapter: ChapterName): string => (this.touched === chapter ? effect : '');
+    const of = (chapter: ChapterName): Effect => (this.touched === chapter ? effect : noEffect);
     const look = this.glance.now;
     return html`
       <eg-chapter-scan .summary=${summary} .fields=${fields} .recipe=${recipe} .effect=${of('scan')}></eg-chapter-scan>
@@ -215,9 +217,14 @@ export class SamplePlace extends LitElement {
     else if (this.sample.summary && !isBusy(this.sample)) this.glance.look(this.sample.id, withValue(recipeOf(this.sample), path, value));
   };
 
+  private readonly onTake = (): void => {
+    if (this.sample.summary && !isBusy(this.sample)) this.glance.take(this.sample.id, recipeOf(this.sample));
+  };
+
   private readonly onKey = (event: KeyboardEvent): void => {
     if (this.hidden || event.defaultPrevented || isTyping(event)) return;
     if ((event.ctrlKey || event.metaKey) && !event.altKey && event.key.toLowerCase() === 'z') this.step(event.shiftKey ? 'redo' : 'undo');
+    else if (event.key === 'Escape' && this.renderRoot.querySelector<VerdictLine>('eg-verdict-line')?.closeRemarks()) { /* closed */ }
     else if (event.key === 'Escape' && this.isolated !== undefined && !this.hand) this.isolated = undefined;
     else if (this.panel?.press(event)) { /* the map took it */ }
     else if (event.key === 'Escape' && this.flaw !== undefined) this.flaw = undefined;
@@ -250,11 +257,21 @@ function isTyping(event: KeyboardEvent): boolean {
   return target instanceof HTMLInputElement && !['range', 'checkbox', 'radio', 'button'].includes(target.type);
 }
 
-/** The flaw of a new appraisal that covers the place of a flaw of the one before; undefined when there is none of about its size. */
-function sameFlaw(before: SampleSummary | undefined, flaw: number, after: SampleSummary | undefined): number | undefined {
+/**
+ * The flaw of a new appraisal that is a flaw of the one before: the one at the same inner point, else the nearest of those that are new and lie within its radius, or
+ * within its diameter where it has been split, for the parts of a long one lie far from its middle. Undefined when there is none.
+ */
+function sameFlaw(before: SampleSummary | undefined, flaw: number, after: SampleSummary | undefined, split: boolean): number | undefined {
   const old = before?.flaws.find((candidate) => candidate.flaw === flaw);
-  if (!old || !after) return undefined;
-  return after.flaws.find(({ xUm, yUm }) => Math.hypot(xUm - old.xUm, yUm - old.yUm) < old.diameterUm / 2)?.flaw;
+  if (!before || !old || !after) return undefined;
+  const inner = ({ insideUm, xUm, yUm }: FlawEntry): string => (insideUm ?? [xUm, yUm]).join(' ');
+  const same = after.flaws.find((candidate) => inner(candidate) === inner(old));
+  if (same) return same.flaw;
+  const known = new Set(before.flaws.map(inner));
+  const distance = ({ xUm, yUm }: FlawEntry): number => Math.hypot(xUm - old.xUm, yUm - old.yUm);
+  const reachUm = split ? old.diameterUm : old.diameterUm / 2;
+  const near = after.flaws.filter((candidate) => !known.has(inner(candidate)) && distance(candidate) < reachUm);
+  return near.sort((a, b) => distance(a) - distance(b))[0]?.flaw;
 }
 
 customElements.define('eg-sample-place', SamplePlace);

@@ -12,7 +12,7 @@ type Kept = 'document' | 'browser' | 'nowhere';
 export const keptOfSession = { place: 'document', samples: 'document', requiredUm2: 'document', theme: 'browser', notices: 'nowhere' } as const satisfies Record<keyof SessionState, Kept>;
 export const keptOfSample = {
   id: 'document', name: 'document', files: 'document', demo: 'document', history: 'document', at: 'document',
-  status: 'nowhere', progress: 'nowhere', summary: 'nowhere', previousUsableUm2: 'nowhere', error: 'nowhere', run: 'nowhere', restarted: 'nowhere',
+  status: 'nowhere', progress: 'nowhere', summary: 'nowhere', previous: 'nowhere', error: 'nowhere', run: 'nowhere', restarted: 'nowhere',
 } as const satisfies Record<keyof SampleState, Kept>;
 
 export const documentFormat = 'evenglow-session';

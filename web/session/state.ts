@@ -23,8 +23,8 @@ export interface SampleState {
   readonly progress?: { readonly stage: string; readonly done: number; readonly total: number };
   /** Last good result; stays on show while a new one is computed. */
   readonly summary?: SampleSummary;
-  /** Usable area before the last change of the recipe, for "this returned 0.3 µm²". */
-  readonly previousUsableUm2?: number;
+  /** What was booked and found before the last change of the recipe, for "this returned 0.3 µm²". */
+  readonly previous?: Pick<SampleSummary, 'ledger' | 'flaws'> & { readonly usableUm2: number };
   readonly error?: { readonly code: string; readonly message: string; readonly detail?: unknown };
   /** History of recipes and the place in it; undo and redo move the place. */
   readonly history: readonly RecipeStep[];

@@ -1,6 +1,7 @@
-/** Remembers the usable area that a change of the recipe will be held against. */
+/** Remembers what a change of the recipe will be held against. */
 import type { SampleState } from '../state.ts';
 
-export function beforeChange({ previousUsableUm2: _former, ...sample }: SampleState): SampleState {
-  return sample.summary === undefined ? sample : { ...sample, previousUsableUm2: sample.summary.usable.areaUm2 };
+export function beforeChange({ previous: _former, ...sample }: SampleState): SampleState {
+  const { summary } = sample;
+  return summary === undefined ? sample : { ...sample, previous: { usableUm2: summary.usable.areaUm2, ledger: summary.ledger, flaws: summary.flaws } };
 }
