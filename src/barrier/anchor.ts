@@ -1,6 +1,6 @@
 /** The link between a current under the probe, a thickness, and a density in the device. */
-import { chooseModel } from './model/choose-model.ts';
-import { densityInterval } from './model/density-interval.ts';
+import { modelOfSection } from './model/choose-model.ts';
+import { defaultSpread, densityInterval } from './model/density-interval.ts';
 import type { DensityInterval } from './model/density-interval.ts';
 import { biasFromDensity, decadesPerLayer, thicknessFromDensity } from './model/inverse.ts';
 import type { BarrierMaterial, TunnelModel } from './model/tunnel-model.ts';
@@ -28,6 +28,18 @@ export interface DensityWithInterval {
   readonly high95: number;
 }
 
+/** What else than the recipe is known of thickness and contact. */
+export interface AnchorGiven {
+  /** Contact area found from the map itself, m², with the factor that it lies within (95 %); in place of the recipe's. */
+  readonly area?: { readonly areaM2: number; readonly factor95: number };
+  /** Thickness by place on the ladder where each terrace was measured by itself, metres. */
+  readonly terraceM?: (step: number) => number;
+  /** Whole layers of the ladder's first (thinnest measured) terrace. */
+  readonly firstLayers?: number;
+  /** Standard deviation of the thickness of counted layers, metres; absent: exact. */
+  readonly thicknessSdM?: number;
+}
+
 export interface Anchor {
   readonly model: TunnelModel;
   readonly material: BarrierMaterial;
@@ -37,6 +49,10 @@ export interface Anchor {
   readonly modelStepDecades: number;
   /** Layers of the reference terrace where the recipe states them. */
   readonly knownLayers?: number;
+  /** Layers of the ladder's first terrace where something counted them. */
+  readonly firstLayers?: number;
+  /** Contact area that currents are read with, m². */
+  readonly areaM2: number;
   /** Thickness and layers of a reference that carries `currentA` under the probe (or the known count); undefined outside the model. */
   fix(currentA: number): Anchored | undefined;
   /**
@@ -60,21 +76,23 @@ export function layersAt(layers: number, step: number): number {
 
 /**
  * Builds the anchor from the recipe; undefined without a scan bias (or without amperes, which the caller knows), or where the
- * chosen model does not hold at that bias.
+ * chosen model does not hold at that bias. `given` is what the map itself or a device adds.
  */
-export function anchorOf(section: BarrierSection, device: DeviceQuestion, scanBiasV: number | undefined): Anchor | undefined {
+export function anchorOf(section: BarrierSection, device: DeviceQuestion, scanBiasV: number | undefined, given: AnchorGiven = {}): Anchor | undefined {
   if (scanBiasV === undefined || scanBiasV === 0) return undefined;
-  const model = chooseModel(section.model);
+  const model = modelOfSection(section);
   const material = { heightEv: section.heightEv, massRatio: section.massRatio };
   const layerM = section.layerNm * 1e-9;
   const scanV = Math.abs(scanBiasV);
-  const areaM2 = section.tipAreaNm2 * 1e-18;
+  const areaM2 = given.area?.areaM2 ?? section.tipAreaNm2 * 1e-18;
+  const spread = { ...defaultSpread, ...(given.area ? { areaFactor95: given.area.factor95 } : {}) };
   const modelStepDecades = decadesPerLayer(model, { ...material, thicknessM: middleThicknessM }, scanV, layerM);
   if (!Number.isFinite(modelStepDecades)) return undefined;
   const acrossV = (biasV: number): number => Math.max(0, Math.abs(biasV) - device.offsetV);
   const known = section.referenceLayers;
   const interval = (currentA: number, deviceV: number, layers: number | undefined): DensityInterval => densityInterval({
-    model, material, deviceBiasV: deviceV, probe: { currentA, biasV: scanV, areaM2 }, ...(layers === undefined ? {} : { thicknessM: layers * layerM }),
+    model, material, deviceBiasV: deviceV, probe: { currentA, biasV: scanV, areaM2 }, spread,
+    ...(layers === undefined ? {} : { thicknessM: layers * layerM, ...(given.thicknessSdM === undefined ? {} : { thicknessSdM: given.thicknessSdM }) }),
   });
   return {
     model,
@@ -83,7 +101,9 @@ export function anchorOf(section: BarrierSection, device: DeviceQuestion, scanBi
     layerM,
     modelStepDecades,
     acrossV,
+    areaM2,
     ...(known === undefined ? {} : { knownLayers: known }),
+    ...(given.firstLayers === undefined ? {} : { firstLayers: given.firstLayers }),
     fix(currentA) {
       const thicknessM = known === undefined ? thicknessFromDensity(model, material, scanV, currentA / areaM2) : known * layerM;
       // Layers are whole: the thickness handed on is that of the nearest count, the rest belongs to the contact's area.

@@ -36,11 +36,12 @@ export function probeFieldNotices(scanBiasV: number | undefined, thicknessM: num
   return field > breakdownVPerNm ? [notice('probe-field', { fieldVPerNm: field, biasV: Math.abs(scanBiasV) })] : [];
 }
 
-/** A device bias that would put more than the published breakdown field on the reference terrace is said. */
-export function deviceFieldNotices(acrossV: number | undefined, thicknessM: number | undefined): Notice[] {
+/** A device bias that would put more than the published breakdown field on the reference terrace is warned of; from the recipe's limit on there is a milder warning. */
+export function deviceFieldNotices(acrossV: number | undefined, thicknessM: number | undefined, limitVPerNm: number): Notice[] {
   if (acrossV === undefined || thicknessM === undefined) return [];
   const field = fieldVPerNm(acrossV, thicknessM);
-  return field > breakdownVPerNm ? [notice('device-field', { fieldVPerNm: field, acrossV })] : [];
+  if (field > breakdownVPerNm) return [notice('device-field', { fieldVPerNm: field, acrossV })];
+  return field > limitVPerNm ? [notice('device-field-limit', { fieldVPerNm: field, limitVPerNm, acrossV })] : [];
 }
 
 /** Remarks about the step of the ladder: a ladder that contradicts the model is said, not hidden, and so is a step that was not measured. */

@@ -2,6 +2,7 @@
 import type { ScalarMap } from '../grid/maps.ts';
 import type { NdArray } from 'ndarray';
 import type { Notice } from '../problems/problem.ts';
+import type { BiasThickness } from './bias-thickness.ts';
 
 /** All ground of one layer count. */
 export interface Rung {
@@ -43,6 +44,25 @@ export interface Reference {
   readonly inRange?: boolean;
 }
 
+/**
+ * What a thickness can be anchored to: a stated layer count, maps at several biases, a finished device, the step at the flake's edge, or the current through a
+ * contact of stated area. They are taken in this order.
+ */
+export const anchorKinds = ['layers', 'biases', 'device', 'edge', 'area'] as const;
+export type AnchorKind = (typeof anchorKinds)[number];
+
+/** The reference's thickness by one anchor, metres. */
+export interface ThicknessAnchor {
+  readonly kind: AnchorKind;
+  /** True for the one that layers and densities follow. */
+  readonly taken: boolean;
+  readonly thicknessM: number;
+  /** Standard deviation at the stated barrier height and mass, and what their spread adds. */
+  readonly sdM: number;
+  readonly materialSdM: number;
+  readonly sentence: string;
+}
+
 /** What the device would carry on the reference terrace, before any voltage drop. */
 export interface DeviceDensity {
   readonly biasV: number;
@@ -51,6 +71,9 @@ export interface DeviceDensity {
   readonly median: number;
   readonly low95: number;
   readonly high95: number;
+  /** Mean field on the reference terrace under the probe, where the current was measured, and in the device, for which it is predicted; V/nm. */
+  readonly probeFieldVPerNm: number;
+  readonly fieldVPerNm: number;
 }
 
 /**
@@ -70,6 +93,10 @@ export interface Barrier {
   readonly log10Relative: ScalarMap;
   readonly ladder: Ladder;
   readonly reference: Reference;
+  /** All that anchors the reference's thickness, in the order of preference; empty where nothing does. */
+  readonly anchors: readonly ThicknessAnchor[];
+  /** From maps at several biases; its terraces' steps count from the reference. */
+  readonly biases?: BiasThickness;
   readonly device?: DeviceDensity;
   /** The reason where `device` is absent; then `log10Relative` is the ratio of currents at the scan's bias. */
   readonly noDensity?: NoDensity;

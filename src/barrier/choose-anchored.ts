@@ -8,6 +8,7 @@ import type { Candidate, ReferenceChoice, ReferenceRule } from './reference.ts';
  * Gives each uncensored terrace its density at the device's bias and chooses the reference by them.
  *
  * - No known layer count: a terrace's thickness follows from its own current.
+ * - The ladder's first terrace counted (`firstLayers`): every terrace's count follows from its place on the ladder.
  * - `barrier.referenceLayers` = N: by definition the reference has N layers, so every terrace's count depends on which one is the reference. Each terrace
  *   is tried as the one with N layers, the others lying whole ladder steps from it; it stands when under this very reading it is the reference (the largest
  *   terrace whose density reaches the range). Of readings that stand the one with the largest terrace is taken. If none stands, N is taken as the
@@ -21,7 +22,8 @@ import type { Candidate, ReferenceChoice, ReferenceRule } from './reference.ts';
 export function chooseAnchored(plain: readonly Candidate[], rule: ReferenceRule, anchor: Anchor | undefined, biasV: number | undefined): ReferenceChoice | undefined {
   const common = chooseReference(plain, rule);
   if (!anchor || biasV === undefined || !common) return common;
-  const known = anchor.knownLayers;
+  const { knownLayers: known, firstLayers } = anchor;
+  if (firstLayers !== undefined) return chooseReference(plain.map((candidate) => withDensity(candidate, anchor, biasV, layersAt(firstLayers, candidate.step))), rule);
   if (known === undefined) return chooseReference(plain.map((candidate) => withDensity(candidate, anchor, biasV, undefined)), rule);
 
   const reading = (held: Candidate): ReferenceChoice =>

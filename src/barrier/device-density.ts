@@ -4,6 +4,7 @@ import { notice } from '../problems/problem.ts';
 import type { Notice } from '../problems/problem.ts';
 import type { Anchor, Anchored, DeviceQuestion } from './anchor.ts';
 import type { DeviceDensity, NoDensity } from './barrier.ts';
+import { fieldVPerNm } from './model/field.ts';
 import { defaultThicknessRange } from './model/inverse.ts';
 import type { BarrierSection } from './recipe.ts';
 
@@ -53,5 +54,7 @@ export function deviceDensity(context: DensityContext): DeviceAnswer {
   if (biasV === 0 || anchor.acrossV(biasV) === 0) return none('device-bias', notice('device-bias-no-density', { biasV, offsetV, scanBiasV }));
   const density = anchor.density(reference.median, biasV);
   if (!density) return none('model', notice('model-out-of-range', { model, heightEv, biasV, scanBiasV, where: 'device' }));
-  return { device: { biasV, proposed: device.biasV === undefined, ...density }, notices };
+  const { thicknessM } = reference.anchored;
+  const fields = { probeFieldVPerNm: fieldVPerNm(scanBiasV, thicknessM), fieldVPerNm: fieldVPerNm(anchor.acrossV(biasV), thicknessM) };
+  return { device: { biasV, proposed: device.biasV === undefined, ...density, ...fields }, notices };
 }

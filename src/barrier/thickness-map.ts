@@ -88,7 +88,8 @@ function fillByStep(steps: Int8Array, values: Float64Array | Uint8Array, into: F
 /** Relative density of a whole terrace k layers from the reference. */
 function relativeByStep(question: MapQuestion, sameBias: boolean): (k: number) => number {
   const { anchor, anchored, deviceBiasV } = question;
+  const layersOf = new Map(question.rungs.map((rung) => [rung.step, rung.layers]));
   const measured = new Map(question.rungs.map((rung) => [rung.step, rung.medianLog10 - question.referenceLog10]));
   const lnAt = (layers: number): number => anchor!.model.lnDensity({ ...anchor!.material, thicknessM: layers * anchor!.layerM }, anchor!.acrossV(deviceBiasV!));
-  return (k) => (sameBias || !anchored ? (k === 0 ? 0 : measured.get(k) ?? Number.NaN) : (lnAt(layersAt(anchored.layers, k)) - lnAt(anchored.layers)) / Math.LN10);
+  return (k) => (sameBias || !anchored ? (k === 0 ? 0 : measured.get(k) ?? Number.NaN) : (lnAt(layersOf.get(k) ?? layersAt(anchored.layers, k)) - lnAt(anchored.layers)) / Math.LN10);
 }

@@ -1,7 +1,6 @@
 import type { BarrierDescription, InverseDescription } from '../barrier/model/describe.ts';
 import { describeBarrier, describeFromCurrent } from '../barrier/model/describe.ts';
-import type { BarrierModelName } from '../barrier/recipe.ts';
-import { barrierModels } from '../barrier/recipe.ts';
+import { barrierModels, barrierPrefactors } from '../barrier/recipe.ts';
 import { Problem } from '../problems/problem.ts';
 import type { Command } from './command.ts';
 import { exitCodes, numberOption } from './command.ts';
@@ -17,7 +16,7 @@ export const barrierCommand: Command = {
   options: {
     'thickness-nm': { type: 'string' }, 'bias-v': { type: 'string' }, 'current-a': { type: 'string' }, 'tip-area-nm2': { type: 'string' },
     'height-ev': { type: 'string' }, mass: { type: 'string' }, 'layer-nm': { type: 'string' }, model: { type: 'string' },
-    'image-permittivity': { type: 'string' }, json: { type: 'boolean' },
+    'image-permittivity': { type: 'string' }, prefactor: { type: 'string' }, 'temperature-k': { type: 'string' }, json: { type: 'boolean' },
   },
   optionText: {
     '--thickness-nm D': 'thickness of the barrier in nm',
@@ -29,6 +28,8 @@ export const barrierCommand: Command = {
     '--layer-nm L': 'thickness of a layer in nm (0.333)',
     '--model NAME': 'wkb (default), fowler-nordheim or simmons',
     '--image-permittivity E': 'optical permittivity for the image charge (model fowler-nordheim)',
+    '--prefactor NAME': 'inverse-mass (default) or none: prefactor of fowler-nordheim',
+    '--temperature-k T': 'also print the factor by which this temperature raises the density',
     '--json': 'print JSON',
   },
   notes: ['Caution: a field near 1.2 V/nm breaks hexagonal boron nitride down (Hattori et al., ACS Nano 9, 916, 2015). Raise a bias slowly, with a current limit, and follow local rules and trained staff.'],
@@ -48,7 +49,8 @@ function describe(values: Record<string, unknown>): BarrierDescription | Inverse
   const tipAreaNm2 = numberOption(values, 'tip-area-nm2');
   if (biasV === undefined) throw new Problem('option-absent', { command: 'barrier', option: '--bias-v' });
   const shared = { biasV, ...optional('heightEv', numberOption(values, 'height-ev')), ...optional('massRatio', numberOption(values, 'mass')),
-    ...optional('layerNm', numberOption(values, 'layer-nm')), ...optional('imagePermittivity', numberOption(values, 'image-permittivity')), ...optional('model', modelOption(values)) };
+    ...optional('layerNm', numberOption(values, 'layer-nm')), ...optional('imagePermittivity', numberOption(values, 'image-permittivity')), ...optional('model', wordOption(values, 'model', barrierModels)),
+    ...optional('prefactor', wordOption(values, 'prefactor', barrierPrefactors)), ...optional('temperatureK', numberOption(values, 'temperature-k')) };
   if (thicknessNm !== undefined) {
     if (currentA !== undefined) throw new Problem('option-conflict', { command: 'barrier', first: '--thickness-nm', second: '--current-a' });
     return describeBarrier({ ...shared, thicknessNm });
@@ -62,22 +64,23 @@ function optional<Key extends string, Value>(key: Key, value: Value | undefined)
   return value === undefined ? {} : ({ [key]: value } as { [K in Key]?: Value });
 }
 
-function modelOption(values: Record<string, unknown>): BarrierModelName | undefined {
-  const name = values['model'];
-  if (name === undefined) return undefined;
-  const known = barrierModels.find((model) => model === name);
-  if (!known) throw new Problem('barrier-argument', { name: '--model', value: String(name), reason: `is not one of ${barrierModels.join(', ')}` });
+function wordOption<const Words extends readonly string[]>(values: Record<string, unknown>, name: string, words: Words): Words[number] | undefined {
+  const given = values[name];
+  if (given === undefined) return undefined;
+  const known = words.find((word) => word === given);
+  if (known === undefined) throw new Problem('barrier-argument', { name: `--${name}`, value: String(given), reason: `is not one of ${words.join(', ')}` });
   return known;
 }
 
 function inWords(d: BarrierDescription | InverseDescription): string {
   const digits = (value: number): string => String(Number(value.toPrecision(5)));
   const lines: [string, string][] = [
-    ['model', `${d.model}, height ${d.heightEv} eV, mass ${d.massRatio}`],
+    ['model', `${d.model}, height ${d.heightEv} eV, mass ${d.massRatio}${d.prefactor === 'none' ? ', prefactor without the mass' : ''}${d.imagePermittivity === undefined ? '' : `, image charge in ${d.imagePermittivity}`}`],
     ['thickness', `${digits(d.thicknessNm)} nm, ${d.layers} layers${rangeWords(d)}`],
     ['bias', `${d.biasV} V, field ${digits(d.fieldVPerNm)} V/nm, ${d.regime === 'direct' ? 'direct tunnelling' : 'Fowler–Nordheim regime'}`],
     ['density', d.densityNaPerUm2 === undefined ? 'not given by this model' : `${digits(d.densityNaPerUm2)} nA/µm² (${digits(d.densityAPerCm2!)} A/cm²)`],
   ];
+  if (d.temperatureFactor !== undefined) lines.push(['at', `${d.temperatureK} K the density is ${digits(d.temperatureFactor)} times that`]);
   return lines.map(([name, text]) => `${name.padEnd(10)} ${text}\n`).join('');
 }
 

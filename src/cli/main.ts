@@ -8,11 +8,12 @@ import type { Command } from './command.ts';
 import { exitCodes, isUsageError } from './command.ts';
 import { demoCommand } from './demo-command.ts';
 import { helpOf, overview } from './help.ts';
+import { ivCommand } from './iv-command.ts';
 import { loadKernels } from './load-kernels.ts';
 import type { Output } from './output.ts';
 import { recipeCommand } from './recipe-command.ts';
 
-export const commands: readonly Command[] = [appraiseCommand, barrierCommand, recipeCommand, demoCommand];
+export const commands: readonly Command[] = [appraiseCommand, barrierCommand, ivCommand, recipeCommand, demoCommand];
 
 const processOutput: Output = {
   out: (text) => void process.stdout.write(text),

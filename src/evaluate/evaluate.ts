@@ -11,6 +11,7 @@ import type { Recipe } from '../recipe/recipe.ts';
 import { assessSheet } from '../sheet/assess-sheet.ts';
 import type { Sheet } from '../sheet/sheet.ts';
 import type { Appraisal } from './appraisal.ts';
+import { edgeGround } from './edge-ground.ts';
 import { flawScale } from './flaw-scale.ts';
 import { sheetInput } from './sheet-question.ts';
 import { StageCache } from './stage-cache.ts';
@@ -97,6 +98,6 @@ export function barrierOf(sample: Sample, ground: Ground, flaws: ReturnType<type
   return assessBarrier(ground.current, flaws, sample.footprint, sample.grid, sample.surface, recipe.barrier, {
     biasV: stack.biasV, offsetV: stack.offsetV, targetAPerM2: stack.targetNaPerUm2 * 1e3,
     minAPerM2: band.minNaPerUm2 * 1e3, maxAPerM2: band.maxNaPerUm2 * 1e3,
-    bandFactor: band.factor, terraceMinM2: band.terraceMinUm2 * 1e-12,
-  }, ground.height?.levelled.data);
+    bandFactor: band.factor, terraceMinM2: band.terraceMinUm2 * 1e-12, deviceFieldVPerNm: band.deviceFieldVPerNm,
+  }, ground.height?.levelled.data, { further: ground.further, edge: edgeGround(sample, ground) });
 }

@@ -38,7 +38,7 @@ export function thinnedGround(sample: Sample, ground: Ground, side: number): Thi
   const coarse = thinGrid(grid, step);
   const map = (values: ScalarMap): ScalarMap => scalarMap(coarse, thin(values.data, grid, step));
   const mask = (values: MaskMap): MaskMap => maskMap(coarse, thin(values.data, grid, step));
-  const { height, current, layers: _layers, ...rest } = ground;
+  const { height, current, further, layers: _layers, ...rest } = ground;
   return {
     step,
     // Nothing behind the ground reads a channel.
@@ -52,6 +52,7 @@ export function thinnedGround(sample: Sample, ground: Ground, side: number): Thi
           saturated: mask(current.saturated), floor: mask(current.floor), repaired: mask(current.repaired),
         },
       } : {}),
+      ...(further ? { further: further.map((other) => ({ ...other, log10: thin(other.log10, grid, step) })) } : {}),
     },
   };
 }

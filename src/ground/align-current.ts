@@ -35,19 +35,19 @@ export function shiftAgainstHeight(levelled: Float32Array, log10: Float32Array, 
   return shiftBetween(raised, lost, columns, rows);
 }
 
-/** Shift of one map against another of the same quantity, as return against forward scan. */
-export function shiftBetweenDirections(reference: Float32Array, moved: Float32Array, columns: number, rows: number): Shift | undefined {
+/** Shift of one map against another of the same quantity, as return against forward scan; looked for up to `reach` pixels of the maps that are compared. */
+export function shiftBetweenDirections(reference: Float32Array, moved: Float32Array, columns: number, rows: number, reach?: number): Shift | undefined {
   const plain = (map: Float32Array): RowReader => (start, row) => row.set(map.subarray(start, start + row.length));
-  return shiftBetween(plain(reference), plain(moved), columns, rows);
+  return shiftBetween(plain(reference), plain(moved), columns, rows, reach);
 }
 
 /** Fills a row with what is compared, from the pixel `start` on. */
 type RowReader = (start: number, row: Float64Array) => void;
 
-function shiftBetween(reference: RowReader, moved: RowReader, columns: number, rows: number): Shift | undefined {
+function shiftBetween(reference: RowReader, moved: RowReader, columns: number, rows: number, reach?: number): Shift | undefined {
   const step = Math.max(1, Math.ceil(Math.max(columns, rows) / comparedSide));
   const [across, down] = [Math.floor(columns / step), Math.floor(rows / step)];
-  const found = registerMaps(smoothed(reference, columns, across, down, step), smoothed(moved, columns, across, down, step), across, down);
+  const found = registerMaps(smoothed(reference, columns, across, down, step), smoothed(moved, columns, across, down, step), across, down, reach);
   if (!found) return undefined;
   const scaled = { dxPx: step * found.dxPx, dyPx: step * found.dyPx, seXPx: step * found.seXPx, seYPx: step * found.seYPx, correlation: found.correlation };
   const undone = (d: number, se: number): number => (Math.abs(d) >= least.px && Math.abs(d) > least.errors * se ? Math.round(d) : 0);

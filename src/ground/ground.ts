@@ -67,6 +67,19 @@ export interface CurrentGround {
   readonly shift?: Shift;
 }
 
+/** A current at another bias over the same ground, laid over the first one's pixels. */
+export interface FurtherCurrent {
+  readonly biasV: number;
+  /** Name of the file (and page) it came from. */
+  readonly source: string;
+  /** log10 of the conditioned current, A; NaN where it is missing, censored, repaired, within 10σ of zero, beside an edge or beyond the border. */
+  readonly log10: Float32Array;
+  readonly noiseA: number;
+  readonly wearDecades: number;
+  /** Where it lay against the first current before it was moved; absent where `ground.align` is off. */
+  readonly shift?: Shift;
+}
+
 /** What the return scan adds: it is measured and compared, not mixed into the maps. */
 export interface ReturnGround {
   readonly height?: { readonly noiseM: number; readonly shift?: Shift };
@@ -110,6 +123,8 @@ export interface FootprintProposal {
 export interface Ground {
   readonly height?: HeightGround;
   readonly current?: CurrentGround;
+  /** Currents at further biases; absent without any that can be used. */
+  readonly further?: readonly FurtherCurrent[];
   /** Absent without a return scan. */
   readonly returned?: ReturnGround;
   /** Planes of the terraces by their current; absent without height or without a terrace whose current can be measured. */

@@ -7,6 +7,7 @@ import type { ScanSection } from '../read/recipe.ts';
 import { channelOf } from '../read/sample.ts';
 import type { Sample } from '../read/sample.ts';
 import { conditionCurrent } from './condition-current.ts';
+import { conditionFurther } from './condition-further.ts';
 import { describeLevels } from './describe-levels.ts';
 import { fitSpots, leastSpots } from './fit-spots.ts';
 import type { SpotFit } from './fit-spots.ts';
@@ -60,6 +61,7 @@ function levelInside(sample: Sample, section: GroundSection, scan: ScanSection, 
   const backCurrent = channelOf(sample, 'current', 'return');
   const read = backCurrent && readReturnCurrent(backCurrent, grid, section, scan, rough ?? back, slowUp);
   const conditioned = currentChannel && conditionCurrent(currentChannel, grid, section, scan, { height: rough, inside, slowUp, returned: read?.drift });
+  const others = currentChannel && conditioned && conditionFurther(sample, currentChannel, conditioned.current, section, scan, { height: rough, inside, slowUp });
   const returned = compareReturn(grid, { height: rough, current: conditioned?.current }, { height: back, current: read });
   const layers = rough && conditioned && layerPlanes(conditioned.current, rough.levelled.data, grid.columns, layerM, grid.pitchXM);
   const levels = values && first && refineLevels(values.data, grid, section, { start: first, inside, planes: layers?.planes, layerM });
@@ -68,8 +70,8 @@ function levelInside(sample: Sample, section: GroundSection, scan: ScanSection, 
   const height = values && used && levelHeight(values, grid, section, used, inside, currentChannel !== undefined);
   return {
     ...(height ? { height: { ...height, levels: describeLevels(used, byHand, section.lines, grid.columns, grid.rows) } } : {}), ...(conditioned ? { current: conditioned.current } : {}), ...(layers ? { layers } : {}),
-    ...(returned ? { returned } : {}),
-    warnings: [...(values ? spotNotices(section, byHand) : []), ...(conditioned?.warnings ?? [])],
+    ...(others && others.further.length > 0 ? { further: others.further } : {}), ...(returned ? { returned } : {}),
+    warnings: [...(values ? spotNotices(section, byHand) : []), ...(conditioned?.warnings ?? []), ...(others?.warnings ?? [])],
   };
 }
 

@@ -20,7 +20,7 @@ export interface LayerCostQuestion {
  *
  * - the ladder: 1.96 standard errors of the map's own step (none where every pixel speaks for itself);
  * - where the device's bias is not the scan's: the model's step there with barrier height, mass and contact area (which set the
- *   reference's thickness unless `referenceLayers` does) at the ends of their 95 % ranges (`defaultSpread`), one at a time. With
+ *   reference's thickness unless another anchor does) at the ends of their 95 % ranges (`defaultSpread`), one at a time. With
  *   `withinTerrace: barrier` it is the step there over the step at the scan's bias.
  *
  * An end where the model does not hold is left out.
@@ -31,6 +31,8 @@ export function layerCostSpread({ barrier, section, offsetV, scanBiasV }: LayerC
   const fromLadder = byPixel || !(ladder.stepDecades > 0) ? 0 : (1.96 * ladder.stepSeDecades) / ladder.stepDecades;
   if (!device || scanBiasV === undefined) return fromLadder;
 
+  const taken = barrier.anchors.find((anchor) => anchor.taken)?.kind;
+  const byArea = section.referenceLayers === undefined && (taken === 'area' || reference.thicknessM === undefined);
   const cost = (changed: Partial<BarrierSection>): number => {
     const anchor = anchorOf({ ...section, ...changed }, { offsetV, targetAPerM2: 1 }, scanBiasV);
     if (!anchor) return Number.NaN;
@@ -39,7 +41,7 @@ export function layerCostSpread({ barrier, section, offsetV, scanBiasV }: LayerC
     const deviceV = anchor.acrossV(device.biasV);
     if (Math.abs(deviceV - scanV) < 1e-9) return 1;
     const areaM2 = (changed.tipAreaNm2 ?? section.tipAreaNm2) * 1e-18;
-    const thicknessM = section.referenceLayers === undefined ? thicknessFromDensity(model, material, scanV, reference.median / areaM2) : section.referenceLayers * layerM;
+    const thicknessM = byArea ? thicknessFromDensity(model, material, scanV, reference.median / areaM2) : section.referenceLayers === undefined ? reference.thicknessM! : section.referenceLayers * layerM;
     const at = (biasV: number): number => decadesPerLayer(model, { ...material, thicknessM }, biasV, layerM);
     return byPixel ? at(deviceV) / at(scanV) : at(deviceV);
   };

@@ -83,7 +83,7 @@ function firstRow(lines: readonly string[]): { line: number; how: Delimiting } |
 }
 
 /** One line may not show which mark is the decimal one ("1;2;3"), nor whether rows are closed by a delimiter: a few dozen do. */
-function settle(lines: readonly string[], first: number, how: Delimiting): Delimiting {
+export function settle(lines: readonly string[], first: number, how: Delimiting): Delimiting {
   const sample = lines.slice(first, first + 64).filter((line) => !isSkipped(line));
   const decimalComma = how.delimiter !== ',' && sample.some((line) => line.includes(',')) && !sample.some((line) => line.includes('.'));
   const closed = how.delimiter !== ' ' && sample.every((line) => line.endsWith(how.delimiter));

@@ -44,7 +44,8 @@ function devicePart({ device, reference }: Verdict): Markup {
   if (device === undefined) return markup`<dt>Device</dt><dd>not assessed; the remarks say why</dd>`;
   const glow = reference?.inRange === undefined ? '' : reference.inRange ? ' Within the range that glows.' : ' Outside the range that glows.';
   return markup`<dt>Device bias</dt><dd>${device.proposed ? withUnit(device.biasV, 'V') : `${plain(device.biasV)}\u00a0V`}, ${device.proposed ? 'proposed: there the reference carries the target density' : 'given'}</dd>
-<dt>Density there</dt><dd>${withUnit(device.medianNaPerUm2, 'nA/µm²')} on the reference before any voltage drop (95 %: ${interval(device.low95NaPerUm2, device.high95NaPerUm2, 'nA/µm²', 2)}, from contact area, barrier height and mass).${glow}</dd>${currentPart(device)}`;
+<dt>Density there</dt><dd>${withUnit(device.medianNaPerUm2, 'nA/µm²')} on the reference before any voltage drop (95 %: ${interval(device.low95NaPerUm2, device.high95NaPerUm2, 'nA/µm²', 2)}, from contact area, barrier height and mass).${glow}</dd>
+<dt>Extrapolated</dt><dd>from ${withUnit(device.probeFieldVPerNm, 'V/nm')} under the probe to ${withUnit(device.fieldVPerNm, 'V/nm')} in the device, ${figure(device.fieldRatio, 2)} times the field that was measured at</dd>${currentPart(device)}`;
 }
 
 function currentPart({ currentA, currentLow95A, currentHigh95A, shortShareOfCurrent, censored }: NonNullable<Verdict['device']>): Markup | undefined {

@@ -7,6 +7,7 @@ import { reportFigures } from './report-figures.ts';
 import { flawsPart } from './report-flaws.ts';
 import { ledgerPart, scanPart, verdictPart } from './report-ledger.ts';
 import { cautionsPart, originPart, recipePart, warningsPart } from './report-origin.ts';
+import { thicknessPart } from './report-thickness.ts';
 import { verdictOf } from './verdict.ts';
 
 /**
@@ -22,6 +23,7 @@ ${reportFigures(appraised, verdict)}
 ${ledgerPart(verdict)}
 ${scanPart(appraised, verdict)}
 ${barrierPart(appraised, verdict)}
+${thicknessPart(appraised, verdict)}
 ${flawsPart(appraised, verdict)}
 ${warningsPart(verdict)}
 ${cautionsPart(verdict)}

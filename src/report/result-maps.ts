@@ -13,7 +13,7 @@ export interface ResultMap {
 
 /**
  * causes.tif (codes), flaws.tif (numbers of flaws.csv), height.tif (nm, levelled), current.tif (A, offset
- * removed), conditioned.tif (A, drift undone), barrier.tif (nm), layers.tif (0 unknown), glow.tif (1 = median
+ * removed), conditioned.tif (A, drift undone), barrier.tif (nm), bias-thickness.tif (nm, by maps at several biases), layers.tif (0 unknown), glow.tif (1 = median
  * of usable). Without amperes the two currents are in the file's own unit and say `relative`.
  */
 export function resultMaps({ sample: { grid }, ground, flaws, barrier, ledger }: Appraised): ResultMap[] {
@@ -34,6 +34,8 @@ export function resultMaps({ sample: { grid }, ground, flaws, barrier, ledger }:
   }
   const { thickness, layers } = barrier ?? {};
   if (thickness) maps.push(map('barrier.tif', { quantity: 'thickness', unit: 'nm' }, () => inNm(thickness.data)));
+  const { biases } = barrier ?? {};
+  if (biases) maps.push(map('bias-thickness.tif', { quantity: 'thickness', unit: 'nm' }, () => inNm(biases.thickness)));
   if (layers) maps.push(map('layers.tif', { quantity: 'layers' }, () => layers.data));
   if (current) maps.push(map('glow.tif', { quantity: 'glow', unit: 'relative' }, () => ledger.glow.data));
   return maps;

@@ -54,7 +54,7 @@ export function returnPart({ height, current }: ReturnGround, unit: CurrentGroun
 }
 
 /** Pixels to the right and down the picture; `undone…` is what the map was moved back by. */
-function shiftPart(shift: Shift) {
+export function shiftPart(shift: Shift) {
   return {
     rightPx: rounded(shift.dxPx), rightSePx: rounded(shift.seXPx), downPx: rounded(shift.dyPx), downSePx: rounded(shift.seYPx),
     undoneRightPx: shift.undoneXPx, undoneDownPx: shift.undoneYPx, correlation: rounded(shift.correlation),

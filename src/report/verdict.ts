@@ -11,6 +11,7 @@ import type { App, Appraised } from './appraised.ts';
 import { resultNames } from './result-names.ts';
 import { rounded, toNaPerUm2, toNm, toPerUm2, toUm, toUm2 } from './units.ts';
 import { currentPart, returnPart } from './verdict-current.ts';
+import { fieldsPart, thicknessPart } from './verdict-thickness.ts';
 import { texturePart } from './verdict-texture.ts';
 import { withoutMissing } from './without-missing.ts';
 
@@ -43,6 +44,7 @@ export function verdictOf(appraised: Appraised, app: App) {
     usable: usablePart(ledger),
     reference: barrier && referencePart(barrier, ground.current),
     ladder: barrier && ladderPart(barrier),
+    thickness: barrier && thicknessPart(barrier, recipe.barrier.layerNm * 1e-9),
     device: barrier?.device && devicePart(barrier.device, sample, ground.current, sheet?.totals),
     texture: texture && texturePart(texture),
     flaws: flawsPart(flaws, ledger),
@@ -150,6 +152,7 @@ function devicePart(device: NonNullable<Barrier['device']>, { footprint }: Sampl
     medianNaPerUm2: toNaPerUm2(device.median),
     low95NaPerUm2: toNaPerUm2(device.low95),
     high95NaPerUm2: toNaPerUm2(device.high95),
+    ...fieldsPart(device),
     currentA: scaled(device.median),
     currentLow95A: scaled(device.low95),
     currentHigh95A: scaled(device.high95),

@@ -3,7 +3,7 @@ import type { Graph, Link, Source } from './graph.ts';
 import { cyclesOf } from './cycles.ts';
 
 const base = ['problems', 'schema', 'grid', 'stats'];
-const stages = ['read', 'ground', 'flaws', 'barrier', 'sheet', 'ledger', 'plan', 'report'];
+const stages = ['read', 'ground', 'flaws', 'barrier', 'iv', 'sheet', 'ledger', 'plan', 'report'];
 const above = ['recipe', 'evaluate', 'demo'];
 
 const lineLimit = 300;

@@ -16,7 +16,7 @@ import type { Scene } from '../fixtures/create-scene.ts';
 
 const size = 128;
 const scanV = 5.9;
-const band: BandQuestion = { biasV: 4, offsetV: 0, targetAPerM2: 1e3, minAPerM2: 1e2, maxAPerM2: 3e4, bandFactor: 3, terraceMinM2: 0.25e-12 };
+const band: BandQuestion = { biasV: 4, offsetV: 0, targetAPerM2: 1e3, minAPerM2: 1e2, maxAPerM2: 3e4, bandFactor: 3, terraceMinM2: 0.25e-12, deviceFieldVPerNm: 0.8 };
 const wide: Partial<BandQuestion> = { minAPerM2: 0, maxAPerM2: 1e12 };
 const materials = { heightEv: 2.5, massRatio: 0.5 };
 

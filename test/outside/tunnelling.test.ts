@@ -6,15 +6,17 @@ import assert from 'node:assert/strict';
 import { test } from 'node:test';
 import { barrierWarnings } from '../../src/barrier/model/barrier-warnings.ts';
 import * as constants from '../../src/barrier/model/constants.ts';
+import { describeFromCurrent } from '../../src/barrier/model/describe.ts';
 import { hertzAreaM2, hertzRadiusM, pullOffDmtN, pullOffJkrN } from '../../src/barrier/model/contact.ts';
 import { wkbExponent } from '../../src/barrier/model/field.ts';
 import { fowlerNordheimModel } from '../../src/barrier/model/fowler-nordheim.ts';
-import { imageT, imageV } from '../../src/barrier/model/image-charge.ts';
+import { imageField, imageT, imageV } from '../../src/barrier/model/image-charge.ts';
 import { decadesPerLayer, thicknessFromDensity } from '../../src/barrier/model/inverse.ts';
 import { johnsonNoiseA, onePoleNoiseBandwidthHz } from '../../src/barrier/model/johnson-noise.ts';
 import { simmonsModel } from '../../src/barrier/model/simmons.ts';
 import { temperatureFactor } from '../../src/barrier/model/temperature-factor.ts';
 import { wkbModel } from '../../src/barrier/model/wkb.ts';
+import { steepnessFromRatio, thicknessFromRatio } from '../../src/barrier/two-bias.ts';
 import { lineFit } from '../../src/stats/line-fit.ts';
 import { assertClose } from '../fixtures/assert-close.ts';
 
@@ -101,6 +103,44 @@ test('[F] the field that carries 1 pA and 10 nA through 16.92 nm²', () => {
     const thicknessM = thicknessFromDensity(fn, { heightEv: 2.5, massRatio: 0.5 }, 5, currentA / 16.92e-18);
     assertClose(5 / (thicknessM * 1e9), field, 1e-4);
   }
+});
+
+test('[F] derivatives of the WKB density, by Simpson’s rule and five-point differences in another program', () => {
+  const barrier = nm(2.5, 0.5, 4);
+  for (const [biasV, perV, perNm] of [[1, 5.106590511866423, -10.73721940775855], [4, 5.261935491725674, -5.261935596363898]] as const) {
+    const { lnPerV, lnPerM } = wkbModel.slopes(barrier, biasV);
+    assertClose(lnPerV, perV, 1e-7);
+    assertClose(lnPerM * 1e-9, perNm, 1e-7);
+  }
+});
+
+test('[F] the ratio at 5 and 4 V gives √m·φ^1.5·d = 11.18034 eV^1.5 nm, and with φ and m the thickness', () => {
+  for (const [thicknessNm, lnRatio] of [[4, 4.26487], [4.333, 4.58277]] as const) {
+    assertClose(steepnessFromRatio(lnRatio, 4, 5).steepnessEv15Nm, Math.sqrt(0.5) * 2.5 ** 1.5 * thicknessNm, 1e-5);
+    assertClose(thicknessFromRatio(fn, { heightEv: 2.5, massRatio: 0.5 }, 4, 5, lnRatio), thicknessNm * 1e-9, 1e-5);
+  }
+});
+
+test('[P] v(f) ≈ 1 − f + (f/6) ln f to 0.0025 (Forbes, Appl. Phys. Lett. 89, 113122, 2006)', () => {
+  for (let k = 1; k < 100; k++) assert.ok(Math.abs(imageV(k / 100) - (1 - k / 100 + (k / 600) * Math.log(k / 100))) < 0.0025);
+});
+
+test('[M] Schottky’s lowering √(e³F/4πε) is 0.65 eV at 1 V/nm in hBN (3.4 [P, Pierret et al. 2022]), so f = 0.0678 at 2.5 eV', () => {
+  assertClose(imageField(1, 2.5, 3.4), 0.067763, 1e-5);
+  assertClose(2.5 * Math.sqrt(imageField(1, 2.5, 3.4)), 0.650783, 1e-5);
+});
+
+test('[F] Simmons at small bias: J/V = (e²/2πhs²)(a√φ/2 − 1)exp(−a√φ), 95.2048 A/cm²/V at 3 eV, 1 nm, m 1', () => {
+  assertClose((simmonsModel.density(nm(3, 1, 1), 1e-4) / 1e-4) * perCm2, 95.2048, 1e-5);
+});
+
+test('[F] without 1/m the plot keeps its slope and loses ln m in its intercept', () => {
+  const other = fowlerNordheimModel({ massPrefactor: 'none' });
+  for (const biasV of [4, 5, 6]) assertClose(other.lnDensity(nm(2.5, 0.5, 4), biasV) - fn.lnDensity(nm(2.5, 0.5, 4), biasV), Math.log(0.5), 1e-12);
+});
+
+test('[F] 1 nA/µm² through 17 nm² is 17 fA', () => {
+  assertClose(describeFromCurrent({ currentA: 17e-15, tipAreaNm2: 17, biasV: 4 }).densityNaPerUm2, 1, 1e-9);
 });
 
 test('[F] Hertz, DMT, JKR and the density under a tip', () => {

@@ -95,8 +95,8 @@ test('not JSON, not a recipe', () => {
 test('an empty recipe takes every default of the contract', () => {
   const recipe = defaultRecipe();
   assert.deepEqual(recipe, checkRecipe(head));
-  assert.deepEqual(recipe.band, { factor: 3, minNaPerUm2: 0.1, maxNaPerUm2: 30, shortMaxUm2: 0.02, terraceMinUm2: 0.25, strayMinUm2: 0, rimUm: 0, shortRimUm: 0 });
-  assert.deepEqual(recipe.barrier, { heightEv: 2.5, massRatio: 0.5, layerNm: 0.333, tipAreaNm2: 17, model: 'wkb', withinTerrace: 'contact' });
+  assert.deepEqual(recipe.band, { factor: 3, minNaPerUm2: 0.1, maxNaPerUm2: 30, deviceFieldVPerNm: 0.8, shortMaxUm2: 0.02, terraceMinUm2: 0.25, strayMinUm2: 0, rimUm: 0, shortRimUm: 0 });
+  assert.deepEqual(recipe.barrier, { heightEv: 2.5, massRatio: 0.5, layerNm: 0.333, tipAreaNm2: 17, model: 'wkb', prefactor: 'inverse-mass', withinTerrace: 'contact' });
   assert.deepEqual(recipe.stack, { kind: 'one-barrier', targetNaPerUm2: 1, contactOhmUm: 0, offsetV: 0 });
   assert.deepEqual([recipe.scan.biasOn, recipe.scan.surface, recipe.corrections], ['sample', 'barrier', []]);
   assert.deepEqual([recipe.plan.marginUm, recipe.plan.cleaningSpeedUmPerS, recipe.plan.cleaningPitchNm, recipe.plan.successChance], [0.5, 5, 20, 1]);

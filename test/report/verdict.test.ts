@@ -39,7 +39,7 @@ describe('verdict.json', () => {
     });
     assert.deepEqual(verdict.reference, { layers: 12, thicknessNm: 3.996, medianA: 1.18e-10, areaUm2: 2.25, shareOfUnflawed: 0.6, inRange: true });
     // 1000 A/m² = 1000e9 nA per 1e12 µm².
-    assert.deepEqual(verdict.device, { biasV: 3.62, proposed: true, medianNaPerUm2: 1, low95NaPerUm2: 0.15, high95NaPerUm2: 6.4 });
+    assert.deepEqual(verdict.device, { biasV: 3.62, proposed: true, medianNaPerUm2: 1, low95NaPerUm2: 0.15, high95NaPerUm2: 6.4, probeFieldVPerNm: 1.5, fieldVPerNm: 0.9, fieldRatio: 0.6 });
     assert.equal(verdict.recipe.band.factor, 4);
     assert.deepEqual(verdict.timings, { read: 1.2, ground: 2.5 });
     assert.equal(verdict.ladder?.rungs[0]?.bound, 'exact');
@@ -51,7 +51,7 @@ describe('verdict.json', () => {
     const totals = { deviceCurrentA: 4e-9, shortShareOfCurrent: 0.25 };
     const { device } = verdictOf(createAppraisal({ sheet: { relativeDensity, totals, warnings: [] } }), app);
     assert.deepEqual(device, {
-      biasV: 3.62, proposed: true, medianNaPerUm2: 1, low95NaPerUm2: 0.15, high95NaPerUm2: 6.4,
+      biasV: 3.62, proposed: true, medianNaPerUm2: 1, low95NaPerUm2: 0.15, high95NaPerUm2: 6.4, probeFieldVPerNm: 1.5, fieldVPerNm: 0.9, fieldRatio: 0.6,
       currentA: 4e-9, currentLow95A: 6e-10, currentHigh95A: 2.56e-8, shortShareOfCurrent: 0.25, censored: true,
     });
     // The same saturated pixel beyond the footprint carries nothing in the device.

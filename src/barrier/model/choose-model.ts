@@ -1,6 +1,6 @@
 /** The model a recipe or a command line names. */
 import { Problem } from '../../problems/problem.ts';
-import type { BarrierModelName } from '../recipe.ts';
+import type { BarrierModelName, BarrierSection } from '../recipe.ts';
 import { fowlerNordheimModel } from './fowler-nordheim.ts';
 import type { FowlerNordheimOptions } from './fowler-nordheim.ts';
 import { simmonsModel } from './simmons.ts';
@@ -30,4 +30,9 @@ export function chooseModel(name: BarrierModelName, options: FowlerNordheimOptio
     case 'fowler-nordheim':
       return fowlerNordheimModel(options);
   }
+}
+
+/** The model of a recipe's section; an image charge stated for a model without one is left out (`assessBarrier` says so). */
+export function modelOfSection({ model, prefactor, imagePermittivity }: Pick<BarrierSection, 'model' | 'prefactor' | 'imagePermittivity'>): TunnelModel {
+  return chooseModel(model, { massPrefactor: prefactor, ...(model === 'fowler-nordheim' && imagePermittivity !== undefined ? { imagePermittivity } : {}) });
 }

@@ -13,7 +13,8 @@
  *   plus one observation of ln J with the area's spread), and the interval is that of the Gaussian
  *   conditioned on the observation: var − cov²/(var_probe + σ_area²). A precise area pins the
  *   probe's density; a vague one leaves the prior of height and mass.
- * - Thickness known and no current: height and mass alone.
+ * - Thickness known with an error (`thicknessSdM`, read off a step in height): one more quantity like height and mass.
+ * - Thickness known and no current: height and mass (and its error) alone.
  *
  * First order is enough: medians and ends lie within 5 % of the interval's width of a Monte Carlo
  * with the same spreads (tested). With WKB and Fowler–Nordheim, and thickness from the current, the
@@ -50,6 +51,8 @@ export interface DensityQuestion {
   readonly deviceBiasV: number;
   /** Known thickness; absent: solved from the probe's reading. */
   readonly thicknessM?: number;
+  /** Standard deviation of a known thickness; absent: exact. */
+  readonly thicknessSdM?: number;
   /** Absent: only possible with a known thickness. */
   readonly probe?: ProbeReading;
   readonly spread?: BarrierSpread;
@@ -61,7 +64,7 @@ export interface DensityInterval {
   readonly medianAPerM2: number;
   readonly low95APerM2: number;
   readonly high95APerM2: number;
-  /** Thickness used, and its standard deviation from area, height and mass (0 when it was given). */
+  /** Thickness used (moved to agree with the current where it was given with an error), and its standard deviation from area, height and mass (0 when it was given). */
   readonly thicknessM: number;
   readonly thicknessSdM: number;
   /** Height and mass used: those given, or moved to agree with the current at a known thickness. */
@@ -126,53 +129,60 @@ function fromCurrent(question: DensityQuestion, probe: ProbeReading): DensityInt
   };
 }
 
-function fromThickness(question: DensityQuestion, thicknessM: number): DensityInterval {
-  const { model, material, deviceBiasV, probe } = question;
-  const spread = question.spread ?? defaultSpread;
-  const lnAt = (height: number, mass: number, biasV: number): number => model.lnDensity({ ...materialAt(material, spread, height, mass), thicknessM }, biasV);
-  /** Central differences over one standard deviation each way. */
-  const slopes = (height: number, mass: number, biasV: number): [number, number] => [
-    (lnAt(height + 1, mass, biasV) - lnAt(height - 1, mass, biasV)) / 2,
-    (lnAt(height, mass + 1, biasV) - lnAt(height, mass - 1, biasV)) / 2,
-  ];
+/** Where the uncertain quantities stand, in their own standard deviations from the centre. */
+interface Place {
+  readonly height: number;
+  readonly mass: number;
+  readonly thickness: number;
+}
 
-  let height = 0;
-  let mass = 0;
+function fromThickness(question: DensityQuestion, thicknessM: number): DensityInterval {
+  const { model, material, deviceBiasV, probe, thicknessSdM = 0 } = question;
+  const spread = question.spread ?? defaultSpread;
+  // Thickness moves as a logarithm, so that it stays above 0.
+  const thicknessAt = (thickness: number): number => thicknessM * Math.exp((thickness * thicknessSdM) / thicknessM);
+  const lnAt = ({ height, mass, thickness }: Place, biasV: number): number =>
+    model.lnDensity({ ...materialAt(material, spread, height, mass), thicknessM: thicknessAt(thickness) }, biasV);
+  /** Central differences over one standard deviation each way. */
+  const slopes = (at: Place, biasV: number): Place => {
+    const along = (key: keyof Place): number => (lnAt({ ...at, [key]: at[key] + 1 }, biasV) - lnAt({ ...at, [key]: at[key] - 1 }, biasV)) / 2;
+    return { height: along('height'), mass: along('mass'), thickness: thicknessSdM > 0 ? along('thickness') : 0 };
+  };
+  const product = (a: Place, b: Place): number => a.height * b.height + a.mass * b.mass + a.thickness * b.thickness;
+
+  let at: Place = { height: 0, mass: 0, thickness: 0 };
   let areaSd = 0;
   let surprise: number | undefined;
   if (probe !== undefined) {
     areaSd = Math.log(spread.areaFactor95) / z95;
     const seen = Math.log(probe.currentA / probe.areaM2);
-    // Gauss–Newton: most likely height and mass given the current; six steps settle it to rounding.
+    // Gauss–Newton: most likely height, mass and thickness given the current; six steps settle it to rounding.
     for (let step = 0; step < 6; step++) {
-      const [byHeight, byMass] = slopes(height, mass, probe.biasV);
-      const variance = byHeight ** 2 + byMass ** 2 + areaSd ** 2;
-      const excess = seen - lnAt(height, mass, probe.biasV) + byHeight * height + byMass * mass;
+      const by = slopes(at, probe.biasV);
+      const variance = product(by, by) + areaSd ** 2;
+      const excess = seen - lnAt(at, probe.biasV) + product(by, at);
       if (step === 0) surprise = variance > 0 ? excess / Math.sqrt(variance) : Number.NaN;
-      if (variance > 0) {
-        height = (byHeight * excess) / variance;
-        mass = (byMass * excess) / variance;
-      }
+      if (variance > 0) at = { height: (by.height * excess) / variance, mass: (by.mass * excess) / variance, thickness: (by.thickness * excess) / variance };
     }
   }
-  const [deviceHeight, deviceMass] = slopes(height, mass, deviceBiasV);
-  let variance = deviceHeight ** 2 + deviceMass ** 2;
+  const device = slopes(at, deviceBiasV);
+  let variance = product(device, device);
   let areaPart = 0;
   if (probe !== undefined) {
-    const [probeHeight, probeMass] = slopes(height, mass, probe.biasV);
-    const probeVariance = probeHeight ** 2 + probeMass ** 2 + areaSd ** 2;
-    const covariance = deviceHeight * probeHeight + deviceMass * probeMass;
+    const seen = slopes(at, probe.biasV);
+    const probeVariance = product(seen, seen) + areaSd ** 2;
+    const covariance = product(device, seen);
     if (probeVariance > 0) {
       variance = Math.max(0, variance - covariance ** 2 / probeVariance);
       areaPart = (Math.abs(covariance) / probeVariance) * areaSd;
     }
   }
   return {
-    ...interval(lnAt(height, mass, deviceBiasV), Math.sqrt(variance)),
-    thicknessM,
-    thicknessSdM: 0,
-    material: materialAt(material, spread, height, mass),
-    parts: { area: areaPart, height: Math.abs(deviceHeight), mass: Math.abs(deviceMass) },
+    ...interval(lnAt(at, deviceBiasV), Math.sqrt(variance)),
+    thicknessM: thicknessAt(at.thickness),
+    thicknessSdM,
+    material: materialAt(material, spread, at.height, at.mass),
+    parts: { area: areaPart, height: Math.abs(device.height), mass: Math.abs(device.mass) },
     ...(surprise === undefined ? {} : { surprise }),
   };
 }

@@ -1,13 +1,14 @@
 /** One barrier at one bias in the words of `evenglow barrier --json`, forwards and backwards. */
 import { Problem } from '../../problems/problem.ts';
 import type { Notice } from '../../problems/problem.ts';
-import type { BarrierModelName } from '../recipe.ts';
+import type { BarrierModelName, BarrierPrefactor } from '../recipe.ts';
 import { barrierWarnings } from './barrier-warnings.ts';
 import { chooseModel } from './choose-model.ts';
 import { defaultSpread } from './density-interval.ts';
 import { regime } from './field.ts';
 import type { Regime } from './field.ts';
 import { layersFromThickness, thicknessFromDensity, usableRange } from './inverse.ts';
+import { temperatureFactor } from './temperature-factor.ts';
 import type { BarrierMaterial, TunnelModel } from './tunnel-model.ts';
 
 interface Asked {
@@ -16,6 +17,10 @@ interface Asked {
   readonly massRatio?: number;
   readonly model?: BarrierModelName;
   readonly imagePermittivity?: number;
+  /** For the model fowler-nordheim. */
+  readonly prefactor?: BarrierPrefactor;
+  /** Asks for the factor x/sin x of this temperature. */
+  readonly temperatureK?: number;
   /** Spacing of the layers, nm. */
   readonly layerNm?: number;
 }
@@ -38,6 +43,11 @@ export interface BarrierDescription {
   readonly heightEv: number;
   readonly massRatio: number;
   readonly imagePermittivity?: number;
+  /** Given where it was asked for. */
+  readonly prefactor?: BarrierPrefactor;
+  readonly temperatureK?: number;
+  /** Absent in the direct regime and where thermionic emission takes over. */
+  readonly temperatureFactor?: number;
   readonly fieldVPerNm: number;
   readonly regime: Regime;
   readonly densityAPerCm2?: number;
@@ -62,7 +72,7 @@ interface Setting {
   readonly material: BarrierMaterial;
   readonly biasV: number;
   readonly layerNm: number;
-  readonly imagePermittivity: number | undefined;
+  readonly asked: Asked;
 }
 
 /**
@@ -103,9 +113,11 @@ export function describeFromCurrent(question: InverseQuestion): InverseDescripti
 }
 
 function describe(setting: Setting, thicknessNm: number): BarrierDescription {
-  const { name, model, material, biasV, layerNm, imagePermittivity } = setting;
+  const { name, model, material, biasV, layerNm, asked: { imagePermittivity, prefactor, temperatureK } } = setting;
   const barrier = { ...material, thicknessM: thicknessNm * 1e-9 };
   const density = model.density(barrier, biasV);
+  const warmed = temperatureK === undefined || regime(biasV, material.heightEv) === 'direct' ? Number.NaN
+    : temperatureFactor(temperatureK, Math.abs(biasV) / thicknessNm, material.heightEv, material.massRatio);
   return {
     model: name,
     thicknessNm,
@@ -113,6 +125,9 @@ function describe(setting: Setting, thicknessNm: number): BarrierDescription {
     biasV,
     ...material,
     ...(imagePermittivity === undefined ? {} : { imagePermittivity }),
+    ...(prefactor === undefined ? {} : { prefactor }),
+    ...(temperatureK === undefined ? {} : { temperatureK }),
+    ...(Number.isFinite(warmed) ? { temperatureFactor: warmed } : {}),
     fieldVPerNm: Math.abs(biasV) / thicknessNm,
     regime: regime(biasV, material.heightEv),
     // 1 A/m² = 1e-4 A/cm² = 1e-3 nA/µm².
@@ -122,14 +137,18 @@ function describe(setting: Setting, thicknessNm: number): BarrierDescription {
 }
 
 function settingOf(asked: Asked): Setting {
-  const { biasV, heightEv = 2.5, massRatio = 0.5, model: name = 'wkb', imagePermittivity, layerNm = 0.333 } = asked;
+  const { biasV, heightEv = 2.5, massRatio = 0.5, model: name = 'wkb', imagePermittivity, prefactor, temperatureK = 0, layerNm = 0.333 } = asked;
   if (biasV === 0) throw new Problem('barrier-argument', { name: '--bias-v', value: '0', reason: 'must be a bias other than 0 V' });
   between('--bias-v', biasV, -100, 100, ' V');
   between('--height-ev', heightEv, 0.2, 10, ' eV');
   between('--mass', massRatio, 0.01, 5, '');
   between('--layer-nm', layerNm, 0.05, 2, ' nm');
-  const model = chooseModel(name, imagePermittivity === undefined ? {} : { imagePermittivity });
-  return { name, model, material: { heightEv, massRatio }, biasV, layerNm, imagePermittivity };
+  between('--temperature-k', temperatureK, 0, 5000, ' K');
+  if (prefactor !== undefined && name !== 'fowler-nordheim') {
+    throw new Problem('barrier-argument', { name: '--prefactor', value: prefactor, reason: `cannot be used with the model ${name}, which has no such choice; use --model fowler-nordheim or leave it out` });
+  }
+  const model = chooseModel(name, { ...(imagePermittivity === undefined ? {} : { imagePermittivity }), ...(prefactor === undefined ? {} : { massPrefactor: prefactor }) });
+  return { name, model, material: { heightEv, massRatio }, biasV, layerNm, asked };
 }
 
 function between(name: string, value: number, min: number, max: number, unit: string): void {

@@ -7,14 +7,15 @@
  * evaluated, but takes the barrier for a longer triangle than it is and lies too low: see
  * `barrierWarnings`.
  */
+import type { BarrierPrefactor } from '../recipe.ts';
 import { fowlerNordheimA, fowlerNordheimB, imageChargeEv2NmPerV } from './constants.ts';
-import { imageField, imageT, imageV } from './image-charge.ts';
-import { isBarrier } from './tunnel-model.ts';
-import type { BarrierShape, TunnelModel } from './tunnel-model.ts';
+import { imageField, imageS, imageT, imageTSlope, imageV } from './image-charge.ts';
+import { isBarrier, noSlopes } from './tunnel-model.ts';
+import type { BarrierShape, DensitySlopes, TunnelModel } from './tunnel-model.ts';
 
 export interface FowlerNordheimOptions {
   /** `inverse-mass` (default) divides the prefactor by the mass ratio, `none` leaves it out. */
-  readonly massPrefactor?: 'inverse-mass' | 'none';
+  readonly massPrefactor?: BarrierPrefactor;
   /** Relative permittivity seen by the image charge, at least 1; absent: no image charge. */
   readonly imagePermittivity?: number;
 }
@@ -37,9 +38,25 @@ export function fowlerNordheimModel(options: FowlerNordheimOptions = {}): Tunnel
     return bare - 2 * Math.log(imageT(f)) - imageV(f) * exponent;
   }
 
+  /** ln J = const + 2 ln F − 2 ln t(f) − v(f)·b/F depends on bias and thickness through F = V/d alone: d ln J/d ln F serves both. */
+  function slopes(barrier: BarrierShape, biasV: number): DensitySlopes {
+    const bias = Math.abs(biasV);
+    if (!isBarrier(barrier) || !(bias > 0 && bias < Number.POSITIVE_INFINITY)) return noSlopes;
+    const { heightEv, massRatio, thicknessM } = barrier;
+    const field = bias / (thicknessM * 1e9);
+    const exponent = (fowlerNordheimB * Math.sqrt(massRatio) * heightEv * Math.sqrt(heightEv)) / field;
+    let lnPerLnField = 2 + exponent;
+    if (imagePermittivity !== undefined) {
+      const f = imageField(field, heightEv, imagePermittivity);
+      lnPerLnField = 2 - (2 * imageTSlope(f)) / imageT(f) + imageS(f) * exponent;
+    }
+    return { lnPerV: lnPerLnField / bias, lnPerM: -lnPerLnField / thicknessM };
+  }
+
   return {
     name: 'fowler-nordheim',
     lnDensity,
+    slopes,
     density: (barrier, biasV) => Math.exp(lnDensity(barrier, biasV)),
     thinnestM: (material, biasV) =>
       imagePermittivity === undefined ? 0 : (1e-9 * imageChargeEv2NmPerV * Math.abs(biasV)) / (imagePermittivity * material.heightEv ** 2),

@@ -27,3 +27,13 @@ export function imageT(f: number): number {
   const { first, second } = completeElliptic((1 - y) / (1 + y));
   return ((1 + y) * second - y * first) / Math.sqrt(1 + y);
 }
+
+/** s(f) = v − f dv/df = (v + 3t)/4 for 0 ≤ f ≤ 1: what v becomes in the slope of a Fowler–Nordheim plot (Forbes & Deane 2007); NaN outside. */
+export function imageS(f: number): number {
+  return (imageV(f) + 3 * imageT(f)) / 4;
+}
+
+/** f dt/df for 0 ≤ f < 1, = [t − v/(1−f)]/4, from f(1−f) v″ = (3/16) v (Forbes & Deane 2007); 0 at 0, NaN outside. */
+export function imageTSlope(f: number): number {
+  return f === 0 ? 0 : f < 1 ? (imageT(f) - imageV(f) / (1 - f)) / 4 : Number.NaN;
+}

@@ -5,13 +5,14 @@
  * It replaces the barrier by its mean height and carries no 1/m.
  */
 import { simmonsA, waveNumberPerRootEv } from './constants.ts';
-import { isBarrier } from './tunnel-model.ts';
-import type { BarrierShape, TunnelModel } from './tunnel-model.ts';
+import { isBarrier, noSlopes } from './tunnel-model.ts';
+import type { BarrierShape, DensitySlopes, TunnelModel } from './tunnel-model.ts';
 
 export const simmonsModel: TunnelModel = {
   name: 'simmons',
   density: (barrier, biasV) => Math.exp(lnSimmonsDensity(barrier, biasV)),
   lnDensity: lnSimmonsDensity,
+  slopes: simmonsSlopes,
   // The formula assumes an opaque barrier; its density peaks at a√φ between 2.6 (V → 0) and 3.5 (V → φ)
   // and turns negative below that. From a√φ = 4 on it falls with thickness at every bias below φ.
   thinnestM: (material, biasV) =>
@@ -26,12 +27,30 @@ export function lnSimmonsDensity(barrier: BarrierShape, biasV: number): number {
   const bias = Math.abs(biasV);
   if (!isBarrier(barrier) || !(bias < barrier.heightEv)) return Number.NaN;
   if (bias === 0) return Number.NEGATIVE_INFINITY;
+  const { decay, rootForward, braces } = termsOf(barrier, bias);
+  return Math.log((simmonsA / barrier.thicknessM ** 2) * braces) - decay * rootForward;
+}
+
+/** Parts of the formula; `braces` is {…} times exp(a√(φ−V/2)), without the loss of digits at small bias. */
+function termsOf(barrier: BarrierShape, bias: number) {
   const decay = 2 * waveNumberPerRootEv * Math.sqrt(barrier.massRatio) * barrier.thicknessM * 1e9;
   const forward = barrier.heightEv - bias / 2;
   const backward = barrier.heightEv + bias / 2;
   const rootForward = Math.sqrt(forward);
-  const gap = (decay * bias) / (Math.sqrt(backward) + rootForward);
-  // forward − backward·e^−gap, without the loss of digits at small bias.
-  const braces = -backward * Math.expm1(-gap) - bias;
-  return Math.log((simmonsA / barrier.thicknessM ** 2) * braces) - decay * rootForward;
+  const rootBackward = Math.sqrt(backward);
+  const gap = (decay * bias) / (rootBackward + rootForward);
+  return { decay, forward, backward, rootForward, rootBackward, gap, braces: -backward * Math.expm1(-gap) - bias };
+}
+
+/** Derivatives of the formula term by term; NaN where it gives no density. */
+function simmonsSlopes(barrier: BarrierShape, biasV: number): DensitySlopes {
+  const bias = Math.abs(biasV);
+  if (!isBarrier(barrier) || !(bias > 0 && bias < barrier.heightEv)) return noSlopes;
+  const { decay, forward, backward, rootForward, rootBackward, gap, braces } = termsOf(barrier, bias);
+  if (!(braces > 0)) return noSlopes;
+  const left = Math.exp(-gap);
+  const byBias = (decay * rootForward) / 4 - 0.5 + left * ((decay * rootBackward) / 4 - 0.5);
+  // (φ+V/2)^1.5·e^−gap − (φ−V/2)^1.5, again without the difference of like numbers.
+  const byDecay = backward * rootBackward * Math.expm1(-gap) + (bias * (backward + rootBackward * rootForward + forward)) / (rootBackward + rootForward);
+  return { lnPerV: byBias / braces, lnPerM: (-2 + (decay * byDecay) / braces) / barrier.thicknessM };
 }

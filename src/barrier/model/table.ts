@@ -19,6 +19,8 @@ export interface DensityTable {
   readonly lowLog10: number;
   /** Log10 of the density in A/m² at a thickness in metres. */
   log10Density(thicknessM: number): number;
+  /** Change of ln density per metre of thickness, from the same cubic (to about 1e-4 of itself). */
+  lnSlopePerM(thicknessM: number): number;
   /** Thickness in metres at a log10 density. */
   thicknessM(log10Density: number): number;
 }
@@ -61,23 +63,40 @@ export function densityTable(model: TunnelModel, material: BarrierMaterial, bias
     highLog10,
     lowLog10,
     log10Density: (thicknessM) => cubicAt(logs, (Math.sqrt(thicknessM) - rootMin) / rootStep),
+    lnSlopePerM: (thicknessM) => (Math.LN10 * cubicSlopeAt(logs, (Math.sqrt(thicknessM) - rootMin) / rootStep)) / (2 * rootStep * Math.sqrt(thicknessM)),
     thicknessM: (log10Density) => cubicAt(thicknesses, Math.sqrt(highLog10 - log10Density) / dropStep),
   };
 }
 
 /** Cubic through the four knots around a fractional index; NaN outside the knots (1e-9 of a step of slack at the ends, for rounding). */
 function cubicAt(knots: Float64Array, index: number): number {
-  const last = knots.length - 1;
-  if (!(index >= -1e-9 && index <= last + 1e-9)) return Number.NaN;
-  const first = Math.min(Math.max(Math.floor(index) - 1, 0), last - 3);
+  const first = firstKnot(knots, index);
+  if (first < 0) return Number.NaN;
   const t = index - first;
+  const { a, ab, abc, abcd } = newtonForm(knots, first);
+  return a + t * (ab + ((t - 1) / 2) * (abc + ((t - 2) / 3) * abcd));
+}
+
+/** Derivative of that cubic by the index. */
+function cubicSlopeAt(knots: Float64Array, index: number): number {
+  const first = firstKnot(knots, index);
+  if (first < 0) return Number.NaN;
+  const t = index - first;
+  const { ab, abc, abcd } = newtonForm(knots, first);
+  return ab + (t - 0.5) * abc + ((3 * t * t - 6 * t + 2) / 6) * abcd;
+}
+
+/** First of the four knots around an index; −1 outside. */
+function firstKnot(knots: Float64Array, index: number): number {
+  const last = knots.length - 1;
+  return index >= -1e-9 && index <= last + 1e-9 ? Math.min(Math.max(Math.floor(index) - 1, 0), last - 3) : -1;
+}
+
+/** Newton's form of the cubic through t = 0, 1, 2, 3. */
+function newtonForm(knots: Float64Array, first: number): { a: number; ab: number; abc: number; abcd: number } {
   const a = knots[first]!;
   const b = knots[first + 1]!;
   const c = knots[first + 2]!;
   const d = knots[first + 3]!;
-  // Newton's form of the cubic through t = 0, 1, 2, 3.
-  const ab = b - a;
-  const abc = c - 2 * b + a;
-  const abcd = d - 3 * c + 3 * b - a;
-  return a + t * (ab + ((t - 1) / 2) * (abc + ((t - 2) / 3) * abcd));
+  return { a, ab: b - a, abc: c - 2 * b + a, abcd: d - 3 * c + 3 * b - a };
 }

@@ -15,8 +15,16 @@ export interface BarrierShape extends BarrierMaterial {
   readonly thicknessM: number;
 }
 
+/** How ln density changes; multiply by the density for the derivatives of the density itself. */
+export interface DensitySlopes {
+  /** d ln J / d|V| in 1/V; `density · lnPerV` is the differential conductance per area, A/(V m²). */
+  readonly lnPerV: number;
+  /** d ln J / dd in 1/m, below 0 wherever thickness can be inverted. */
+  readonly lnPerM: number;
+}
+
 /**
- * A model of the current through one barrier. The sign of the bias is ignored (the barrier is
+ * A model of the current through one barrier: forwards here, backwards through the functions of `inverse.ts`, which take any model. The sign of the bias is ignored (the barrier is
  * symmetric); densities are magnitudes.
  */
 export interface TunnelModel {
@@ -25,6 +33,8 @@ export interface TunnelModel {
   density(barrier: BarrierShape, biasV: number): number;
   /** Natural logarithm of the density in A/m², finite also where the density underflows; −Infinity at zero bias. */
   lnDensity(barrier: BarrierShape, biasV: number): number;
+  /** Derivatives of ln density in closed form (for WKB by the same quadrature); NaN where `lnDensity` is, and at zero bias. */
+  slopes(barrier: BarrierShape, biasV: number): DensitySlopes;
   /**
    * Thickness in metres below which the model's density is not defined or no longer falls with
    * thickness; inversion starts here. 0 where no such bound exists, NaN where the model does not
@@ -37,3 +47,6 @@ export interface TunnelModel {
 export function isBarrier(barrier: BarrierShape): boolean {
   return barrier.thicknessM > 0 && barrier.heightEv > 0 && barrier.massRatio > 0;
 }
+
+/** Where a model gives no density it gives no slope. */
+export const noSlopes: DensitySlopes = { lnPerV: Number.NaN, lnPerM: Number.NaN };

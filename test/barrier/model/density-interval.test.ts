@@ -3,6 +3,7 @@ import { test } from 'node:test';
 import { chooseModel } from '../../../src/barrier/model/choose-model.ts';
 import { defaultSpread, densityInterval } from '../../../src/barrier/model/density-interval.ts';
 import type { DensityInterval } from '../../../src/barrier/model/density-interval.ts';
+import { seededRandom } from '../../../src/stats/random.ts';
 import { assertClose } from '../../fixtures/assert-close.ts';
 
 const material = { heightEv: 2.5, massRatio: 0.5 };
@@ -71,4 +72,37 @@ test('a layer count that contradicts the current is a surprise', () => {
 test('NaN where nothing fits, an error where nothing is asked', () => {
   assert.ok(Number.isNaN(densityInterval({ model: chooseModel('simmons'), material, deviceBiasV: 4, probe }).medianAPerM2));
   assert.throws(() => densityInterval({ model: wkb, material, deviceBiasV: 4 }), RangeError);
+});
+
+test('a thickness with an error: the interval is that of a Monte Carlo over height, mass, area and thickness given the current', () => {
+  const thicknessSdM = 0.3e-9;
+  const thicknessM = 4.3e-9;
+  const got = densityInterval({ model: wkb, material, deviceBiasV: 4, probe, thicknessM, thicknessSdM });
+  const random = seededRandom('thickness');
+  const seen = Math.log(probe.currentA / probe.areaM2);
+  const areaSd = Math.log(defaultSpread.areaFactor95) / 1.959963984540054;
+  const drawn: { ln: number; weight: number }[] = [];
+  for (let k = 0; k < 20000; k++) {
+    const own = { heightEv: material.heightEv + defaultSpread.heightSdEv * random.normal(), massRatio: material.massRatio * Math.exp(defaultSpread.massSdRatio * random.normal()) };
+    const thick = thicknessM * Math.exp((thicknessSdM / thicknessM) * random.normal());
+    const off = (seen - fn.lnDensity({ ...own, thicknessM: thick }, probe.biasV)) / areaSd;
+    drawn.push({ ln: fn.lnDensity({ ...own, thicknessM: thick }, 4), weight: Math.exp(-0.5 * off * off) });
+  }
+  // Fowler–Nordheim is quick to draw from; its own interval is what is compared.
+  const closed = densityInterval({ model: fn, material, deviceBiasV: 4, probe, thicknessM, thicknessSdM });
+  drawn.sort((a, b) => a.ln - b.ln);
+  const total = drawn.reduce((sum, { weight }) => sum + weight, 0);
+  const at = (share: number): number => {
+    let sum = 0;
+    return drawn.find(({ weight }) => (sum += weight) >= share * total)!.ln;
+  };
+  const width = at(0.975) - at(0.025);
+  assert.ok(Math.abs(Math.log(closed.medianAPerM2) - at(0.5)) < 0.05 * width);
+  assert.ok(Math.abs(Math.log(closed.low95APerM2) - at(0.025)) < 0.05 * width);
+  assert.ok(Math.abs(Math.log(closed.high95APerM2) - at(0.975)) < 0.05 * width);
+  // Between an exact thickness and none at all.
+  const exact = densityInterval({ model: wkb, material, deviceBiasV: 4, probe, thicknessM });
+  assert.ok(got.sdLn > exact.sdLn && got.sdLn < densityInterval({ model: wkb, material, deviceBiasV: 4, probe }).sdLn * 1.05);
+  const hardly = densityInterval({ model: wkb, material, deviceBiasV: 4, probe, thicknessM, thicknessSdM: 1e-15 });
+  assertClose(hardly.sdLn, exact.sdLn, 1e-3);
 });

@@ -54,3 +54,13 @@ test('arguments out of range are named with the value', () => {
   assert.throws(() => describeBarrier({ thicknessNm: 4, biasV: 1, massRatio: 9 }), /--mass: 9/);
   assert.throws(() => describeFromCurrent({ currentA: 1, tipAreaNm2: 17, biasV: 4 }), (error: unknown) => error instanceof Problem && error.code === 'barrier-no-thickness');
 });
+
+test('prefactor and temperature: half the density at m 0.5, ×1.160 at 300 K, only where they have a meaning', () => {
+  const asked = { thicknessNm: 4, biasV: 4, model: 'fowler-nordheim' } as const;
+  const got = describeBarrier({ ...asked, prefactor: 'none', temperatureK: 300 });
+  assertClose(got.densityAPerCm2! * 2, describeBarrier(asked).densityAPerCm2!, 1e-12);
+  assertClose(got.temperatureFactor, 1.16, 1e-3);
+  assert.equal('prefactor' in describeBarrier(asked), false);
+  assert.equal('temperatureFactor' in describeBarrier({ ...asked, model: 'wkb', biasV: 1, temperatureK: 300 }), false);
+  assert.throws(() => describeBarrier({ ...asked, model: 'wkb', prefactor: 'none' }), /--prefactor: none cannot be used with the model wkb/);
+});

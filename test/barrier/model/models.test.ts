@@ -1,7 +1,7 @@
 import assert from 'node:assert/strict';
 import { test } from 'node:test';
 import { barrierWarnings } from '../../../src/barrier/model/barrier-warnings.ts';
-import { chooseModel } from '../../../src/barrier/model/choose-model.ts';
+import { chooseModel, modelOfSection } from '../../../src/barrier/model/choose-model.ts';
 import { completeElliptic } from '../../../src/barrier/model/elliptic.ts';
 import { fieldVPerNm, regime, wkbExponent } from '../../../src/barrier/model/field.ts';
 import { fowlerNordheimModel } from '../../../src/barrier/model/fowler-nordheim.ts';
@@ -102,6 +102,13 @@ test('remarks: breakdown, thickness, Fowler–Nordheim below the height', () => 
   assert.deepEqual(codes(wkb, { ...barrier, thicknessM: 0.999e-9 }, 0.1), ['barrier-thickness-range']);
   assert.deepEqual(codes(wkb, { ...barrier, thicknessM: 10.01e-9 }, 1), ['barrier-thickness-range']);
   assert.deepEqual(codes(chooseModel('fowler-nordheim'), barrier, 2), ['barrier-fowler-range']);
+});
+
+test('a recipe’s section gives its model: prefactor and image charge for Fowler–Nordheim alone', () => {
+  const section = { model: 'fowler-nordheim', prefactor: 'none', imagePermittivity: 3.4 } as const;
+  const asked = fowlerNordheimModel({ massPrefactor: 'none', imagePermittivity: 3.4 });
+  assert.equal(modelOfSection(section).lnDensity(barrier, 4), asked.lnDensity(barrier, 4));
+  assert.equal(modelOfSection({ ...section, model: 'wkb' }).lnDensity(barrier, 4), chooseModel('wkb').lnDensity(barrier, 4));
 });
 
 test('an image charge is refused for models without one, and a permittivity below 1', () => {
