@@ -4,6 +4,7 @@ import { labelMap, pixelAreaM2 } from '../grid/maps.ts';
 import { labelComponents } from '../grid/label-components.ts';
 import { boxMean } from '../ground/flat-segments.ts';
 import type { Ground } from '../ground/ground.ts';
+import { filmMaxM2 } from '../ground/segment-levels.ts';
 import { notice } from '../problems/problem.ts';
 import type { Notice } from '../problems/problem.ts';
 import { classifyRaised } from './classify.ts';
@@ -54,7 +55,8 @@ export function findFlaws(ground: Ground, grid: Grid, footprint: MaskMap, sectio
   const thresholds = thresholdsOf(ground, section, { decades: scale.layerDecades, from: scale.layerFrom });
   const { startM = Number.NaN, noiseM = Number.NaN } = thresholds;
   if (thresholds.ruledBy === 'noise') warnings.push(notice('threshold-raised', { statedNm: section.heightNm, usedNm: startM * 1e9, noiseNm: noiseM * 1e9, times: section.heightNoise }));
-  const planes = ground.height && overPlanes(ground.height, columns, rows, current?.floor.data, scale.terraceMinM2 / pixelAreaM2(grid), scale.layerM);
+  const films = current && { maxPixels: filmMaxM2 / pixelAreaM2(grid), told: ground.layers?.planes };
+  const planes = ground.height && overPlanes(ground.height, columns, rows, current?.floor.data, scale.terraceMinM2 / pixelAreaM2(grid), scale.layerM, films);
   const rise = planes && riseAboveGround(planes.over, columns, rows, startM);
   const log10 = current?.log10.data;
 

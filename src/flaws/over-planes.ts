@@ -4,6 +4,7 @@ import { labelComponents } from '../grid/label-components.ts';
 import { mostCommon } from '../ground/centre.ts';
 import { subSample } from '../ground/fit-form.ts';
 import type { HeightGround } from '../ground/ground.ts';
+import { dropFilmIslands } from './film-islands.ts';
 import { nearestAdmitted } from './local-ground.ts';
 import { bothOf, higherThan, onlyFirst, pixelsOf } from './mask-pixels.ts';
 
@@ -29,11 +30,15 @@ export interface OverPlanes {
  * own: under a bubble, a film or a fold the barrier is that of the ground around.
  *
  * A patch of flat ground at the amplifier's floor that is smaller than a terrace counts as one only where it lies one or two layers above the ground beside it:
- * at the same height it is dead, not thick; higher up it may as well be a film, whose height is no evidence for layers.
+ * at the same height it is dead, not thick; higher up it may as well be a film, whose height is no evidence for layers. A small island whose current conducts
+ * counts as a terrace two layers up or more only where its height agrees with its current (`dropFilmIslands`).
  *
  * @param floor 1 where the current is at the floor; absent without current.
+ * @param films the size in pixels below which an island may be a film, and the planes by the current alone; islands are not looked at without it.
  */
-export function overPlanes(height: HeightGround, columns: number, rows: number, floor: Uint8Array | undefined, terraceMinPixels: number, layerM: number): OverPlanes {
+export function overPlanes(
+  height: HeightGround, columns: number, rows: number, floor: Uint8Array | undefined, terraceMinPixels: number, layerM: number, films?: { readonly maxPixels: number; readonly told?: Float32Array | undefined },
+): OverPlanes {
   const heights = height.levelled.data;
   const { plane } = height;
   const off = difference(heights, plane);
@@ -42,10 +47,13 @@ export function overPlanes(height: HeightGround, columns: number, rows: number, 
   const onPlane = nearValue(off, centre, reach);
   if (floor) dropSmallPatches(onPlane, floor, plane, columns, rows, terraceMinPixels, layerM);
   const core = cores(onPlane, plane, columns, rows);
-  const nearest = nearestAdmitted(core, columns, rows);
+  const zero = Number.isNaN(centre) ? 0 : centre;
+  let nearest = nearestAdmitted(core, columns, rows);
+  if (films && dropFilmIslands({ columns, rows, heights, zero, plane, told: films.told, core, nearest, onPlane, layerM, noiseM: height.noiseM, filmMaxPixels: films.maxPixels })) {
+    nearest = nearestAdmitted(core, columns, rows);
+  }
   // The rim of a film passes through the height that its current suggests.
   leaveOtherPlanes(onPlane, plane, nearest);
-  const zero = Number.isNaN(centre) ? 0 : centre;
   if (floor) lendFloorPlanes(nearest, onPlane, { heights, zero, core, floor, plane, columns, rows, reach });
   return { over: overLent(heights, zero, plane, nearest), onPlane };
 }

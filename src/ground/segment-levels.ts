@@ -27,7 +27,7 @@ const mostPairs = 3000;
 /** A step this near to whole layers, in layers, is taken to be whole. */
 const wholePart = 0.3;
 /** Segments larger than this are terraces whatever their step: films of adsorbed matter are patches, m² (our judgement). */
-const filmMaxM2 = 0.6e-12;
+export const filmMaxM2 = 0.6e-12;
 /** A small segment whose current is censored or on no rung is a terrace only up to this many layers above the ground beside it. */
 const mostLayers = 2.5;
 

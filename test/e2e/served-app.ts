@@ -100,9 +100,13 @@ export async function drop(page: Page, paths: readonly string[]): Promise<void> 
   const cover = page.getByText('Drop to appraise');
   await drag('dragEnter');
   for (const end = Date.now() + patienceMs; !(await cover.isVisible()) && Date.now() < end; await page.waitForTimeout(50)) await drag('dragOver');
-  // A busy page may answer one dragOver too late, and the browser then refuses the drop: a person lets go again.
+  // A busy page may answer one dragOver too late, and the browser then refuses the drop and ends the drag: a person takes the files up again.
   for (const end = Date.now() + patienceMs; (await cover.isVisible()) && Date.now() < end; await page.waitForTimeout(500)) {
-    await drag('dragOver');
+    await drag('dragEnter');
+    for (let n = 0; n < 3; n++) {
+      await drag('dragOver');
+      await page.waitForTimeout(50);
+    }
     await drag('drop');
   }
   await cover.waitFor({ state: 'hidden' });

@@ -22,7 +22,7 @@ export const flawTopics: readonly Topic[] = [
         <li>A step of the <em>barrier</em> changes the height by whole layers and the current by as many rungs of the ladder: more or less barrier, booked as thick or thin.</li>
         <li>A rise with a fall of the current that fits neither is a <em>film</em>: residue.</li>
       </ul>
-      <p>Terraces enter as planes, so that a step is no rise; strips too narrow for a plane are recognised by a mean rise of one or two layers together with a current that has fallen by as many, or is censored where it would have.</p>`,
+      <p>Terraces enter as planes, so that a step is no rise; strips too narrow for a plane are recognised by a mean rise of one or two layers together with a current that has fallen by as many, or is censored where it would have. A small island (below 0.6 µm²) two layers or more above all ground beside it counts as barrier only where its median height lies within 0.12 nm and two standard errors of what its current says; otherwise it is a film.</p>`,
     formulas: ['barrier: Δh = m × layer and Δlog₁₀ I = −m × step of the ladder', 'injector: Δh = m × layer and Δlog₁₀ I = 0'],
     limits: 'A film that is as high as a layer and costs as much current as one cannot be told from a layer.',
   },
