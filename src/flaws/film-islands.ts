@@ -10,7 +10,7 @@ const standardErrors = 2;
 /** Standard error of a median over that of a mean. */
 const medianError = 1.2533;
 /** Planes nearer than this are one, metres. */
-const samePlaneM = 0.1e-9;
+export const samePlaneM = 0.1e-9;
 /** Ground along a smaller share of an island's border only meets a corner of it. */
 const leastBorder = 0.1;
 /** An island of equal current this many times as large as a film may be is a terrace, however little of it lies on its plane. */

@@ -10,7 +10,7 @@ import { riseOverGround } from '../kernels/rise-above-ground.ts';
  * @param values row-major, NaN skipped; @param use 1 = admitted; @param windowPx full width of the first window.
  * @returns one level per pixel; NaN only where nothing at all is admitted.
  */
-export function windowMean(values: Float32Array, use: Uint8Array, columns: number, rows: number, windowPx: number): Float32Array {
+function windowMean(values: Float32Array, use: Uint8Array, columns: number, rows: number, windowPx: number): Float32Array {
   const { sums, counts } = summedAreas(values, use, columns, rows);
   const out = new Float32Array(columns * rows);
   const least = 0.12;

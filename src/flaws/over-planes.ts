@@ -4,15 +4,13 @@ import { labelComponents } from '../grid/label-components.ts';
 import { mostCommon } from '../ground/centre.ts';
 import { subSample } from '../ground/fit-form.ts';
 import type { HeightGround } from '../ground/ground.ts';
-import { dropFilmIslands } from './film-islands.ts';
+import { dropFilmIslands, samePlaneM } from './film-islands.ts';
 import { nearestAdmitted } from './local-ground.ts';
 import { bothOf, higherThan, onlyFirst, pixelsOf } from './mask-pixels.ts';
 
 /** Ground lies within this of its plane, or within four standard deviations of the noise, metres: more than its undulation, less than a flaw. */
 const onPlaneM = 0.45e-9;
 
-/** Planes nearer than this are one, metres. */
-const samePlaneM = 0.1e-9;
 /** Ground lends its plane only from where it is this far from other ground, pixels. */
 const coreHalfPx = 2;
 /** The border of a terrace at the floor is no wider than this, pixels (city-block). */

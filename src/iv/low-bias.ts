@@ -21,7 +21,7 @@ export interface LowBias {
 /** A shorter stretch tells no noise from a slope. */
 const leastPoints = 8;
 const usualPoints = 12;
-/** A stretch shorter than this share of the range shows proportional noise as well as any floor. */
+/** Least share of the range of bias: over less of it, noise in proportion to the current looks just like a constant one. */
 const leastSpan = 0.1;
 /** The ohmic part is asked for where the stretch begins below this share of the largest bias. */
 const nearZero = 0.25;
